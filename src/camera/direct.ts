@@ -1,0 +1,110 @@
+import type { StarSpec } from '../scene/types.js'
+import type { StarSpectrum } from '../sources/star.js'
+
+/** A star at the centre of the picture, at one frequency. */
+export interface StarImage {
+  /** Radius of a star that is a sphere, cm; 0 for a point. */
+  radius: number
+  /** Spectral luminosity, erg/s/Hz. */
+  luminosity: number
+  /** Specific intensity at the centre of the disk, erg/s/cm2/Hz/sr; 0 for a point. */
+  central: number
+  limbDarkening: number
+}
+
+export function starImage(spec: StarSpec, spectrum: StarSpectrum, nu: number): StarImage {
+  const sphere = spec.extent === 'sphere'
+  return {
+    radius: sphere ? spec.radius! : 0,
+    luminosity: spectrum.luminosityNu(nu),
+    central: sphere ? spectrum.intensityNu(nu, 1) : 0,
+    limbDarkening: spec.limbDarkening
+  }
+}
+
+/** Optical depth from the observer down to the star (or past the origin) along the ray at (x, y) cm. */
+export type DepthAt = (x: number, y: number) => number
+
+/** Points across a stellar disk, in each direction, at which the optical depth in front is found. */
+const DEPTH_GRID = 24
+/** Samples across a pixel or across a disk smaller than two pixels. */
+const SAMPLES = 16
+
+/** Spectral luminosity per sr towards the observer (erg/s/Hz/sr) of a star seen through the dust, within `radius` cm. */
+export function directLight(star: StarImage, depthAt: DepthAt, radius: number): number {
+  if (star.radius === 0) return (star.luminosity / (4 * Math.PI)) * Math.exp(-depthAt(0, 0))
+  const seen = Math.min(radius, star.radius)
+  const step = seen / DEPTH_GRID
+  // Rings of equal width, in each the exact light of the annulus, dimmed at points around it.
+  let sum = 0
+  for (let i = 0; i < DEPTH_GRID; i++) {
+    const ring = annulus(star, i * step, (i + 1) * step)
+    let dimming = 0
+    for (let k = 0; k < DEPTH_GRID; k++) {
+      const angle = (2 * Math.PI * (k + 0.5)) / DEPTH_GRID
+      dimming += Math.exp(-depthAt((i + 0.5) * step * Math.cos(angle), (i + 0.5) * step * Math.sin(angle)))
+    }
+    sum += (ring * dimming) / DEPTH_GRID
+  }
+  return sum
+}
+
+/** Integral of a bare star's intensity between two radii on its disk, erg/s/Hz/sr: with m = mu^2 = 1 - (rho / R)^2. */
+function annulus(star: StarImage, from: number, to: number): number {
+  const { radius, central, limbDarkening: u } = star
+  const area = Math.PI * radius * radius * central
+  const cumulative = (rho: number) => {
+    const m = Math.max(0, 1 - (rho / radius) ** 2)
+    return area * ((1 - u) * (1 - m) + (2 / 3) * u * (1 - m ** 1.5))
+  }
+  return cumulative(to) - cumulative(from)
+}
+
+/** A picture of `width` x `height` square pixels of side `pixel` cm about the origin; row 0 is the lowest. */
+export interface PixelFrame {
+  width: number
+  height: number
+  pixelWidth: number
+  pixelHeight: number
+}
+
+/** Adds the direct light of a star to `out`, as intensity (erg/s/cm2/Hz/sr) of each pixel; row-major, row 0 the lowest. */
+export function addDirectLight(star: StarImage, depthAt: DepthAt, frame: PixelFrame, out: Float64Array): void {
+  const { width, height, pixelWidth, pixelHeight } = frame
+  const area = pixelWidth * pixelHeight
+  if (star.radius < Math.max(pixelWidth, pixelHeight) / 4) {
+    // Unresolved: all of it in the pixel at the centre, or shared by those that meet there.
+    const columns = width % 2 === 0 ? [width / 2 - 1, width / 2] : [(width - 1) / 2]
+    const rows = height % 2 === 0 ? [height / 2 - 1, height / 2] : [(height - 1) / 2]
+    const light = directLight(star, depthAt, star.radius) / (area * columns.length * rows.length)
+    for (const row of rows) for (const column of columns) out[row * width + column] += light
+    return
+  }
+  const { radius, central, limbDarkening: u } = star
+  const dimming = new Float64Array(DEPTH_GRID * DEPTH_GRID)
+  const at = (i: number) => radius * (-1 + (2 * (i + 0.5)) / DEPTH_GRID)
+  for (let j = 0; j < DEPTH_GRID; j++) {
+    for (let i = 0; i < DEPTH_GRID; i++) {
+      const outside = Math.hypot(at(i), at(j)) / radius
+      const pull = outside > 0.98 ? 0.98 / outside : 1
+      dimming[j * DEPTH_GRID + i] = Math.exp(-depthAt(at(i) * pull, at(j) * pull))
+    }
+  }
+  const nearest = (v: number) => Math.min(DEPTH_GRID - 1, Math.max(0, Math.floor(((v / radius + 1) / 2) * DEPTH_GRID)))
+  const samples = Math.max(SAMPLES, Math.ceil((SAMPLES * 4 * Math.max(pixelWidth, pixelHeight)) / radius))
+  const first = (count: number, size: number) => Math.max(0, Math.floor(count / 2 - radius / size) - 1)
+  for (let row = first(height, pixelHeight); row < height - first(height, pixelHeight); row++) {
+    for (let column = first(width, pixelWidth); column < width - first(width, pixelWidth); column++) {
+      let sum = 0
+      for (let j = 0; j < samples; j++) {
+        const y = (row + (j + 0.5) / samples - height / 2) * pixelHeight
+        for (let i = 0; i < samples; i++) {
+          const x = (column + (i + 0.5) / samples - width / 2) * pixelWidth
+          const m = 1 - (x * x + y * y) / (radius * radius)
+          if (m > 0) sum += (1 - u + u * Math.sqrt(m)) * dimming[nearest(y) * DEPTH_GRID + nearest(x)]
+        }
+      }
+      out[row * width + column] += (central * sum) / (samples * samples)
+    }
+  }
+}

@@ -1,0 +1,12 @@
+/** Something that has an intensity at every point (cm) of the picture. */
+export interface IntensityField {
+  /** Writes RAY_VALUES numbers into `out`; the deviations of the groups, for the error, only when `withGroups`. */
+  sample(x: number, y: number, out: Float64Array, withGroups: boolean): void
+  /** Radii of the cells' walls, cm, increasing from the innermost dust; beyond the last the picture is empty. */
+  radii: Float64Array
+  /** Radius of the innermost dust, cm. */
+  innermost: number
+  outermost: number
+  /** Axis ratio of the ellipses that circles about the axis of the cells make in the picture, from 0.1 to 1. */
+  flattening: number
+}

@@ -1,0 +1,155 @@
+import { standardError } from '../math/stats.js'
+import type { IntensityField } from './field.js'
+import { integratePatch, type Patch } from './patch.js'
+import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray.js'
+import { ringsBetween, wallsBetween } from './rings.js'
+
+/** A pixel seen from the centre under more than this angle, rad, is integrated in polar coordinates. */
+const WIDE = 0.3
+/** So is one that more projected walls of cells than this run through: they stand so close only at a rim. */
+const CROWDED = 5
+/** Largest angle of a first division, rad. */
+const FAN = 0.55
+/** Squares, whose errors differ in sign from pixel to pixel, may be this many times less accurate than patches. */
+const LEEWAY = 3
+/** Nor need they be better than this share of the photon noise. */
+const NOISE_SHARE = 0.3
+/** Quarters that differ by this many tolerances are divided even where their mean seems right. */
+const SPREAD = 30
+const DEEPEST = 10
+
+/**
+ * Means of an intensity field over pixels. Where cells are smaller than the pixel or the pixel lies near the centre, it is a
+ * patch in polar coordinates with rings at the projected walls, so that a rim much smaller than a pixel is still integrated.
+ * Elsewhere it is the mean of four rays through the centres of its quarters, divided where they disagree with the ray through
+ * its middle by more than `tolerance` of the pixel, or differ much among themselves.
+ */
+export class PixelIntegrator {
+  /** Mean of the last pixel: RAY_VALUES numbers. */
+  readonly mean = new Float64Array(RAY_VALUES)
+  /** Estimated error of that mean from the placing of rays. */
+  error = 0
+  private readonly middle = new Float64Array(RAY_VALUES)
+  private readonly ray = new Float64Array(RAY_VALUES)
+  /** Light of the four quarters at each level. */
+  private readonly lights = new Float64Array(4 * (DEEPEST + 1))
+  private allowed = 0
+
+  /** `floor`: intensity below which no accuracy is asked for. */
+  constructor(
+    private readonly field: IntensityField,
+    private readonly tolerance: number,
+    private readonly floor: number
+  ) {}
+
+  /** Integrates over the rectangle about (x, y), cm. */
+  integrate(x: number, y: number, width: number, height: number): void {
+    const { field, mean, tolerance } = this
+    mean.fill(0)
+    this.error = 0
+    const nearX = Math.max(0, Math.abs(x) - 0.5 * width)
+    const nearY = Math.max(0, Math.abs(y) - 0.5 * height)
+    if (nearX * nearX + nearY * nearY >= field.outermost ** 2) return
+    const patch = this.patchOf(x, y, width, height)
+    if (patch) {
+      const area = width * height
+      const { value, error } = integratePatch(field, patch, tolerance, this.floor * area)
+      for (let k = 0; k < RAY_VALUES; k++) mean[k] = value[k] / area
+      this.error = error / area
+      return
+    }
+    const { middle } = this
+    field.sample(x, y, middle, true)
+    const light = middle[EMITTED] + middle[SCATTERED]
+    const noise = standardError(middle.subarray(FIRST_GROUP, RAY_VALUES))
+    this.allowed = Math.max(LEEWAY * tolerance * Math.max(this.floor, light), NOISE_SHARE * noise)
+    this.divide(x, y, width, height, light, 1, 0)
+    // The photon noise of the middle ray, in proportion, stands for the pixel.
+    const ratio = light > 0 ? (mean[EMITTED] + mean[SCATTERED]) / light : 1
+    for (let k = FIRST_GROUP; k < RAY_VALUES; k++) mean[k] = ratio * middle[k]
+  }
+
+  /** The pixel as a patch, or undefined where plain squares do. */
+  private patchOf(x: number, y: number, width: number, height: number): Patch | undefined {
+    const { field } = this
+    const left = x - 0.5 * width
+    const right = x + 0.5 * width
+    const low = (y - 0.5 * height)
+    const high = (y + 0.5 * height)
+    const nearest = Math.hypot(Math.max(0, left, -right), Math.max(0, low, -high))
+    const farthest = Math.hypot(Math.max(-left, right), Math.max(-low, high))
+    const wide = Math.max(right - left, high - low) > WIDE * nearest
+    if (!wide && wallsBetween(field, nearest, farthest) <= CROWDED) return undefined
+    return {
+      angles: anglesOf(left, right, low, high),
+      rings: ringsBetween(field, nearest, farthest),
+      outline: (cos, sin, out) => {
+        // Where the ray from the centre is inside both strips of the rectangle.
+        const x1 = cos === 0 ? (left <= 0 && right >= 0 ? -Infinity : Infinity) : left / cos
+        const x2 = cos === 0 ? Infinity : right / cos
+        const y1 = sin === 0 ? (low <= 0 && high >= 0 ? -Infinity : Infinity) : low / sin
+        const y2 = sin === 0 ? Infinity : high / sin
+        out[0] = Math.max(0, Math.min(x1, x2), Math.min(y1, y2))
+        out[1] = Math.min(Math.max(x1, x2), Math.max(y1, y2))
+      }
+    }
+  }
+
+  private divide(x: number, y: number, width: number, height: number, middle: number, share: number, level: number): void {
+    const { field, mean, tolerance, ray, lights } = this
+    let emitted = 0
+    let scattered = 0
+    let low = Number.POSITIVE_INFINITY
+    let high = Number.NEGATIVE_INFINITY
+    for (let q = 0; q < 4; q++) {
+      field.sample(x + (q % 2 === 0 ? -0.25 : 0.25) * width, y + (q < 2 ? -0.25 : 0.25) * height, ray, false)
+      emitted += ray[EMITTED]
+      scattered += ray[SCATTERED]
+      const light = ray[EMITTED] + ray[SCATTERED]
+      lights[4 * level + q] = light
+      if (light < low) low = light
+      if (light > high) high = light
+    }
+    const light = 0.25 * (emitted + scattered)
+    const error = Math.abs(light - middle) * share
+    const allowed = Math.max(this.allowed, LEEWAY * tolerance * Math.max(mean[EMITTED] + mean[SCATTERED], light * share))
+    if (level < DEEPEST && (error > allowed * Math.sqrt(share) || (high - low) * share > SPREAD * allowed)) {
+      for (let q = 0; q < 4; q++) {
+        const cx = x + (q % 2 === 0 ? -0.25 : 0.25) * width
+        const cy = y + (q < 2 ? -0.25 : 0.25) * height
+        this.divide(cx, cy, 0.5 * width, 0.5 * height, lights[4 * level + q], 0.25 * share, level + 1)
+      }
+      return
+    }
+    this.error += error / 3
+    mean[EMITTED] += 0.25 * share * emitted
+    mean[SCATTERED] += 0.25 * share * scattered
+  }
+}
+
+/** Angles under which the corners of a rectangle are seen from the origin, with further ones so that none are far apart. */
+function anglesOf(left: number, right: number, low: number, high: number): number[] {
+  const corners = [
+    [left, low],
+    [right, low],
+    [right, high],
+    [left, high]
+  ]
+  const around = left < 0 && right > 0 && low < 0 && high > 0
+  const middle = around ? 0 : Math.atan2(low + high, left + right)
+  const turned = corners
+    .filter(([a, b]) => a !== 0 || b !== 0)
+    .map(([a, b]) => {
+      const angle = Math.atan2(b, a) - middle
+      return angle > Math.PI ? angle - 2 * Math.PI : angle <= -Math.PI ? angle + 2 * Math.PI : angle
+    })
+    .sort((a, b) => a - b)
+  if (around) turned.push(turned[0] + 2 * Math.PI)
+  const angles = [turned[0]]
+  for (let i = 1; i < turned.length; i++) {
+    const span = turned[i] - turned[i - 1]
+    const parts = Math.ceil(span / FAN)
+    for (let k = 1; k <= parts; k++) angles.push(turned[i - 1] + (k * span) / parts)
+  }
+  return angles.map((angle) => angle + middle)
+}

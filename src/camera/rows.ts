@@ -1,0 +1,50 @@
+import { standardError } from '../math/stats.js'
+import type { PixelFrame } from './direct.js'
+import type { IntensityField } from './field.js'
+import { PixelIntegrator } from './pixel.js'
+import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray.js'
+
+/** Rows of a picture without direct starlight; erg/s/cm2/Hz/sr, width x number of rows, lowest row first. */
+export interface PictureRows {
+  emitted: Float64Array
+  scattered: Float64Array
+  sigma: Float64Array
+  /** Sum over the pixels of the estimated error of placing the rays. */
+  placingError: number
+}
+
+/**
+ * Integrates the pixels of rows `from` up to, not including, `to`. `tolerance` and `floor`: see PixelIntegrator. `mirrored`: the
+ * right half of the picture equals the left one, and only one is traced.
+ */
+export function pictureRows(
+  field: IntensityField,
+  frame: PixelFrame,
+  from: number,
+  to: number,
+  tolerance: number,
+  floor: number,
+  mirrored: boolean
+): PictureRows {
+  const { width, height, pixelWidth, pixelHeight } = frame
+  const count = width * (to - from)
+  const rows = { emitted: new Float64Array(count), scattered: new Float64Array(count), sigma: new Float64Array(count), placingError: 0 }
+  const integrator = new PixelIntegrator(field, tolerance, floor)
+  const traced = mirrored ? Math.ceil(width / 2) : width
+  for (let row = from; row < to; row++) {
+    const y = (row + 0.5 - height / 2) * pixelHeight
+    const start = (row - from) * width
+    for (let column = 0; column < traced; column++) {
+      integrator.integrate((column + 0.5 - width / 2) * pixelWidth, y, pixelWidth, pixelHeight)
+      const sigma = standardError(integrator.mean.subarray(FIRST_GROUP, RAY_VALUES))
+      const twin = width - 1 - column
+      for (const at of mirrored && twin !== column ? [start + column, start + twin] : [start + column]) {
+        rows.emitted[at] = integrator.mean[EMITTED]
+        rows.scattered[at] = integrator.mean[SCATTERED]
+        rows.sigma[at] = sigma
+        rows.placingError += integrator.error
+      }
+    }
+  }
+  return rows
+}

@@ -1,0 +1,31 @@
+import type { CameraSpec, SpectrumSpec } from '../scene/types.js'
+
+/**
+ * Specific-intensity images of one camera, cgs (erg/s/cm2/Hz/sr).
+ * Every array holds wavelengths x height x width values: index (k * height + y) * width + x, with x to the right (west)
+ * and y up (north), so index 0 is the lower left corner of the first wavelength.
+ */
+export interface CameraImages {
+  camera: CameraSpec
+  width: number
+  height: number
+  total: Float64Array
+  /** 1 sigma of the Monte Carlo part. */
+  sigma: Float64Array
+  direct: Float64Array
+  emitted: Float64Array
+  scattered: Float64Array
+  /** For each wavelength: the estimated relative error of placing the rays, weighted by flux. */
+  samplingError: number[]
+}
+
+/** Flux densities in an aperture, cgs (erg/s/cm2/Hz); one value a wavelength. */
+export interface ApertureSpectrum {
+  spectrum: SpectrumSpec
+  total: Float64Array
+  sigma: Float64Array
+  direct: Float64Array
+  emitted: Float64Array
+  scattered: Float64Array
+  samplingError: number[]
+}

@@ -1,0 +1,49 @@
+import { OutputError } from '../run/output-error.js'
+import { Stopped } from '../run/progress.js'
+import { SceneError, type SceneProblem } from '../scene/error.js'
+import { type ExitCode, exitCode } from './exit-code.js'
+
+/** The command line is wrong. */
+export class UsageError extends Error {
+  override name = 'UsageError'
+}
+
+/** What went wrong, for people and for programs. */
+export interface Failure {
+  code: ExitCode
+  kind: 'scene' | 'command-line' | 'output' | 'stopped' | 'defect'
+  message: string
+  problems?: SceneProblem[]
+}
+
+export function failureOf(error: unknown): Failure {
+  if (error instanceof SceneError) {
+    return { code: exitCode.wrongInput, kind: 'scene', message: error.message, problems: error.problems }
+  }
+  if (error instanceof UsageError) {
+    return {
+      code: exitCode.wrongInput,
+      kind: 'command-line',
+      message: `${error.message}\nmotelight --help tells what is accepted.`
+    }
+  }
+  if (error instanceof OutputError) return { code: exitCode.wrongInput, kind: 'output', message: error.message }
+  if (error instanceof Stopped) {
+    return { code: exitCode.stopped, kind: 'stopped', message: 'Stopped before the end; nothing was written.' }
+  }
+  return { code: exitCode.defect, kind: 'defect', message: defectMessage(error) }
+}
+
+function defectMessage(error: unknown): string {
+  const { message, stack } = error instanceof Error ? error : new Error(String(error))
+  const advice = 'This is a defect of motelight: please report it together with the scene.'
+  const detail = process.env.MOTELIGHT_DEBUG ? stack : 'MOTELIGHT_DEBUG=1 shows where it happened.'
+  return `${message}\n${advice}\n${detail}`
+}
+
+/** Tells a failure: as one JSON document on stdout, or in words on stderr. */
+export function reportFailure({ code, kind, message, problems }: Failure, json: boolean): void {
+  if (json) process.stdout.write(`${JSON.stringify({ error: { kind, message, ...(problems && { problems }) } }, null, 2)}\n`)
+  else process.stderr.write(`${message}\n`)
+  process.exitCode = code
+}

@@ -1,0 +1,44 @@
+#!/usr/bin/env node
+import yargs from 'yargs'
+import { hideBin } from 'yargs/helpers'
+import { version } from '../output/version.js'
+import { check } from './check.js'
+import { failureOf, reportFailure, UsageError } from './failure.js'
+import { run } from './run.js'
+import { schema } from './schema.js'
+
+// A reader such as `head` that closes our output early is no error.
+process.stdout.on('error', (error: NodeJS.ErrnoException) => {
+  if (error.code === 'EPIPE') process.exit()
+  throw error
+})
+
+const words = hideBin(process.argv)
+try {
+  await yargs(words)
+    .scriptName('motelight')
+    .usage('$0 <command>\n\nImages and spectra of dusty sources from a scene file.')
+    .command(check)
+    .command(run)
+    .command(schema)
+    .demandCommand(1, 'Which command? There are check, run and schema.')
+    .strict()
+    .version(version)
+    .help()
+    .locale('en')
+    .parserConfiguration({ 'duplicate-arguments-array': false, 'boolean-negation': false })
+    .wrap(Math.min(100, process.stdout.columns ?? 100))
+    .epilogue(
+      'Exit codes: 0 done, 2 the scene or the command line is wrong, 3 stopped early, 4 done but the precision asked for was not reached.'
+    )
+    .exitProcess(false)
+    .fail((message, error) => {
+      if (error && error.name !== 'YError') throw error
+      throw new UsageError(
+        message?.startsWith('Not enough non-option arguments') ? 'The scene file is missing.' : (message ?? error.message)
+      )
+    })
+    .parseAsync()
+} catch (error) {
+  reportFailure(failureOf(error), words.includes('--json'))
+}

@@ -1,0 +1,105 @@
+import { makeOpacityLaw } from '../dust/opacity-law.js'
+import type { DustLayer } from '../grid/dust-layer.js'
+import { cellCount, cellVolumes, type SphericalWalls } from '../grid/geometry.js'
+import { placeWalls } from '../grid/place-walls.js'
+import { allocateShared } from '../math/allocate.js'
+import { SceneError } from '../scene/error.js'
+import type { DustSpec, Scene } from '../scene/types.js'
+import { AmountError, amountScale } from '../shapes/amount-scale.js'
+import { makeShape } from '../shapes/make-shape.js'
+import type { Shape } from '../shapes/shape.js'
+import { starSpectrum } from '../sources/star.js'
+import { cellDensities } from './density.js'
+import type { DustComponent, Model } from './model.js'
+import { mattering } from './wavelengths.js'
+
+/** Turns a scene into cells filled with dust. Throws SceneError where the scene asks for what cannot be. */
+export function buildModel(scene: Scene): Model {
+  const stars = scene.sources.map((spec) => ({ spec, spectrum: starSpectrum(spec) }))
+  const parts = scene.dust.map((spec, index) => {
+    const law = makeOpacityLaw(scene.opacities[spec.opacity])
+    const shape = makeShape(spec.shape)
+    return { spec, law, shape, scale: scaleOf(scene, spec, index, shape, law.absorption, law.scattering) }
+  })
+  const dimensions = chooseDimensions(
+    scene,
+    parts.map(({ shape }) => shape)
+  )
+  const wavelengths = mattering(scene, stars)
+  const layers: DustLayer[] = parts.map(({ shape, scale, law }) => ({
+    shape,
+    scale,
+    extinction: Math.max(...wavelengths.map((wavelength) => law.absorption(wavelength) + law.scattering(wavelength)))
+  }))
+  const walls = shareWalls(layers.length > 0 ? placeWalls({ ...scene.grid, layers, dimensions }) : emptyWalls(scene))
+  const cells = cellCount(walls)
+  const warnings: string[] = []
+  const components: DustComponent[] = parts.map(({ spec, law, shape, scale }) => {
+    const { density, massRatio } = cellDensities(walls, shape, scale)
+    if (Math.abs(massRatio - 1) >= 0.005) {
+      warnings.push(
+        `dust ${spec.name}: the cells do not resolve its shape (their mass is ${massRatio.toFixed(3)} of what it should be); ask for more cells under grid`
+      )
+    }
+    return { spec, law, shape, mass: scale * shape.totalMass, density }
+  })
+  return {
+    scene,
+    dimensions,
+    reason: reasonFor(scene, dimensions),
+    walls,
+    cells,
+    volume: cellVolumes(walls, new Float64Array(allocateShared(8 * cells))),
+    components,
+    stars,
+    warnings
+  }
+}
+
+function scaleOf(
+  scene: Scene,
+  spec: DustSpec,
+  index: number,
+  shape: Shape,
+  absorption: (wavelength: number) => number,
+  scattering: (wavelength: number) => number
+): number {
+  try {
+    return amountScale(shape, spec.amount, (wavelength) => absorption(wavelength) + scattering(wavelength))
+  } catch (error) {
+    if (!(error instanceof AmountError)) throw error
+    const path = ['dust', index, 'amount', error.key]
+    throw new SceneError([{ location: scene.locate(path), key: path.join('.'), message: error.message }])
+  }
+}
+
+function chooseDimensions(scene: Scene, shapes: Shape[]): 1 | 2 | 3 {
+  if (scene.grid.azimuthal > 1) return 3
+  return shapes.every(({ symmetry }) => symmetry === 'spherical') && scene.grid.polar <= 1 ? 1 : 2
+}
+
+function reasonFor(scene: Scene, dimensions: 1 | 2 | 3): string {
+  if (dimensions === 3) return 'three-dimensional spherical cells, because grid.azimuthal asks for them'
+  if (dimensions === 1) return 'one-dimensional spherical cells, because the scene has spherical symmetry about the origin'
+  if (scene.grid.polar > 1) return 'two-dimensional spherical cells, because grid.polar asks for them'
+  return 'two-dimensional spherical cells, because the scene is symmetric about z'
+}
+
+/** A scene without dust: one empty cell about the stars. */
+function emptyWalls(scene: Scene): SphericalWalls {
+  const largest = Math.max(1, ...scene.sources.map(({ radius }) => radius ?? 0))
+  return {
+    r: Float64Array.of(0, 2 * largest, 4 * largest),
+    cosTheta: Float64Array.of(1, -1),
+    phi: Float64Array.of(0, 2 * Math.PI)
+  }
+}
+
+function shareWalls({ r, cosTheta, phi }: SphericalWalls): SphericalWalls {
+  const share = (values: Float64Array) => {
+    const copy = new Float64Array(allocateShared(8 * values.length))
+    copy.set(values)
+    return copy
+  }
+  return { r: share(r), cosTheta: share(cosTheta), phi: share(phi) }
+}

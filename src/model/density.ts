@@ -1,0 +1,40 @@
+import { cellCount, cellVolumes, type SphericalWalls } from '../grid/geometry.js'
+import type { Shape } from '../shapes/shape.js'
+import { cellMean } from './cell-mean.js'
+
+export interface CellDensities {
+  /** Mean mass density of every cell, g/cm3. */
+  density: Float64Array
+  /** Mass found in the cells before any correction, divided by the mass of the shape. */
+  massRatio: number
+}
+
+/** Deviations of the mass up to this are corrected by scaling all cells. */
+const CORRECTED = 0.02
+
+/**
+ * Mean density of a component in every cell. `scale` is g/cm3 for a relative density of 1. When the mass in the cells
+ * differs from the mass of the shape by less than 2 % the densities are scaled to make it exact; otherwise they are left
+ * as they are and `massRatio` tells.
+ */
+export function cellDensities(walls: SphericalWalls, shape: Shape, scale: number): CellDensities {
+  const { r, cosTheta, phi } = walls
+  const nt = cosTheta.length - 1
+  const np = phi.length - 1
+  const volume = cellVolumes(walls, new Float64Array(cellCount(walls)))
+  const density = new Float64Array(volume.length)
+  density[0] = cellMean(shape, 0, r[1], -1, 1)
+  let cell = 1
+  for (let ir = 1; ir < r.length - 1; ir++) {
+    for (let it = 0; it < nt; it++) {
+      density.fill(cellMean(shape, r[ir], r[ir + 1], cosTheta[it + 1], cosTheta[it]), cell, cell + np)
+      cell += np
+    }
+  }
+  let mass = 0
+  for (let i = 0; i < density.length; i++) mass += density[i] * volume[i]
+  const massRatio = mass / shape.totalMass
+  const factor = Math.abs(massRatio - 1) < CORRECTED ? scale / massRatio : scale
+  for (let i = 0; i < density.length; i++) density[i] *= factor
+  return { density, massRatio }
+}

@@ -1,0 +1,31 @@
+import type { OpacityLaw } from '../dust/opacity-law.js'
+import type { SphericalWalls } from '../grid/geometry.js'
+import type { DustSpec, Scene, StarSpec } from '../scene/types.js'
+import type { Shape } from '../shapes/shape.js'
+import type { StarSpectrum } from '../sources/star.js'
+
+/** A scene turned into cells: everything that transport needs and that does not change during a run. */
+export interface Model {
+  scene: Scene
+  dimensions: 1 | 2 | 3
+  /** Why these cells, in a sentence. */
+  reason: string
+  walls: SphericalWalls
+  cells: number
+  /** cm3 */
+  volume: Float64Array
+  components: DustComponent[]
+  stars: { spec: StarSpec; spectrum: StarSpectrum }[]
+  /** What the user should know before trusting the result. */
+  warnings: string[]
+}
+
+export interface DustComponent {
+  spec: DustSpec
+  law: OpacityLaw
+  shape: Shape
+  /** g */
+  mass: number
+  /** g/cm3, one value a cell. */
+  density: Float64Array
+}

@@ -1,0 +1,59 @@
+import type { CameraImages } from '../../camera/types.js'
+import type { Scene } from '../../scene/types.js'
+import { intensityUnit } from '../../units/intensity.js'
+import { inDegrees } from '../in-degrees.js'
+import { pixelContext } from '../pixel-context.js'
+import { card, commentCard, realCard } from './card.js'
+import { joined } from './hdu.js'
+import { imageHdu } from './image.js'
+import { originCards } from './origin-cards.js'
+import { wavelengthTableHdu, wcsCards } from './wcs.js'
+
+type Plane = 'total' | 'sigma' | 'direct' | 'emitted' | 'scattered'
+
+const planes: [Plane, string][] = [
+  ['total', 'total specific intensity'],
+  ['sigma', '1 sigma of the Monte Carlo part'],
+  ['direct', 'light straight from the sources'],
+  ['emitted', 'light emitted by dust and not scattered'],
+  ['scattered', 'light scattered by dust']
+]
+
+/**
+ * The FITS file of a camera in the camera's unit, axes x (west), y (north), wavelength. The primary HDU is the total;
+ * image extensions SIGMA, DIRECT, EMITTED, SCATTERED and the table of wavelengths follow.
+ */
+export function cameraFits(images: CameraImages, scene: Scene): Uint8Array {
+  const { width, height, camera } = images
+  const axes = [width, height, camera.wavelengths.length]
+  const common = [card('BUNIT', intensityUnit(camera.unit).fits), ...wcsCards(images, scene)]
+  const parts = planes.map(([plane, meaning], i) => {
+    const name = [card('EXTNAME', plane.toUpperCase()), commentCard(`This image: ${meaning}.`)]
+    const origin = i === 0 ? [...originCards(scene), ...viewCards(images)] : []
+    return imageHdu(i === 0 ? 'primary' : 'extension', axes, planeInUnit(images, plane), [...name, ...common, ...origin])
+  })
+  return joined([...parts, wavelengthTableHdu(camera.wavelengths)])
+}
+
+function viewCards({ camera }: CameraImages): string[] {
+  return [
+    card('CAMERA', camera.name, 'name of the camera'),
+    realCard('INCLIN', inDegrees(camera.view.inclination), '[deg] z axis to the line of sight'),
+    realCard('AZIMUTH', inDegrees(camera.view.azimuth), '[deg] turn of the scene about z'),
+    realCard('ROLL', inDegrees(camera.view.roll), '[deg] projected z axis, east of north')
+  ]
+}
+
+function planeInUnit(images: CameraImages, plane: Plane): Float64Array {
+  const unit = intensityUnit(images.camera.unit)
+  const pixels = images.width * images.height
+  const values = new Float64Array(images.total.length)
+  for (let k = 0; k < images.camera.wavelengths.length; k++) {
+    const context = pixelContext(images, k)
+    for (let i = k * pixels; i < (k + 1) * pixels; i++) {
+      values[i] =
+        plane === 'sigma' ? unit.sigmaFromCgs(images.total[i], images.sigma[i], context) : unit.fromCgs(images[plane][i], context)
+    }
+  }
+  return values
+}

@@ -1,0 +1,51 @@
+import type { CameraImages } from '../../camera/types.js'
+import type { Scene } from '../../scene/types.js'
+import { DEGREE } from '../../units/angles.js'
+import { card, commentCard, realCard } from './card.js'
+import { type FitsColumn, tableHdu } from './table.js'
+
+const wavelengthTable = 'WAVELENGTH'
+
+/**
+ * World coordinates of an image cube. Celestial axes: gnomonic projection about the image centre, north up and east to
+ * the left (Calabretta & Greisen 2002, A&A 395, 1077). Third axis: vacuum wavelength looked up in a table
+ * (Greisen et al. 2006, A&A 446, 747, section 6), which `wavelengthTableHdu` writes.
+ */
+export function wcsCards(images: CameraImages, scene: Scene): string[] {
+  const { width, height, camera } = images
+  const [across, up] = camera.field
+  return [
+    card('WCSAXES', 3),
+    card('CTYPE1', 'RA---TAN', 'right ascension, gnomonic'),
+    card('CTYPE2', 'DEC--TAN', 'declination, gnomonic'),
+    card('CTYPE3', 'WAVE-TAB', 'vacuum wavelength, by table'),
+    card('CUNIT1', 'deg'),
+    card('CUNIT2', 'deg'),
+    card('CUNIT3', 'm'),
+    realCard('CRPIX1', (width + 1) / 2, 'centre of the image'),
+    realCard('CRPIX2', (height + 1) / 2, 'centre of the image'),
+    realCard('CRPIX3', 1),
+    realCard('CRVAL1', scene.sky?.raDeg ?? 0),
+    realCard('CRVAL2', scene.sky?.decDeg ?? 0),
+    realCard('CRVAL3', 1, 'row of the wavelength table'),
+    realCard('CDELT1', -across / width / DEGREE, 'east is to the left'),
+    realCard('CDELT2', up / height / DEGREE, 'north is up'),
+    realCard('CDELT3', 1),
+    card('PS3_0', wavelengthTable, 'extension with the wavelengths'),
+    card('PS3_1', wavelengthTable, 'its column'),
+    card('RADESYS', 'ICRS'),
+    ...(scene.sky ? [] : [commentCard('The scene gives no sky position: CRVAL1 and CRVAL2 are placeholders.')])
+  ]
+}
+
+/** The extension that the third axis refers to: one row holding all wavelengths (given in cm), in m. */
+export function wavelengthTableHdu(wavelengths: number[]): Uint8Array {
+  const column: FitsColumn = {
+    name: wavelengthTable,
+    unit: 'm',
+    values: Float64Array.from(wavelengths, (wavelength) => wavelength / 100),
+    repeat: wavelengths.length,
+    dimensions: [1, wavelengths.length]
+  }
+  return tableHdu(wavelengthTable, [column])
+}

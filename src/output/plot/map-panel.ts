@@ -1,0 +1,77 @@
+import { AU } from '../../units/constants.js'
+import { axis } from '../draw/axis.js'
+import type { Canvas } from '../draw/canvas.js'
+import { colourBar } from '../draw/colour-bar.js'
+import type { ColourMap } from '../draw/colours.js'
+import { outline, text } from '../draw/svg.js'
+import { linearTicks, logTicks } from '../draw/ticks.js'
+import { type MeridianView, meridianCells } from './meridian.js'
+import type { MeridionalStructure } from './structure.js'
+
+/** Size of a panel, and the room it takes with its axes and colour bar. */
+export const panel = { width: 380, height: 270, leftRoom: 76, rightRoom: 130, pitch: 330 }
+
+/** A map of positive values; NaN where there is nothing to show. */
+export interface MapContent {
+  values: Float64Array
+  map: ColourMap
+  title: string
+}
+
+/** Paints one map with its upper left corner at (left, top), colours logarithmic, and returns its axes and bar. */
+export function mapPanel(
+  canvas: Canvas,
+  structure: MeridionalStructure,
+  view: MeridianView,
+  { values, map, title }: MapContent,
+  [left, top]: [number, number]
+): string[] {
+  const { width, height } = panel
+  const axes = [outline(left, top, width, height), ...meridianAxes(view, left, top)]
+  const [low, high] = positiveRange(values)
+  if (!(high > 0)) return [...axes, text(left + width / 2, top + height / 2, 'does not emit', { fill: '#777' })]
+  const floor = low < high ? low : high / 2
+  const fraction = (value: number): number => Math.log(value / floor) / Math.log(high / floor)
+  const cells = meridianCells(structure, view, width, height)
+  canvas.paint(
+    { left, top, width },
+    Float64Array.from(cells, (cell) => (cell < 0 ? Number.NaN : fraction(values[cell]))),
+    map
+  )
+  return [
+    ...axes,
+    ...colourBar(canvas, { left: left + width + 14, top, height, map, ticks: logTicks(floor, high, 6), title, fraction })
+  ]
+}
+
+function meridianAxes({ inner, outer, height }: MeridianView, left: number, top: number): string[] {
+  const [low, high] = [inner / AU, outer / AU]
+  return [
+    ...axis({
+      side: 'bottom',
+      at: top + panel.height,
+      middle: left + panel.width / 2,
+      position: (au) => left + (panel.width * Math.log(au / low)) / Math.log(high / low),
+      ticks: logTicks(low, high, 7),
+      title: 'R (au)'
+    }),
+    ...axis({
+      side: 'left',
+      at: left,
+      middle: top + panel.height / 2,
+      position: (slope) => top + (panel.height * (1 - slope / height)) / 2,
+      ticks: linearTicks(-height, height, 6),
+      title: 'z/R'
+    })
+  ]
+}
+
+function positiveRange(values: Float64Array): [number, number] {
+  let [low, high] = [Number.POSITIVE_INFINITY, 0]
+  for (const value of values) {
+    if (!(value > 0)) continue
+    if (value < low) low = value
+    if (value > high) high = value
+  }
+  return [low, high]
+}

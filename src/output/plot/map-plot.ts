@@ -1,0 +1,51 @@
+import { Canvas } from '../draw/canvas.js'
+import { inferno, viridis } from '../draw/colours.js'
+import { drawing, fitted, text } from '../draw/svg.js'
+import { mapPanel, panel } from './map-panel.js'
+import { meridianView } from './meridian.js'
+import type { MeridionalComponent, MeridionalStructure } from './structure.js'
+
+const margin = 16
+const headHeight = 70
+const footHeight = 30
+const decadesOfDensity = 10
+const titleStyle = { size: 17, anchor: 'start', bold: true } as const
+const nameStyle = { size: 14, bold: true } as const
+
+/**
+ * Maps (PNG) of density, above, and temperature, below, of cells symmetric about z, one column a component, against
+ * cylindrical radius R (logarithmic) and z/R, so that the inner rim and the outer edge are seen at once. White: no dust,
+ * or less than 1e-10 of the densest.
+ */
+export function mapPlot(structure: MeridionalStructure, title: string): Uint8Array {
+  const columnWidth = panel.leftRoom + panel.width + panel.rightRoom
+  const canvas = new Canvas(columnWidth * structure.components.length + margin, headHeight + 2 * panel.pitch + footHeight)
+  const columns = structure.components.flatMap((component, i) =>
+    column(canvas, structure, component, i * columnWidth + panel.leftRoom)
+  )
+  const note = `white: no dust, or less than 10⁻¹⁰ of the densest`
+  canvas.overlay(
+    drawing(canvas.width, canvas.height, [
+      text(margin, 28, fitted(title, canvas.width - 2 * margin, titleStyle), titleStyle),
+      ...columns,
+      text(margin, canvas.height - margin, note, { size: 12, anchor: 'start', fill: '#555' })
+    ])
+  )
+  return canvas.encode()
+}
+
+function column(canvas: Canvas, structure: MeridionalStructure, component: MeridionalComponent, left: number): string[] {
+  const { name, density, temperature } = component
+  const least = density.reduce((a, b) => Math.max(a, b), 0) / 10 ** decadesOfDensity
+  const dusty = (cell: number): boolean => density[cell] > least
+  const view = meridianView(structure, dusty)
+  const kept = (values: Float64Array | undefined): Float64Array =>
+    density.map((_, cell) => (values && dusty(cell) ? values[cell] : Number.NaN))
+  const densities = { values: kept(density), map: viridis, title: 'density (g/cm³)' }
+  const temperatures = { values: kept(temperature), map: inferno, title: 'temperature (K)' }
+  return [
+    text(left + panel.width / 2, headHeight - 12, fitted(name, panel.width, nameStyle), nameStyle),
+    ...mapPanel(canvas, structure, view, densities, [left, headHeight]),
+    ...mapPanel(canvas, structure, view, temperatures, [left, headHeight + panel.pitch])
+  ]
+}

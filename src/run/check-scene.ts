@@ -1,0 +1,104 @@
+import { buildModel } from '../model/build-model.js'
+import type { Model } from '../model/model.js'
+import type { Scene } from '../scene/types.js'
+import { AU, PARSEC, SOLAR_LUMINOSITY, SOLAR_MASS, SOLAR_RADIUS } from '../units/constants.js'
+import { type Forecast, forecast } from './forecast.js'
+import { memoryEstimate } from './memory.js'
+import { type OpticalDepths, opticalDepths } from './optical-depths.js'
+import { percent } from './percent.js'
+import { sceneWarnings } from './scene-warnings.js'
+import { runTrial } from './trial.js'
+
+/** What a scene means, before it is run. */
+export interface SceneCheck {
+  title: string
+  scene: string
+  distancePc: number
+  seed: string
+  sources: {
+    name: string
+    extent: 'point' | 'sphere'
+    spectrum: string
+    temperatureK?: number
+    luminosityLsun: number
+    radiusRsun?: number
+  }[]
+  dust: {
+    name: string
+    opacity: string
+    shape: string
+    temperature: string | number
+    innerAu: number
+    outerAu: number
+    massMsun: number
+  }[]
+  opticalDepths: OpticalDepths
+  cells: { count: number; radial: number; polar: number; azimuthal: number; reason: string }
+  memoryBytes: number
+  workers: number
+  precision: number | null
+  forecast: Forecast
+  warnings: string[]
+}
+
+/** Longest trial, s. */
+const TRIAL_SECONDS = 5
+
+/** Works out what a scene means, and tries a little of it to see how long all will take. Throws SceneError. */
+export async function checkScene(scene: Scene, { workers }: { workers: number }): Promise<SceneCheck> {
+  const model = buildModel(scene)
+  const trial = await runTrial(scene, TRIAL_SECONDS)
+  const expected = forecast(model, trial, workers)
+  const { walls, cells, reason } = model
+  return {
+    title: scene.title,
+    scene: scene.file,
+    distancePc: scene.distance / PARSEC,
+    seed: scene.seed,
+    sources: scene.sources.map(({ name, extent, spectrum, temperature, luminosity, radius }) => ({
+      name,
+      extent,
+      spectrum: spectrum.kind === 'table' ? spectrum.table.file : spectrum.kind,
+      ...(temperature !== undefined && { temperatureK: temperature }),
+      luminosityLsun: luminosity / SOLAR_LUMINOSITY,
+      ...(radius !== undefined && { radiusRsun: radius / SOLAR_RADIUS })
+    })),
+    dust: model.components.map(({ spec, shape, mass }) => ({
+      name: spec.name,
+      opacity: spec.opacity,
+      shape: spec.shape.kind,
+      temperature: spec.temperature,
+      innerAu: shape.innerRadius / AU,
+      outerAu: shape.outerRadius / AU,
+      massMsun: mass / SOLAR_MASS
+    })),
+    opticalDepths: opticalDepths(model),
+    cells: {
+      count: cells,
+      radial: walls.r.length - 1,
+      polar: walls.cosTheta.length - 1,
+      azimuthal: walls.phi.length - 1,
+      reason
+    },
+    memoryBytes: memoryEstimate(model, workers),
+    workers,
+    precision: scene.effort.precision,
+    forecast: expected,
+    warnings: [...sceneWarnings(model), ...doubts(model, expected)]
+  }
+}
+
+function doubts({ scene }: Model, { packets, complete }: Forecast): string[] {
+  const { precision } = scene.effort
+  if (precision === null || !complete) return []
+  const short = (what: string, key: string, { needed, most }: { needed: number; most: number }) =>
+    needed > 1.5 * most
+      ? [
+          `effort: the precision of ${percent(precision)} is unlikely to be reached in ${what}: about ${needed.toPrecision(1)} packets would be needed, effort.${key} allows ${most}`
+        ]
+      : []
+  return [
+    ...short('the light of warm dust', 'equilibrium', packets.dust),
+    ...short('scattered light, at some wavelengths', 'cameras', packets.light)
+  ]
+}

@@ -1,0 +1,107 @@
+import type { CameraImages } from '../camera/types.js'
+import type { Model } from '../model/model.js'
+import { pixelContext } from '../output/pixel-context.js'
+import { spectrumInUnit } from '../output/spectrum-in-unit.js'
+import type { DustTemperatures } from '../solve/temperatures.js'
+import { AU, JANSKY, SOLAR_MASS } from '../units/constants.js'
+import { intensityUnit } from '../units/intensity.js'
+import { cellCentres } from './dust-cells.js'
+import type { RunResult } from './run-scene.js'
+
+/** What a run found, in the units of the scene. */
+export interface Findings {
+  dust: DustFinding[]
+  /** One entry a camera and wavelength. */
+  images: { camera: string; wavelengthUm: number; unit: string; peak: number; peakSigma: number; fluxJy: number }[]
+  /** One entry a spectrum and wavelength. */
+  spectra: { spectrum: string; wavelengthUm: number; unit: string; flux: number; sigma: number }[]
+}
+
+export interface DustFinding {
+  name: string
+  massMsun: number
+  /** Absent for dust that does not emit. */
+  temperatures?: { hottest: CellTemperature; innerEdge: CellTemperature; coldest: CellTemperature }
+}
+
+export interface CellTemperature {
+  kelvin: number
+  sigmaKelvin: number
+  radiusAu: number
+}
+
+/** Sums up a result. */
+export function findings({ model, dust, images, spectra }: RunResult): Findings {
+  return {
+    dust: model.components.map(({ spec: { name }, mass }, c) => {
+      const temperatures = temperaturesOf(model, dust, c)
+      return { name, massMsun: mass / SOLAR_MASS, ...(temperatures && { temperatures }) }
+    }),
+    images: images.flatMap((result) => result.camera.wavelengths.map((wavelength, k) => imageFinding(result, wavelength, k))),
+    spectra: spectra.flatMap((result) => {
+      const { wavelengthUm, total, sigma } = spectrumInUnit(result)
+      const { name, unit } = result.spectrum
+      return wavelengthUm.map((um, k) => ({ spectrum: name, wavelengthUm: um, unit, flux: total[k], sigma: sigma[k] }))
+    })
+  }
+}
+
+/** A wavelength in cm as the number of micrometres that a person would write. */
+export function micrometres(wavelength: number): number {
+  return Number((wavelength * 1e4).toPrecision(15))
+}
+
+/** Cells that together hold less than this share of a component's mass are left out of hottest and coldest. */
+const LEFT_OUT = 1e-3
+
+/** The temperatures of the cells that hold nearly all the mass; undefined for dust that does not emit. */
+function temperaturesOf(model: Model, { temperature, sigma }: DustTemperatures, c: number): DustFinding['temperatures'] {
+  const { components, cells, volume } = model
+  const { density } = components[c]
+  const { r } = cellCentres(model)
+  const at = (cell: number) => c * cells + cell
+  const dusty = Array.from(density.keys()).filter((cell) => density[cell] > 0 && temperature[at(cell)] > 0)
+  if (dusty.length === 0) return undefined
+  const massOf = (cell: number) => density[cell] * volume[cell]
+  const byMass = [...dusty].sort((a, b) => massOf(a) - massOf(b))
+  let spare = LEFT_OUT * dusty.reduce((sum, cell) => sum + massOf(cell), 0)
+  const bulk = byMass.filter((cell) => {
+    spare -= massOf(cell)
+    return spare < 0
+  })
+  const innermost = r[dusty[0]]
+  const best = (from: number[], score: (cell: number) => number) => {
+    const cell = from.reduce((a, b) => (score(b) > score(a) ? b : a))
+    return { kelvin: temperature[at(cell)], sigmaKelvin: sigma[at(cell)], radiusAu: r[cell] / AU }
+  }
+  return {
+    hottest: best(bulk, (cell) => temperature[at(cell)]),
+    innerEdge: best(
+      dusty.filter((cell) => r[cell] === innermost),
+      (cell) => density[cell]
+    ),
+    coldest: best(bulk, (cell) => -temperature[at(cell)])
+  }
+}
+
+/** The brightest pixel with its 1 sigma in the camera's unit, and the flux of the whole field. */
+function imageFinding(result: CameraImages, wavelength: number, k: number): Findings['images'][number] {
+  const { camera, width, height, total, sigma } = result
+  const pixels = width * height
+  let brightest = k * pixels
+  let sum = 0
+  for (let i = k * pixels; i < (k + 1) * pixels; i++) {
+    sum += total[i]
+    if (total[i] > total[brightest]) brightest = i
+  }
+  const unit = intensityUnit(camera.unit)
+  const context = pixelContext(result, k)
+  return {
+    camera: camera.name,
+    wavelengthUm: micrometres(wavelength),
+    unit: camera.unit,
+    peak: unit.fromCgs(total[brightest], context),
+    peakSigma: unit.sigmaFromCgs(total[brightest], sigma[brightest], context),
+    fluxJy: (sum * context.pixelSr) / JANSKY
+  }
+}

@@ -1,0 +1,69 @@
+import { seenFrom } from '../camera/frame.js'
+import { rayMedium } from '../camera/ray-medium.js'
+import type { DustComponent, Model } from '../model/model.js'
+import { observedWavelengths } from '../model/wavelengths.js'
+import { dustLight } from '../solve/dust-light.js'
+import { givenTemperatures } from '../solve/temperatures.js'
+import { micrometres } from './findings.js'
+import { depthTo } from './wavelength.js'
+
+/** Optical depths for extinction. */
+export interface OpticalDepths {
+  /** Of each component along its defining line, at every observed wavelength. */
+  components: { name: string; line: string; wavelengths: ComponentDepth[] }[]
+  /** Of all dust from each observer to the origin. */
+  observers: {
+    kind: 'camera' | 'spectrum'
+    name: string
+    inclinationDeg: number
+    wavelengths: { wavelengthUm: number; opticalDepth: number }[]
+  }[]
+}
+
+export interface ComponentDepth {
+  wavelengthUm: number
+  opticalDepth: number
+  absorption: number
+  scattering: number
+}
+
+const lines = { shell: 'radius', disk: 'midplane radius', ball: 'radius' }
+
+export function opticalDepths(model: Model): OpticalDepths {
+  const { scene, components } = model
+  const wavelengths = observedWavelengths(scene)
+  const dust = givenTemperatures(model)
+  const specs = [
+    ...scene.cameras.map((spec) => ({ kind: 'camera' as const, spec })),
+    ...scene.spectra.map((spec) => ({ kind: 'spectrum' as const, spec }))
+  ]
+  const observers = specs.map(({ kind, spec: { name, view } }) => ({
+    kind,
+    name,
+    inclinationDeg: Number(((view.inclination * 180) / Math.PI).toPrecision(12)),
+    wavelengths: [] as { wavelengthUm: number; opticalDepth: number }[]
+  }))
+  for (const wavelength of wavelengths) {
+    const medium = rayMedium(model, dustLight(model, dust, wavelength), undefined)
+    specs.forEach(({ spec }, i) => {
+      if (!spec.wavelengths.includes(wavelength)) return
+      const opticalDepth = depthTo({ ...medium, starRadius: 0 }, seenFrom(model, spec.view))(0, 0)
+      observers[i].wavelengths.push({ wavelengthUm: micrometres(wavelength), opticalDepth })
+    })
+  }
+  return {
+    components: components.map((component) => ({
+      name: component.spec.name,
+      line: lines[component.spec.shape.kind],
+      wavelengths: wavelengths.map((wavelength) => alongLine(component, wavelength))
+    })),
+    observers
+  }
+}
+
+function alongLine({ mass, shape, law }: DustComponent, wavelength: number): ComponentDepth {
+  const column = (mass / shape.totalMass) * shape.column
+  const absorption = column * law.absorption(wavelength)
+  const scattering = column * law.scattering(wavelength)
+  return { wavelengthUm: micrometres(wavelength), opticalDepth: absorption + scattering, absorption, scattering }
+}

@@ -1,0 +1,86 @@
+import { rm } from 'node:fs/promises'
+import { join } from 'node:path'
+import { writeAtomic } from '../output/atomic.js'
+import { cameraFits } from '../output/fits/camera-fits.js'
+import { cellsFits } from '../output/fits/cells-fits.js'
+import { spectrumPlot } from '../output/plot/spectrum-plot.js'
+import { structurePlot } from '../output/plot/structure-plot.js'
+import { cameraPicture } from '../output/png/camera-picture.js'
+import { spectrumEcsv } from '../output/spectrum-ecsv.js'
+import { wavelengthLabels } from '../output/wavelength-label.js'
+import { sceneYaml } from '../scene/write.js'
+import { cellColumns, dustStructure } from './dust-cells.js'
+import { asOutputError } from './output-error.js'
+import { resultWarnings } from './result-warnings.js'
+import { type RunFolder, recordName } from './run-folder.js'
+import { type RunMaking, type RunRecord, runRecord } from './run-record.js'
+import { type RunResult, stopwatch } from './run-scene.js'
+import { sceneWarnings } from './scene-warnings.js'
+
+/** A file of a run: its path in the folder, and how its bytes are made. */
+interface Product {
+  file: string
+  make: () => Promise<string | Uint8Array> | string | Uint8Array
+}
+
+/**
+ * Writes all files of a run, the record last. While they are written the record says so and lists old and new files, so that
+ * a folder left half-finished is known as one; files of an older run that the new one lacks go at the end. Throws OutputError.
+ */
+export async function writeProducts(result: RunResult, folder: RunFolder, making: RunMaking): Promise<RunRecord> {
+  const time = stopwatch()
+  const products = productsOf(result)
+  const files = [recordName, ...products.map(({ file }) => file)]
+  const warnings = [...sceneWarnings(result.model), ...resultWarnings(result)]
+  const record = (list: string[]) => runRecord(result, making, warnings, { files: list, time: time() })
+  const write = async (file: string, data: string | Uint8Array) => {
+    const path = join(folder.path, file)
+    try {
+      await writeAtomic(path, data)
+    } catch (error) {
+      throw asOutputError(path, error)
+    }
+  }
+  const union = [...new Set([...files, ...folder.oldFiles])]
+  await write(recordName, asText({ ...record(union), state: 'writing' }))
+  for (const { file, make } of products) await write(file, await make())
+  const finished = record(files)
+  await write(recordName, asText(finished))
+  for (const file of folder.oldFiles) if (!files.includes(file)) await rm(join(folder.path, file), { force: true })
+  return finished
+}
+
+function productsOf({ model, dust, images, spectra }: RunResult): Product[] {
+  const { scene } = model
+  return [
+    { file: 'scene.yaml', make: () => sceneYaml(scene) },
+    ...images.flatMap((result) => {
+      const { name, wavelengths } = result.camera
+      return [
+        { file: `images/${name}.fits`, make: () => cameraFits(result, scene) },
+        ...wavelengthLabels(wavelengths).map((label, k) => ({
+          file: `images/${name}-${label}.png`,
+          make: () => cameraPicture(result, k, scene)
+        }))
+      ]
+    }),
+    ...spectra.flatMap((result) => {
+      const path = `spectra/${result.spectrum.name}`
+      return [
+        { file: `${path}.ecsv`, make: () => spectrumEcsv(result, scene) },
+        { file: `${path}.svg`, make: async () => (await spectrumPlot(result, scene)).svg },
+        { file: `${path}.png`, make: async () => (await spectrumPlot(result, scene)).png }
+      ]
+    }),
+    ...(model.components.length > 0
+      ? [
+          { file: 'dust/cells.fits', make: () => cellsFits(cellColumns(model, dust), scene) },
+          { file: 'dust/structure.png', make: () => structurePlot(dustStructure(model, dust), scene.title) }
+        ]
+      : [])
+  ]
+}
+
+function asText(record: RunRecord): string {
+  return `${JSON.stringify(record, null, 2)}\n`
+}

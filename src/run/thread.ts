@@ -1,0 +1,47 @@
+import { integrateAperture } from '../camera/aperture.js'
+import type { PixelFrame } from '../camera/direct.js'
+import { type FieldData, openField } from '../camera/ray-field.js'
+import { pictureRows } from '../camera/rows.js'
+import { stream } from '../math/random.js'
+import type { Detector } from '../transport/detector.js'
+import { tallyFlights, tallyTowards } from '../transport/emissivity.js'
+import { type EquilibriumMedium, propagateEnergy } from '../transport/equilibrium.js'
+import { tallyExits } from '../transport/exit.js'
+import { tallyPeeled } from '../transport/peel.js'
+import type { ScatterMedium } from '../transport/scatter-medium.js'
+import { type Shared, serve } from '../workers/serve.js'
+
+/** What every batch of packets is told. */
+interface Batch {
+  packets: number
+  seed: string
+}
+
+interface RowsRequest {
+  frame: PixelFrame
+  from: number
+  to: number
+  tolerance: number
+  floor: number
+  mirrored: boolean
+}
+
+const scattering = (shared: Shared) => shared('scattering') as ScatterMedium
+const field = (shared: Shared) => openField(shared('field') as FieldData)
+
+/** Runs on every worker thread: the work that a run hands out, by name. */
+serve({
+  equilibrium: ({ packets, seed }: Batch, shared: Shared) =>
+    propagateEnergy(shared('equilibrium') as EquilibriumMedium, packets, stream(seed)),
+  flights: ({ packets, seed }: Batch, shared: Shared) => tallyFlights(scattering(shared), packets, stream(seed)),
+  towards: ({ packets, seed, observers }: Batch & { observers: Float64Array }, shared: Shared) =>
+    tallyTowards(scattering(shared), observers, packets, stream(seed)),
+  peeled: ({ packets, seed, detectors }: Batch & { detectors: Detector[] }, shared: Shared) =>
+    tallyPeeled(scattering(shared), detectors, packets, stream(seed)),
+  exits: ({ packets, seed, detectors }: Batch & { detectors: Detector[] }, shared: Shared) =>
+    tallyExits(scattering(shared), detectors, packets, stream(seed)),
+  rows: ({ frame, from, to, tolerance, floor, mirrored }: RowsRequest, shared: Shared) =>
+    pictureRows(field(shared), frame, from, to, tolerance, floor, mirrored),
+  aperture: ({ radius, tolerance, mirrored }: { radius: number; tolerance: number; mirrored: boolean }, shared: Shared) =>
+    integrateAperture(field(shared), radius, tolerance, mirrored)
+})

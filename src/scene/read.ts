@@ -1,0 +1,100 @@
+import { basename, extname } from 'node:path'
+import { DataFiles } from './data-files.js'
+import { SceneError, type SceneProblem } from './error.js'
+import { issueProblems, locateProblem } from './issue-problems.js'
+import { largestSceneFile } from './limits.js'
+import { linkProblems } from './link-problems.js'
+import { resolveCamera, resolveSpectrum } from './observers.js'
+import { type SoundParts, soundParts } from './parts.js'
+import { readText } from './read-text.js'
+import { sceneSchema } from './schema/scene-schema.js'
+import { parseOpacityTable, parseSpectrumTable } from './tables.js'
+import type { OpacitySpec, Scene, StarSpec } from './types.js'
+import { wording } from './wording.js'
+import { YamlDocument } from './yaml-document.js'
+
+/** Reads a scene file. Throws a SceneError that lists every problem found in it and in the data files it names. */
+export function readScene(file: string, overrides: { seed?: string } = {}): Scene {
+  const content = readText(file, largestSceneFile)
+  if ('reason' in content)
+    throw new SceneError([{ location: { file, line: 1, column: 1 }, key: '', message: `the scene file ${content.reason}` }])
+  const scene = parseScene(content.text, file)
+  return { ...scene, seed: overrides.seed ?? scene.seed }
+}
+
+/** The scene in a text; `file` is its name, and data files are relative to its folder. Throws a SceneError. */
+export function parseScene(text: string, file: string): Scene {
+  const document = new YamlDocument(text, file)
+  const result = sceneSchema.safeParse(document.value, { error: wording, reportInput: true })
+  const parts = soundParts(document.value)
+  const files = new DataFiles(file, document)
+  const sources = parts.sources.map((entry, i) => entry && starSpec(entry, i, files))
+  const opacities = [...parts.opacities].map(([name, entry]) => [name, entry && opacitySpec(entry, name, files)] as const)
+  const { cameras, spectra, problems } = observers(parts, document)
+  problems.push(...issueProblems(result.error?.issues ?? [], document), ...linkProblems(document), ...files.problems)
+  if (!result.success || problems.length > 0) throw new SceneError(problems.sort(byPlace(file)))
+  const { title = basename(file, extname(file)), distance, sky, seed, dust, grid, effort } = result.data
+  return {
+    file,
+    title,
+    distance,
+    ...(sky && { sky }),
+    seed,
+    sources: sources.filter((star) => star !== undefined),
+    opacities: Object.fromEntries(opacities) as Record<string, OpacitySpec>,
+    dust,
+    grid,
+    effort,
+    cameras,
+    spectra,
+    locate: (path) => document.locate(path)
+  }
+}
+
+type Sound<Key extends 'sources' | 'cameras' | 'spectra'> = NonNullable<SoundParts[Key][number]>
+type SoundOpacity = NonNullable<ReturnType<SoundParts['opacities']['get']>>
+
+function starSpec({ spectrumFile, ...star }: Sound<'sources'>, i: number, files: DataFiles): StarSpec | undefined {
+  if (spectrumFile === undefined) return { ...star, spectrum: { kind: 'blackbody' } }
+  const table = files.read(spectrumFile, ['sources', i, 'spectrum', 'table'], parseSpectrumTable)
+  return table && { ...star, spectrum: { kind: 'table', table } }
+}
+
+function opacitySpec(entry: SoundOpacity, name: string, files: DataFiles): OpacitySpec | undefined {
+  if (entry.law === 'power') return entry
+  const table = files.read(entry.file, ['opacities', name, 'file'], parseOpacityTable)
+  return table && { law: 'table', table, phase: entry.phase }
+}
+
+/** Cameras and spectra as seen from the scene's distance; none while that is unknown. */
+function observers({ distance, cameras, spectra }: SoundParts, document: YamlDocument) {
+  const problems: SceneProblem[] = []
+  function resolved<Entry, Spec extends object>(
+    section: string,
+    entries: (Entry | undefined)[],
+    resolve: (entry: Entry, distance: number) => Spec | { key: string; problem: string }
+  ): Spec[] {
+    return entries.flatMap((entry, i) => {
+      if (entry === undefined || distance === undefined) return []
+      const spec = resolve(entry, distance)
+      if (!('problem' in spec)) return [spec as Spec]
+      problems.push(locateProblem(document, [section, i, spec.key], spec.problem))
+      return []
+    })
+  }
+  return {
+    cameras: resolved('cameras', cameras, resolveCamera),
+    spectra: resolved('spectra', spectra, resolveSpectrum),
+    problems
+  }
+}
+
+/** The scene file first, then data files, each from top to bottom. */
+function byPlace(sceneFile: string) {
+  const rank = (problem: SceneProblem) => (problem.location.file === sceneFile ? 0 : 1)
+  return (a: SceneProblem, b: SceneProblem) =>
+    rank(a) - rank(b) ||
+    a.location.file.localeCompare(b.location.file) ||
+    a.location.line - b.location.line ||
+    a.location.column - b.location.column
+}

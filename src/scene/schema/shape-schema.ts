@@ -1,0 +1,136 @@
+import { z } from 'zod'
+import type { ShapeSpec } from '../types.js'
+import { dataFile, notYet, real, section } from './fields.js'
+import { quantity, vector } from './quantity-field.js'
+
+const length = quantity('length')
+
+const inner = z
+  .union(
+    [
+      length,
+      notYet(
+        section({ temperature: quantity('temperature').describe('Temperature that this component reaches at its inner edge') }),
+        'an inner radius found from a temperature'
+      )
+    ],
+    { error: () => 'a length with its unit, such as `6 au`, or {temperature: 1500 K} is expected' }
+  )
+  .describe('Inner radius, or {temperature: 1500 K}')
+
+const outer = z
+  .union([length, section({ 'times-inner': real({ above: 1, below: 1e12 }).describe('Outer radius over inner radius') })], {
+    error: () => 'a length with its unit, such as `3000 au`, or {times-inner: 1000} is expected'
+  })
+  .describe('Outer radius, or {times-inner: 1000}')
+
+const tilt = notYet(
+  section({ angle: quantity('angle', 'any'), toward: quantity('angle', 'any').prefault('0 deg') }),
+  'a tilted shape'
+).optional()
+
+const place = vector().prefault(['0 au', '0 au', '0 au'])
+const origin = place.refine((at) => at.every((component) => component === 0), {
+  error: () => 'a ball away from the origin: not available yet'
+})
+
+const shell = section({
+  kind: z.literal('shell').describe('Spherical shell, density ~ r^slope'),
+  inner,
+  outer,
+  slope: real({ from: -20, to: 20 }).prefault(-2).describe('Power of the density, default -2'),
+  tilt
+}).transform(({ kind, slope, ...edges }, context): ShapeSpec => ({ kind, ...resolveEdges(edges, context), slope }))
+
+const scaleHeight = section({
+  value: length.describe('Scale height at the radius `at`'),
+  at: length,
+  flaring: real({ from: -10, to: 10 }).describe('Scale height ~ R^flaring')
+})
+
+const disk = section({
+  kind: z.literal('disk').describe('Flared disk'),
+  inner,
+  outer,
+  'surface-slope': real({ from: -20, to: 20 }).prefault(-1).describe('Power of the surface density, default -1'),
+  'scale-height': scaleHeight.describe('{value: 10 au, at: 100 au, flaring: 1.25}'),
+  taper: section({ at: length }).optional().describe('Exponential edge with index 2 + surface-slope'),
+  tilt
+}).transform((written, context): ShapeSpec => {
+  const surfaceSlope = written['surface-slope']
+  if (written.taper && surfaceSlope <= -2)
+    context.issues.push({
+      code: 'custom',
+      message: 'an exponential edge needs a `surface-slope` above -2',
+      path: ['taper'],
+      input: written
+    })
+  return {
+    kind: written.kind,
+    ...resolveEdges(written, context),
+    surfaceSlope,
+    scaleHeight: written['scale-height'],
+    ...(written.taper && { taper: written.taper.at })
+  }
+})
+
+const ball = section({ kind: z.literal('ball').describe('Uniform sphere'), radius: length, at: origin, tilt }).transform(
+  ({ kind, radius }): ShapeSpec => ({ kind, radius })
+)
+
+const ring = section({
+  kind: z.literal('ring').describe('Gaussian ring'),
+  radius: length,
+  width: length.describe('Gaussian sigma in radius'),
+  'scale-height': length.describe('Gaussian sigma in height'),
+  eccentricity: real({ from: 0, below: 1 }).prefault(0),
+  periapsis: quantity('angle', 'any').prefault('0 deg'),
+  tilt
+})
+
+const infall = section({
+  kind: z.literal('infall').describe('Rotating infall (Ulrich 1976)'),
+  inner,
+  outer,
+  'centrifugal-radius': length,
+  tilt
+}).transform((written, context) => resolveEdges(written, context))
+
+const slab = section({
+  kind: z.literal('slab').describe('Uniform box, thickness along z'),
+  thickness: length,
+  width: length,
+  at: place,
+  tilt
+})
+
+const field = section({
+  kind: z.literal('field').describe('Density from a file'),
+  file: dataFile,
+  width: length,
+  at: place,
+  tilt
+})
+
+/** `shape` of a dust component. */
+export const shapeSchema = z.discriminatedUnion('kind', [
+  shell,
+  disk,
+  ball,
+  notYet(ring, '`kind: ring`', 'kind'),
+  notYet(infall, '`kind: infall`', 'kind'),
+  notYet(slab, '`kind: slab`', 'kind'),
+  notYet(field, '`kind: field`', 'kind')
+])
+
+interface Edges {
+  inner: number
+  outer: number | { 'times-inner': number }
+}
+
+function resolveEdges({ inner, outer }: Edges, context: z.RefinementCtx<unknown>): { inner: number; outer: number } {
+  const edge = typeof outer === 'number' ? outer : inner * outer['times-inner']
+  if (!(inner < edge))
+    context.issues.push({ code: 'custom', message: 'must be less than `outer`', path: ['inner'], input: inner })
+  return { inner, outer: edge }
+}

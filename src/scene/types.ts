@@ -1,0 +1,165 @@
+/**
+ * The scene as the rest of the program sees it: every default filled in, every quantity in cgs, every angle in rad.
+ * Lengths cm, masses g, luminosities erg/s, temperatures K, opacities cm2/g, wavelengths cm.
+ */
+export interface Scene {
+  /** Path of the file the scene was read from; data files are relative to its folder. */
+  file: string
+  title: string
+  distance: number
+  /** Where the image centre lies on the sky (ICRS, deg), when the user gave it. */
+  sky?: { raDeg: number; decDeg: number }
+  seed: string
+  sources: StarSpec[]
+  opacities: Record<string, OpacitySpec>
+  dust: DustSpec[]
+  grid: GridSpec
+  effort: EffortSpec
+  cameras: CameraSpec[]
+  spectra: SpectrumSpec[]
+  /** Where each part of the scene was written, for messages that arise after reading. */
+  locate: (path: ScenePath) => SourceLocation
+}
+
+export type ScenePath = (string | number)[]
+
+/** One-based line and column of a key in the scene file. */
+export interface SourceLocation {
+  file: string
+  line: number
+  column: number
+}
+
+export type Vector = [number, number, number]
+
+export interface StarSpec {
+  name: string
+  kind: 'star'
+  /** Effective temperature of a blackbody star; undefined for a tabulated spectrum given without one. */
+  temperature?: number
+  luminosity: number
+  /** Stellar radius; undefined only for a point star with a tabulated spectrum. */
+  radius?: number
+  at: Vector
+  extent: 'point' | 'sphere'
+  /** Linear limb-darkening coefficient u: I(mu) = I(1) (1 - u (1 - mu)). */
+  limbDarkening: number
+  spectrum: { kind: 'blackbody' } | { kind: 'table'; table: SpectrumTable }
+}
+
+/** A stellar spectrum read from a file: shape only, scaled to the luminosity. Wavelengths (cm) increase. */
+export interface SpectrumTable {
+  file: string
+  wavelength: Float64Array
+  /** Proportional to L_nu. */
+  fluxNu: Float64Array
+}
+
+export type PhaseLaw = 'isotropic' | 'henyey-greenstein'
+
+export type OpacitySpec = PowerOpacitySpec | TableOpacitySpec
+
+export interface PowerOpacitySpec {
+  law: 'power'
+  reference: { wavelength: number; absorption: number }
+  /** absorption ~ wavelength^-slope */
+  slope: number
+  scattering: {
+    /** At the reference wavelength; at every wavelength when `slope` is absent. */
+    albedo: number
+    asymmetry: number
+    /** Scattering opacity ~ wavelength^-slope, instead of a constant albedo. */
+    slope?: number
+  }
+  phase: PhaseLaw
+}
+
+export interface TableOpacitySpec {
+  law: 'table'
+  table: OpacityTable
+  phase: PhaseLaw
+}
+
+/** Optical properties read from a file. Wavelengths (cm) increase; opacities in cm2/g. */
+export interface OpacityTable {
+  file: string
+  wavelength: Float64Array
+  absorption: Float64Array
+  scattering: Float64Array
+  asymmetry: Float64Array
+}
+
+export interface DustSpec {
+  name: string
+  /** Key into `Scene.opacities`. */
+  opacity: string
+  shape: ShapeSpec
+  amount: AmountSpec
+  /** `solve`: radiative equilibrium; `none`: no thermal emission; a number: fixed, K. */
+  temperature: 'solve' | 'none' | number
+}
+
+export type ShapeSpec =
+  | { kind: 'shell'; inner: number; outer: number /** density ~ r^slope */; slope: number }
+  | {
+      kind: 'disk'
+      inner: number
+      outer: number
+      surfaceSlope: number
+      scaleHeight: { value: number; at: number; flaring: number }
+      /** Radius of the exponential edge. */
+      taper?: number
+    }
+  | { kind: 'ball'; radius: number }
+
+export type AmountSpec =
+  | { kind: 'mass'; mass: number }
+  | { kind: 'optical-depth'; opticalDepth: number; at: number }
+  | { kind: 'density'; density: number; at: number }
+
+/** Numbers of cells that the user fixed; 0 where the program chooses. */
+export interface GridSpec {
+  kind: 'auto' | 'spherical'
+  radial: number
+  polar: number
+  azimuthal: number
+}
+
+export interface EffortSpec {
+  /** Relative 1 sigma to reach, or null: spend exactly the packets given. */
+  precision: number | null
+  /** Most packets for the dust temperatures. */
+  equilibrium: number
+  /** Most packets for each wavelength of cameras and spectra. */
+  cameras: number
+  /** True when the user asked for temperatures (`effort.equilibrium` given) even without any camera. */
+  equilibriumAsked: boolean
+}
+
+/** Angles in rad. */
+export interface ViewSpec {
+  inclination: number
+  azimuth: number
+  roll: number
+}
+
+export interface CameraSpec {
+  name: string
+  view: ViewSpec
+  /** Full width and height, rad. */
+  field: [number, number]
+  pixels: [number, number]
+  /** cm, increasing */
+  wavelengths: number[]
+  unit: string
+}
+
+export interface SpectrumSpec {
+  name: string
+  view: ViewSpec
+  /** Radius on the sky, rad; Infinity for all. */
+  aperture: number
+  /** cm, increasing */
+  wavelengths: number[]
+  unit: string
+}

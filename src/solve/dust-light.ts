@@ -1,0 +1,86 @@
+import { planckNu, planckNuDerivative } from '../dust/planck.js'
+import { allocateShared } from '../math/allocate.js'
+import type { Model } from '../model/model.js'
+import { LIGHT_SPEED } from '../units/constants.js'
+import { GROUPS } from './groups.js'
+import type { DustTemperatures } from './temperatures.js'
+
+/** The dust of a model at one wavelength, as flat arrays that all threads share. */
+export interface DustLight {
+  /** cm */
+  wavelength: number
+  /** Hz */
+  nu: number
+  /** Extinction coefficient, cm-1, by cell. */
+  extinction: Float64Array
+  /** Different asymmetry parameters among the components. */
+  asymmetry: Float64Array
+  /** laws x cells: scattering coefficient, cm-1, of the dust with that asymmetry. */
+  scattering: Float64Array
+  /** Thermal emission coefficient, erg/s/cm3/Hz/sr, by cell. */
+  emission: Float64Array
+  /** cells x GROUPS: deviation of each group's emission coefficient, from its temperatures; empty when all are given. */
+  emissionGroups: Float32Array
+  /** (nt np) x (nr + 1): optical depth from the origin to each radial wall, by column of cells. */
+  opticalDepth: Float64Array
+}
+
+const shared64 = (length: number) => new Float64Array(allocateShared(8 * length))
+const shared32 = (length: number) => new Float32Array(allocateShared(4 * length))
+
+/** Coefficients of every cell at a wavelength (cm). */
+export function dustLight(model: Model, dust: DustTemperatures, wavelength: number): DustLight {
+  const { components, cells } = model
+  const nu = LIGHT_SPEED / wavelength
+  const laws = [...new Set(components.map(({ law }) => law.asymmetry(wavelength)))]
+  const extinction = shared64(cells)
+  const scattering = shared64(laws.length * cells)
+  const emission = shared64(cells)
+  const emissionGroups = shared32(dust.deviation.length > 0 ? cells * GROUPS : 0)
+  components.forEach(({ law, density }, c) => {
+    const absorptionOpacity = law.absorption(wavelength)
+    const scatteringOpacity = law.scattering(wavelength)
+    const offset = laws.indexOf(law.asymmetry(wavelength)) * cells
+    for (let i = 0; i < cells; i++) {
+      const rho = density[i]
+      if (!(rho > 0)) continue
+      const at = c * cells + i
+      const temperature = dust.temperature[at]
+      extinction[i] += rho * (absorptionOpacity + scatteringOpacity)
+      scattering[offset + i] += rho * scatteringOpacity
+      if (!(temperature > 0)) continue
+      emission[i] += rho * absorptionOpacity * planckNu(nu, temperature)
+      if (dust.deviation.length > 0 && dust.slope[at] > 0) {
+        // To first order: a relative change of the absorbed energy changes T by T / slope times it.
+        const response = (rho * absorptionOpacity * planckNuDerivative(nu, temperature) * temperature) / dust.slope[at]
+        for (let g = 0; g < GROUPS; g++) emissionGroups[i * GROUPS + g] += response * dust.deviation[at * GROUPS + g]
+      }
+    }
+  })
+  return {
+    wavelength,
+    nu,
+    extinction,
+    asymmetry: Float64Array.from(laws.length > 0 ? laws : [0]),
+    scattering: laws.length > 0 ? scattering : shared64(cells),
+    emission,
+    emissionGroups,
+    opticalDepth: radialDepths(model, extinction)
+  }
+}
+
+/** Optical depths from the origin outwards, by column. */
+function radialDepths({ walls }: Model, extinction: Float64Array): Float64Array {
+  const { r } = walls
+  const nr = r.length - 1
+  const columns = (walls.cosTheta.length - 1) * (walls.phi.length - 1)
+  const depths = shared64(columns * (nr + 1))
+  for (let column = 0; column < columns; column++) {
+    const start = column * (nr + 1)
+    for (let ir = 0; ir < nr; ir++) {
+      const cell = ir === 0 ? 0 : 1 + (ir - 1) * columns + column
+      depths[start + ir + 1] = depths[start + ir] + extinction[cell] * (r[ir + 1] - r[ir])
+    }
+  }
+  return depths
+}

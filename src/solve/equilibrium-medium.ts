@@ -1,0 +1,92 @@
+import { binOpacity } from '../dust/binned-opacity.js'
+import { coolingOf, type EmissionTable, makeEmissionTable, rowOf } from '../dust/emission.js'
+import { transportWavelengths, type WavelengthGrid } from '../dust/wavelength-grid.js'
+import { allocateShared } from '../math/allocate.js'
+import { makeSamplingTable } from '../math/cdf.js'
+import type { Model } from '../model/model.js'
+import { starBins } from '../sources/star-bins.js'
+import type { EquilibriumMedium, EquilibriumSource } from '../transport/equilibrium.js'
+
+/** The medium of the temperature phase with what its solution needs on the main thread. */
+export interface EquilibriumSetup {
+  medium: EquilibriumMedium
+  grid: WavelengthGrid
+  tables: EmissionTable[]
+  /** All sources together, erg/s. */
+  luminosity: number
+  /** Luminosity of the stars in each bin, erg/s. */
+  starlight: Float64Array
+}
+
+const shared = (length: number) => new Float64Array(allocateShared(8 * length))
+
+/** Lays out a model for the temperature phase. Dust of fixed temperature is a source; dust without emission absorbs for good. */
+export function equilibriumSetup(model: Model): EquilibriumSetup {
+  const { components, stars, cells, volume, walls } = model
+  const ranges = stars.map(({ spectrum }) => spectrum.range)
+  const grid = transportWavelengths(
+    Math.min(...ranges.map(([shortest]) => shortest), Number.POSITIVE_INFINITY),
+    Math.max(...ranges.map(([, longest]) => longest), 0),
+    components.flatMap(({ law }) => law.kinks)
+  )
+  const bins = grid.count
+  const density = shared(components.length * cells)
+  const absorption = shared(components.length * bins)
+  const extinction = shared(components.length * bins)
+  const asymmetry = shared(components.length * bins)
+  const emissionRow = shared(components.length * cells)
+  const tables = components.map(({ law, density: rho }, c) => {
+    const opacity = binOpacity(law, grid)
+    density.set(rho, c * cells)
+    absorption.set(opacity.absorption, c * bins)
+    asymmetry.set(opacity.asymmetry, c * bins)
+    for (let k = 0; k < bins; k++) extinction[c * bins + k] = opacity.absorption[k] + opacity.scattering[k]
+    return makeEmissionTable(opacity.absorption, grid, allocateShared)
+  })
+  const starlight = new Float64Array(bins)
+  const powers: number[] = []
+  const sources: EquilibriumSource[] = []
+  for (const { spec, spectrum } of stars) {
+    const light = starBins(spectrum, grid)
+    light.forEach((value, k) => {
+      starlight[k] += value
+    })
+    powers.push(spectrum.luminosity)
+    const radius = spec.extent === 'sphere' ? spec.radius! : 0
+    sources.push({ kind: 'star', radius, bins: makeSamplingTable(light, 1, bins, allocateShared) })
+  }
+  components.forEach(({ spec, density: rho }, component) => {
+    if (spec.temperature === 'solve') return
+    emissionRow.fill(-1, component * cells, (component + 1) * cells)
+    if (spec.temperature === 'none') return
+    const cooling = 4 * Math.PI * coolingOf(tables[component], spec.temperature)
+    const emitted = rho.map((value, cell) => value * volume[cell] * cooling)
+    powers.push(emitted.reduce((sum, value) => sum + value, 0))
+    sources.push({
+      kind: 'dust',
+      component,
+      cells: makeSamplingTable(emitted, 1, cells, allocateShared),
+      row: Math.min(rowOf(tables[component], spec.temperature), tables[component].rows - 1.001)
+    })
+  })
+  return {
+    medium: {
+      walls,
+      cells,
+      components: components.length,
+      bins,
+      density,
+      absorption,
+      extinction,
+      asymmetry,
+      emission: tables.map(({ sampling }) => sampling),
+      emissionRow,
+      sources,
+      sourceTable: makeSamplingTable(Float64Array.from(powers), 1, powers.length)
+    },
+    grid,
+    tables,
+    luminosity: powers.reduce((sum, value) => sum + value, 0),
+    starlight
+  }
+}

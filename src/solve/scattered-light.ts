@@ -1,0 +1,109 @@
+import { azimuthalHenyeyGreenstein } from '../dust/phase-function.js'
+import { allocateShared } from '../math/allocate.js'
+import { gaussLegendre } from '../math/quadrature.js'
+import type { Model } from '../model/model.js'
+import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS } from '../transport/scatter-medium.js'
+import type { DustLight } from './dust-light.js'
+import { GROUPS } from './groups.js'
+
+/** Nodes in the angle between radius and observer at which the scattered light of spherical shells is known. */
+export const ANGLE_NODES = 65
+
+/** Emission coefficient of scattered light (erg/s/cm3/Hz/sr) towards one observer, as flat arrays that all threads share. */
+export interface ScatteredLight {
+  /** Values a cell: ANGLE_NODES in one dimension, AZIMUTH_BINS in two, 1 in three. */
+  slots: number
+  /** cells x slots */
+  value: Float64Array
+  /** cells x slots x GROUPS: deviations of the groups' estimates. */
+  groups: Float32Array
+}
+
+/** Sums of packets x tally over the batches of each group, and the packets behind them. */
+export interface GroupSums {
+  sums: Float64Array[]
+  packets: number[]
+}
+
+const RULE = gaussLegendre(4)
+
+/** Mean and deviations over the groups at element `i`, scaled; the mean is returned, the deviations go to `out` at `start`. */
+function spread({ sums, packets }: GroupSums, i: number, scale: number, out: Float32Array, start: number): number {
+  let sum = 0
+  let all = 0
+  for (let g = 0; g < GROUPS; g++) {
+    sum += sums[g][i]
+    all += packets[g]
+  }
+  const mean = sum / all
+  for (let g = 0; g < GROUPS; g++) out[start + g] = (sums[g][i] / packets[g] - mean) * scale
+  return mean * scale
+}
+
+/** Scattered light of spherical shells: the light in flight, turned towards the observer by the scattering law. */
+export function fromFlights(model: Model, light: DustLight, flights: GroupSums): ScatteredLight {
+  const { cells, volume } = model
+  const value = new Float64Array(allocateShared(8 * cells * ANGLE_NODES))
+  const groups = new Float32Array(allocateShared(4 * cells * ANGLE_NODES * GROUPS))
+  const laws = Array.from(light.asymmetry, turningLaw)
+  const mean = new Float64Array(FLIGHT_BINS)
+  const deviations = new Float32Array(FLIGHT_BINS * GROUPS)
+  const turned = new Float64Array(GROUPS)
+  for (let cell = 0; cell < cells; cell++) {
+    for (let m = 0; m < FLIGHT_BINS; m++) mean[m] = spread(flights, cell * FLIGHT_BINS + m, 1 / volume[cell], deviations, m * GROUPS)
+    for (let law = 0; law < laws.length; law++) {
+      const coefficient = light.scattering[law * cells + cell]
+      if (!(coefficient > 0)) continue
+      const matrix = laws[law]
+      for (let node = 0; node < ANGLE_NODES; node++) {
+        let sum = 0
+        turned.fill(0)
+        for (let m = 0; m < FLIGHT_BINS; m++) {
+          const weight = matrix[node * FLIGHT_BINS + m]
+          sum += weight * mean[m]
+          for (let g = 0; g < GROUPS; g++) turned[g] += weight * deviations[m * GROUPS + g]
+        }
+        const at = cell * ANGLE_NODES + node
+        value[at] += coefficient * sum
+        for (let g = 0; g < GROUPS; g++) groups[at * GROUPS + g] += coefficient * turned[g]
+      }
+    }
+  }
+  return { slots: ANGLE_NODES, value, groups }
+}
+
+/** Nodes x bins: the law, averaged over azimuth and over a bin of flight directions, for each angle to the observer. */
+function turningLaw(g: number): Float64Array {
+  const matrix = new Float64Array(ANGLE_NODES * FLIGHT_BINS)
+  for (let node = 0; node < ANGLE_NODES; node++) {
+    const towards = 1 - 2 * (node / (ANGLE_NODES - 1)) ** 2
+    for (let m = 0; m < FLIGHT_BINS; m++) {
+      // mu = 1 - 2 u^2: even in mu within the bin.
+      const high = 1 - 2 * (m / FLIGHT_BINS) ** 2
+      const low = 1 - 2 * ((m + 1) / FLIGHT_BINS) ** 2
+      let sum = 0
+      for (let i = 0; i < RULE.nodes.length; i++) {
+        sum += 0.5 * RULE.weights[i] * azimuthalHenyeyGreenstein(g, 0.5 * (low + high) + 0.5 * (high - low) * RULE.nodes[i], towards)
+      }
+      matrix[node * FLIGHT_BINS + m] = sum
+    }
+  }
+  return matrix
+}
+
+/** Scattered light towards observer `index` of `observers` from tallies of two or three dimensions. */
+export function fromTallies(model: Model, tallies: GroupSums, index: number, observers: number): ScatteredLight {
+  const { cells, volume, dimensions } = model
+  const slots = dimensions === 2 ? AZIMUTH_BINS : 1
+  const value = new Float64Array(allocateShared(8 * cells * slots))
+  const groups = new Float32Array(allocateShared(4 * cells * slots * GROUPS))
+  const { edges } = azimuthLookup()
+  for (let cell = 0; cell < cells; cell++) {
+    for (let slot = 0; slot < slots; slot++) {
+      const at = cell * slots + slot
+      const share = slots > 1 ? (Math.acos(edges[slot + 1]) - Math.acos(edges[slot])) / Math.PI : 1
+      value[at] = spread(tallies, at * observers + index, 1 / (volume[cell] * share), groups, at * GROUPS)
+    }
+  }
+  return { slots, value, groups }
+}

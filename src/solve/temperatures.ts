@@ -1,0 +1,127 @@
+import { coolingOf, type EmissionTable, temperatureOf } from '../dust/emission.js'
+import type { Model } from '../model/model.js'
+import type { EquilibriumSetup } from './equilibrium-medium.js'
+import { GROUPS } from './groups.js'
+
+
+/** Temperatures of all dust; component c, cell i at c * cells + i. */
+export interface DustTemperatures {
+  /** K; 0 where a component has no dust or does not emit. */
+  temperature: Float64Array
+  /** 1 sigma, K; 0 where the temperature is given, NaN where no packet came and a neighbour's was taken. */
+  sigma: Float64Array
+  /** x GROUPS: relative deviation of each group's absorbed energy from the mean of all; empty when none is solved. */
+  deviation: Float32Array
+  /** d ln(cooling) / d ln(T): how steeply the emission rises with temperature; 0 where the temperature is given. */
+  slope: Float64Array
+}
+
+/** Temperatures of a model in which none has to be solved. */
+export function givenTemperatures(model: Model): DustTemperatures {
+  const { components, cells } = model
+  const temperature = new Float64Array(components.length * cells)
+  components.forEach(({ spec, density }, c) => {
+    if (typeof spec.temperature !== 'number') return
+    for (let i = 0; i < cells; i++) if (density[i] > 0) temperature[c * cells + i] = spec.temperature
+  })
+  const zeros = () => new Float64Array(temperature.length)
+  return { temperature, sigma: zeros(), deviation: new Float32Array(0), slope: zeros() }
+}
+
+/** First guess: dust warmed by the stars alone, as if nothing stood between. */
+export function firstGuess(model: Model, setup: EquilibriumSetup): Float64Array {
+  const { components, cells, walls } = model
+  const { starlight, medium } = setup
+  const temperature = givenTemperatures(model).temperature
+  const angular = (walls.cosTheta.length - 1) * (walls.phi.length - 1)
+  components.forEach(({ spec, density }, c) => {
+    if (spec.temperature !== 'solve') return
+    let heating = 0
+    for (let k = 0; k < medium.bins; k++) heating += medium.absorption[c * medium.bins + k] * starlight[k]
+    for (let i = 0; i < cells; i++) {
+      const ir = i === 0 ? 0 : 1 + Math.floor((i - 1) / angular)
+      const r = 0.5 * (walls.r[ir] + walls.r[ir + 1])
+      const guess = temperatureOf(setup.tables[c], heating / (4 * Math.PI * r * r))
+      // Stars may be absent: dust of fixed temperature then does the heating, and the first round finds how much.
+      if (density[i] > 0) temperature[c * cells + i] = Math.min(Math.max(guess, COOLEST), HOTTEST)
+    }
+  })
+  return temperature
+}
+
+const COOLEST = 3
+const HOTTEST = 5000
+
+/**
+ * Temperatures from the absorbed energies of the groups of one round: 4 pi int kappa B(T) = energy absorbed per gram.
+ * `absorbed`: GROUPS arrays of path x opacity sums, which together stand for `packets` packets.
+ */
+export function temperaturesFrom(model: Model, setup: EquilibriumSetup, absorbed: Float64Array[], packets: number): DustTemperatures {
+  const { components, cells, volume } = model
+  const result = givenTemperatures(model)
+  const { temperature, sigma, slope } = result
+  const deviation = new Float32Array(temperature.length * GROUPS)
+  const perPacket = setup.luminosity / packets
+  components.forEach(({ spec, density }, c) => {
+    if (spec.temperature !== 'solve') return
+    const table = setup.tables[c]
+    for (let i = 0; i < cells; i++) {
+      if (!(density[i] > 0)) continue
+      const at = c * cells + i
+      let sum = 0
+      for (let g = 0; g < GROUPS; g++) sum += absorbed[g][at]
+      if (!(sum > 0)) {
+        sigma[at] = Number.NaN
+        continue
+      }
+      temperature[at] = temperatureOf(table, (sum * perPacket) / volume[i])
+      let square = 0
+      for (let g = 0; g < GROUPS; g++) {
+        const relative = (absorbed[g][at] * GROUPS) / sum - 1
+        deviation[at * GROUPS + g] = relative
+        square += relative * relative
+      }
+      const relative = Math.sqrt(square / (GROUPS * (GROUPS - 1)))
+      slope[at] = coolingSlope(table, temperature[at])
+      sigma[at] = (temperature[at] * relative) / slope[at]
+    }
+    fillEmpty(model, temperature, sigma, density, c)
+  })
+  return { temperature, sigma, deviation, slope }
+}
+
+/** d ln(cooling) / d ln(T): how steeply the emission of dust rises with its temperature. */
+function coolingSlope(table: EmissionTable, temperature: number): number {
+  const step = 1.01
+  return Math.log(coolingOf(table, temperature * step) / coolingOf(table, temperature / step)) / (2 * Math.log(step))
+}
+
+/** Cells that no packet reached take the mean of T^4 of neighbours that have one, spreading until all have. */
+function fillEmpty(model: Model, temperature: Float64Array, sigma: Float64Array, density: Float64Array, c: number): void {
+  const { cells, walls } = model
+  const np = walls.phi.length - 1
+  const nt = walls.cosTheta.length - 1
+  const row = nt * np
+  const start = c * cells
+  let empty: number[] = []
+  for (let i = 0; i < cells; i++) if (density[i] > 0 && Number.isNaN(sigma[start + i]) && temperature[start + i] === 0) empty.push(i)
+  while (empty.length > 0) {
+    const found: [number, number][] = []
+    for (const i of empty) {
+      const near: number[] = []
+      if (i > 0) {
+        const it = Math.floor(((i - 1) % row) / np)
+        near.push(i - row >= 1 ? i - row : 0)
+        if (i + row < cells) near.push(i + row)
+        if (it > 0) near.push(i - np)
+        if (it < nt - 1) near.push(i + np)
+      } else for (let k = 1; k <= row && k < cells; k++) near.push(k)
+      const known = near.map((k) => temperature[start + k]).filter((value) => value > 0)
+      if (known.length > 0) found.push([i, (known.reduce((sum, value) => sum + value ** 4, 0) / known.length) ** 0.25])
+    }
+    if (found.length === 0) break
+    for (const [i, value] of found) temperature[start + i] = value
+    const done = new Set(found.map(([i]) => i))
+    empty = empty.filter((i) => !done.has(i))
+  }
+}

@@ -1,0 +1,148 @@
+import type { SphericalWalls } from '../grid/geometry.js'
+import { SphericalWalk } from '../grid/walk.js'
+import { type SamplingTable, sampleBin } from '../math/cdf.js'
+import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
+import { deflect, isotropicDirection } from './direction.js'
+import { emittingCell, launchFromCell, launchFromSurface } from './launch.js'
+
+/** What the temperature phase needs to know, as flat arrays that all threads share. Component c, cell i, bin k. */
+export interface EquilibriumMedium {
+  walls: SphericalWalls
+  cells: number
+  components: number
+  bins: number
+  /** components x cells, g/cm3. */
+  density: Float64Array
+  /** components x bins, cm2/g. */
+  absorption: Float64Array
+  extinction: Float64Array
+  asymmetry: Float64Array
+  /** For each component, the bins of its emission: one row for each tabulated temperature. */
+  emission: SamplingTable[]
+  /** components x cells: row of `emission` at the present temperature, with a fraction. Negative: absorbs for good. */
+  emissionRow: Float64Array
+  sources: EquilibriumSource[]
+  /** One row, one entry a source: chosen in proportion to luminosity. */
+  sourceTable: SamplingTable
+}
+
+export type EquilibriumSource =
+  | { kind: 'star'; radius: number; bins: SamplingTable }
+  /** Dust of fixed temperature: cells in proportion to luminosity, bins from the row of `emission` of its component. */
+  | { kind: 'dust'; component: number; cells: SamplingTable; row: number }
+
+export interface EquilibriumTally {
+  /** components x cells: sum of path x absorption opacity over packets of unit energy, cm3/g. */
+  absorbed: Float64Array
+  /** Numbers of packets, which carry equal energies. */
+  emitted: number
+  escaped: number
+  returned: number
+  kept: number
+  /** Absorptions and scatterings. */
+  interactions: number
+}
+
+/**
+ * Follows packets of equal energy from the sources until they leave. Every cell crossed gains path x absorption opacity
+ * (Lucy 1999, A&A 344, 282); an absorbed packet is emitted again at once by the same dust, with a wavelength drawn from
+ * kappa_abs B(T) of the temperature given (Bjorkman & Wood 2001, ApJ 554, 615, without their correction: T comes from the
+ * round before). The same `uniform` stream gives the same tally, bit for bit.
+ */
+export function propagateEnergy(medium: EquilibriumMedium, packets: number, uniform: () => number): EquilibriumTally {
+  const { walls, cells, components, bins, density, absorption, extinction, asymmetry, emission, emissionRow, sources } = medium
+  const absorbed = new Float64Array(components * cells)
+  const walk = new SphericalWalk(walls)
+  const direction = new Float64Array(3)
+  const starRadius2 = sources.reduce((most, source) => Math.max(most, source.kind === 'star' ? source.radius ** 2 : 0), 0)
+  let escaped = 0
+  let returned = 0
+  let kept = 0
+  let interactions = 0
+
+  for (let n = 0; n < packets; n++) {
+    // One stratified number chooses the source and, what remains of it, the wavelength.
+    let choice = (n + uniform()) / packets
+    const index = sampleBin(medium.sourceTable, 0, choice)
+    const source = sources[index]
+    const below = index === 0 ? 0 : medium.sourceTable.cumulative[index - 1]
+    choice = Math.min((choice - below) / (medium.sourceTable.cumulative[index] - below), 1 - 1e-12)
+    let bin: number
+    if (source.kind === 'star') {
+      bin = sampleBin(source.bins, 0, choice)
+      if (source.radius > 0) launchFromSurface(walk, source.radius, uniform, direction)
+      else {
+        isotropicDirection(direction, uniform(), uniform())
+        walk.startAtOrigin(direction[0], direction[1], direction[2])
+      }
+    } else {
+      const row = Math.floor(source.row) + (uniform() < source.row - Math.floor(source.row) ? 1 : 0)
+      bin = sampleBin(emission[source.component], row, choice)
+      launchFromCell(walk, walls, emittingCell(source.cells, uniform), uniform, direction)
+    }
+
+    let remaining = -Math.log(uniform())
+    let alive = true
+    while (alive) {
+      const cell = walk.cell
+      let step = walk.toWall()
+      let opacity = 0
+      for (let c = 0; c < components; c++) opacity += density[c * cells + cell] * extinction[c * bins + bin]
+      // A star in the way ends the flight.
+      let hitsStar = false
+      if (walk.s < 0 && walk.b2 < starRadius2) {
+        const toStar = -Math.sqrt(starRadius2 - walk.b2) - walk.s
+        if (toStar < step) {
+          step = Math.max(toStar, 0)
+          hitsStar = true
+        }
+      }
+      const depth = step * opacity
+      if (depth < remaining) {
+        for (let c = 0; c < components; c++) absorbed[c * cells + cell] += step * absorption[c * bins + bin]
+        remaining -= depth
+        if (hitsStar) {
+          returned++
+          alive = false
+        } else if (walk.cross() < 0) {
+          escaped++
+          alive = false
+        }
+        continue
+      }
+      step = remaining / opacity
+      for (let c = 0; c < components; c++) absorbed[c * cells + cell] += step * absorption[c * bins + bin]
+      const s = walk.s + step
+      const x = walk.x0 + s * walk.ux
+      const y = walk.y0 + s * walk.uy
+      const z = walk.z0 + s * walk.uz
+      interactions++
+      // Which component, and whether it absorbs.
+      let pick = uniform() * opacity
+      let c = 0
+      let share = density[cell] * extinction[bin]
+      while (pick >= share && c < components - 1) {
+        pick -= share
+        c++
+        share = density[c * cells + cell] * extinction[c * bins + bin]
+      }
+      if (pick < density[c * cells + cell] * absorption[c * bins + bin]) {
+        const row = emissionRow[c * cells + cell]
+        if (row < 0) {
+          kept++
+          alive = false
+          continue
+        }
+        const low = Math.floor(row)
+        bin = sampleBin(emission[c], low + (uniform() < row - low ? 1 : 0), uniform())
+        isotropicDirection(direction, uniform(), uniform())
+      } else {
+        const mu = sampleHenyeyGreenstein(asymmetry[c * bins + bin], uniform())
+        deflect(direction, walk.ux, walk.uy, walk.uz, mu, uniform())
+      }
+      walk.turn(x, y, z, direction[0], direction[1], direction[2])
+      remaining = -Math.log(uniform())
+    }
+  }
+  return { absorbed, emitted: packets, escaped, returned, kept, interactions }
+}

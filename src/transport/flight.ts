@@ -1,0 +1,36 @@
+import type { SphericalWalk } from '../grid/walk.js'
+import type { ScatterMedium } from './scatter-medium.js'
+import { scatteringOf, scatterHere } from './scatter-launch.js'
+
+/** Below this share of its first weight a packet plays roulette. */
+const ROULETTE_BELOW = 1e-3
+const SURVIVAL = 0.1
+
+/** Path to the surface of the star in the way, cm; infinite when there is none. */
+export function pathToStar(walk: SphericalWalk, starRadius2: number): number {
+  if (!(walk.s < 0 && walk.b2 < starRadius2)) return Number.POSITIVE_INFINITY
+  return Math.max(0, -Math.sqrt(starRadius2 - walk.b2) - walk.s)
+}
+
+/**
+ * What happens at the end of a flight inside a cell, `s` along the path: the weight loses what is absorbed, and the packet
+ * goes on in a new direction. Returns the new weight, 0 when the roulette ends the packet.
+ */
+export function collide(
+  walk: SphericalWalk,
+  medium: ScatterMedium,
+  s: number,
+  weight: number,
+  first: number,
+  uniform: () => number,
+  out: Float64Array
+): number {
+  const scattering = scatteringOf(medium, walk.cell)
+  let next = (weight * scattering) / medium.extinction[walk.cell]
+  if (next < ROULETTE_BELOW * first) {
+    if (uniform() >= SURVIVAL) return 0
+    next /= SURVIVAL
+  }
+  if (next > 0) scatterHere(walk, medium, s, uniform, out)
+  return next
+}

@@ -1,0 +1,101 @@
+import { henyeyGreenstein } from '../dust/phase-function.js'
+import { SphericalWalk } from '../grid/walk.js'
+import { type Detector, detectorPixels, pixelOf } from './detector.js'
+import { collide, pathToStar } from './flight.js'
+import { Launcher, scatterHere, scatteringOf } from './scatter-launch.js'
+import type { ScatterMedium } from './scatter-medium.js'
+
+/** Two values a pixel: light emitted by dust and never scattered, and scattered light; all detectors one after another. */
+export interface PixelTally {
+  emitted: Float64Array
+  scattered: Float64Array
+}
+
+/**
+ * Peel-off: every emission and every scattering sends its share, dimmed on the way, straight to each detector
+ * (Yusef-Zadeh, Morris & White 1984, ApJ 278, 186). Values are luminosities per sr towards the observer (erg/s/Hz/sr): divided
+ * by the squared distance they are fluxes. Starlight that is not scattered is left out.
+ */
+export function tallyPeeled(medium: ScatterMedium, detectors: Detector[], packets: number, uniform: () => number): PixelTally {
+  const { extinction } = medium
+  const pixels = detectorPixels(detectors)
+  const emitted = new Float64Array(pixels)
+  const scattered = new Float64Array(pixels)
+  const walk = new SphericalWalk(medium.walls)
+  const sight = new SphericalWalk(medium.walls)
+  const launcher = new Launcher(medium, packets, true)
+  const out = new Float64Array(3)
+  const starRadius2 = medium.starRadius ** 2
+
+  /** Sends the packet at path s to every detector; `weight` is what is emitted or scattered there. */
+  const peel = (tally: Float64Array, s: number, weight: number, scatters: boolean) => {
+    const x = walk.x0 + s * walk.ux
+    const y = walk.y0 + s * walk.uy
+    const z = walk.z0 + s * walk.uz
+    let offset = 0
+    for (const detector of detectors) {
+      const pixel = pixelOf(detector, x, y, z)
+      if (pixel >= 0) {
+        const [nx, ny, nz] = detector.observer
+        sight.start(x, y, z, nx, ny, nz, walk.ir, walk.it, walk.ip)
+        const depth = depthToObserver(sight, extinction, starRadius2)
+        if (depth < 80) {
+          const law = scatters ? meanLaw(medium, walk.cell, walk.ux * nx + walk.uy * ny + walk.uz * nz) : 1 / (4 * Math.PI)
+          tally[offset + pixel] += weight * law * Math.exp(-depth)
+        }
+      }
+      offset += detector.width * detector.height
+    }
+  }
+
+  for (let n = 0; n < packets; n++) {
+    launcher.next(walk, n, uniform, out)
+    const first = launcher.weight
+    let weight = first
+    if (launcher.atScattering) {
+      peel(scattered, walk.s, weight, true)
+      scatterHere(walk, medium, walk.s, uniform, out)
+    } else if (!launcher.starlight) peel(emitted, walk.s, weight, false)
+    let remaining = -Math.log(uniform())
+    while (weight > 0) {
+      const cell = walk.cell
+      const toWall = walk.toWall()
+      const toStar = starRadius2 > 0 ? pathToStar(walk, starRadius2) : Number.POSITIVE_INFINITY
+      const free = toStar < toWall ? toStar : toWall
+      const depth = free * extinction[cell]
+      if (depth >= remaining) {
+        const s = walk.s + remaining / extinction[cell]
+        peel(scattered, s, (weight * scatteringOf(medium, cell)) / extinction[cell], true)
+        weight = collide(walk, medium, s, weight, first, uniform, out)
+        remaining = -Math.log(uniform())
+      } else {
+        remaining -= depth
+        if (toStar < toWall || walk.cross() < 0) weight = 0
+      }
+    }
+  }
+  return { emitted, scattered }
+}
+
+/** Optical depth along the rest of the walk; infinite behind a star. */
+function depthToObserver(sight: SphericalWalk, extinction: Float64Array, starRadius2: number): number {
+  let depth = 0
+  do {
+    if (pathToStar(sight, starRadius2) < Number.POSITIVE_INFINITY) return Number.POSITIVE_INFINITY
+    depth += sight.toWall() * extinction[sight.cell]
+  } while (depth < 80 && sight.cross() >= 0)
+  return depth
+}
+
+/** Scattering law of a cell's mixture of dust, per sr. */
+function meanLaw(medium: ScatterMedium, cell: number, cosine: number): number {
+  const { asymmetry, scattering, cells } = medium
+  let sum = 0
+  let total = 0
+  for (let law = 0; law < asymmetry.length; law++) {
+    const amount = scattering[law * cells + cell]
+    sum += amount * henyeyGreenstein(asymmetry[law], cosine)
+    total += amount
+  }
+  return total > 0 ? sum / total : 0
+}

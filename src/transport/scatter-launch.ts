@@ -1,0 +1,114 @@
+import type { SphericalWalk } from '../grid/walk.js'
+import { sampleBin } from '../math/cdf.js'
+import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
+import { deflect, isotropicDirection } from './direction.js'
+import { emittingCell, launchFromCell, launchFromSurface } from './launch.js'
+import type { ScatterLaunch, ScatterMedium } from './scatter-medium.js'
+
+/** Draws the scattering law of a cell: the index into `asymmetry`. */
+export function drawLaw(medium: ScatterMedium, cell: number, total: number, uniform: () => number): number {
+  const last = medium.asymmetry.length - 1
+  if (last === 0) return 0
+  let law = 0
+  let pick = uniform() * total
+  while (law < last && pick >= medium.scattering[law * medium.cells + cell]) pick -= medium.scattering[law++ * medium.cells + cell]
+  return law
+}
+
+/** Sum of the scattering coefficients of a cell, cm-1. */
+export function scatteringOf(medium: ScatterMedium, cell: number): number {
+  let total = 0
+  for (let law = 0; law < medium.asymmetry.length; law++) total += medium.scattering[law * medium.cells + cell]
+  return total
+}
+
+/**
+ * Brings the walk to the first scattering of starlight in the column drawn, with the radial direction of the light, and
+ * returns the albedo there. The walk's direction is the one before the scattering.
+ */
+function firstScattering(
+  walk: SphericalWalk,
+  medium: ScatterMedium,
+  launch: Extract<ScatterLaunch, { kind: 'point-star' }>,
+  u: number,
+  uniform: () => number
+): number {
+  const { r, cosTheta, phi } = medium.walls
+  const nr = r.length - 1
+  const np = phi.length - 1
+  const column = sampleBin(launch.columns, 0, u)
+  const ip = column % np
+  const it = (column - ip) / np
+  const mu = cosTheta[it + 1] + uniform() * (cosTheta[it] - cosTheta[it + 1])
+  const azimuth = phi[ip] + uniform() * (phi[ip + 1] - phi[ip])
+  const start = column * (nr + 1)
+  const depths = launch.opticalDepth
+  const depth = -Math.log1p(uniform() * Math.expm1(-depths[start + nr]))
+  let low = 0
+  let high = nr
+  while (high - low > 1) {
+    const middle = (low + high) >> 1
+    if (depths[start + middle] <= depth) low = middle
+    else high = middle
+  }
+  const share = Math.min(1, (depth - depths[start + low]) / (depths[start + low + 1] - depths[start + low]))
+  const radius = r[low] + share * (r[low + 1] - r[low])
+  const sin = Math.sqrt(Math.max(0, 1 - mu * mu))
+  const ux = sin * Math.cos(azimuth)
+  const uy = sin * Math.sin(azimuth)
+  walk.start(ux * radius, uy * radius, mu * radius, ux, uy, mu, low, it, ip)
+  return scatteringOf(medium, walk.cell) / medium.extinction[walk.cell]
+}
+
+/** Scatters the packet where the walk stands: a new direction by the law of the dust there. */
+export function scatterHere(walk: SphericalWalk, medium: ScatterMedium, s: number, uniform: () => number, out: Float64Array): void {
+  const law = drawLaw(medium, walk.cell, medium.asymmetry.length > 1 ? scatteringOf(medium, walk.cell) : 0, uniform)
+  const mu = sampleHenyeyGreenstein(medium.asymmetry[law], uniform())
+  const { ux, uy, uz } = walk
+  deflect(out, ux, uy, uz, mu, uniform())
+  walk.turn(walk.x0 + s * ux, walk.y0 + s * uy, walk.z0 + s * uz, out[0], out[1], out[2])
+}
+
+/** Starts the packets of a batch, one after another. */
+export class Launcher {
+  /** Power of the packet last started, erg/s/Hz: its share of all `packets`. */
+  weight = 0
+  /** The packet stands where starlight is scattered for the first time, not yet turned; the albedo is in its weight. */
+  atScattering = false
+  /** The packet comes from a star. */
+  starlight = false
+
+  /** With `forced`, light of point stars starts where it is scattered for the first time; else at the star. */
+  constructor(
+    private readonly medium: ScatterMedium,
+    private readonly packets: number,
+    private readonly forced: boolean
+  ) {}
+
+  /** Starts packet n; n chooses the source evenly among the packets of the batch. */
+  next(walk: SphericalWalk, n: number, uniform: () => number, out: Float64Array): void {
+    const { launch, launchTable, walls } = this.medium
+    const choice = (n + uniform()) / this.packets
+    const index = sampleBin(launchTable, 0, choice)
+    const below = index === 0 ? 0 : launchTable.cumulative[index - 1]
+    const chance = launchTable.cumulative[index] - below
+    const chosen = launch[index]
+    const scale = 1 / (chance * this.packets)
+    this.starlight = chosen.kind !== 'dust'
+    this.atScattering = this.forced && chosen.kind === 'point-star'
+    if (chosen.kind === 'dust') {
+      launchFromCell(walk, walls, emittingCell(chosen.cells, uniform), uniform, out)
+      this.weight = chosen.luminosity * scale
+    } else if (chosen.kind === 'sphere-star') {
+      launchFromSurface(walk, chosen.radius, uniform, out)
+      this.weight = chosen.luminosity * scale
+    } else if (this.forced) {
+      const column = Math.min((choice - below) / chance, 1 - 1e-12)
+      this.weight = chosen.removed * scale * firstScattering(walk, this.medium, chosen, column, uniform)
+    } else {
+      isotropicDirection(out, uniform(), uniform())
+      walk.startAtOrigin(out[0], out[1], out[2])
+      this.weight = chosen.luminosity * scale
+    }
+  }
+}

@@ -1,0 +1,66 @@
+import type { SphericalWalls } from '../grid/geometry.js'
+import type { SamplingTable } from '../math/cdf.js'
+
+/** The dust at one wavelength, as flat arrays that all threads share. */
+export interface ScatterMedium {
+  walls: SphericalWalls
+  cells: number
+  /** Extinction coefficient, cm-1, by cell. */
+  extinction: Float64Array
+  /** Different asymmetry parameters among the components. */
+  asymmetry: Float64Array
+  /** laws x cells: scattering coefficient, cm-1, of the dust with that asymmetry. */
+  scattering: Float64Array
+  launch: ScatterLaunch[]
+  /** One row: chooses the launch. */
+  launchTable: SamplingTable
+  /** Radius of the largest star that is a sphere, cm; 0 for none. */
+  starRadius: number
+}
+
+/** A kind of packet. Luminosities in erg/s/Hz. */
+export type ScatterLaunch =
+  | {
+      kind: 'point-star'
+      luminosity: number
+      /** What the dust takes out of the direct beam, erg/s/Hz. */
+      removed: number
+      /** Columns of cells seen from the origin, in proportion to the light that they take out of the beam. */
+      columns: SamplingTable
+      /** columns x (nr + 1): optical depth from the origin to each radial wall. */
+      opticalDepth: Float64Array
+    }
+  | { kind: 'sphere-star'; luminosity: number; radius: number }
+  /** Cells in proportion to what they emit. */
+  | { kind: 'dust'; luminosity: number; cells: SamplingTable }
+
+/** Number of bins for the direction of flight in one dimension, even in the sine of half the angle to the radius. */
+export const FLIGHT_BINS = 64
+
+/** Number of bins in azimuth from the camera's plane, folded, in two dimensions. */
+export const AZIMUTH_BINS = 16
+
+const LOOKUP = 4096
+
+/**
+ * Which folded azimuth bin a cosine of azimuth falls in: bin = lookup[(cos + 1) * scale | 0]. The bins are even in azimuth but
+ * for the step of the lookup; `edges` are their true edges in the cosine, descending from 1 to -1.
+ */
+export function azimuthLookup(): { lookup: Uint8Array; scale: number; edges: Float64Array } {
+  const lookup = new Uint8Array(LOOKUP + 1)
+  const edges = new Float64Array(AZIMUTH_BINS + 1)
+  edges[0] = 1
+  edges[AZIMUTH_BINS] = -1
+  let bin = AZIMUTH_BINS - 1
+  for (let i = 0; i < LOOKUP; i++) {
+    const middle = -1 + (2 * (i + 0.5)) / LOOKUP
+    const here = Math.min(AZIMUTH_BINS - 1, Math.floor((Math.acos(middle) / Math.PI) * AZIMUTH_BINS))
+    if (here !== bin) {
+      edges[bin] = -1 + (2 * i) / LOOKUP
+      bin = here
+    }
+    lookup[i] = here
+  }
+  lookup[LOOKUP] = 0
+  return { lookup, scale: LOOKUP / 2, edges }
+}

@@ -1,0 +1,128 @@
+import fc from 'fast-check'
+import { describe, expect, it } from 'vitest'
+import { cellCount, cellVolumes, type SphericalWalls } from '../../src/grid/geometry.js'
+import { SphericalWalk } from '../../src/grid/walk.js'
+import { stream } from '../../src/math/random.js'
+
+/** Walls that differ much in size, with a midplane wall where `polar` is even. */
+function walls(radial: number, polar: number, azimuthal: number, ratio: number): SphericalWalls {
+  return {
+    r: Float64Array.from({ length: radial + 1 }, (_, i) => (i === 0 ? 0 : ratio ** ((i - 1) / (radial - 1)))),
+    cosTheta: Float64Array.from({ length: polar + 1 }, (_, j) =>
+      j === 0 ? 1 : j === polar ? -1 : 2 * j === polar ? 0 : Math.cos((Math.PI * j) / polar)
+    ),
+    phi: Float64Array.from({ length: azimuthal + 1 }, (_, k) => (2 * Math.PI * k) / azimuthal)
+  }
+}
+
+function direction(uniform: () => number): [number, number, number] {
+  const mu = 2 * uniform() - 1
+  const sin = Math.sqrt(1 - mu * mu)
+  const azimuth = 2 * Math.PI * uniform()
+  return [sin * Math.cos(azimuth), sin * Math.sin(azimuth), mu]
+}
+
+/** Sends rays from outside; returns the largest relative error of the summed path and the number of misplaced midpoints. */
+function throwRays(grid: SphericalWalls, rays: number, seed: string) {
+  const uniform = stream(seed)
+  const walk = new SphericalWalk(grid)
+  const nr = grid.r.length - 1
+  const outer = grid.r[nr]
+  let worst = 0
+  let misplaced = 0
+  let longest = 0
+  for (let n = 0; n < rays; n++) {
+    const [ux, uy, uz] = direction(uniform)
+    const [vx, vy, vz] = direction(uniform)
+    const along = vx * ux + vy * uy + vz * uz
+    let [px, py, pz] = [vx - along * ux, vy - along * uy, vz - along * uz]
+    const norm = Math.hypot(px, py, pz)
+    // Half of the rays aim at small radii, evenly in the logarithm.
+    const b = n % 2 ? outer * Math.sqrt(uniform()) : outer * (grid.r[1] / outer / 3) ** uniform()
+    px *= b / norm
+    py *= b / norm
+    pz *= b / norm
+    if (!walk.enter(px, py, pz, ux, uy, uz)) continue
+    let path = 0
+    let steps = 0
+    do {
+      const cell = walk.cell
+      const step = walk.toWall()
+      if (n % 64 === 0 && step > 1e-9 * outer) {
+        const s = walk.s + step / 2
+        const [x, y, z] = [walk.x0 + s * ux, walk.y0 + s * uy, walk.z0 + s * uz]
+        if (brute(grid, x, y, z) !== cell) misplaced++
+      }
+      path += step
+      if (++steps > 10_000) throw new Error('a ray is trapped')
+    } while (walk.cross() >= 0)
+    longest = Math.max(longest, steps)
+    const chord = 2 * Math.sqrt(outer * outer - px * px - py * py - pz * pz)
+    worst = Math.max(worst, Math.abs(path - chord) / chord)
+  }
+  return { worst, misplaced, longest }
+}
+
+/** The cell of a point, found by looking through every wall. */
+function brute(grid: SphericalWalls, x: number, y: number, z: number): number {
+  const radius = Math.hypot(x, y, z)
+  const ir = grid.r.findLastIndex((wall) => wall <= radius)
+  if (ir === 0) return 0
+  const it = Math.min(grid.cosTheta.findLastIndex((wall) => wall >= z / radius), grid.cosTheta.length - 2)
+  const azimuth = (Math.atan2(y, x) + 2 * Math.PI) % (2 * Math.PI)
+  const ip = Math.min(grid.phi.findLastIndex((wall) => wall <= azimuth), grid.phi.length - 2)
+  return 1 + ((ir - 1) * (grid.cosTheta.length - 1) + it) * (grid.phi.length - 1) + ip
+}
+
+describe('SphericalWalk', () => {
+  const kinds: [string, SphericalWalls][] = [
+    ['1-D', walls(60, 1, 1, 1e3)],
+    ['2-D', walls(40, 30, 1, 1e3)],
+    ['2-D with an odd number of polar cells', walls(20, 7, 1, 30)],
+    ['3-D', walls(25, 16, 12, 1e4)]
+  ]
+  for (const [name, grid] of kinds) {
+    it(`loses none of a million random rays: ${name}`, () => {
+      const { worst, misplaced, longest } = throwRays(grid, 1_000_000, `rays/${name}`)
+      expect(worst).toBeLessThan(1e-10)
+      expect(misplaced).toBe(0)
+      expect(longest).toBeGreaterThan(30)
+    })
+  }
+
+  it('sums cell volumes to the sphere', () => {
+    fc.assert(
+      fc.property(fc.integer({ min: 2, max: 30 }), fc.integer({ min: 1, max: 20 }), fc.integer({ min: 1, max: 9 }), (nr, nt, np) => {
+        const grid = walls(nr, nt, np, 100)
+        const volume = cellVolumes(grid, new Float64Array(cellCount(grid)))
+        const total = volume.reduce((sum, value) => sum + value, 0)
+        expect(total / ((4 / 3) * Math.PI * 1e6)).toBeCloseTo(1, 10)
+      })
+    )
+  })
+
+  it('stays in the cell where it scatters on a wall', () => {
+    const grid = walls(20, 8, 6, 100)
+    const walk = new SphericalWalk(grid)
+    const uniform = stream('scatter')
+    let backward = 0
+    let outside = 0
+    for (let n = 0; n < 200_000; n++) {
+      const [ux, uy, uz] = direction(uniform)
+      walk.startAtOrigin(ux, uy, uz)
+      for (let event = 0; event < 20; event++) {
+        const step = walk.toWall()
+        // One turn in three happens exactly at a wall, where rounding puts the point on either side.
+        const s = walk.s + step * (event % 3 === 0 ? 1 : uniform())
+        const [vx, vy, vz] = direction(uniform)
+        walk.turn(walk.x0 + s * walk.ux, walk.y0 + s * walk.uy, walk.z0 + s * walk.uz, vx, vy, vz)
+        if (walk.toWall() < 0) backward++
+        if (walk.cross() < 0) break
+        const radius = Math.hypot(walk.x, walk.y, walk.z)
+        if (radius < grid.r[walk.ir] * (1 - 1e-9) || radius > grid.r[walk.ir + 1] * (1 + 1e-9)) outside++
+      }
+    }
+    expect(backward).toBe(0)
+    expect(outside).toBe(0)
+  })
+})

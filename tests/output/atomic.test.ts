@@ -1,0 +1,24 @@
+import { mkdirSync, mkdtempSync, readdirSync, readFileSync, rmSync } from 'node:fs'
+import { tmpdir } from 'node:os'
+import { join } from 'node:path'
+import { afterAll, describe, expect, it } from 'vitest'
+import { writeAtomic } from '../../src/output/atomic.js'
+
+const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
+afterAll(() => rmSync(folder, { recursive: true }))
+
+describe('writeAtomic', () => {
+  it('makes the folder, writes, replaces, and leaves nothing else', async () => {
+    const path = join(folder, 'images', 'a.bin')
+    await writeAtomic(path, 'first')
+    await writeAtomic(path, new Uint8Array([1, 2, 3]))
+    expect([...readFileSync(path)]).toEqual([1, 2, 3])
+    expect(readdirSync(join(folder, 'images'))).toEqual(['a.bin'])
+  })
+
+  it('removes its temporary file when it cannot finish', async () => {
+    mkdirSync(join(folder, 'taken', 'b.txt', 'inside'), { recursive: true })
+    await expect(writeAtomic(join(folder, 'taken', 'b.txt'), 'text')).rejects.toThrow()
+    expect(readdirSync(join(folder, 'taken'))).toEqual(['b.txt'])
+  })
+})
