@@ -12,8 +12,9 @@ const PARTS = 12
 export function integrateAperture(field: IntensityField, radius: number, tolerance: number, mirrored: boolean): PatchIntegral {
   const edge = Math.min(radius, field.outermost)
   const parts = mirrored ? PARTS : 2 * PARTS
+  const angles = Array.from({ length: parts + 1 }, (_, i) => flattened(-Math.PI / 2 + (i * Math.PI) / PARTS, field.flattening))
   const patch = {
-    angles: Array.from({ length: parts + 1 }, (_, i) => flattened(-Math.PI / 2 + (i * Math.PI) / PARTS, field.flattening)),
+    angles: () => angles,
     rings: ringsBetween(field, 0, edge),
     outline: (_cos: number, _sin: number, out: Float64Array) => {
       out[0] = 0

@@ -13,8 +13,11 @@ const HIGH = 0.5 + 0.5 / Math.sqrt(3)
 
 /** A part of the picture in polar coordinates about its centre. */
 export interface Patch {
-  /** Angles where the outline bends and between which it is first divided, rad, increasing. */
-  angles: number[]
+  /**
+   * Angles between which the part between two radii is first divided, rad, increasing. The outline is smooth between them, and
+   * does not cross either radius.
+   */
+  angles: (from: number, to: number) => number[]
   /** Radii between which it is first divided, cm, increasing: rays just inside a wall see the square root of the distance. */
   rings: number[]
   /** Radii where the patch begins and ends in a direction, into `out`. */
@@ -95,7 +98,8 @@ export function integratePatch(field: IntensityField, patch: Patch, tolerance: n
     push(heap, region)
   }
   for (let i = 0; i + 1 < rings.length; i++) {
-    for (let j = 0; j + 1 < angles.length; j++) insert(measure(rings[i], rings[i + 1], angles[j], angles[j + 1]))
+    const divisions = angles(rings[i], rings[i + 1])
+    for (let j = 0; j + 1 < divisions.length; j++) insert(measure(rings[i], rings[i + 1], divisions[j], divisions[j + 1]))
   }
   while (error > tolerance * Math.max(total, floor) && heap.length < MOST_REGIONS) {
     const { from, to, start, end, value, error: gone } = pop(heap)

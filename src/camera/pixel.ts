@@ -74,14 +74,14 @@ export class PixelIntegrator {
     const { field } = this
     const left = x - 0.5 * width
     const right = x + 0.5 * width
-    const low = (y - 0.5 * height)
-    const high = (y + 0.5 * height)
+    const low = y - 0.5 * height
+    const high = y + 0.5 * height
     const nearest = Math.hypot(Math.max(0, left, -right), Math.max(0, low, -high))
     const farthest = Math.hypot(Math.max(-left, right), Math.max(-low, high))
     const wide = Math.max(right - left, high - low) > WIDE * nearest
     if (!wide && wallsBetween(field, nearest, farthest) <= CROWDED) return undefined
     return {
-      angles: anglesOf(left, right, low, high),
+      angles: rectangleAngles(left, right, low, high),
       rings: ringsBetween(field, nearest, farthest),
       outline: (cos, sin, out) => {
         // Where the ray from the centre is inside both strips of the rectangle.
@@ -127,29 +127,39 @@ export class PixelIntegrator {
   }
 }
 
-/** Angles under which the corners of a rectangle are seen from the origin, with further ones so that none are far apart. */
-function anglesOf(left: number, right: number, low: number, high: number): number[] {
-  const corners = [
-    [left, low],
-    [right, low],
-    [right, high],
-    [left, high]
-  ]
+/**
+ * For the part of a rectangle between two radii, the angles under which its corners and its crossings with those radii are seen
+ * from the origin, with further ones so that none are far apart.
+ */
+function rectangleAngles(left: number, right: number, low: number, high: number): Patch['angles'] {
   const around = left < 0 && right > 0 && low < 0 && high > 0
   const middle = around ? 0 : Math.atan2(low + high, left + right)
-  const turned = corners
-    .filter(([a, b]) => a !== 0 || b !== 0)
-    .map(([a, b]) => {
-      const angle = Math.atan2(b, a) - middle
-      return angle > Math.PI ? angle - 2 * Math.PI : angle <= -Math.PI ? angle + 2 * Math.PI : angle
-    })
-    .sort((a, b) => a - b)
-  if (around) turned.push(turned[0] + 2 * Math.PI)
-  const angles = [turned[0]]
-  for (let i = 1; i < turned.length; i++) {
-    const span = turned[i] - turned[i - 1]
-    const parts = Math.ceil(span / FAN)
-    for (let k = 1; k <= parts; k++) angles.push(turned[i - 1] + (k * span) / parts)
+  const turn = (x: number, y: number) => {
+    const angle = Math.atan2(y, x) - middle
+    return angle > Math.PI ? angle - 2 * Math.PI : angle <= -Math.PI ? angle + 2 * Math.PI : angle
   }
-  return angles.map((angle) => angle + middle)
+  const corners: number[] = []
+  for (const x of [left, right]) for (const y of [low, high]) if (x !== 0 || y !== 0) corners.push(turn(x, y))
+  return (from, to) => {
+    const turns = [...corners]
+    for (const radius of [from, to]) {
+      for (const x of [left, right]) {
+        const y = Math.sqrt(radius * radius - x * x)
+        for (const at of [y, -y]) if (at > low && at < high) turns.push(turn(x, at))
+      }
+      for (const y of [low, high]) {
+        const x = Math.sqrt(radius * radius - y * y)
+        for (const at of [x, -x]) if (at > left && at < right) turns.push(turn(at, y))
+      }
+    }
+    turns.sort((a, b) => a - b)
+    if (around) turns.push(turns[0] + 2 * Math.PI)
+    const angles = [turns[0] + middle]
+    for (let i = 1; i < turns.length; i++) {
+      const span = turns[i] - turns[i - 1]
+      const parts = Math.ceil(span / FAN)
+      for (let k = 1; k <= parts; k++) angles.push(turns[i - 1] + (k * span) / parts + middle)
+    }
+    return angles
+  }
 }

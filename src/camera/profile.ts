@@ -1,5 +1,5 @@
-import { EMITTED, RAY_VALUES, SCATTERED } from './ray.js'
 import type { IntensityField } from './field.js'
+import { EMITTED, RAY_VALUES, SCATTERED } from './ray.js'
 
 /** Halvings allowed between two cell walls. */
 const DEEPEST = 12
@@ -102,5 +102,9 @@ export function traceProfile(
   rows.forEach(([, value], i) => {
     values.set(value, i * RAY_VALUES)
   })
-  return new RadialProfile(Float64Array.from(rows, ([b]) => b), values, Float64Array.from(radii).subarray(1))
+  return new RadialProfile(
+    Float64Array.from(rows, ([b]) => b),
+    values,
+    Float64Array.from(radii).subarray(1)
+  )
 }

@@ -32,6 +32,9 @@ export function openField(data: FieldData): IntensityField {
     innermost: r[1],
     outermost: r[r.length - 1],
     // With a roll the ellipses lie across the picture's axes: circles then.
-    flattening: Math.abs(data.view.up[2]) < 1e-12 || Math.abs(data.view.right[2]) > 1e-12 ? 1 : Math.max(FLATTEST, Math.abs(data.view.observer[2]))
+    flattening:
+      Math.abs(data.view.up[2]) < 1e-12 || Math.abs(data.view.right[2]) > 1e-12
+        ? 1
+        : Math.max(FLATTEST, Math.abs(data.view.observer[2]))
   }
 }

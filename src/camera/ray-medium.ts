@@ -1,8 +1,8 @@
 import type { SphericalWalls } from '../grid/geometry.js'
 import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
-import type { ScatteredLight } from '../solve/scattered-light.js'
 import { largestStar } from '../solve/scatter-medium.js'
+import type { ScatteredLight } from '../solve/scattered-light.js'
 
 /** What the intensity along rays to one observer at one wavelength follows from, as flat arrays that all threads share. */
 export interface RayMedium {

@@ -102,7 +102,8 @@ export class RayIntegrator {
             index = cell * slots + bin
             share = position - bin
           }
-          out[SCATTERED] += weight * (share > 0 ? scattered[index] + share * (scattered[index + 1] - scattered[index]) : scattered[index])
+          out[SCATTERED] +=
+            weight * (share > 0 ? scattered[index] + share * (scattered[index + 1] - scattered[index]) : scattered[index])
           if (withGroups) {
             const nearest = (share > 0.5 ? index + 1 : index) * GROUPS
             for (let g = 0; g < GROUPS; g++) out[FIRST_GROUP + g] += weight * scatteredGroups[nearest + g]

@@ -28,7 +28,12 @@ export function pictureRows(
 ): PictureRows {
   const { width, height, pixelWidth, pixelHeight } = frame
   const count = width * (to - from)
-  const rows = { emitted: new Float64Array(count), scattered: new Float64Array(count), sigma: new Float64Array(count), placingError: 0 }
+  const rows = {
+    emitted: new Float64Array(count),
+    scattered: new Float64Array(count),
+    sigma: new Float64Array(count),
+    placingError: 0
+  }
   const integrator = new PixelIntegrator(field, tolerance, floor)
   const traced = mirrored ? Math.ceil(width / 2) : width
   for (let row = from; row < to; row++) {

@@ -7,7 +7,7 @@ import { EMITTED, FIRST_GROUP, RAY_VALUES, RayIntegrator, SCATTERED } from '../c
 import { type FieldData, fieldData, openField } from '../camera/ray-field.js'
 import { type RayMedium, rayMedium } from '../camera/ray-medium.js'
 import type { PictureRows } from '../camera/rows.js'
-import { survey } from '../camera/survey.js'
+import { survey, surveyAperture } from '../camera/survey.js'
 import type { ApertureSpectrum, CameraImages } from '../camera/types.js'
 import type { ViewBasis } from '../camera/view.js'
 import { standardError } from '../math/stats.js'
@@ -68,7 +68,7 @@ export function quickError(
     const { distance } = model.scene
     if (want.kind === 'camera') worst = Math.max(worst, survey(field, pixelFrame(want.spec, distance)).error)
     else {
-      const { value } = apertureOf(field, want.spec.aperture * distance, 0.03, mirrored(model))
+      const value = surveyAperture(field, want.spec.aperture * distance)
       const direct = directFlux(model, light, medium, view, want.spec.aperture * distance)
       const total = value[EMITTED] + value[SCATTERED] + direct
       if (total > 0) worst = Math.max(worst, standardError(value.subarray(FIRST_GROUP, RAY_VALUES)) / total)

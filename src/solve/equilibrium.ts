@@ -12,6 +12,10 @@ const BATCHES = 4 * GROUPS
 const FIRST_ROUND = 16_384
 /** Rounds of a run that spends exactly the packets given: each twice the one before, the last about half of all. */
 const FIXED_ROUNDS = 6
+/** Growth of rounds: at least, at most, and beyond what the error asks for. */
+const SLOWEST = 2
+const FASTEST = 16
+const MARGIN = 1.15
 /** Cells that together emit this share of all dust light count for precision and convergence. */
 const BULK = 0.95
 
@@ -50,7 +54,7 @@ export interface EquilibriumProgress {
 }
 
 /**
- * Radiative equilibrium of all dust with `temperature: solve`: rounds of packets, each twice as large as the one before, each
+ * Radiative equilibrium of all dust with `temperature: solve`: rounds of packets, each at least twice the one before, each
  * emitting with the temperatures of the one before, until the median error and the change are below the precision, and so is
  * `seenError`, the relative error that the noise of these temperatures makes in what will be observed.
  */
@@ -68,12 +72,20 @@ export async function solveEquilibrium(
   let spent = 0
   const rounds: EquilibriumRound[] = []
   const sizes = effort.precision === null ? fixedSizes(effort.equilibrium) : undefined
+  let next = FIRST_ROUND
   for (let round = 0; ; round++) {
     setRows(setup, present)
-    const packets = sizes ? sizes[round] : wholeBatches(Math.min(FIRST_ROUND * 2 ** round, effort.equilibrium - spent))
-    const outcome = await playRound(setup, pool, packets, `${seed}/dust/${round}`, (done) => {
-      onProgress({ round, done, packets, error: rounds.at(-1)?.error ?? Number.NaN })
-    }, stop)
+    const packets = sizes ? sizes[round] : wholeBatches(Math.min(next, effort.equilibrium - spent))
+    const outcome = await playRound(
+      setup,
+      pool,
+      packets,
+      `${seed}/dust/${round}`,
+      (done) => {
+        onProgress({ round, done, packets, error: rounds.at(-1)?.error ?? Number.NaN })
+      },
+      stop
+    )
     if (outcome === 'stopped') return 'stopped'
     spent += packets
     const dust = temperaturesFrom(model, setup, outcome.absorbed, packets)
@@ -81,10 +93,12 @@ export async function solveEquilibrium(
     rounds.push({ packets, error, change, interactions: outcome.interactions })
     present = dust.temperature
     const precision = effort.precision
-    const settled = precision !== null && round > 0 && error <= precision && change <= Math.max(precision, 2 * error)
-    const good = settled && seenError(dust) <= precision
+    const steady = round > 0 && change <= Math.max(precision ?? 0, 2 * error)
+    const worst = steady && precision !== null && error <= precision ? Math.max(error, seenError(dust)) : error
+    const good = steady && precision !== null && worst <= precision
     // The last round should hold about half of all packets: another one must fit twice over, or be the rest.
     const over = sizes ? round === sizes.length - 1 : effort.equilibrium - spent < packets
+    next = packets * (steady && precision !== null ? growth(worst / precision) : SLOWEST)
     if (good || over) {
       pool.forget('equilibrium')
       const scale = setup.luminosity / packets
@@ -97,6 +111,11 @@ export async function solveEquilibrium(
       return { dust, rounds, budget, packets: spent, reached: good || precision === null }
     }
   }
+}
+
+/** How many times larger the next round has to be for the error to fall to the precision, `excess` times smaller. */
+function growth(excess: number): number {
+  return Math.min(FASTEST, Math.max(SLOWEST, MARGIN * excess * excess))
 }
 
 /** Whether any dust has to find its temperature, and anything heats it. */
@@ -177,7 +196,8 @@ function judge(model: Model, setup: EquilibriumSetup, dust: DustTemperatures, be
     if (spec.temperature !== 'solve') return
     for (let i = 0; i < cells; i++) {
       const at = c * cells + i
-      if (temperature[at] > 0 && sigma[at] >= 0) weights[at] = density[i] * volume[i] * coolingOf(setup.tables[c], temperature[at])
+      if (temperature[at] > 0 && sigma[at] >= 0)
+        weights[at] = density[i] * volume[i] * coolingOf(setup.tables[c], temperature[at])
     }
   })
   const relative = sigma.map((value, at) => (temperature[at] > 0 ? value / temperature[at] : 0))

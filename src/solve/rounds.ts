@@ -4,6 +4,9 @@ import { GROUPS } from './groups.js'
 /** Batches of every round; the groups take them in turn. */
 const BATCHES = 2 * GROUPS
 const FIRST_ROUND = 16_384
+/** A round is at most so many times larger than all before it, and that much larger than the error asks for. */
+const FASTEST = 16
+const MARGIN = 1.15
 
 export interface RoundsProgress {
   round: number
@@ -30,7 +33,7 @@ export interface RoundsRequest {
 }
 
 /**
- * Rounds of packets whose tallies all count, each twice as large as the one before, until the error is small enough or the most
+ * Rounds of packets whose tallies all count, each at least as large as all before it, until the error is small enough or the most
  * packets are spent. Batches are added in their order. Resolves to the packets spent.
  */
 export async function playRounds(
@@ -42,8 +45,9 @@ export async function playRounds(
   const { task, input, seed, atMost, precision, add, errorOf } = request
   let spent = 0
   let error = Number.NaN
+  let next = FIRST_ROUND
   for (let round = 0; ; round++) {
-    const packets = precision === null ? atMost : Math.min(FIRST_ROUND * 2 ** round, atMost - spent)
+    const packets = precision === null ? atMost : Math.min(next, atMost - spent)
     const share = Math.max(1, Math.round(packets / BATCHES))
     const tasks = Array.from({ length: BATCHES }, (_, batch) => ({
       name: task,
@@ -62,5 +66,7 @@ export async function playRounds(
     if (precision === null) return spent
     error = errorOf()
     if (error <= precision || atMost - spent < BATCHES) return spent
+    // What is missing to reach the precision, when the error falls with the root of the packets.
+    next = spent * Math.min(FASTEST, Math.max(1, MARGIN * (error / precision) ** 2 - 1))
   }
 }

@@ -50,7 +50,8 @@ export function fromFlights(model: Model, light: DustLight, flights: GroupSums):
   const deviations = new Float32Array(FLIGHT_BINS * GROUPS)
   const turned = new Float64Array(GROUPS)
   for (let cell = 0; cell < cells; cell++) {
-    for (let m = 0; m < FLIGHT_BINS; m++) mean[m] = spread(flights, cell * FLIGHT_BINS + m, 1 / volume[cell], deviations, m * GROUPS)
+    for (let m = 0; m < FLIGHT_BINS; m++)
+      mean[m] = spread(flights, cell * FLIGHT_BINS + m, 1 / volume[cell], deviations, m * GROUPS)
     for (let law = 0; law < laws.length; law++) {
       const coefficient = light.scattering[law * cells + cell]
       if (!(coefficient > 0)) continue
@@ -83,7 +84,8 @@ function turningLaw(g: number): Float64Array {
       const low = 1 - 2 * ((m + 1) / FLIGHT_BINS) ** 2
       let sum = 0
       for (let i = 0; i < RULE.nodes.length; i++) {
-        sum += 0.5 * RULE.weights[i] * azimuthalHenyeyGreenstein(g, 0.5 * (low + high) + 0.5 * (high - low) * RULE.nodes[i], towards)
+        sum +=
+          0.5 * RULE.weights[i] * azimuthalHenyeyGreenstein(g, 0.5 * (low + high) + 0.5 * (high - low) * RULE.nodes[i], towards)
       }
       matrix[node * FLIGHT_BINS + m] = sum
     }

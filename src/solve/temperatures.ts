@@ -3,7 +3,6 @@ import type { Model } from '../model/model.js'
 import type { EquilibriumSetup } from './equilibrium-medium.js'
 import { GROUPS } from './groups.js'
 
-
 /** Temperatures of all dust; component c, cell i at c * cells + i. */
 export interface DustTemperatures {
   /** K; 0 where a component has no dust or does not emit. */
@@ -56,7 +55,12 @@ const HOTTEST = 5000
  * Temperatures from the absorbed energies of the groups of one round: 4 pi int kappa B(T) = energy absorbed per gram.
  * `absorbed`: GROUPS arrays of path x opacity sums, which together stand for `packets` packets.
  */
-export function temperaturesFrom(model: Model, setup: EquilibriumSetup, absorbed: Float64Array[], packets: number): DustTemperatures {
+export function temperaturesFrom(
+  model: Model,
+  setup: EquilibriumSetup,
+  absorbed: Float64Array[],
+  packets: number
+): DustTemperatures {
   const { components, cells, volume } = model
   const result = givenTemperatures(model)
   const { temperature, sigma, slope } = result
@@ -68,8 +72,10 @@ export function temperaturesFrom(model: Model, setup: EquilibriumSetup, absorbed
     for (let i = 0; i < cells; i++) {
       if (!(density[i] > 0)) continue
       const at = c * cells + i
+      // The cells and what is in them are the same on both sides of the midplane: each side helps the other.
+      const twin = c * cells + mirrorCell(model, i)
       let sum = 0
-      for (let g = 0; g < GROUPS; g++) sum += absorbed[g][at]
+      for (let g = 0; g < GROUPS; g++) sum += 0.5 * (absorbed[g][at] + absorbed[g][twin])
       if (!(sum > 0)) {
         sigma[at] = Number.NaN
         continue
@@ -77,7 +83,7 @@ export function temperaturesFrom(model: Model, setup: EquilibriumSetup, absorbed
       temperature[at] = temperatureOf(table, (sum * perPacket) / volume[i])
       let square = 0
       for (let g = 0; g < GROUPS; g++) {
-        const relative = (absorbed[g][at] * GROUPS) / sum - 1
+        const relative = (0.5 * (absorbed[g][at] + absorbed[g][twin]) * GROUPS) / sum - 1
         deviation[at * GROUPS + g] = relative
         square += relative * relative
       }
@@ -96,6 +102,15 @@ function coolingSlope(table: EmissionTable, temperature: number): number {
   return Math.log(coolingOf(table, temperature * step) / coolingOf(table, temperature / step)) / (2 * Math.log(step))
 }
 
+/** The cell on the other side of the midplane. */
+function mirrorCell({ walls }: Model, cell: number): number {
+  if (cell === 0) return 0
+  const np = walls.phi.length - 1
+  const nt = walls.cosTheta.length - 1
+  const it = Math.floor((cell - 1) / np) % nt
+  return cell + (nt - 1 - 2 * it) * np
+}
+
 /** Cells that no packet reached take the mean of T^4 of neighbours that have one, spreading until all have. */
 function fillEmpty(model: Model, temperature: Float64Array, sigma: Float64Array, density: Float64Array, c: number): void {
   const { cells, walls } = model
@@ -104,7 +119,8 @@ function fillEmpty(model: Model, temperature: Float64Array, sigma: Float64Array,
   const row = nt * np
   const start = c * cells
   let empty: number[] = []
-  for (let i = 0; i < cells; i++) if (density[i] > 0 && Number.isNaN(sigma[start + i]) && temperature[start + i] === 0) empty.push(i)
+  for (let i = 0; i < cells; i++)
+    if (density[i] > 0 && Number.isNaN(sigma[start + i]) && temperature[start + i] === 0) empty.push(i)
   while (empty.length > 0) {
     const found: [number, number][] = []
     for (const i of empty) {

@@ -1,8 +1,8 @@
-import { SphericalWalk } from '../grid/walk.js'
 import { henyeyGreenstein } from '../dust/phase-function.js'
+import { SphericalWalk } from '../grid/walk.js'
 import { collide, pathToStar } from './flight.js'
-import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS, type ScatterMedium } from './scatter-medium.js'
 import { Launcher, scatterHere } from './scatter-launch.js'
+import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS, type ScatterMedium } from './scatter-medium.js'
 
 /**
  * Light in flight in cells of one dimension: sum of weight x path (erg/s/Hz cm) by radial cell and by the angle between the

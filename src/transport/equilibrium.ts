@@ -1,7 +1,7 @@
+import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
 import type { SphericalWalls } from '../grid/geometry.js'
 import { SphericalWalk } from '../grid/walk.js'
 import { type SamplingTable, sampleBin } from '../math/cdf.js'
-import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
 import { deflect, isotropicDirection } from './direction.js'
 import { emittingCell, launchFromCell, launchFromSurface } from './launch.js'
 

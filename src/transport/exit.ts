@@ -129,10 +129,5 @@ function project(detector: Detector, x: number, y: number, z: number, ux: number
   const cx = wy * z - wz * y
   const cy = wz * x - wx * z
   const cz = wx * y - wy * x
-  return pixelOf(
-    detector,
-    x + cx + f * (wy * cz - wz * cy),
-    y + cy + f * (wz * cx - wx * cz),
-    z + cz + f * (wx * cy - wy * cx)
-  )
+  return pixelOf(detector, x + cx + f * (wy * cz - wz * cy), y + cy + f * (wz * cx - wx * cz), z + cz + f * (wx * cy - wy * cx))
 }

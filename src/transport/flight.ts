@@ -1,6 +1,6 @@
 import type { SphericalWalk } from '../grid/walk.js'
+import { scatterHere, scatteringOf } from './scatter-launch.js'
 import type { ScatterMedium } from './scatter-medium.js'
-import { scatteringOf, scatterHere } from './scatter-launch.js'
 
 /** Below this share of its first weight a packet plays roulette. */
 const ROULETTE_BELOW = 1e-3

@@ -1,6 +1,6 @@
-import { type SamplingTable, sampleBin } from '../math/cdf.js'
 import type { SphericalWalls } from '../grid/geometry.js'
 import type { SphericalWalk } from '../grid/walk.js'
+import { type SamplingTable, sampleBin } from '../math/cdf.js'
 import { deflect, isotropicDirection } from './direction.js'
 
 /** Starts a packet on the surface of a star of radius R at the origin, by the cosine law. */

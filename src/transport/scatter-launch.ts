@@ -1,6 +1,6 @@
+import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
 import type { SphericalWalk } from '../grid/walk.js'
 import { sampleBin } from '../math/cdf.js'
-import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
 import { deflect, isotropicDirection } from './direction.js'
 import { emittingCell, launchFromCell, launchFromSurface } from './launch.js'
 import type { ScatterLaunch, ScatterMedium } from './scatter-medium.js'
@@ -11,7 +11,8 @@ export function drawLaw(medium: ScatterMedium, cell: number, total: number, unif
   if (last === 0) return 0
   let law = 0
   let pick = uniform() * total
-  while (law < last && pick >= medium.scattering[law * medium.cells + cell]) pick -= medium.scattering[law++ * medium.cells + cell]
+  while (law < last && pick >= medium.scattering[law * medium.cells + cell])
+    pick -= medium.scattering[law++ * medium.cells + cell]
   return law
 }
 
@@ -61,7 +62,13 @@ function firstScattering(
 }
 
 /** Scatters the packet where the walk stands: a new direction by the law of the dust there. */
-export function scatterHere(walk: SphericalWalk, medium: ScatterMedium, s: number, uniform: () => number, out: Float64Array): void {
+export function scatterHere(
+  walk: SphericalWalk,
+  medium: ScatterMedium,
+  s: number,
+  uniform: () => number,
+  out: Float64Array
+): void {
   const law = drawLaw(medium, walk.cell, medium.asymmetry.length > 1 ? scatteringOf(medium, walk.cell) : 0, uniform)
   const mu = sampleHenyeyGreenstein(medium.asymmetry[law], uniform())
   const { ux, uy, uz } = walk

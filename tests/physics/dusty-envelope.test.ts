@@ -1,6 +1,6 @@
 import { beforeAll, describe, expect, it } from 'vitest'
-import type { RunResult } from '../../src/run/run-scene.js'
 import { interpolateLogLog } from '../../src/math/interp.js'
+import type { RunResult } from '../../src/run/run-scene.js'
 import { LIGHT_SPEED, SOLAR_LUMINOSITY, STEFAN_BOLTZMANN } from '../../src/units/constants.js'
 import { radialTemperatures } from './pictures.js'
 import { runText } from './run-text.js'
@@ -30,9 +30,7 @@ const envelopes: Envelope[] = [
     p: 0,
     depth: 1,
     inner: 8.3446,
-    temperature: [
-      796.82, 770.068, 680.23, 606.302, 515.543, 420.285, 318.538, 241.42, 167.318, 126.707, 95.751, 65.354, 47.217
-    ],
+    temperature: [796.82, 770.068, 680.23, 606.302, 515.543, 420.285, 318.538, 241.42, 167.318, 126.707, 95.751, 65.354, 47.217],
     spectrum: {
       0.5: 1.5198e-2,
       0.7: 0.10608,
@@ -98,7 +96,9 @@ const envelopes: Envelope[] = [
     p: 2,
     depth: 1,
     inner: 8.9829,
-    temperature: [797.102, 768.262, 666.869, 585.667, 490.123, 394.265, 295.756, 222.983, 154.079, 116.649, 88.358, 61.226, 46.393],
+    temperature: [
+      797.102, 768.262, 666.869, 585.667, 490.123, 394.265, 295.756, 222.983, 154.079, 116.649, 88.358, 61.226, 46.393
+    ],
     spectrum: {
       0.5: 1.5219e-2,
       0.7: 0.10622,

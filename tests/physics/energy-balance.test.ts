@@ -23,7 +23,12 @@ describe('energy balance', () => {
     ['disk', sceneOf('sphere', disk, '', 'precision: none, equilibrium: 3e4')],
     [
       'disk in a shell of fixed temperature',
-      sceneOf('point', disk, `  - {name: cool, opacity: grains, ${shell}, amount: {optical-depth: 1, at: 1 um}, temperature: 90 K}`, 'precision: none, equilibrium: 3e4')
+      sceneOf(
+        'point',
+        disk,
+        `  - {name: cool, opacity: grains, ${shell}, amount: {optical-depth: 1, at: 1 um}, temperature: 90 K}`,
+        'precision: none, equilibrium: 3e4'
+      )
     ],
     ['shell with a budget of packets that no batch divides', sceneOf('point', shell, '', 'precision: 0.01 %, equilibrium: 1003')]
   ])('closes to rounding: %s', async (_, text) => {

@@ -4,7 +4,6 @@ import { plane, sumOf } from './pictures.js'
 import { runText } from './run-text.js'
 
 const SEEDS = 30
-const n = 5
 
 const sceneOf = (seed: string, packets: number) => `
 distance: 60 pc
@@ -20,13 +19,13 @@ dust:
 grid: {kind: spherical, radial: 30}
 effort: {precision: none, equilibrium: ${10 * packets}, cameras: ${packets}}
 cameras:
-  - {name: c, field: 160 au, pixels: ${n}, wavelengths: [1 um, 30 um]}
+  - {name: c, field: 160 au, pixels: 3, wavelengths: [1 um, 30 um]}
 `
 
-/** Quantities and their 1 sigma: single pixels and rows at both wavelengths, temperatures of some cells. */
+/** Quantities and their 1 sigma: single pixels at both wavelengths, temperatures of some cells. */
 function measured({ images, dust }: RunResult): { value: number; sigma: number }[] {
   const pixels = [0, 1].flatMap((k) =>
-    [1, 7, 13, 22].map((i) => ({ value: plane(images[0], 'total', k)[i], sigma: plane(images[0], 'sigma', k)[i] }))
+    [0, 1, 4].map((i) => ({ value: plane(images[0], 'total', k)[i], sigma: plane(images[0], 'sigma', k)[i] }))
   )
   const cells = [3, 12, 20, 28].map((i) => ({ value: dust.temperature[i], sigma: dust.sigma[i] }))
   return [...pixels, ...cells]
@@ -40,13 +39,12 @@ function measured({ images, dust }: RunResult): { value: number; sigma: number }
  */
 it('the errors given are those that seeds show', async () => {
   const truth = measured(await runText(sceneOf('long', 4e5)))
-  const runs = []
-  for (let seed = 0; seed < SEEDS; seed++) runs.push(measured(await runText(sceneOf(`short-${seed}`, 2000))))
+  const runs: ReturnType<typeof measured>[] = []
+  for (let seed = 0; seed < SEEDS; seed++) runs.push(measured(await runText(sceneOf(`short-${seed}`, 2000), { workers: 1 })))
   truth.forEach(({ value, sigma }, q) => {
     const pulls = runs.map((run) => (run[q].value - value) / Math.hypot(run[q].sigma, sigma))
     const mean = sumOf(pulls) / SEEDS
     const meanSquare = sumOf(pulls.map((pull) => pull * pull)) / SEEDS
-    console.log(q, mean.toFixed(3), meanSquare.toFixed(3), runs[0][q].sigma / value, sigma / value)
     expect(Math.abs(mean), `mean of quantity ${q}`).toBeLessThan((4.5 * Math.sqrt(15 / 13)) / Math.sqrt(SEEDS))
     expect(meanSquare, `variance of quantity ${q}`).toBeLessThan(15 / 13 + 4.5 * 0.34)
     expect(meanSquare, `variance of quantity ${q}`).toBeGreaterThan(0.28)

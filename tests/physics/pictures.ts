@@ -29,7 +29,10 @@ export function starlight(result: RunResult, wavelength: number): number {
 }
 
 /** Radius of the middle of each radial cell of a spherical model without its core, cm, and the temperatures of a component. */
-export function radialTemperatures({ model, dust }: RunResult, component = 0): { r: number; temperature: number; sigma: number }[] {
+export function radialTemperatures(
+  { model, dust }: RunResult,
+  component = 0
+): { r: number; temperature: number; sigma: number }[] {
   const { r } = model.walls
   const rows = []
   for (let i = 1; i < r.length - 1; i++) {

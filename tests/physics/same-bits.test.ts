@@ -18,7 +18,7 @@ dust:
 grid: ${grid}
 effort: ${effort}
 cameras:
-  - {name: c, view: {inclination: 50 deg}, field: 120 au, pixels: 10, wavelengths: [2 um, 20 um]}
+  - {name: c, view: {inclination: 50 deg}, field: 120 au, pixels: 4, wavelengths: [2 um, 20 um]}
 spectra:
   - {name: s, view: {inclination: 50 deg}, wavelengths: [2 um, 20 um]}
 `
@@ -40,7 +40,11 @@ function digest({ dust, images, spectra, lightPackets }: RunResult): string {
 const fixed = '{precision: none, equilibrium: 2e4, cameras: 5e3}'
 const cases: [string, string, 'emissivity' | 'peel' | 'exit'][] = [
   ['shell, temperatures solved', sceneOf(shell, '{kind: auto}', fixed), 'emissivity'],
-  ['shell, rounds until a precision', sceneOf(shell, '{kind: auto}', '{precision: 3 %, equilibrium: 1e5, cameras: 5e4}'), 'emissivity'],
+  [
+    'shell, rounds until a precision',
+    sceneOf(shell, '{kind: auto}', '{precision: 3 %, equilibrium: 1e5, cameras: 5e4}'),
+    'emissivity'
+  ],
   ['disk, temperatures solved', sceneOf(disk, '{kind: spherical, radial: 30, polar: 20}', fixed), 'emissivity'],
   ['disk, three dimensions', sceneOf(disk, '{kind: spherical, radial: 15, polar: 10, azimuthal: 4}', fixed), 'emissivity'],
   ['shell, peel-off', sceneOf(shell, '{kind: auto}', fixed), 'peel'],

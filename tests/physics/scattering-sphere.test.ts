@@ -79,20 +79,23 @@ const fromEverywhere = [
 const CELLS = 0.002
 
 describe('scattering sphere', () => {
-  it.each(fromTheCentre)('optical radius $depth, albedo $albedo: light of a star at the centre', async ({ depth, albedo, share, image }) => {
-    const run = await runText(sceneOf(depth, albedo, 'star'))
-    const { value, sigma } = escaped(run, starlight(run, wavelength))
-    expect(Math.abs(value - share)).toBeLessThan(4 * sigma + CELLS * share)
-    const scattered = plane(run.images[0], 'scattered')
-    const noise = plane(run.images[0], 'sigma')
-    const unit = starlight(run, wavelength) / (16 * Math.PI ** 2 * radius ** 2)
-    image?.forEach((expected, i) => {
-      // Pixels are 0.004 R wide, so the middle of this one is at b / R = 0.1 + 0.2 i.
-      const pixel = 250 + 25 + 50 * i
-      const apart = Math.abs(scattered[pixel] / unit - expected)
-      expect(apart, `image at ${0.1 + 0.2 * i} R`).toBeLessThan((4 * noise[pixel]) / unit + CELLS * expected)
-    })
-  })
+  it.each(fromTheCentre)(
+    'optical radius $depth, albedo $albedo: light of a star at the centre',
+    async ({ depth, albedo, share, image }) => {
+      const run = await runText(sceneOf(depth, albedo, 'star'))
+      const { value, sigma } = escaped(run, starlight(run, wavelength))
+      expect(Math.abs(value - share)).toBeLessThan(4 * sigma + CELLS * share)
+      const scattered = plane(run.images[0], 'scattered')
+      const noise = plane(run.images[0], 'sigma')
+      const unit = starlight(run, wavelength) / (16 * Math.PI ** 2 * radius ** 2)
+      image?.forEach((expected, i) => {
+        // Pixels are 0.004 R wide, so the middle of this one is at b / R = 0.1 + 0.2 i.
+        const pixel = 250 + 25 + 50 * i
+        const apart = Math.abs(scattered[pixel] / unit - expected)
+        expect(apart, `image at ${0.1 + 0.2 * i} R`).toBeLessThan((4 * noise[pixel]) / unit + CELLS * expected)
+      })
+    }
+  )
 
   it.each(fromEverywhere)('optical radius %d, albedo %d: light emitted evenly', async (depth, albedo, share) => {
     const run = await runText(sceneOf(depth, albedo, 'dust'))

@@ -25,7 +25,6 @@ describe('noise of a scattering shell', () => {
     [10, 2.5e-2]
   ])('optical depth %d: median relative sigma below %d', async (depth, promise) => {
     const { precision, lightPackets } = await runText(sceneOf(depth))
-    console.log(depth, precision[0])
     expect(lightPackets[0].packets).toBe(1e6)
     expect(precision[0].photonNoise[0]).toBeLessThan(promise)
     expect(precision[0].photonNoise[0]).toBeGreaterThan(0)

@@ -3,7 +3,7 @@ import type { CameraImages } from '../../src/camera/types.js'
 import { plane } from './pictures.js'
 import { runText } from './run-text.js'
 
-const n = 40
+const n = 20
 
 /** Views of a disk of fixed temperature in which light scatters, too. */
 const scene = `

@@ -86,7 +86,7 @@ cameras:
     const row = plane(run.images[0], 'scattered')
     const k1 = depth / (inner * (1 - 1 / 1000))
     for (const b of [1.5, 2, 3, 5, 8]) {
-      const expected = (k1 * starlight(run, 1e-4)) / (16 * Math.PI ** 2 * inner) * (Math.PI / (2 * b ** 3))
+      const expected = ((k1 * starlight(run, 1e-4)) / (16 * Math.PI ** 2 * inner)) * (Math.PI / (2 * b ** 3))
       expect(Math.abs(row[500 + Math.round(50 * b)] / expected - 1), `I at ${b} r1`).toBeLessThan(accuracy)
     }
   })
