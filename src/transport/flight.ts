@@ -12,10 +12,20 @@ export function pathToStar(walk: SphericalWalk, starRadius2: number): number {
   return Math.max(0, -Math.sqrt(starRadius2 - walk.b2) - walk.s)
 }
 
-/**
- * What happens at the end of a flight inside a cell, `s` along the path: the weight loses what is absorbed, and the packet
- * goes on in a new direction. Returns the new weight, 0 when the roulette ends the packet.
- */
+/** Weight after a collision in a cell: it loses what is absorbed; 0 when the roulette ends the packet. */
+export function keepAfterCollision(
+  medium: ScatterMedium,
+  cell: number,
+  weight: number,
+  first: number,
+  uniform: () => number
+): number {
+  const next = (weight * scatteringOf(medium, cell)) / medium.extinction[cell]
+  if (next >= ROULETTE_BELOW * first) return next
+  return uniform() < SURVIVAL ? next / SURVIVAL : 0
+}
+
+/** As `keepAfterCollision`, and the packet goes on in a new direction from `s` along its path. */
 export function collide(
   walk: SphericalWalk,
   medium: ScatterMedium,
@@ -25,12 +35,7 @@ export function collide(
   uniform: () => number,
   out: Float64Array
 ): number {
-  const scattering = scatteringOf(medium, walk.cell)
-  let next = (weight * scattering) / medium.extinction[walk.cell]
-  if (next < ROULETTE_BELOW * first) {
-    if (uniform() >= SURVIVAL) return 0
-    next /= SURVIVAL
-  }
+  const next = keepAfterCollision(medium, walk.cell, weight, first, uniform)
   if (next > 0) scatterHere(walk, medium, s, uniform, out)
   return next
 }

@@ -2,53 +2,7 @@ import { henyeyGreenstein } from '../dust/phase-function.js'
 import { SphericalWalk } from '../grid/walk.js'
 import { collide, pathToStar } from './flight.js'
 import { Launcher, scatterHere } from './scatter-launch.js'
-import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS, type ScatterMedium } from './scatter-medium.js'
-
-/**
- * Light in flight in cells of one dimension: sum of weight x path (erg/s/Hz cm) by radial cell and by the angle between the
- * flight and the radius; cells x FLIGHT_BINS. The point of a segment that decides its bin is drawn along
- * it, so that long segments are shared out without bias.
- */
-export function tallyFlights(medium: ScatterMedium, packets: number, uniform: () => number): Float64Array {
-  const { walls, cells, extinction } = medium
-  const tally = new Float64Array(cells * FLIGHT_BINS)
-  const walk = new SphericalWalk(walls)
-  const launcher = new Launcher(medium, packets, true)
-  const out = new Float64Array(3)
-  const starRadius2 = medium.starRadius ** 2
-  const golden = 0.6180339887498949
-  for (let n = 0; n < packets; n++) {
-    launcher.next(walk, n, uniform, out)
-    if (launcher.atScattering) scatterHere(walk, medium, walk.s, uniform, out)
-    const first = launcher.weight
-    let weight = first
-    let remaining = -Math.log(uniform())
-    let along = uniform()
-    while (weight > 0) {
-      const cell = walk.cell
-      const toWall = walk.toWall()
-      const toStar = starRadius2 > 0 ? pathToStar(walk, starRadius2) : Number.POSITIVE_INFINITY
-      const free = toStar < toWall ? toStar : toWall
-      const depth = free * extinction[cell]
-      const collides = depth >= remaining
-      const step = collides ? remaining / extinction[cell] : free
-      along += golden
-      if (along >= 1) along -= 1
-      const s = walk.s + along * step
-      const mu = s / Math.sqrt(walk.b2 + s * s)
-      const bin = (Math.sqrt(0.5 * (1 - mu)) * FLIGHT_BINS) | 0
-      tally[cell * FLIGHT_BINS + (bin < FLIGHT_BINS ? bin : FLIGHT_BINS - 1)] += weight * step
-      if (collides) {
-        weight = collide(walk, medium, walk.s + step, weight, first, uniform, out)
-        remaining = -Math.log(uniform())
-      } else {
-        remaining -= depth
-        if (toStar < toWall || walk.cross() < 0) weight = 0
-      }
-    }
-  }
-  return tally
-}
+import { AZIMUTH_BINS, azimuthLookup, type ScatterMedium } from './scatter-medium.js'
 
 /**
  * Light scattered towards each observer in cells of two or three dimensions: sum of weight x path x scattering coefficient x
