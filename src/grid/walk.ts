@@ -189,6 +189,29 @@ export class SphericalWalk {
     return next - s
   }
 
+  /** Distance from a point of the present cell to its nearest wall, cm. */
+  clearance(x: number, y: number, z: number): number {
+    const { ir, r2 } = this
+    const rho2 = x * x + y * y
+    const radius = Math.sqrt(rho2 + z * z)
+    let nearest = Math.sqrt(r2[ir + 1]) - radius
+    if (ir > 0) {
+      nearest = Math.min(nearest, radius - Math.sqrt(r2[ir]))
+      if (this.nt > 1) {
+        const rho = Math.sqrt(rho2)
+        for (let k = this.it; k <= this.it + 1; k++) {
+          const c = this.cosTheta[k]
+          if (c < 1 && c > -1) nearest = Math.min(nearest, Math.abs(z * Math.sqrt(1 - c * c) - rho * c))
+        }
+      }
+      if (this.np > 1) {
+        for (let k = this.ip; k <= this.ip + 1; k++)
+          nearest = Math.min(nearest, Math.abs(x * this.sinPhi[k] - y * this.cosPhi[k]))
+      }
+    }
+    return nearest
+  }
+
   /** Steps over the wall found by `toWall`; returns the new cell, or -1 outside. */
   cross(): number {
     this.s = this.sWall

@@ -4,6 +4,7 @@ import { SphericalWalk } from '../grid/walk.js'
 import { type SamplingTable, sampleBin } from '../math/cdf.js'
 import { deflect, isotropicDirection } from './direction.js'
 import { emittingCell, launchFromCell, launchFromSurface } from './launch.js'
+import { diffuse, emittedBin } from './random-walk.js'
 
 /** What the temperature phase needs to know, as flat arrays that all threads share. Component c, cell i, bin k. */
 export interface EquilibriumMedium {
@@ -21,6 +22,10 @@ export interface EquilibriumMedium {
   emission: SamplingTable[]
   /** components x cells: row of `emission` at the present temperature, with a fraction. Negative: absorbs for good. */
   emissionRow: Float64Array
+  /** By cell: Rosseland mean of the transport extinction, cm-1, where the modified random walk may run; 0 elsewhere. */
+  rosseland: Float64Array
+  /** components x cells: Planck mean absorption opacity, cm2/g, in those cells. */
+  planck: Float64Array
   sources: EquilibriumSource[]
   /** One row, one entry a source: chosen in proportion to luminosity. */
   sourceTable: SamplingTable
@@ -39,7 +44,7 @@ export interface EquilibriumTally {
   escaped: number
   returned: number
   kept: number
-  /** Absorptions and scatterings. */
+  /** Absorptions, scatterings and steps of the random walk. */
   interactions: number
 }
 
@@ -47,10 +52,23 @@ export interface EquilibriumTally {
  * Follows packets of equal energy from the sources until they leave. Every cell crossed gains path x absorption opacity
  * (Lucy 1999, A&A 344, 282); an absorbed packet is emitted again at once by the same dust, with a wavelength drawn from
  * kappa_abs B(T) of the temperature given (Bjorkman & Wood 2001, ApJ 554, 615, without their correction: T comes from the
- * round before). The same `uniform` stream gives the same tally, bit for bit.
+ * round before). Inside thick cells a packet is taken by the modified random walk. The same `uniform` stream gives the same tally, bit for bit.
  */
 export function propagateEnergy(medium: EquilibriumMedium, packets: number, uniform: () => number): EquilibriumTally {
-  const { walls, cells, components, bins, density, absorption, extinction, asymmetry, emission, emissionRow, sources } = medium
+  const {
+    walls,
+    cells,
+    components,
+    bins,
+    density,
+    absorption,
+    extinction,
+    asymmetry,
+    emission,
+    emissionRow,
+    rosseland,
+    sources
+  } = medium
   const absorbed = new Float64Array(components * cells)
   const walk = new SphericalWalk(walls)
   const direction = new Float64Array(3)
@@ -126,7 +144,8 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
         c++
         share = density[c * cells + cell] * extinction[c * bins + bin]
       }
-      if (pick < density[c * cells + cell] * absorption[c * bins + bin]) {
+      const absorbs = pick < density[c * cells + cell] * absorption[c * bins + bin]
+      if (absorbs) {
         const row = emissionRow[c * cells + cell]
         if (row < 0) {
           kept++
@@ -141,6 +160,13 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
         deflect(direction, walk.ux, walk.uy, walk.uz, mu, uniform())
       }
       walk.turn(x, y, z, direction[0], direction[1], direction[2])
+      if (absorbs && rosseland[cell] > 0) {
+        const steps = diffuse(medium, walk, absorbed, uniform, direction)
+        if (steps > 0) {
+          interactions += steps
+          bin = emittedBin(medium, cell, uniform)
+        }
+      }
       remaining = -Math.log(uniform())
     }
   }

@@ -40,7 +40,7 @@ export function tallyExits(
       const cell = walk.cell
       const toWall = walk.toWall()
       const toStar = starRadius2 > 0 ? pathToStar(walk, starRadius2) : Number.POSITIVE_INFINITY
-      const free = toStar < toWall ? toStar : toWall
+      const free = Math.min(toStar, toWall)
       const depth = free * extinction[cell]
       if (depth >= remaining) {
         weight = collide(walk, medium, walk.s + remaining / extinction[cell], weight, first, uniform, out)

@@ -3,8 +3,8 @@ import { scatterHere, scatteringOf } from './scatter-launch.js'
 import type { ScatterMedium } from './scatter-medium.js'
 
 /** Below this share of its first weight a packet plays roulette. */
-const ROULETTE_BELOW = 1e-3
-const SURVIVAL = 0.1
+export const ROULETTE_BELOW = 1e-3
+export const SURVIVAL = 0.1
 
 /** Path to the surface of the star in the way, cm; infinite when there is none. */
 export function pathToStar(walk: SphericalWalk, starRadius2: number): number {
@@ -12,20 +12,10 @@ export function pathToStar(walk: SphericalWalk, starRadius2: number): number {
   return Math.max(0, -Math.sqrt(starRadius2 - walk.b2) - walk.s)
 }
 
-/** Weight after a collision in a cell: it loses what is absorbed; 0 when the roulette ends the packet. */
-export function keepAfterCollision(
-  medium: ScatterMedium,
-  cell: number,
-  weight: number,
-  first: number,
-  uniform: () => number
-): number {
-  const next = (weight * scatteringOf(medium, cell)) / medium.extinction[cell]
-  if (next >= ROULETTE_BELOW * first) return next
-  return uniform() < SURVIVAL ? next / SURVIVAL : 0
-}
-
-/** As `keepAfterCollision`, and the packet goes on in a new direction from `s` along its path. */
+/**
+ * What happens at the end of a flight inside a cell, `s` along the path: the weight loses what is absorbed, and the packet
+ * goes on in a new direction. Returns the new weight, 0 when the roulette ends the packet.
+ */
 export function collide(
   walk: SphericalWalk,
   medium: ScatterMedium,
@@ -35,7 +25,8 @@ export function collide(
   uniform: () => number,
   out: Float64Array
 ): number {
-  const next = keepAfterCollision(medium, walk.cell, weight, first, uniform)
+  let next = (weight * scatteringOf(medium, walk.cell)) / medium.extinction[walk.cell]
+  if (next < ROULETTE_BELOW * first) next = uniform() < SURVIVAL ? next / SURVIVAL : 0
   if (next > 0) scatterHere(walk, medium, s, uniform, out)
   return next
 }

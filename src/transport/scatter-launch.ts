@@ -6,11 +6,11 @@ import { emittingCell, launchFromCell, launchFromSurface } from './launch.js'
 import type { ScatterLaunch, ScatterMedium } from './scatter-medium.js'
 
 /** Draws the scattering law of a cell: the index into `asymmetry`. */
-export function drawLaw(medium: ScatterMedium, cell: number, total: number, uniform: () => number): number {
+export function drawLaw(medium: ScatterMedium, cell: number, uniform: () => number): number {
   const last = medium.asymmetry.length - 1
   if (last === 0) return 0
   let law = 0
-  let pick = uniform() * total
+  let pick = uniform() * scatteringOf(medium, cell)
   while (law < last && pick >= medium.scattering[law * medium.cells + cell])
     pick -= medium.scattering[law++ * medium.cells + cell]
   return law
@@ -69,7 +69,7 @@ export function scatterHere(
   uniform: () => number,
   out: Float64Array
 ): void {
-  const law = drawLaw(medium, walk.cell, medium.asymmetry.length > 1 ? scatteringOf(medium, walk.cell) : 0, uniform)
+  const law = drawLaw(medium, walk.cell, uniform)
   const mu = sampleHenyeyGreenstein(medium.asymmetry[law], uniform())
   const { ux, uy, uz } = walk
   deflect(out, ux, uy, uz, mu, uniform())

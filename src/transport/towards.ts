@@ -49,7 +49,7 @@ export function tallyTowards(
       const cell = walk.cell
       const toWall = walk.toWall()
       const toStar = starRadius2 > 0 ? pathToStar(walk, starRadius2) : Number.POSITIVE_INFINITY
-      const free = toStar < toWall ? toStar : toWall
+      const free = Math.min(toStar, toWall)
       const depth = free * extinction[cell]
       const collides = depth >= remaining
       const step = collides ? remaining / extinction[cell] : free
