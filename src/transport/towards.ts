@@ -5,6 +5,13 @@ import { Launcher, scatterHere } from './scatter-launch.js'
 import { AZIMUTH_BINS, azimuthLookup, type ScatterMedium } from './scatter-medium.js'
 
 /**
+ * In two dimensions a flight stands for itself turned about the axis by any angle, and mirrored in the midplane: so many turns,
+ * evenly spaced from a random one, every second one mirrored, are tallied for each flight. Measured on a disk at 60 deg: 16 give
+ * 4.2 times the figure of merit of 1; 8 2.8 times, 32 no more than 16.
+ */
+const COPIES = 16
+
+/**
  * Light scattered towards each observer in cells of two or three dimensions: sum of weight x path x scattering coefficient x
  * scattering law (erg/s/Hz/sr), for each cell, azimuth bin (folded about the observer's plane; one bin in three dimensions)
  * and observer: index (cell * azimuths + azimuth) * observers + observer. `observers` holds their unit vectors, three numbers
@@ -19,10 +26,15 @@ export function tallyTowards(
   const { walls, cells, extinction, scattering, asymmetry } = medium
   const count = observers.length / 3
   const laws = asymmetry.length
-  const azimuths = walls.phi.length === 2 ? AZIMUTH_BINS : 1
+  const axial = walls.phi.length === 2
+  const azimuths = axial ? AZIMUTH_BINS : 1
+  const copies = axial ? COPIES : 1
+  const nt = walls.cosTheta.length - 1
   const { lookup, scale } = azimuthLookup()
   const tally = new Float64Array(cells * azimuths * count)
-  const towards = new Float64Array(laws * count)
+  const towards = new Float64Array(copies * laws * count)
+  const cosTurn = new Float64Array(copies)
+  const sinTurn = new Float64Array(copies)
   const walk = new SphericalWalk(walls)
   const launcher = new Launcher(medium, packets, true)
   const out = new Float64Array(3)
@@ -39,10 +51,22 @@ export function tallyTowards(
     let along = uniform()
     while (weight > 0) {
       if (turned) {
-        // The direction is constant along a flight: one value of the law for each observer.
-        for (let o = 0; o < count; o++) {
-          const cosine = walk.ux * observers[3 * o] + walk.uy * observers[3 * o + 1] + walk.uz * observers[3 * o + 2]
-          for (let law = 0; law < laws; law++) towards[law * count + o] = henyeyGreenstein(asymmetry[law], cosine)
+        // The direction is constant along a flight: one value of the law for each turn and observer.
+        const { ux, uy, uz } = walk
+        const start = axial ? uniform() : 0
+        for (let k = 0; k < copies; k++) {
+          const turn = (2 * Math.PI * (start + k)) / copies
+          const cos = Math.cos(turn)
+          const sin = Math.sin(turn)
+          cosTurn[k] = cos
+          sinTurn[k] = sin
+          for (let o = 0; o < count; o++) {
+            const along3 = (k % 2 === 0 ? uz : -uz) * observers[3 * o + 2]
+            const cosine = (cos * ux - sin * uy) * observers[3 * o] + (sin * ux + cos * uy) * observers[3 * o + 1] + along3
+            for (let law = 0; law < laws; law++) {
+              towards[(k * laws + law) * count + o] = henyeyGreenstein(asymmetry[law], cosine) / copies
+            }
+          }
         }
         turned = false
       }
@@ -53,19 +77,30 @@ export function tallyTowards(
       const depth = free * extinction[cell]
       const collides = depth >= remaining
       const step = collides ? remaining / extinction[cell] : free
-      let base = cell * azimuths * count
-      if (azimuths > 1) {
+      let x = 0
+      let y = 0
+      let mirror = cell
+      if (axial) {
         along += golden
-        if (along >= 1) along -= 1
+        along -= along | 0
         const s = walk.s + along * step
-        const x = walk.x0 + s * walk.ux
-        const y = walk.y0 + s * walk.uy
+        x = walk.x0 + s * walk.ux
+        y = walk.y0 + s * walk.uy
         const rho = Math.sqrt(x * x + y * y)
-        base += lookup[rho > 0 ? ((x / rho + 1) * scale) | 0 : 0] * count
+        if (rho > 0) {
+          x /= rho
+          y /= rho
+        }
+        if (cell > 0) mirror = cell + nt - 1 - 2 * walk.it
       }
-      for (let law = 0; law < laws; law++) {
-        const amount = weight * step * scattering[law * cells + cell]
-        if (amount > 0) for (let o = 0; o < count; o++) tally[base + o] += amount * towards[law * count + o]
+      for (let k = 0; k < copies; k++) {
+        const bin = axial ? lookup[((cosTurn[k] * x - sinTurn[k] * y + 1) * scale) | 0] : 0
+        const base = ((k % 2 === 0 ? cell : mirror) * azimuths + bin) * count
+        for (let law = 0; law < laws; law++) {
+          const amount = weight * step * scattering[law * cells + cell]
+          const from = (k * laws + law) * count
+          for (let o = 0; o < count; o++) tally[base + o] += amount * towards[from + o]
+        }
       }
       if (collides) {
         weight = collide(walk, medium, walk.s + step, weight, first, uniform, out)
