@@ -16,13 +16,17 @@ const LEEWAY = 3
 const NOISE_SHARE = 0.3
 /** Quarters that differ by this many tolerances are divided even where their mean seems right. */
 const SPREAD = 30
+/** So is a pixel whose corners differ from its quarters by this many tolerances: a thin dark lane may hide from all rays within. */
+const CORNERS = 10
+/** Half the distance of those corners over the width of the pixel. */
+const CORNER = 0.499
 const DEEPEST = 10
 
 /**
  * Means of an intensity field over pixels. Where cells are smaller than the pixel or the pixel lies near the centre, it is a
  * patch in polar coordinates with rings at the projected walls, so that a rim much smaller than a pixel is still integrated.
  * Elsewhere it is the mean of four rays through the centres of its quarters, divided where they disagree with the ray through
- * its middle by more than `tolerance` of the pixel, or differ much among themselves.
+ * its middle by more than `tolerance` of the pixel, or differ much among themselves or from the corners of the pixel.
  */
 export class PixelIntegrator {
   /** Mean of the last pixel: RAY_VALUES numbers. */
@@ -34,6 +38,8 @@ export class PixelIntegrator {
   /** Light of the four quarters at each level. */
   private readonly lights = new Float64Array(4 * (DEEPEST + 1))
   private allowed = 0
+  /** Mean light of the corners of the pixel. */
+  private corners = 0
 
   /** `floor`: intensity below which no accuracy is asked for. */
   constructor(
@@ -63,6 +69,7 @@ export class PixelIntegrator {
     const light = middle[EMITTED] + middle[SCATTERED]
     const noise = standardError(middle.subarray(FIRST_GROUP, RAY_VALUES))
     this.allowed = Math.max(LEEWAY * tolerance * Math.max(this.floor, light), NOISE_SHARE * noise)
+    this.corners = this.cornerLight(x, y, width, height)
     this.divide(x, y, width, height, light, 1, 0)
     // The photon noise of the middle ray, in proportion, stands for the pixel.
     const ratio = light > 0 ? (mean[EMITTED] + mean[SCATTERED]) / light : 1
@@ -95,6 +102,16 @@ export class PixelIntegrator {
     }
   }
 
+  private cornerLight(x: number, y: number, width: number, height: number): number {
+    const { field, ray } = this
+    let sum = 0
+    for (let q = 0; q < 4; q++) {
+      field.sample(x + (q % 2 === 0 ? -CORNER : CORNER) * width, y + (q < 2 ? -CORNER : CORNER) * height, ray, false)
+      sum += ray[EMITTED] + ray[SCATTERED]
+    }
+    return 0.25 * sum
+  }
+
   private divide(x: number, y: number, width: number, height: number, middle: number, share: number, level: number): void {
     const { field, mean, tolerance, ray, lights } = this
     let emitted = 0
@@ -113,7 +130,8 @@ export class PixelIntegrator {
     const light = 0.25 * (emitted + scattered)
     const error = Math.abs(light - middle) * share
     const allowed = Math.max(this.allowed, LEEWAY * tolerance * Math.max(mean[EMITTED] + mean[SCATTERED], light * share))
-    if (level < DEEPEST && (error > allowed * Math.sqrt(share) || (high - low) * share > SPREAD * allowed)) {
+    const hidden = level === 0 && Math.abs(light - this.corners) > CORNERS * allowed
+    if (level < DEEPEST && (hidden || error > allowed * Math.sqrt(share) || (high - low) * share > SPREAD * allowed)) {
       for (let q = 0; q < 4; q++) {
         const cx = x + (q % 2 === 0 ? -0.25 : 0.25) * width
         const cy = y + (q < 2 ? -0.25 : 0.25) * height

@@ -81,6 +81,8 @@ function cells({ cells: { count, radial, polar, azimuthal, reason } }: SceneChec
 function cost({ memoryBytes, workers, precision, forecast: { seconds, complete } }: SceneCheck): string[] {
   const parts = `dust ${duration(seconds.dust)}, scattered light ${duration(seconds.light)}, pictures ${duration(seconds.pictures)}`
   const aim = precision === null ? 'exactly the packets given' : `a precision of ${Number((100 * precision).toPrecision(2))} %`
-  const time = complete ? `about ${duration(seconds.all)} (${parts})` : 'long: the trial did not come to its end'
+  const time = complete
+    ? `about ${duration(seconds.all)} (${parts})`
+    : `long, more than ${duration(seconds.all)}: a trial of a few packets did not come to its end`
   return [`  ${workers} workers, ${aim}`, `  time ${time}`, `  memory about ${shown(memoryBytes / 1e6, 2)} MB`]
 }

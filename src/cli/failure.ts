@@ -1,7 +1,12 @@
 import { OutputError } from '../run/output-error.js'
 import { Stopped } from '../run/progress.js'
+import { MemoryError } from '../run/require-memory.js'
+import { Interrupted } from '../run/run-in-folder.js'
+import { PartError } from '../run/run-part.js'
+import { StateError } from '../run/state/state-folder.js'
 import { SceneError, type SceneProblem } from '../scene/error.js'
 import { type ExitCode, exitCode } from './exit-code.js'
+import { resumeCommand } from './resume-command.js'
 
 /** The command line is wrong. */
 export class UsageError extends Error {
@@ -11,7 +16,7 @@ export class UsageError extends Error {
 /** What went wrong, for people and for programs. */
 export interface Failure {
   code: ExitCode
-  kind: 'scene' | 'command-line' | 'output' | 'stopped' | 'defect'
+  kind: 'scene' | 'command-line' | 'output' | 'memory' | 'state' | 'stopped' | 'defect'
   message: string
   problems?: SceneProblem[]
 }
@@ -27,11 +32,23 @@ export function failureOf(error: unknown): Failure {
       message: `${error.message}\nmotelight --help tells what is accepted.`
     }
   }
+  if (error instanceof MemoryError) return { code: exitCode.wrongInput, kind: 'memory', message: error.message }
+  if (error instanceof StateError || error instanceof PartError)
+    return { code: exitCode.wrongInput, kind: 'state', message: error.message }
+  if (error instanceof Interrupted) return interruption(error)
   if (error instanceof OutputError) return { code: exitCode.wrongInput, kind: 'output', message: error.message }
   if (error instanceof Stopped) {
     return { code: exitCode.stopped, kind: 'stopped', message: 'Stopped before the end; nothing was written.' }
   }
   return { code: exitCode.defect, kind: 'defect', message: defectMessage(error) }
+}
+
+/** What ended a run whose state is on disk; a full disk too is only an interruption then. */
+function interruption({ cause }: Interrupted): Failure {
+  const goOn = `Its state is kept; this goes on with it:\n  ${resumeCommand(process.argv.slice(2))}`
+  if (cause instanceof Stopped) return { code: exitCode.stopped, kind: 'stopped', message: `Stopped before the end. ${goOn}` }
+  const { code, kind, message } = failureOf(cause)
+  return { code: kind === 'output' ? exitCode.stopped : code, kind, message: `${message}\n${goOn}` }
 }
 
 function defectMessage(error: unknown): string {

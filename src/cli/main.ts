@@ -4,6 +4,7 @@ import { hideBin } from 'yargs/helpers'
 import { version } from '../output/version.js'
 import { check } from './check.js'
 import { failureOf, reportFailure, UsageError } from './failure.js'
+import { join } from './join.js'
 import { run } from './run.js'
 import { schema } from './schema.js'
 
@@ -20,8 +21,9 @@ try {
     .usage('$0 <command>\n\nImages and spectra of dusty sources from a scene file.')
     .command(check)
     .command(run)
+    .command(join)
     .command(schema)
-    .demandCommand(1, 'Which command? There are check, run and schema.')
+    .demandCommand(1, 'Which command? There are check, run, join and schema.')
     .strict()
     .version(version)
     .help()

@@ -1,7 +1,7 @@
 import type { RunProgress } from '../run/progress.js'
 import { secondsLeft } from '../run/seconds-left.js'
 import type { EffortSpec } from '../scene/types.js'
-import { duration, wavelengthText } from './words.js'
+import { duration, shown, wavelengthText } from './words.js'
 
 /** Nothing is shown before this, s. */
 const QUIET_START = 2
@@ -50,9 +50,7 @@ function lineOf(progress: RunProgress, rate: number, elapsed: number, effort: Ef
     stage === 'pictures'
       ? `${at}${observer?.kind} ${observer?.name}: ${Math.round((100 * done) / of)} %`
       : `${stage === 'dust' ? 'dust temperatures, ' : at}round ${progress.round + 1}: ${Math.round((100 * done) / of)} % of ${of} packets`,
-    ...(stage !== 'pictures' && rate > 0 && Number.isFinite(rate)
-      ? [`${rate.toPrecision(2)} packets/s`.replace(/e\+?/, 'e')]
-      : []),
+    ...(stage !== 'pictures' && rate > 0 && Number.isFinite(rate) ? [`${shown(rate, 2)} packets/s`] : []),
     ...(Number.isFinite(error) ? [`error ${(100 * error).toPrecision(2)} %`] : []),
     ...(left === undefined ? [] : [`about ${duration(left)} left`])
   ]

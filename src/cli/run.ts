@@ -1,30 +1,26 @@
 import { basename, extname, join } from 'node:path'
 import type { Argv, CommandModule, InferredOptionTypes } from 'yargs'
-import { inputFiles } from '../run/input-files.js'
-import { writeProducts } from '../run/products.js'
-import { openRunFolder } from '../run/run-folder.js'
-import { runScene } from '../run/run-scene.js'
+import { runInFolder } from '../run/run-in-folder.js'
 import { readScene } from '../scene/read.js'
-import { exitCode } from './exit-code.js'
-import { sceneArgument, sceneOptions } from './options.js'
-import { startProgress } from './progress.js'
-import { runText } from './run-text.js'
-import { stopSignal } from './stop-signal.js'
+import { conduct } from './conduct.js'
+import { UsageError } from './failure.js'
+import { partOf, runOptions, sceneArgument } from './options.js'
 
 const options = {
-  out: {
-    describe: 'Folder for the results',
+  ...runOptions,
+  resume: { describe: 'Go on with the unfinished run in the folder, if there is one', type: 'boolean', default: false },
+  force: { describe: 'Replace what the folder holds', type: 'boolean', default: false },
+  stage: {
+    describe: 'Only dust temperatures, or only images and spectra with the temperatures that are in the folder',
+    choices: ['dust', 'cameras'],
+    requiresArg: true
+  },
+  part: {
+    describe: 'Only this part of the packets of the cameras, such as 3/16; `motelight join` makes the images of all parts',
     type: 'string',
     requiresArg: true,
-    defaultDescription: 'out/<name of the scene file>'
-  },
-  estimator: {
-    describe: 'How scattered light is estimated; peel and exit are slow cross-checks',
-    choices: ['emissivity', 'peel', 'exit'],
-    default: 'emissivity'
-  },
-  force: { describe: 'Replace what the folder holds', type: 'boolean', default: false },
-  ...sceneOptions
+    coerce: partOf
+  }
 } as const
 
 type Arguments = InferredOptionTypes<typeof options> & { scene: string }
@@ -34,27 +30,19 @@ export const run: CommandModule<object, Arguments> = {
   command: 'run <scene>',
   describe: 'Make dust temperatures, images and spectra',
   builder: (yargs: Argv) => yargs.positional('scene', sceneArgument).options(options) as Argv<Arguments>,
-  handler: async ({ scene: file, out, seed, workers, estimator, force, json, quiet }) => {
-    const started = new Date().toISOString()
-    const scene = readScene(file, { seed })
-    const inputs = inputFiles(scene)
-    const folder = await openRunFolder(out ?? join('out', basename(file, extname(file))), force, inputs)
-    const signal = stopSignal()
-    const progress = startProgress(process.stderr, scene.effort, quiet)
-    try {
-      const result = await runScene(scene, { workers, estimator, stop: signal.stop, onProgress: progress.show })
-      progress.clear()
-      const record = await writeProducts(result, folder, { started, workers, estimator, inputs })
-      process.stdout.write(
-        json ? `${JSON.stringify({ folder: folder.path, ...record }, null, 2)}\n` : runText(record, folder.path)
-      )
-      if (!record.precision.reached) process.exitCode = exitCode.imprecise
-    } catch (error) {
-      await folder.abandon()
-      throw error
-    } finally {
-      progress.clear()
-      signal.release()
-    }
+  handler: async (words) => {
+    const { resume, force, stage, part } = words
+    if (force && (resume || part || stage === 'cameras'))
+      throw new UsageError('--force replaces a run; --resume, --part and --stage cameras go on with one')
+    if (part && stage === 'dust')
+      throw new UsageError('--part divides the packets of the cameras; --stage dust comes before them')
+    const scene = readScene(words.scene, { seed: words.seed })
+    const request = { force, resume, ...(stage && { stage: stage as 'dust' | 'cameras' }), ...(part && { part }) }
+    await conduct(scene, folderOf(words), words, (all) => runInFolder(scene, { ...all, ...request }))
   }
+}
+
+/** Where the results of a scene go unless the user says otherwise. */
+export function folderOf({ out, scene }: { out?: string | undefined; scene: string }): string {
+  return out ?? join('out', basename(scene, extname(scene)))
 }

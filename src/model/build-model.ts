@@ -1,4 +1,4 @@
-import { makeOpacityLaw } from '../dust/opacity-law.js'
+import { makeOpacityLaw, type OpacityLaw } from '../dust/opacity-law.js'
 import type { DustLayer } from '../grid/dust-layer.js'
 import { cellCount, cellVolumes, type SphericalWalls } from '../grid/geometry.js'
 import { placeWalls } from '../grid/place-walls.js'
@@ -13,8 +13,13 @@ import { cellDensities } from './density.js'
 import type { DustComponent, Model } from './model.js'
 import { mattering } from './wavelengths.js'
 
-/** Turns a scene into cells filled with dust. Throws SceneError where the scene asks for what cannot be. */
-export function buildModel(scene: Scene): Model {
+/** Cells laid about the dust of a scene, before anything as large as their number is allocated. */
+export interface CellPlan extends Pick<Model, 'scene' | 'dimensions' | 'reason' | 'walls' | 'cells' | 'stars'> {
+  parts: { spec: DustSpec; law: OpacityLaw; shape: Shape; scale: number }[]
+}
+
+/** Lays the cells of a scene. Throws SceneError where the scene asks for what cannot be. */
+export function planCells(scene: Scene): CellPlan {
   const stars = scene.sources.map((spec) => ({ spec, spectrum: starSpectrum(spec) }))
   const parts = scene.dust.map((spec, index) => {
     const law = makeOpacityLaw(scene.opacities[spec.opacity])
@@ -32,7 +37,12 @@ export function buildModel(scene: Scene): Model {
     extinction: Math.max(...wavelengths.map((wavelength) => law.absorption(wavelength) + law.scattering(wavelength)))
   }))
   const walls = shareWalls(layers.length > 0 ? placeWalls({ ...scene.grid, layers, dimensions }) : emptyWalls(scene))
-  const cells = cellCount(walls)
+  return { scene, dimensions, reason: reasonFor(scene, dimensions), walls, cells: cellCount(walls), stars, parts }
+}
+
+/** Turns a scene into cells filled with dust. Throws SceneError where the scene asks for what cannot be. */
+export function buildModel(scene: Scene, plan = planCells(scene)): Model {
+  const { dimensions, reason, walls, cells, stars, parts } = plan
   const warnings: string[] = []
   const components: DustComponent[] = parts.map(({ spec, law, shape, scale }) => {
     const { density, massRatio } = cellDensities(walls, shape, scale)
@@ -43,17 +53,8 @@ export function buildModel(scene: Scene): Model {
     }
     return { spec, law, shape, mass: scale * shape.totalMass, density }
   })
-  return {
-    scene,
-    dimensions,
-    reason: reasonFor(scene, dimensions),
-    walls,
-    cells,
-    volume: cellVolumes(walls, new Float64Array(allocateShared(8 * cells))),
-    components,
-    stars,
-    warnings
-  }
+  const volume = cellVolumes(walls, new Float64Array(allocateShared(8 * cells)))
+  return { scene, dimensions, reason, walls, cells, volume, components, stars, warnings }
 }
 
 function scaleOf(

@@ -3,7 +3,7 @@ import type { Model } from '../model/model.js'
 import type { Scene } from '../scene/types.js'
 import { AU, PARSEC, SOLAR_LUMINOSITY, SOLAR_MASS, SOLAR_RADIUS } from '../units/constants.js'
 import { type Forecast, forecast } from './forecast.js'
-import { memoryEstimate } from './memory.js'
+import { memoryEstimate, totalMemory } from './memory.js'
 import { type OpticalDepths, opticalDepths } from './optical-depths.js'
 import { percent } from './percent.js'
 import { sceneWarnings } from './scene-warnings.js'
@@ -42,7 +42,7 @@ export interface SceneCheck {
 }
 
 /** Longest trial, s. */
-const TRIAL_SECONDS = 5
+const TRIAL_SECONDS = 8
 
 /** Works out what a scene means, and tries a little of it to see how long all will take. Throws SceneError. */
 export async function checkScene(scene: Scene, { workers }: { workers: number }): Promise<SceneCheck> {
@@ -80,7 +80,7 @@ export async function checkScene(scene: Scene, { workers }: { workers: number })
       azimuthal: walls.phi.length - 1,
       reason
     },
-    memoryBytes: memoryEstimate(model, workers),
+    memoryBytes: totalMemory(memoryEstimate(model), workers),
     workers,
     precision: scene.effort.precision,
     forecast: expected,

@@ -51,36 +51,28 @@ export function micrometres(wavelength: number): number {
   return Number((wavelength * 1e4).toPrecision(15))
 }
 
-/** Cells that together hold less than this share of a component's mass are left out of hottest and coldest. */
-const LEFT_OUT = 1e-3
+/** Cells whose temperature is known worse than this are left out. */
+const KNOWN = 0.1
 
-/** The temperatures of the cells that hold nearly all the mass; undefined for dust that does not emit. */
+/** Extremes over the cells whose temperature is known; undefined for dust that does not emit. */
 function temperaturesOf(model: Model, { temperature, sigma }: DustTemperatures, c: number): DustFinding['temperatures'] {
-  const { components, cells, volume } = model
+  const { components, cells } = model
   const { density } = components[c]
   const { r } = cellCentres(model)
   const at = (cell: number) => c * cells + cell
-  const dusty = Array.from(density.keys()).filter((cell) => density[cell] > 0 && temperature[at(cell)] > 0)
-  if (dusty.length === 0) return undefined
-  const massOf = (cell: number) => density[cell] * volume[cell]
-  const byMass = [...dusty].sort((a, b) => massOf(a) - massOf(b))
-  let spare = LEFT_OUT * dusty.reduce((sum, cell) => sum + massOf(cell), 0)
-  const bulk = byMass.filter((cell) => {
-    spare -= massOf(cell)
-    return spare < 0
-  })
-  const innermost = r[dusty[0]]
+  const known = Array.from(density.keys()).filter((cell) => density[cell] > 0 && sigma[at(cell)] < KNOWN * temperature[at(cell)])
+  if (known.length === 0) return undefined
   const best = (from: number[], score: (cell: number) => number) => {
     const cell = from.reduce((a, b) => (score(b) > score(a) ? b : a))
     return { kelvin: temperature[at(cell)], sigmaKelvin: sigma[at(cell)], radiusAu: r[cell] / AU }
   }
   return {
-    hottest: best(bulk, (cell) => temperature[at(cell)]),
+    hottest: best(known, (cell) => temperature[at(cell)]),
     innerEdge: best(
-      dusty.filter((cell) => r[cell] === innermost),
+      known.filter((cell) => r[cell] === r[known[0]]),
       (cell) => density[cell]
     ),
-    coldest: best(bulk, (cell) => -temperature[at(cell)])
+    coldest: best(known, (cell) => -temperature[at(cell)])
   }
 }
 

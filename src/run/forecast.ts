@@ -1,58 +1,61 @@
 import type { Model } from '../model/model.js'
 import { observedWavelengths } from '../model/wavelengths.js'
-import { TRIAL_PIXELS, type Trial } from './trial.js'
+import { TRIAL_PACKETS, TRIAL_PIXELS, type Trial, type TrialPackets } from './trial.js'
 
 /** What a run is expected to take; right to an order of magnitude. */
 export interface Forecast {
   seconds: { dust: number; light: number; pictures: number; all: number }
   /** Packets thought to be needed for the precision, and the most that may be spent; `light` is for one wavelength. */
-  packets: { dust: { needed: number; most: number }; light: { needed: number; most: number } }
-  /** False when the trial was cut short: then the most packets are taken to be spent. */
+  packets: { dust: Needed; light: Needed }
+  /** False when the trial was cut short: the times then leave out what it did not come to. */
   complete: boolean
 }
 
-const FIRST_ROUND = 16_384
-
-/** Carries a trial over to the whole scene: errors fall as the square root of the packets, pictures grow with their pixels. */
-export function forecast(model: Model, trial: Trial, workers: number): Forecast {
-  const { effort, cameras, spectra } = model.scene
-  const noise = noiseOf(trial)
-  const { precision } = effort
-  const needed = (relative: number, most: number) =>
-    precision === null || !trial.result ? most : Math.max(FIRST_ROUND, trial.packets * (relative / precision) ** 2)
-  const dustNeeded = trial.dustSecondsPerPacket > 0 ? needed(noise.dust, effort.equilibrium) : 0
-  const lightNeeded = trial.lightSecondsPerPacket > 0 ? needed(noise.light, effort.cameras) : 0
-  // Each round of the temperatures stands alone and is twice the one before; those of scattered light add up.
-  const dust = Math.min(effort.equilibrium, 2 * dustNeeded) * trial.dustSecondsPerPacket
-  const light = Math.min(effort.cameras, lightNeeded) * trial.lightSecondsPerPacket * observedWavelengths(model.scene).length
-  const picture = ([width, height]: [number, number]) =>
-    trial.pictureFixedSeconds + (trial.pictureSeconds / workers) * ((width * height) / TRIAL_PIXELS ** 2)
-  const pictures =
-    cameras.reduce((sum, { pixels, wavelengths }) => sum + picture(pixels) * wavelengths.length, 0) +
-    spectra.reduce((sum, { wavelengths }) => sum + trial.apertureSeconds * wavelengths.length, 0)
-  const seconds = { dust: dust / workers, light: light / workers, pictures }
-  return {
-    seconds: { ...seconds, all: seconds.dust + seconds.light + seconds.pictures },
-    packets: {
-      dust: { needed: 2 * dustNeeded, most: effort.equilibrium },
-      light: { needed: lightNeeded, most: effort.cameras }
-    },
-    complete: trial.result !== undefined
-  }
+interface Needed {
+  needed: number
+  most: number
 }
 
-/** Largest relative errors in the trial that its dust temperatures and its scattered packets account for. */
-function noiseOf({ result }: Trial): { dust: number; light: number } {
-  const noise = { dust: result?.equilibrium?.rounds.at(-1)?.error ?? 0, light: 0 }
-  if (!result) return noise
-  const products = [...result.images, ...result.spectra]
-  result.precision.forEach(({ photonNoise }, i) => {
-    photonNoise.forEach((relative, k) => {
-      const count = products[i].total.length / photonNoise.length
-      const sum = (values: Float64Array) => values.subarray(k * count, (k + 1) * count).reduce((total, value) => total + value, 0)
-      const part = sum(products[i].emitted) > sum(products[i].scattered) && result.equilibrium ? 'dust' : 'light'
-      noise[part] = Math.max(noise[part], relative)
-    })
-  })
-  return noise
+/**
+ * Time of a picture goes about as these powers of 1 / tolerance (in one dimension, and in more) and of the number of pixels;
+ * measured on shells and disks.
+ */
+const BY_TOLERANCE = [0.25, 0.75]
+const BY_PIXELS = 0.35
+/** Placing tolerance follows this precision where none is asked for. */
+const USUAL_PRECISION = 0.01
+
+/** Carries a trial over to the whole scene: errors fall as the square root of the packets. */
+export function forecast({ scene, dimensions }: Model, trial: Trial, workers: number): Forecast {
+  const { effort, cameras, spectra } = scene
+  const { precision } = effort
+  const need = ({ seconds, noise }: TrialPackets, most: number): Needed => {
+    if (seconds === 0) return { needed: 0, most }
+    if (precision === null || !trial.complete) return { needed: most, most }
+    return { needed: Math.max(TRIAL_PACKETS, TRIAL_PACKETS * (noise / precision) ** 2), most }
+  }
+  // Rounds of the temperatures stand alone, each twice the one before; those of scattered light add up.
+  const last = need(trial.dust, effort.equilibrium)
+  const dust = { needed: 2 * last.needed, most: last.most }
+  const light = need(trial.light, effort.cameras)
+  const time = ({ needed, most }: Needed, { seconds, packets }: TrialPackets) =>
+    (Math.min(needed, most) * seconds) / Math.max(1, packets)
+  const finer = (trial.precision / (precision ?? USUAL_PRECISION)) ** BY_TOLERANCE[dimensions === 1 ? 0 : 1]
+  const each = (seconds: number, count: number) => seconds / Math.max(1, count)
+  const picture = ([width, height]: [number, number]) =>
+    each(trial.pictures.fixedSeconds, trial.pictures.count) +
+    each(trial.pictures.seconds, trial.pictures.count) * finer * ((width * height) / TRIAL_PIXELS ** 2) ** BY_PIXELS
+  const aperture = each(trial.apertures.seconds, trial.apertures.count) * finer
+  const seconds = {
+    dust: time(dust, trial.dust) / workers,
+    light: (time(light, trial.light) * observedWavelengths(scene).length) / workers,
+    pictures:
+      cameras.reduce((sum, { pixels, wavelengths }) => sum + (picture(pixels) * wavelengths.length) / workers, 0) +
+      spectra.reduce((sum, { wavelengths }) => sum + aperture * wavelengths.length, 0)
+  }
+  return {
+    seconds: { ...seconds, all: seconds.dust + seconds.light + seconds.pictures },
+    packets: { dust, light },
+    complete: trial.complete
+  }
 }

@@ -12,23 +12,45 @@ const WAITING = 4
 /** Wavelength bins times rows of a table of dust emission, with its guide. */
 const TABLE_BYTES = 5e6
 
-/** Most memory that a run is expected to hold, bytes; good to a factor of two. */
-export function memoryEstimate(model: Model, workers: number): number {
-  const { cells, components, dimensions, scene } = model
-  const tallies = WAITING * workers + GROUPS
-  const heat = components.length * (TABLE_BYTES + cells * 8 * (6 + tallies + GROUPS / 2))
-  const observers = Math.max(0, ...observedWavelengths(scene).map((wavelength) => observersAt(model, wavelength)))
-  const [bins, slots] = { 1: [FLIGHT_BINS, ANGLE_NODES], 2: [AZIMUTH_BINS, AZIMUTH_BINS], 3: [1, 1] }[dimensions]
-  const seen = dimensions === 1 ? Math.min(1, observers) : observers
-  const light = cells * seen * (8 * bins * tallies + slots * (8 + 4 * GROUPS))
-  const values = scene.cameras.reduce((sum, { pixels, wavelengths }) => sum + pixels[0] * pixels[1] * wavelengths.length, 0)
-  // Five planes; written out once more, and joined.
-  const images =
-    values * 8 * 5 +
-    Math.max(0, ...scene.cameras.map(({ pixels, wavelengths }) => pixels[0] * pixels[1] * wavelengths.length)) * 8 * 12
-  return PROGRAM_BYTES + WORKER_BYTES * workers + Math.max(heat, light) + images
+/** What the estimate needs to know of a model: the cells need not be filled yet. */
+export type Sizes = Pick<Model, 'scene' | 'dimensions' | 'cells'>
+
+/** Parts of the memory that a run is expected to hold, bytes; together good to a factor of two. */
+export interface MemoryEstimate {
+  program: number
+  /** Of each worker: the thread and the results that wait for their turn. */
+  worker: number
+  /** Cells with what is in them, sums of packets, and the copy of these that is written to disk. */
+  cells: number
+  images: number
 }
 
-function observersAt({ scene }: Model, wavelength: number): number {
+export function memoryEstimate(sizes: Sizes): MemoryEstimate {
+  const { cells, dimensions, scene } = sizes
+  const components = scene.dust.length
+  const observers = Math.max(0, ...observedWavelengths(scene).map((wavelength) => observersAt(sizes, wavelength)))
+  const [bins, slots] = { 1: [FLIGHT_BINS, ANGLE_NODES], 2: [AZIMUTH_BINS, AZIMUTH_BINS], 3: [1, 1] }[dimensions]
+  const seen = dimensions === 1 ? Math.min(1, observers) : observers
+  const tally = 8 * cells * Math.max(components, seen * bins)
+  const heat = components * (TABLE_BYTES + cells * 8 * (6 + 2 * GROUPS + GROUPS / 2))
+  const light = cells * seen * (8 * bins * 2 * GROUPS + slots * (8 + 4 * GROUPS))
+  const sizesOf = scene.cameras.map(({ pixels, wavelengths }) => [pixels[0] * pixels[1], wavelengths.length])
+  const values = sizesOf.reduce((sum, [pixels, count]) => sum + pixels * count, 0)
+  const largest = Math.max(0, ...sizesOf.map(([pixels, count]) => pixels * count))
+  return {
+    program: PROGRAM_BYTES,
+    worker: WORKER_BYTES + WAITING * tally,
+    cells: Math.max(heat, light) + 8 * cells * (1 + components),
+    // Five planes; written out once more, and joined.
+    images: values * 8 * 5 + largest * 8 * 12
+  }
+}
+
+/** The whole of an estimate with so many workers, bytes. */
+export function totalMemory({ program, worker, cells, images }: MemoryEstimate, workers: number): number {
+  return program + worker * workers + cells + images
+}
+
+function observersAt({ scene }: Sizes, wavelength: number): number {
   return [...scene.cameras, ...scene.spectra].filter(({ wavelengths }) => wavelengths.includes(wavelength)).length
 }

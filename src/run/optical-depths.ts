@@ -5,7 +5,7 @@ import { observedWavelengths } from '../model/wavelengths.js'
 import { dustLight } from '../solve/dust-light.js'
 import { givenTemperatures } from '../solve/temperatures.js'
 import { micrometres } from './findings.js'
-import { depthTo } from './wavelength.js'
+import { depthTo } from './stars-seen.js'
 
 /** Optical depths for extinction. */
 export interface OpticalDepths {

@@ -9,13 +9,15 @@ import { cameraPicture } from '../output/png/camera-picture.js'
 import { spectrumEcsv } from '../output/spectrum-ecsv.js'
 import { wavelengthLabels } from '../output/wavelength-label.js'
 import { sceneYaml } from '../scene/write.js'
+import { changedInputs } from './changed-inputs.js'
 import { cellColumns, dustStructure } from './dust-cells.js'
 import { asOutputError } from './output-error.js'
 import { resultWarnings } from './result-warnings.js'
 import { type RunFolder, recordName } from './run-folder.js'
 import { type RunMaking, type RunRecord, runRecord } from './run-record.js'
-import { type RunResult, stopwatch } from './run-scene.js'
+import type { RunResult } from './run-scene.js'
 import { sceneWarnings } from './scene-warnings.js'
+import { stopwatch } from './stopwatch.js'
 
 /** A file of a run: its path in the folder, and how its bytes are made. */
 interface Product {
@@ -31,7 +33,7 @@ export async function writeProducts(result: RunResult, folder: RunFolder, making
   const time = stopwatch()
   const products = productsOf(result)
   const files = [recordName, ...products.map(({ file }) => file)]
-  const warnings = [...sceneWarnings(result.model), ...resultWarnings(result)]
+  const warnings = [...sceneWarnings(result.model), ...resultWarnings(result), ...changedInputs(result.model.scene.inputs)]
   const record = (list: string[]) => runRecord(result, making, warnings, { files: list, time: time() })
   const write = async (file: string, data: string | Uint8Array) => {
     const path = join(folder.path, file)
@@ -66,10 +68,15 @@ function productsOf({ model, dust, images, spectra }: RunResult): Product[] {
     }),
     ...spectra.flatMap((result) => {
       const path = `spectra/${result.spectrum.name}`
+      let drawn: ReturnType<typeof spectrumPlot> | undefined
+      const plot = () => {
+        drawn ??= spectrumPlot(result, scene)
+        return drawn
+      }
       return [
         { file: `${path}.ecsv`, make: () => spectrumEcsv(result, scene) },
-        { file: `${path}.svg`, make: async () => (await spectrumPlot(result, scene)).svg },
-        { file: `${path}.png`, make: async () => (await spectrumPlot(result, scene)).png }
+        { file: `${path}.svg`, make: async () => (await plot()).svg },
+        { file: `${path}.png`, make: async () => (await plot()).png }
       ]
     }),
     ...(model.components.length > 0

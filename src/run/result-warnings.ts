@@ -1,5 +1,5 @@
-import type { Model } from '../model/model.js'
 import { wavelengthLabel } from '../output/wavelength-label.js'
+import { packetsNeeded } from './packets-needed.js'
 import { percent } from './percent.js'
 import { missed } from './precision.js'
 import type { RunResult } from './run-scene.js'
@@ -9,7 +9,7 @@ const TOO_HOT = 1500
 
 /** What the user should know about a result before trusting it. */
 export function resultWarnings(result: RunResult): string[] {
-  const { model, dust, equilibrium } = result
+  const { model, dust } = result
   return [
     ...model.components.flatMap(({ spec }, c) => {
       const hottest = maxOf(dust.temperature, c * model.cells, (c + 1) * model.cells)
@@ -21,7 +21,7 @@ export function resultWarnings(result: RunResult): string[] {
     }),
     ...emptyCells(result),
     ...precisionWarnings(result),
-    ...(equilibrium && !equilibrium.reached ? [unsettled(model, equilibrium)] : [])
+    ...tooFew(result)
   ]
 }
 
@@ -46,9 +46,24 @@ function precisionWarnings(result: RunResult): string[] {
   })
 }
 
-function unsettled({ scene }: Model, { rounds }: NonNullable<RunResult['equilibrium']>): string {
-  const last = rounds[rounds.length - 1]
-  return `dust temperatures: ${scene.effort.equilibrium} packets were too few for ${percent(scene.effort.precision!)} in all that is seen (1 sigma ${percent(last.error)}, last change ${percent(last.change)}); raise effort.equilibrium`
+/** Where the packets did not suffice, and how many would. */
+function tooFew(result: RunResult): string[] {
+  const { effort } = result.model.scene
+  const needed = packetsNeeded(result)
+  const last = result.equilibrium?.rounds.at(-1)
+  const about = (packets: number) => `about ${Number(packets.toPrecision(2)).toExponential().replace('e+', 'e')}`
+  return [
+    ...(needed.equilibrium && last
+      ? [
+          `dust temperatures: ${effort.equilibrium} packets were too few for ${percent(effort.precision!)} (1 sigma in what is seen ${percent(last.worst)}, last change ${percent(last.change)}); it would take ${about(needed.equilibrium)}: effort.equilibrium`
+        ]
+      : []),
+    ...(needed.cameras
+      ? [
+          `scattered light: ${effort.cameras} packets were too few for ${percent(effort.precision!)}; it would take ${about(needed.cameras)} at the wavelength that needs most: effort.cameras`
+        ]
+      : [])
+  ]
 }
 
 function maxOf(values: Float64Array, from: number, to: number): number {

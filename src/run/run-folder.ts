@@ -1,7 +1,7 @@
-import { existsSync } from 'node:fs'
+import { existsSync, statSync } from 'node:fs'
 import { mkdir, readdir, readFile, rm, rmdir, writeFile } from 'node:fs/promises'
-import { dirname, join, resolve, sep } from 'node:path'
-import type { InputFile } from './input-files.js'
+import { basename, dirname, join, resolve, sep } from 'node:path'
+import type { InputFile } from '../scene/types.js'
 import { asOutputError, OutputError } from './output-error.js'
 
 /** A folder in which a run may write. */
@@ -13,22 +13,32 @@ export interface RunFolder {
   abandon: () => Promise<void>
 }
 
+/** How a run comes to a folder: it wants one without a run, replaces what is there, or goes on with the run there, if any. */
+export type Entry = 'begin' | 'replace' | 'continue'
+
+/** The file that makes a folder a run, and the folder in it where an unfinished run keeps its pieces. */
+export const recordName = 'run.json'
+export const stateName = 'state'
+
 /**
- * Makes the folder and tries whether it can be written. Throws OutputError when it cannot, when it holds anything and
- * `force` is not set, or when one of the `inputs` lies in it.
+ * Makes the folder and tries whether it can be written. Throws OutputError when it cannot, when it holds what the entry does
+ * not allow, or when one of the `inputs` lies in it.
  */
-export async function openRunFolder(path: string, force: boolean, inputs: InputFile[]): Promise<RunFolder> {
+export async function openRunFolder(path: string, entry: Entry, inputs: InputFile[]): Promise<RunFolder> {
   const input = inputs.find(({ file }) => resolve(file).startsWith(resolve(path) + sep))
   if (input) throw new OutputError(`${input.file} lies in the folder ${path}; choose another with --out`)
   const made: string[] = []
   const abandon = () => removeEmpty(made)
   try {
     await makeFolders(path, made)
-    const entries = (await readdir(path)).filter((entry) => !entry.startsWith('.'))
-    if (entries.length > 0 && !force) throw new OutputError(refusal(path, entries))
+    const entries = (await readdir(path)).filter((name) => !name.startsWith('.'))
+    const state = entries.includes(stateName)
+    if (entries.length > 0 && !(entry === 'replace' || (entry === 'continue' && state)))
+      throw new OutputError(refusal(path, entries))
     const probe = join(path, `.${process.pid}.part`)
     await writeFile(probe, '')
     await rm(probe)
+    if (entry === 'replace') await rm(join(path, stateName), { recursive: true, force: true })
     return { path, oldFiles: entries.includes(recordName) ? await filesOf(path) : [], abandon }
   } catch (error) {
     await abandon()
@@ -36,10 +46,9 @@ export async function openRunFolder(path: string, force: boolean, inputs: InputF
   }
 }
 
-/** The file that makes a folder a run. */
-export const recordName = 'run.json'
-
 function refusal(path: string, entries: string[]): string {
+  if (entries.includes(stateName))
+    return `the folder ${path} holds an unfinished run; go on with it with --resume, choose another with --out, or replace it with --force`
   const content = entries.includes(recordName) ? 'already holds a run' : 'is not empty'
   return `the folder ${path} ${content}; choose another with --out, or replace what is there with --force`
 }
@@ -57,13 +66,24 @@ async function filesOf(path: string): Promise<string[]> {
   }
 }
 
+/** Removes what processes that died while they wrote have left behind. */
+export async function sweep(path: string): Promise<void> {
+  const files = await readdir(path, { recursive: true })
+  for (const file of files) if (/^\.(.+\.)?\d+\.part$/.test(basename(file))) await rm(join(path, file), { force: true })
+}
+
 /** Makes a folder and those above it, one by one: `mkdir` with `recursive` never returns below /proc (Node 20). */
 async function makeFolders(path: string, made: string[]): Promise<void> {
   const missing: string[] = []
   for (let folder = resolve(path); !existsSync(folder); folder = dirname(folder)) missing.push(folder)
   for (const folder of missing.reverse()) {
-    await mkdir(folder)
-    made.push(folder)
+    try {
+      await mkdir(folder)
+      made.push(folder)
+    } catch (error) {
+      // Another process may have made it meanwhile.
+      if ((error as NodeJS.ErrnoException).code !== 'EEXIST' || !statSync(folder).isDirectory()) throw error
+    }
   }
 }
 

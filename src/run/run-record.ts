@@ -1,9 +1,11 @@
 import { version } from '../output/version.js'
+import type { InputFile } from '../scene/types.js'
+import type { Estimator } from './estimator.js'
 import { type Findings, findings, micrometres } from './findings.js'
-import type { InputFile } from './input-files.js'
-import type { Estimator } from './packets.js'
+import { type PacketsNeeded, packetsNeeded } from './packets-needed.js'
 import { isReached } from './precision.js'
-import type { PhaseTime, RunResult } from './run-scene.js'
+import type { RunResult } from './run-scene.js'
+import type { PhaseTime } from './stopwatch.js'
 
 /** How a run was made: what its result alone does not tell. */
 export interface RunMaking {
@@ -11,7 +13,6 @@ export interface RunMaking {
   started: string
   workers: number
   estimator: Estimator
-  inputs: InputFile[]
 }
 
 /** Content of `run.json`. */
@@ -41,6 +42,8 @@ export interface RunRecord {
     /** Relative 1 sigma asked for; null: exactly the packets given. */
     asked: number | null
     reached: boolean
+    /** About how many packets it would have taken where they did not suffice. */
+    packetsNeeded: PacketsNeeded
     observers: {
       kind: 'camera' | 'spectrum'
       name: string
@@ -63,7 +66,7 @@ export function runRecord(
 ): RunRecord {
   const { model, equilibrium, lightPackets, precision } = result
   const { scene } = model
-  const { estimator, inputs, started, workers } = making
+  const { estimator, started, workers } = making
   const reached = isReached(result)
   return {
     program: 'motelight',
@@ -71,7 +74,7 @@ export function runRecord(
     state: reached ? 'done' : 'precision-not-reached',
     title: scene.title,
     scene: scene.file,
-    inputs,
+    inputs: scene.inputs,
     seed: scene.seed,
     started,
     workers,
@@ -97,6 +100,7 @@ export function runRecord(
     precision: {
       asked: scene.effort.precision,
       reached,
+      packetsNeeded: packetsNeeded(result),
       observers: precision.map(({ kind, name, wavelengths, photonNoise, samplingError }) => ({
         kind,
         name,

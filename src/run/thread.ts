@@ -4,12 +4,12 @@ import { type FieldData, openField } from '../camera/ray-field.js'
 import { pictureRows } from '../camera/rows.js'
 import { stream } from '../math/random.js'
 import type { Detector } from '../transport/detector.js'
-import { tallyFlights } from '../transport/flights.js'
-import { tallyTowards } from '../transport/towards.js'
 import { type EquilibriumMedium, propagateEnergy } from '../transport/equilibrium.js'
 import { tallyExits } from '../transport/exit.js'
-import { tallyPeeled } from '../transport/peel.js'
+import { tallyFlights } from '../transport/flights.js'
+import { type PixelTally, tallyPeeled } from '../transport/peel.js'
 import type { ScatterMedium } from '../transport/scatter-medium.js'
+import { tallyTowards } from '../transport/towards.js'
 import { type Shared, serve } from '../workers/serve.js'
 
 /** What every batch of packets is told. */
@@ -38,11 +38,20 @@ serve({
   towards: ({ packets, seed, observers }: Batch & { observers: Float64Array }, shared: Shared) =>
     tallyTowards(scattering(shared), observers, packets, stream(seed)),
   peeled: ({ packets, seed, detectors }: Batch & { detectors: Detector[] }, shared: Shared) =>
-    tallyPeeled(scattering(shared), detectors, packets, stream(seed)),
+    inOne(tallyPeeled(scattering(shared), detectors, packets, stream(seed))),
   exits: ({ packets, seed, detectors }: Batch & { detectors: Detector[] }, shared: Shared) =>
-    tallyExits(scattering(shared), detectors, packets, stream(seed)),
+    inOne(tallyExits(scattering(shared), detectors, packets, stream(seed))),
   rows: ({ frame, from, to, tolerance, floor, mirrored }: RowsRequest, shared: Shared) =>
     pictureRows(field(shared), frame, from, to, tolerance, floor, mirrored),
   aperture: ({ radius, tolerance, mirrored }: { radius: number; tolerance: number; mirrored: boolean }, shared: Shared) =>
     integrateAperture(field(shared), radius, tolerance, mirrored)
 })
+
+/** Direct, emitted and scattered light of all pixels as one tally. */
+function inOne({ direct, emitted, scattered }: PixelTally & { direct?: Float64Array }): Float64Array {
+  const tally = new Float64Array(3 * emitted.length)
+  if (direct) tally.set(direct)
+  tally.set(emitted, emitted.length)
+  tally.set(scattered, 2 * emitted.length)
+  return tally
+}

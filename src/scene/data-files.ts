@@ -3,7 +3,8 @@ import { SceneError, type SceneProblem } from './error.js'
 import { locateProblem } from './issue-problems.js'
 import { largestDataFile } from './limits.js'
 import { readText } from './read-text.js'
-import type { ScenePath } from './types.js'
+import { sha256 } from './sha256.js'
+import type { InputFile, ScenePath } from './types.js'
 import type { YamlDocument } from './yaml-document.js'
 
 type ParseTable<Table> = (text: string, file: string, shownAs: string) => Table
@@ -11,6 +12,8 @@ type ParseTable<Table> = (text: string, file: string, shownAs: string) => Table
 /** Reads the data files that a scene names, relative to the scene's folder, and keeps what is wrong with them. */
 export class DataFiles {
   readonly problems: SceneProblem[] = []
+  /** Every file read, once. */
+  readonly inputs: InputFile[] = []
 
   constructor(
     private readonly sceneFile: string,
@@ -26,6 +29,7 @@ export class DataFiles {
       this.problems.push(locateProblem(this.document, path, `the file ${file} ${content.reason}`))
       return undefined
     }
+    if (!this.inputs.some((input) => input.file === file)) this.inputs.push({ file, sha256: sha256(content.text) })
     try {
       return parse(content.text, file, resolve(name) === name ? name : join(folder, name))
     } catch (error) {

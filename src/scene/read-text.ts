@@ -7,7 +7,7 @@ export function readText(file: string, limit: number): { text: string } | { reas
     if (stat.isDirectory()) return { reason: 'is a folder, not a file' }
     if (!stat.isFile()) return { reason: 'is not a regular file' }
     if (stat.size > limit) return { reason: `holds ${stat.size} bytes; at most ${limit} are accepted` }
-    const text = new TextDecoder('utf-8', { fatal: true }).decode(readFileSync(file))
+    const text = new TextDecoder('utf-8', { fatal: true, ignoreBOM: true }).decode(readFileSync(file))
     return text.includes('\0') ? { reason: 'is not a text file' } : { text }
   } catch (error) {
     return { reason: describe(error as NodeJS.ErrnoException) }

@@ -8,6 +8,7 @@ import { resolveCamera, resolveSpectrum } from './observers.js'
 import { type SoundParts, soundParts } from './parts.js'
 import { readText } from './read-text.js'
 import { sceneSchema } from './schema/scene-schema.js'
+import { sha256 } from './sha256.js'
 import { parseOpacityTable, parseSpectrumTable } from './tables.js'
 import type { OpacitySpec, Scene, StarSpec } from './types.js'
 import { wording } from './wording.js'
@@ -47,6 +48,7 @@ export function parseScene(text: string, file: string): Scene {
     effort,
     cameras,
     spectra,
+    inputs: [{ file, sha256: sha256(text) }, ...files.inputs],
     locate: (path) => document.locate(path)
   }
 }

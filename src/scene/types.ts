@@ -17,8 +17,17 @@ export interface Scene {
   effort: EffortSpec
   cameras: CameraSpec[]
   spectra: SpectrumSpec[]
+  /** The scene file and then every data file it names, as they were read. */
+  inputs: InputFile[]
   /** Where each part of the scene was written, for messages that arise after reading. */
   locate: (path: ScenePath) => SourceLocation
+}
+
+/** A file that a scene was made from. */
+export interface InputFile {
+  file: string
+  /** SHA-256 of its bytes, hexadecimal (FIPS 180-4). */
+  sha256: string
 }
 
 export type ScenePath = (string | number)[]

@@ -81,6 +81,8 @@ export function equilibriumSetup(model: Model): EquilibriumSetup {
       asymmetry,
       emission: tables.map(({ sampling }) => sampling),
       emissionRow,
+      rosseland: shared(cells),
+      planck: shared(components.length * cells),
       sources,
       sourceTable: makeSamplingTable(Float64Array.from(powers), 1, powers.length)
     },

@@ -1,8 +1,9 @@
-import type { WorkerPool } from '../workers/pool.js'
-import { GROUPS } from './groups.js'
+import type { Ledger, Piece } from '../workers/ledger.js'
+import type { Task, WorkerPool } from '../workers/pool.js'
+import { runKept } from '../workers/run-kept.js'
+import { type Batches, divide, groupOf } from './batches.js'
+import { addTally, copySums, emptySums, type GroupSums } from './group-sums.js'
 
-/** Batches of every round; the groups take them in turn. */
-const BATCHES = 2 * GROUPS
 const FIRST_ROUND = 16_384
 /** A round is at most so many times larger than all before it, and that much larger than the error asks for. */
 const FASTEST = 16
@@ -17,7 +18,10 @@ export interface RoundsProgress {
   error: number
 }
 
+/** Packets at one wavelength, each batch of which gives one tally. */
 export interface RoundsRequest {
+  /** What the workers have to know, under the key `scattering`. */
+  medium: unknown
   /** Handler that plays a batch, and what it gets beside `packets` and `seed`. */
   task: string
   input: object
@@ -26,47 +30,87 @@ export interface RoundsRequest {
   atMost: number
   /** Relative error to reach; null: one round of `atMost` packets. */
   precision: number | null
-  /** Takes the tally of a batch of `share` packets into its group. */
-  add: (tally: unknown, group: number, share: number) => void
   /** Relative error of all rounds so far. */
-  errorOf: () => number
+  errorOf: (sums: GroupSums) => number
+}
+
+export interface RoundsOutcome {
+  sums: GroupSums
+  /** Packets spent. */
+  packets: number
+  /** Relative error after the last round; NaN when none was asked for. */
+  error: number
+}
+
+/** The tasks of a round. */
+export function batchTasks({ task, input, seed }: RoundsRequest, round: number, { count, packets }: Batches): Task[] {
+  return Array.from({ length: count }, (_, batch) => ({
+    name: task,
+    input: { ...input, packets, seed: `${seed}/${round}/${batch}` }
+  }))
+}
+
+/** Where a wavelength's packets stand: `done` batches of the present round are in the sums. */
+interface RoundsState extends RoundsOutcome {
+  round: number
+  /** Size of the present round. */
+  size: number
+  done: number
+  finished: boolean
 }
 
 /**
  * Rounds of packets whose tallies all count, each at least as large as all before it, until the error is small enough or the most
- * packets are spent. Batches are added in their order. Resolves to the packets spent.
+ * packets are spent. Batches are added in their order. Goes on from what the ledger holds under `name`, and keeps it there.
  */
 export async function playRounds(
   request: RoundsRequest,
   pool: WorkerPool,
+  ledger: Ledger,
+  name: string,
   onProgress: (progress: RoundsProgress) => void,
   stop?: AbortSignal
-): Promise<number | 'stopped'> {
-  const { task, input, seed, atMost, precision, add, errorOf } = request
-  let spent = 0
-  let error = Number.NaN
-  let next = FIRST_ROUND
-  for (let round = 0; ; round++) {
-    const packets = precision === null ? atMost : Math.min(next, atMost - spent)
-    const share = Math.max(1, Math.round(packets / BATCHES))
-    const tasks = Array.from({ length: BATCHES }, (_, batch) => ({
-      name: task,
-      input: { ...input, packets: share, seed: `${seed}/${round}/${batch}` }
-    }))
-    const done = await pool.run(
-      tasks,
-      (output, batch) => {
-        add(output, batch % GROUPS, share)
-        onProgress({ round, done: (batch + 1) * share, packets: BATCHES * share, error })
+): Promise<RoundsOutcome | 'stopped'> {
+  const { medium, atMost, precision, errorOf } = request
+  const first = precision === null ? atMost : Math.min(FIRST_ROUND, atMost)
+  const state =
+    (ledger.take(name) as RoundsState | undefined) ??
+    ({ sums: emptySums(), packets: 0, error: Number.NaN, round: 0, size: first, done: 0, finished: false } satisfies RoundsState)
+  const piece = (): Piece => ({ ...state, sums: copySums(state.sums) })
+  pool.share('scattering', medium)
+  while (!state.finished) {
+    const batches = divide(state.size)
+    const complete = await runKept(
+      {
+        tasks: batchTasks(request, state.round, batches),
+        done: state.done,
+        take: (tally, batch) => {
+          addTally(state.sums, groupOf(batch, batches), tally as Float64Array, batches.packets)
+          state.done = batch + 1
+          const { round, done, error } = state
+          onProgress({ round, done: done * batches.packets, packets: batches.count * batches.packets, error })
+        },
+        name,
+        piece
       },
+      pool,
+      ledger,
       stop
     )
-    if (done < BATCHES) return 'stopped'
-    spent += share * BATCHES
-    if (precision === null) return spent
-    error = errorOf()
-    if (error <= precision || atMost - spent < BATCHES) return spent
-    // What is missing to reach the precision, when the error falls with the root of the packets.
-    next = spent * Math.min(FASTEST, Math.max(1, MARGIN * (error / precision) ** 2 - 1))
+    if (!complete) return 'stopped'
+    state.packets += batches.count * batches.packets
+    state.done = 0
+    state.round++
+    if (precision === null) state.finished = true
+    else {
+      state.error = errorOf(state.sums)
+      state.finished = state.error <= precision || atMost - state.packets < batches.count
+      // What is missing to reach the precision, when the error falls with the root of the packets.
+      const missing = state.packets * Math.min(FASTEST, Math.max(1, MARGIN * (state.error / precision) ** 2 - 1))
+      state.size = Math.min(missing, atMost - state.packets)
+    }
+    ledger.offer(name, piece, true)
   }
+  pool.forget('scattering')
+  return state
 }

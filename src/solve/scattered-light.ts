@@ -4,6 +4,7 @@ import { gaussLegendre } from '../math/quadrature.js'
 import type { Model } from '../model/model.js'
 import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS } from '../transport/scatter-medium.js'
 import type { DustLight } from './dust-light.js'
+import type { GroupSums } from './group-sums.js'
 import { GROUPS } from './groups.js'
 
 /** Nodes in the angle between radius and observer at which the scattered light of spherical shells is known. */
@@ -17,12 +18,6 @@ export interface ScatteredLight {
   value: Float64Array
   /** cells x slots x GROUPS: deviations of the groups' estimates. */
   groups: Float32Array
-}
-
-/** Sums of packets x tally over the batches of each group, and the packets behind them. */
-export interface GroupSums {
-  sums: Float64Array[]
-  packets: number[]
 }
 
 const RULE = gaussLegendre(4)

@@ -19,7 +19,7 @@ async function report(text: string) {
 
 describe('check', () => {
   it('tells luminosity, radius, mass and optical depths', async () => {
-    const check = await report(sceneText)
+    const check = await report(sceneWith(['radial: 20', 'radial: 100']))
     // R = sqrt(L / (4 pi sigma T^4)) with sigma = 5.670374e-5 erg/s/cm2/K4 (CODATA 2018), nominal solar values (IAU 2015 B3).
     const radius = Math.sqrt((5000 * 3.828e33) / (4 * Math.PI * 5.670374e-5 * 3000 ** 4)) / 6.957e10
     expect(check.sources[0]).toMatchObject({ luminosityLsun: 5000, temperatureK: 3000 })
@@ -41,8 +41,8 @@ describe('check', () => {
         expect(opticalDepth / ((1.5 * 0.55) / wavelengthUm), name).toBeCloseTo(1, 2)
     }
     expect(check.cells).toMatchObject({
-      count: 20,
-      radial: 20,
+      count: 100,
+      radial: 100,
       polar: 1,
       azimuthal: 1,
       reason: expect.stringContaining('spherical symmetry')

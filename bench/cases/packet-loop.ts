@@ -1,0 +1,46 @@
+import { type BenchCase, interleaved, type Measure } from '../case.js'
+import { lightDust } from '../lit-dust.js'
+import { PacketPool } from '../packet-pool.js'
+import { shellScene } from '../scenes.js'
+import { Twin, tallyDifference } from '../twin.js'
+
+const REPETITIONS = 9
+const PACKETS = 200_000
+/** Ours and the twin round differently where a compiler fuses a product and a sum. */
+const SAME = 1e-12
+
+/** The packet loop of a spherical shell on a worker of the program against the same operations in C. */
+export const packetLoop: BenchCase[] = [1, 10].map((depth) => ({
+  name: `packet-loop-${depth}`,
+  about: `packet loop of a shell of optical depth ${depth} against its twin in C, processor time`,
+  native: true,
+  run: async ({ native, folder }): Promise<Measure[]> => {
+    const dust = lightDust(shellScene({ depth, packets: PACKETS }))
+    const pool = new PacketPool(dust.medium)
+    const twin = new Twin(native!, folder, dust)
+    await pool.warmUp(PACKETS)
+    const [ours, theirs] = await interleaved(
+      REPETITIONS,
+      (i) => pool.play(PACKETS, `bench/${i}`),
+      (i) => twin.play(PACKETS, `bench/${i}`)
+    )
+    await pool.close()
+    const nanoseconds = (seconds: number) => (1e9 * seconds) / PACKETS
+    return [
+      { quantity: 'ours', unit: 'ns/packet', values: ours.map(({ cpuSeconds }) => nanoseconds(cpuSeconds)) },
+      { quantity: 'twin', unit: 'ns/packet', values: theirs.map(({ cpuSeconds }) => nanoseconds(cpuSeconds)) },
+      {
+        quantity: 'speed relative to the twin',
+        unit: '',
+        values: ours.map(({ cpuSeconds }, i) => theirs[i].cpuSeconds / cpuSeconds),
+        target: { atLeast: 0.85 }
+      },
+      {
+        quantity: 'difference of the tallies',
+        unit: '',
+        values: ours.map(({ tally }, i) => tallyDifference(tally, theirs[i].tally)),
+        target: { atMost: SAME }
+      }
+    ]
+  }
+}))

@@ -1,0 +1,42 @@
+import { mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs'
+import { availableParallelism, cpus, tmpdir } from 'node:os'
+import { join } from 'node:path'
+import { fileURLToPath } from 'node:url'
+import { version } from '../src/output/version.js'
+import type { BenchCase } from './case.js'
+import { figureOfMerit } from './cases/figure-of-merit.js'
+import { packetLoop } from './cases/packet-loop.js'
+import { compileNative } from './native.js'
+import { type Row, rowOf, tableLines } from './table.js'
+
+/** `npm run bench` runs every case, `npm run bench -- NAME...` those whose names begin with NAME. */
+const cases: BenchCase[] = [...packetLoop, ...figureOfMerit]
+
+const project = fileURLToPath(new URL('../../', import.meta.url))
+const wanted = process.argv.slice(2)
+const chosen = wanted.length > 0 ? cases.filter(({ name }) => wanted.some((word) => name.startsWith(word))) : cases
+if (chosen.length === 0) {
+  console.error(`no case begins with ${wanted.join(' or ')}; cases: ${cases.map(({ name }) => name).join(', ')}`)
+  process.exit(2)
+}
+
+const folder = mkdtempSync(join(tmpdir(), 'motelight-bench-'))
+const rows: Row[] = []
+try {
+  const native = compileNative(join(project, 'bench', 'native'), folder)
+  if (!native) console.log('No C compiler (gcc): cases against C are left out.')
+  for (const { name, about, run, native: needed } of chosen) {
+    if (needed && !native) continue
+    console.log(`\n${name}: ${about}`)
+    const found = (await run({ native, folder })).map((measure) => rowOf(name, measure))
+    for (const line of tableLines(found)) console.log(line)
+    rows.push(...found)
+  }
+} finally {
+  rmSync(folder, { recursive: true, force: true })
+}
+mkdirSync(join(project, 'out'), { recursive: true })
+const file = join(project, 'out', 'bench.json')
+const machine = { processor: cpus()[0]?.model ?? 'unknown', threads: availableParallelism(), node: process.version }
+writeFileSync(file, `${JSON.stringify({ program: 'motelight', version, machine, date: new Date().toISOString(), rows }, null, 2)}\n`)
+console.log(`\nWritten: ${file}`)

@@ -1,0 +1,42 @@
+import { medianOverBulk } from '../src/math/stats.js'
+import { readDoubles } from './doubles.js'
+import { fitsPlanes } from './fits-planes.js'
+
+/** Pixels that together hold this share of the flux count. */
+const BULK = 0.95
+/** Images of the yardstick, of equally many packets each: GROUPS in native/peel.c. */
+const GROUPS = 16
+
+/** A picture of scattered and emitted light without direct starlight, and the squares of its errors. */
+export interface Picture {
+  light: Float64Array
+  variance: Float64Array
+}
+
+/** A picture of the program's own. */
+export function ourPicture(path: string): Picture {
+  const planes = fitsPlanes(path)
+  const scattered = planes.get('SCATTERED') as Float64Array
+  const emitted = planes.get('EMITTED') as Float64Array
+  const sigma = planes.get('SIGMA') as Float64Array
+  return { light: scattered.map((value, i) => value + emitted[i]), variance: sigma.map((value) => value * value) }
+}
+
+/** The mean of the yardstick's images; the scatter between them gives the variance. */
+export function peeledPicture(path: string): Picture {
+  const images = readDoubles(path)
+  const pixels = images.length / GROUPS
+  const light = new Float64Array(pixels)
+  const variance = new Float64Array(pixels)
+  for (let i = 0; i < pixels; i++) {
+    for (let g = 0; g < GROUPS; g++) light[i] += images[g * pixels + i] / GROUPS
+    for (let g = 0; g < GROUPS; g++) variance[i] += (images[g * pixels + i] - light[i]) ** 2 / (GROUPS * (GROUPS - 1))
+  }
+  return { light, variance }
+}
+
+/** Median relative variance over the pixels that hold 95 % of the flux of `bright`, a picture of the same field. */
+export function relativeVariance({ light, variance }: Picture, bright: Picture): number {
+  const relative = light.map((value, i) => (value > 0 ? variance[i] / (value * value) : Number.POSITIVE_INFINITY))
+  return medianOverBulk(relative, bright.light, BULK)
+}

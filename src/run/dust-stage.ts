@@ -1,0 +1,79 @@
+import type { Model } from '../model/model.js'
+import { observedWavelengths } from '../model/wavelengths.js'
+import { dustLight } from '../solve/dust-light.js'
+import { type EquilibriumResult, equilibriumPiece, needsEquilibrium, solveEquilibrium } from '../solve/equilibrium.js'
+import { type DustTemperatures, givenTemperatures } from '../solve/temperatures.js'
+import type { Ledger } from '../workers/ledger.js'
+import type { WorkerPool } from '../workers/pool.js'
+import { type RunProgress, Stopped } from './progress.js'
+import { quickError } from './quick-error.js'
+import { SHARE } from './share.js'
+import { type PhaseTime, stopwatch } from './stopwatch.js'
+import { emptyProducts } from './wanted.js'
+
+/** Under this name the ledger holds temperatures that are done. */
+export const dustPiece = 'dust'
+
+/** Dust temperatures and how they were found. */
+export interface DustStage {
+  dust: DustTemperatures
+  /** Absent when no temperature had to be solved for. */
+  equilibrium?: Omit<EquilibriumResult, 'dust'>
+  time: PhaseTime
+}
+
+/** Temperatures from the ledger, or found and kept there. Throws WorkerFailure or Stopped. */
+export async function dustStage(
+  model: Model,
+  pool: WorkerPool,
+  ledger: Ledger,
+  onProgress: (progress: RunProgress) => void,
+  stop?: AbortSignal
+): Promise<DustStage> {
+  const clock = stopwatch()
+  if (!needsEquilibrium(model.scene)) return { dust: givenTemperatures(model), time: clock() }
+  const before = ledger.take(dustPiece) as DustStage | undefined
+  if (before) return before
+  const found = await solveEquilibrium(
+    model,
+    pool,
+    ledger,
+    (dust) => errorOfEmission(model, dust),
+    (at) => onProgress({ stage: 'dust', of: at.packets, ...at }),
+    stop
+  )
+  if (found === 'stopped') throw new Stopped()
+  const { dust, ...equilibrium } = found
+  const stage = { dust, equilibrium, time: clock() }
+  ledger.keep(dustPiece, stage)
+  ledger.forget(equilibriumPiece)
+  return stage
+}
+
+/** Wavelengths looked at to see how the noise of the temperatures shows. */
+const LOOKS = 8
+
+/** Largest relative error that the noise of the temperatures makes in what will be seen. */
+function errorOfEmission(model: Model, dust: DustTemperatures): number {
+  const { wantedAt } = emptyProducts(model.scene)
+  const wavelengths = observedWavelengths(model.scene)
+  let worst = 0
+  const looks = Math.min(LOOKS, wavelengths.length)
+  for (let i = 0; i < looks; i++) {
+    const wavelength = wavelengths[Math.floor(((i + 0.5) * wavelengths.length) / looks)]
+    const light = dustLight(model, dust, wavelength)
+    const wanted = wantedAt(wavelength)
+    worst = Math.max(
+      worst,
+      quickError(
+        model,
+        light,
+        [],
+        wanted,
+        wanted.map(() => 0),
+        'all'
+      )
+    )
+  }
+  return worst / SHARE
+}

@@ -1,0 +1,2 @@
+/** How scattered light is estimated. */
+export type Estimator = 'emissivity' | 'peel' | 'exit'

@@ -1,0 +1,112 @@
+import type { ApertureSpectrum, CameraImages } from '../camera/types.js'
+import type { Model } from '../model/model.js'
+import { observedWavelengths } from '../model/wavelengths.js'
+import { dustLight } from '../solve/dust-light.js'
+import { playRounds, type RoundsOutcome, type RoundsProgress, type RoundsRequest } from '../solve/rounds.js'
+import type { DustTemperatures } from '../solve/temperatures.js'
+import type { Ledger } from '../workers/ledger.js'
+import type { WorkerPool } from '../workers/pool.js'
+import type { Estimator } from './estimator.js'
+import { lightJob } from './light-job.js'
+import { type RunProgress, Stopped } from './progress.js'
+import { addTime, type PhaseTime, stopwatch } from './stopwatch.js'
+import { emptyProducts, putValues, valuesOf, type WantedValues } from './wanted.js'
+
+/** Packets at one observed wavelength (cm), and the relative error they left in scattered light; NaN when none was asked for. */
+export interface LightPackets {
+  wavelength: number
+  packets: number
+  error: number
+}
+
+export interface LightStage {
+  images: CameraImages[]
+  spectra: ApertureSpectrum[]
+  lightPackets: LightPackets[]
+  time: PhaseTime
+}
+
+/** Names under which the ledger holds a wavelength that is done, and its packets and pictures half done. */
+export const lightPieces = (index: number) => ({
+  done: `light-${index}`,
+  packets: `packets-${index}`,
+  pictures: `pictures-${index}`
+})
+
+/** Where the packets of a wavelength come from: they are played, or others have played them. */
+export type PacketSource = (
+  request: RoundsRequest,
+  index: number,
+  onProgress: (progress: RoundsProgress) => void
+) => Promise<RoundsOutcome | 'stopped'>
+
+export interface LightOptions {
+  estimator: Estimator
+  ledger: Ledger
+  onProgress: (progress: RunProgress) => void
+  stop?: AbortSignal
+  /** Default: they are played. */
+  packetsFrom?: PacketSource
+}
+
+/** Images and spectra, wavelength by wavelength, from the ledger as far as it goes. Throws WorkerFailure or Stopped. */
+export async function lightStage(
+  model: Model,
+  dust: DustTemperatures,
+  pool: WorkerPool,
+  options: LightOptions
+): Promise<LightStage> {
+  const { estimator, ledger, onProgress, stop } = options
+  const play: PacketSource = (request, index, progress) =>
+    playRounds(request, pool, ledger, lightPieces(index).packets, progress, stop)
+  const packetsFrom = options.packetsFrom ?? play
+  const { images, spectra, wantedAt } = emptyProducts(model.scene)
+  const wavelengths = observedWavelengths(model.scene)
+  const lightPackets: LightPackets[] = []
+  const clock = stopwatch()
+  let time: PhaseTime = { wallSeconds: 0, cpuSeconds: 0 }
+  for (const [index, wavelength] of wavelengths.entries()) {
+    const wanted = wantedAt(wavelength)
+    const names = lightPieces(index)
+    const before = ledger.take(names.done) as DoneLight | undefined
+    if (before) {
+      putValues(wanted, before.values)
+      lightPackets.push({ wavelength, packets: before.packets, error: before.error })
+      time = addTime(time, before.time)
+      continue
+    }
+    clock()
+    const job = lightJob(model, dustLight(model, dust, wavelength), estimator, wanted)
+    const at = { wavelength, index, count: wavelengths.length }
+    const found = job.request
+      ? await packetsFrom(job.request, index, (round) => onProgress({ stage: 'light', ...at, ...round, of: round.packets }))
+      : { sums: undefined, packets: 0, error: 0 }
+    if (found === 'stopped') throw new Stopped()
+    const complete = await job.develop(found.sums, {
+      pool,
+      ledger,
+      name: names.pictures,
+      onDone: (observer, done, of) => onProgress({ stage: 'pictures', ...at, observer, done, of, round: 0, error: Number.NaN }),
+      stop
+    })
+    if (!complete || stop?.aborted) throw new Stopped()
+    const { packets, error } = found
+    const took = clock()
+    time = addTime(time, took)
+    lightPackets.push({ wavelength, packets, error })
+    // Pieces must not pile up faster than they are written.
+    await ledger.settle()
+    ledger.keep(names.done, { values: valuesOf(wanted), packets, error, time: took } satisfies DoneLight)
+    ledger.forget(names.packets)
+    ledger.forget(names.pictures)
+  }
+  return { images, spectra, lightPackets, time }
+}
+
+/** A wavelength that is done, as the ledger holds it. */
+interface DoneLight extends Record<string, unknown> {
+  values: WantedValues[]
+  packets: number
+  error: number
+  time: PhaseTime
+}

@@ -1,0 +1,158 @@
+import { integrateAperture } from '../camera/aperture.js'
+import { pixelFrame, seenFrom } from '../camera/frame.js'
+import type { PatchIntegral } from '../camera/patch.js'
+import { RadialProfile } from '../camera/profile.js'
+import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from '../camera/ray.js'
+import { type FieldData, fieldData, openField } from '../camera/ray-field.js'
+import type { PictureRows } from '../camera/rows.js'
+import { survey } from '../camera/survey.js'
+import { standardError } from '../math/stats.js'
+import type { Model } from '../model/model.js'
+import type { DustLight } from '../solve/dust-light.js'
+import type { ScatteredLight } from '../solve/scattered-light.js'
+import type { Ledger, Piece } from '../workers/ledger.js'
+import type { WorkerPool } from '../workers/pool.js'
+import { runKept } from '../workers/run-kept.js'
+import { mediumFor } from './observers-of.js'
+import { addStars, directFlux } from './stars-seen.js'
+import { putValues, valuesOf, type Wanted, type WantedValues } from './wanted.js'
+
+const ROWS_A_TASK = 8
+
+/** Rays to a radius are seen through a mirror where the cells are symmetric about the plane of the observer and the axis. */
+const mirrored = (model: Model) => model.dimensions < 3
+
+/** Relative accuracy with which rays are placed: a tenth of the precision asked for, or of 1 %. */
+function placingTolerance(model: Model): number {
+  return 0.1 * (model.scene.effort.precision ?? 0.01)
+}
+
+/** What it takes to make pictures beside what is in them. */
+export interface Studio {
+  pool: WorkerPool
+  /** Where pictures half done are kept, and under which name. */
+  ledger: Ledger
+  name: string
+  onDone: (observer: { kind: Wanted['kind']; name: string }, done: number, of: number) => void
+  stop: AbortSignal | undefined
+}
+
+/** How far the pictures of a wavelength are: some of the wanted are done, and some tasks of the next. */
+interface Progress {
+  want: number
+  tasks: number
+  /** Sum of the estimated errors of placing rays in those tasks. */
+  placing: number
+}
+
+/** Makes the pictures and fluxes of everything wanted at one wavelength; false when it was stopped before the end. */
+export async function observeWavelength(
+  model: Model,
+  light: DustLight,
+  scattered: ScatteredLight[],
+  wanted: Wanted[],
+  indices: number[],
+  studio: Studio
+): Promise<boolean> {
+  const tolerance = placingTolerance(model)
+  const { pool, ledger, name, stop } = studio
+  const before = ledger.take(name) as { progress: Progress; values: WantedValues[] } | undefined
+  if (before) putValues(wanted, before.values)
+  const progress = before?.progress ?? { want: 0, tasks: 0, placing: 0 }
+  const piece = (): Piece => ({ progress: { ...progress }, values: valuesOf(wanted) })
+  while (progress.want < wanted.length) {
+    if (stop?.aborted) return false
+    const want = wanted[progress.want]
+    const medium = mediumFor(model, light, scattered, indices[progress.want])
+    const view = seenFrom(model, want.kind === 'spectrum' ? { ...want.spec.view, roll: 0 } : want.spec.view)
+    const data = fieldData(medium, view, tolerance)
+    const onDone = (done: number, of: number) => studio.onDone({ kind: want.kind, name: want.spec.name }, done, of)
+    if (want.kind === 'camera') {
+      const rows = { data, want, tolerance, progress, piece, onDone }
+      if (!(await takePicture(model, rows, studio))) return false
+      addStars(model, light, medium, view, want, progress.placing)
+    } else {
+      const integral = await integralOf(model, data, want.spec.aperture * model.scene.distance, tolerance, pool)
+      writeFlux(model, directFlux(model, light, medium, view, want.spec.aperture * model.scene.distance), integral, want)
+      onDone(1, 1)
+    }
+    Object.assign(progress, { want: progress.want + 1, tasks: 0, placing: 0 })
+    if (progress.want < wanted.length) ledger.offer(name, piece)
+  }
+  return true
+}
+
+async function integralOf(
+  model: Model,
+  data: FieldData,
+  radius: number,
+  tolerance: number,
+  pool: WorkerPool
+): Promise<PatchIntegral> {
+  if (data.kind === 'profile') return apertureOf(openField(data), radius, tolerance, true)
+  let integral: PatchIntegral | undefined
+  pool.share('field', data)
+  await pool.run([{ name: 'aperture', input: { radius, tolerance, mirrored: mirrored(model) } }], (output) => {
+    integral = output as PatchIntegral
+  })
+  pool.forget('field')
+  return integral!
+}
+
+function writeFlux(
+  { scene: { distance } }: Model,
+  direct: number,
+  integral: PatchIntegral,
+  { result, k }: Extract<Wanted, { kind: 'spectrum' }>
+): void {
+  const area = distance * distance
+  result.direct[k] = direct / area
+  result.emitted[k] = integral.value[EMITTED] / area
+  result.scattered[k] = integral.value[SCATTERED] / area
+  result.sigma[k] = standardError(integral.value.subarray(FIRST_GROUP, RAY_VALUES)) / area
+  result.total[k] = result.direct[k] + result.emitted[k] + result.scattered[k]
+  const dust = integral.value[EMITTED] + integral.value[SCATTERED]
+  result.samplingError[k] = dust > 0 ? integral.error / (area * result.total[k]) : 0
+}
+
+function apertureOf(field: ReturnType<typeof openField>, radius: number, tolerance: number, mirror: boolean): PatchIntegral {
+  if (field instanceof RadialProfile) return { value: field.integrate(radius), error: 0 }
+  return integrateAperture(field, radius, tolerance, mirror)
+}
+
+interface PictureWork {
+  data: FieldData
+  want: Extract<Wanted, { kind: 'camera' }>
+  tolerance: number
+  progress: Progress
+  piece: () => Piece
+  onDone: (done: number, of: number) => void
+}
+
+/** Makes the rows of a picture that are left, without the direct light of stars. */
+async function takePicture(model: Model, work: PictureWork, { pool, ledger, name, stop }: Studio): Promise<boolean> {
+  const { data, want, tolerance, progress, piece, onDone } = work
+  const { spec, images, k } = want
+  const frame = pixelFrame(spec, model.scene.distance)
+  // Pixels a hundred times fainter than the mean need no finer rays.
+  const floor = 0.01 * survey(openField(data), frame).mean
+  const tasks = []
+  for (let from = 0; from < frame.height; from += ROWS_A_TASK) {
+    const to = Math.min(frame.height, from + ROWS_A_TASK)
+    tasks.push({ name: 'rows', input: { frame, from, to, tolerance, floor, mirrored: mirrored(model) && spec.view.roll === 0 } })
+  }
+  const take = (output: unknown, index: number) => {
+    const rows = output as PictureRows
+    const at = (k * frame.height + index * ROWS_A_TASK) * frame.width
+    images.emitted.set(rows.emitted, at)
+    images.scattered.set(rows.scattered, at)
+    images.sigma.set(rows.sigma, at)
+    progress.placing += rows.placingError
+    progress.tasks = index + 1
+    onDone(Math.min(frame.height, progress.tasks * ROWS_A_TASK), frame.height)
+  }
+  pool.share('field', data)
+  const complete = await runKept({ tasks, done: progress.tasks, take, name, piece }, pool, ledger, stop)
+  pool.forget('field')
+  return complete
+}

@@ -1,0 +1,46 @@
+import { addDirectLight, directLight, starImage } from '../camera/direct.js'
+import { pixelFrame } from '../camera/frame.js'
+import { RayIntegrator } from '../camera/ray.js'
+import type { RayMedium } from '../camera/ray-medium.js'
+import type { ViewBasis } from '../camera/view.js'
+import type { Model } from '../model/model.js'
+import type { DustLight } from '../solve/dust-light.js'
+import type { Wanted } from './wanted.js'
+
+/** Direct light of all stars within a radius, luminosity per sr (erg/s/Hz/sr). */
+export function directFlux(model: Model, light: DustLight, medium: RayMedium, view: ViewBasis, radius: number): number {
+  const depthAt = depthTo(medium, view)
+  return model.stars.reduce(
+    (sum, { spec, spectrum }) => sum + directLight(starImage(spec, spectrum, light.nu), depthAt, radius),
+    0
+  )
+}
+
+/** Optical depth from the observer to the star at the centre. */
+export function depthTo(medium: RayMedium, view: ViewBasis): (x: number, y: number) => number {
+  const integrator = new RayIntegrator({ ...medium, slots: 0, starlight: undefined }, view)
+  return (x, y) => integrator.depthToOrigin(x, y)
+}
+
+/** Adds the direct light of the stars to a picture of the dust, and the sum of all light. */
+export function addStars(
+  model: Model,
+  light: DustLight,
+  medium: RayMedium,
+  view: ViewBasis,
+  { spec, images, k }: Extract<Wanted, { kind: 'camera' }>,
+  placing: number
+): void {
+  const frame = pixelFrame(spec, model.scene.distance)
+  const from = k * frame.width * frame.height
+  const direct = images.direct.subarray(from, from + frame.width * frame.height)
+  const depthAt = depthTo(medium, view)
+  for (const { spec: star, spectrum } of model.stars) addDirectLight(starImage(star, spectrum, light.nu), depthAt, frame, direct)
+  let sum = 0
+  for (let i = 0; i < direct.length; i++) {
+    const at = from + i
+    images.total[at] = images.direct[at] + images.emitted[at] + images.scattered[at]
+    sum += images.total[at]
+  }
+  images.samplingError[k] = sum > 0 ? placing / sum : 0
+}

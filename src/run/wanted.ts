@@ -1,0 +1,73 @@
+import type { ApertureSpectrum, CameraImages } from '../camera/types.js'
+import type { CameraSpec, Scene, SpectrumSpec } from '../scene/types.js'
+
+/** A camera or spectrum that wants the wavelength at hand, and the index of the wavelength in its list. */
+export type Wanted =
+  | { kind: 'camera'; spec: CameraSpec; images: CameraImages; k: number }
+  | { kind: 'spectrum'; spec: SpectrumSpec; result: ApertureSpectrum; k: number }
+
+const PLANES = ['total', 'sigma', 'direct', 'emitted', 'scattered'] as const
+
+/** Values of one camera or spectrum at one wavelength. */
+export type WantedValues = Record<(typeof PLANES)[number], Float64Array> & { samplingError: number }
+
+/** Products full of zeros, and which of them want a wavelength. */
+export function emptyProducts(scene: Scene) {
+  const arrays = (length: number) => ({
+    total: new Float64Array(length),
+    sigma: new Float64Array(length),
+    direct: new Float64Array(length),
+    emitted: new Float64Array(length),
+    scattered: new Float64Array(length)
+  })
+  const images = scene.cameras.map((camera): CameraImages => {
+    const [width, height] = camera.pixels
+    const count = camera.wavelengths.length
+    return { camera, width, height, ...arrays(width * height * count), samplingError: new Array(count).fill(0) }
+  })
+  const spectra = scene.spectra.map((spectrum): ApertureSpectrum => {
+    const count = spectrum.wavelengths.length
+    return { spectrum, ...arrays(count), samplingError: new Array(count).fill(0) }
+  })
+  const wantedAt = (wavelength: number): Wanted[] => [
+    ...images.flatMap((result) =>
+      indicesOf(result.camera.wavelengths, wavelength).map(
+        (k): Wanted => ({ kind: 'camera', spec: result.camera, images: result, k })
+      )
+    ),
+    ...spectra.flatMap((result) =>
+      indicesOf(result.spectrum.wavelengths, wavelength).map(
+        (k): Wanted => ({ kind: 'spectrum', spec: result.spectrum, result, k })
+      )
+    )
+  ]
+  return { images, spectra, wantedAt }
+}
+
+/** A copy of the values of what is wanted. */
+export function valuesOf(wanted: Wanted[]): WantedValues[] {
+  return wanted.map((want) => {
+    const { product, from, to } = placeOf(want)
+    const copies = PLANES.map((plane) => [plane, product[plane].slice(from, to)])
+    return { ...Object.fromEntries(copies), samplingError: product.samplingError[want.k] } as WantedValues
+  })
+}
+
+/** Puts values that `valuesOf` gave back where they came from. */
+export function putValues(wanted: Wanted[], values: WantedValues[]): void {
+  wanted.forEach((want, i) => {
+    const { product, from } = placeOf(want)
+    for (const plane of PLANES) product[plane].set(values[i][plane], from)
+    product.samplingError[want.k] = values[i].samplingError
+  })
+}
+
+function placeOf(want: Wanted) {
+  const product = want.kind === 'camera' ? want.images : want.result
+  const length = want.kind === 'camera' ? want.images.width * want.images.height : 1
+  return { product, from: want.k * length, to: (want.k + 1) * length }
+}
+
+function indicesOf(values: number[], value: number): number[] {
+  return values.flatMap((other, k) => (other === value ? [k] : []))
+}

@@ -1,0 +1,49 @@
+import { buildModel, planCells } from '../model/build-model.js'
+import type { Model } from '../model/model.js'
+import type { Scene } from '../scene/types.js'
+import { type Ledger, noLedger } from '../workers/ledger.js'
+import { WorkerPool } from '../workers/pool.js'
+import type { Estimator } from './estimator.js'
+import type { RunProgress } from './progress.js'
+import { requireMemory } from './require-memory.js'
+import { type PhaseTime, stopwatch } from './stopwatch.js'
+
+export interface RunOptions {
+  /** Worker threads. */
+  workers: number
+  estimator: Estimator
+  onProgress: (progress: RunProgress) => void
+  stop?: AbortSignal
+  /** Where the run keeps its state; default: nowhere. */
+  ledger?: Ledger
+  /** Most memory it may take, bytes; default: what the machine has. */
+  memory?: number
+}
+
+/** A model and the workers that are to run it. */
+export interface Crew {
+  model: Model
+  pool: WorkerPool
+  ledger: Ledger
+  /** What building the model took. */
+  time: PhaseTime
+}
+
+/** Builds the model, starts workers, and lets `work` use them; the ledger is settled and the workers ended whatever comes. */
+export async function withCrew<Result>(
+  scene: Scene,
+  { workers, ledger = noLedger, memory }: RunOptions,
+  work: (crew: Crew) => Promise<Result>
+): Promise<Result> {
+  const clock = stopwatch()
+  const plan = planCells(scene)
+  requireMemory(plan, workers, memory)
+  const model = buildModel(scene, plan)
+  const pool = new WorkerPool(workers, new URL('./thread.js', import.meta.url))
+  try {
+    return await work({ model, pool, ledger, time: clock() })
+  } finally {
+    await pool.close()
+    await ledger.settle()
+  }
+}

@@ -1,0 +1,24 @@
+import { GROUPS } from './groups.js'
+
+/** Fewest and most batches in a group, and the packets of a batch that are worth dividing it. */
+const FEWEST = 2
+const MOST = 1024
+const PACKETS = 8192
+
+/** How a round is divided: batches of equally many packets, an equal number of batches to each group, one after the other. */
+export interface Batches {
+  count: number
+  /** Of each batch, at least one. */
+  packets: number
+}
+
+/** Depends on the packets alone, so that results do not depend on who computes them. */
+export function divide(packets: number): Batches {
+  const inGroup = Math.min(MOST, Math.max(FEWEST, Math.ceil(packets / (GROUPS * PACKETS))))
+  const count = GROUPS * inGroup
+  return { count, packets: Math.max(1, Math.round(packets / count)) }
+}
+
+export function groupOf(batch: number, { count }: Batches): number {
+  return Math.floor((batch * GROUPS) / count)
+}

@@ -1,0 +1,63 @@
+import { afterEach, describe, expect, it } from 'vitest'
+import { type Task, WorkerPool } from '../../src/workers/pool.js'
+
+const script = new URL('./faulty-worker.mjs', import.meta.url)
+const doubles = (count: number): Task[] => Array.from({ length: count }, (_, i) => ({ name: 'double', input: i }))
+
+let pool: WorkerPool
+const open = (size: number) => {
+  pool = new WorkerPool(size, script)
+  return pool
+}
+afterEach(() => pool.close())
+
+describe('a pool of workers', () => {
+  it.each([1, 2, 3, 8])('%i: hands back results in the order of the tasks', async (size) => {
+    const results: unknown[] = []
+    const done = await open(size).run(doubles(40), (output, index) => {
+      expect(index).toBe(results.length)
+      results.push(output)
+    })
+    expect(done).toBe(40)
+    expect(results).toEqual(doubles(40).map(({ input }) => 2 * (input as number)))
+  })
+
+  it('finishes what is in hand when stopped, and can go on', async () => {
+    const stop = new AbortController()
+    const results: unknown[] = []
+    const take = (output: unknown) => {
+      results.push(output)
+      if (results.length === 5) stop.abort()
+    }
+    const done = await open(2).run(doubles(40), take, stop.signal)
+    expect(done).toBe(results.length)
+    expect(done).toBeGreaterThanOrEqual(5)
+    expect(done).toBeLessThan(40)
+    expect(await pool.run(doubles(3), () => {})).toBe(3)
+  })
+
+  it.each([
+    ['throw', /a worker thread died: out of control/],
+    ['exit', /a worker thread ended unexpectedly \(code 3\)/],
+    ['fail', /a worker thread failed: no such thing/]
+  ])('a worker that breaks (%s) ends the run with a sentence, in order until then, and for good', async (name, message) => {
+    const tasks = doubles(20)
+    tasks[9] = { name, input: 0 }
+    const results: unknown[] = []
+    await expect(open(2).run(tasks, (output) => results.push(output))).rejects.toThrow(message)
+    expect(results).toEqual(doubles(results.length).map(({ input }) => 2 * (input as number)))
+    await expect(pool.run(doubles(1), () => {})).rejects.toThrow(message)
+  })
+
+  it('a fault while taking a result ends the run', async () => {
+    const run = open(2).run(doubles(20), (_, index) => {
+      if (index === 4) throw new Error('the disk is full')
+    })
+    await expect(run).rejects.toThrow('the disk is full')
+  })
+
+  it('a script that is not there ends the run', async () => {
+    pool = new WorkerPool(1, new URL('./nowhere.mjs', import.meta.url))
+    await expect(pool.run(doubles(1), () => {})).rejects.toThrow(/a worker thread died: .*nowhere/)
+  })
+})
