@@ -20,7 +20,11 @@ export interface CommandRun extends Times, Usage {
 }
 
 /** Runs a scene given as a text, or a scene file, as a user would. */
-export async function runCommand(scene: { text: string } | { file: string }, workers: number, folder: string): Promise<CommandRun> {
+export async function runCommand(
+  scene: { text: string } | { file: string },
+  folder: string,
+  { workers = 1, seed = 0 } = {}
+): Promise<CommandRun> {
   mkdirSync(folder, { recursive: true })
   const file = 'file' in scene ? scene.file : join(folder, 'scene.yaml')
   if ('text' in scene) {
@@ -29,7 +33,8 @@ export async function runCommand(scene: { text: string } | { file: string }, wor
   }
   const out = join(folder, 'out')
   const usageFile = join(folder, 'usage.json')
-  const words = ['--import', preload, program, 'run', file, '--workers', String(workers), '--out', out, '--force', '--quiet']
+  const options = ['--workers', String(workers), '--seed', `bench-${seed}`, '--out', out, '--force', '--quiet']
+  const words = ['--import', preload, program, 'run', file, ...options]
   const start = performance.now()
   await new Promise<void>((resolve, reject) => {
     const child = execFile(process.execPath, words, { env: { ...process.env, [USAGE_FILE]: usageFile } }, (error, _, stderr) => {

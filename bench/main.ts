@@ -5,18 +5,23 @@ import { fileURLToPath } from 'node:url'
 import { version } from '../src/output/version.js'
 import type { BenchCase } from './case.js'
 import { figureOfMerit } from './cases/figure-of-merit.js'
+import { memory } from './cases/memory.js'
 import { packetLoop } from './cases/packet-loop.js'
+import { scaling } from './cases/scaling.js'
+import { wholeRunCases } from './cases/whole-runs.js'
+import { workerCases } from './cases/workers.js'
 import { compileNative } from './native.js'
 import { type Row, rowOf, tableLines } from './table.js'
 
-/** `npm run bench` runs every case, `npm run bench -- NAME...` those whose names begin with NAME. */
-const cases: BenchCase[] = [...packetLoop, ...figureOfMerit]
+/** `npm run bench` runs every case, `npm run bench -- NAME...` that case, or all of a family such as `shell`. */
+const cases: BenchCase[] = [...packetLoop, ...figureOfMerit, ...wholeRunCases, ...scaling, ...workerCases, ...memory]
 
 const project = fileURLToPath(new URL('../../', import.meta.url))
 const wanted = process.argv.slice(2)
-const chosen = wanted.length > 0 ? cases.filter(({ name }) => wanted.some((word) => name.startsWith(word))) : cases
+const chosen =
+  wanted.length > 0 ? cases.filter(({ name }) => wanted.some((word) => name === word || name.startsWith(`${word}-`))) : cases
 if (chosen.length === 0) {
-  console.error(`no case begins with ${wanted.join(' or ')}; cases: ${cases.map(({ name }) => name).join(', ')}`)
+  console.error(`no case is called ${wanted.join(' or ')}; cases: ${cases.map(({ name }) => name).join(', ')}`)
   process.exit(2)
 }
 
@@ -38,5 +43,8 @@ try {
 mkdirSync(join(project, 'out'), { recursive: true })
 const file = join(project, 'out', 'bench.json')
 const machine = { processor: cpus()[0]?.model ?? 'unknown', threads: availableParallelism(), node: process.version }
-writeFileSync(file, `${JSON.stringify({ program: 'motelight', version, machine, date: new Date().toISOString(), rows }, null, 2)}\n`)
+writeFileSync(
+  file,
+  `${JSON.stringify({ program: 'motelight', version, machine, date: new Date().toISOString(), rows }, null, 2)}\n`
+)
 console.log(`\nWritten: ${file}`)

@@ -35,8 +35,14 @@ export function peeledPicture(path: string): Picture {
   return { light, variance }
 }
 
-/** Median relative variance over the pixels that hold 95 % of the flux of `bright`, a picture of the same field. */
+/**
+ * Median relative variance over the pixels that hold 95 % of the flux of `bright`, a better picture of the same field. Relative to
+ * its light, scaled to the same flux: a noisy picture's own light would say too little where it caught nothing.
+ */
 export function relativeVariance({ light, variance }: Picture, bright: Picture): number {
-  const relative = light.map((value, i) => (value > 0 ? variance[i] / (value * value) : Number.POSITIVE_INFINITY))
+  const scale = sum(light) / sum(bright.light)
+  const relative = variance.map((value, i) => value / (scale * bright.light[i]) ** 2)
   return medianOverBulk(relative, bright.light, BULK)
 }
+
+const sum = (values: Float64Array) => values.reduce((total, value) => total + value, 0)

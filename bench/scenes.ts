@@ -8,8 +8,8 @@ interface Effort {
 const effortOf = ({ packets, precision }: Effort) =>
   packets ? `{precision: none, cameras: ${packets}}` : `{precision: ${precision}, cameras: 1e9, equilibrium: 1e9}`
 
-const GREY =
-  '{law: power, reference: {wavelength: 1 um, absorption: 1000 cm2/g}, slope: 0, scattering: {albedo: 0.6, asymmetry: 0.5}}'
+const dustOf = (slope: number) =>
+  `{law: power, reference: {wavelength: 1 um, absorption: 1000 cm2/g}, slope: ${slope}, scattering: {albedo: 0.6, asymmetry: 0.5}}`
 
 export const SHELL_FIELD = { text: '200 au', halfAu: 100 }
 export const DISK_FIELD = { text: '420 au', halfAu: 210 }
@@ -28,10 +28,10 @@ export function shellScene({ depth, glow, pixels = PIXELS, ...effort }: ShellOpt
 distance: 100 pc
 seed: bench
 ${glow ? '' : 'sources: [{name: star, temperature: 5000 K, luminosity: 100 Lsun}]'}
-opacities: {grey: ${GREY}}
+opacities: {grains: ${dustOf(0)}}
 dust:
   - name: shell
-    opacity: grey
+    opacity: grains
     shape: {kind: shell, inner: 10 au, outer: 100 au, slope: -2}
     amount: {optical-depth: ${depth}, at: 1 um}
     temperature: ${glow ? `${glow} K` : 'none'}
@@ -62,10 +62,10 @@ export function diskScene(options: DiskOptions): string {
 distance: 140 pc
 seed: bench
 sources: [{name: star, temperature: 4500 K, luminosity: 2 Lsun}]
-opacities: {grey: ${GREY}}
+opacities: {grains: ${dustOf(temperature === 'solve' ? 1 : 0)}}
 dust:
   - name: disk
-    opacity: grey
+    opacity: grains
     shape: {kind: disk, inner: 5 au, outer: 200 au, surface-slope: -1, scale-height: {value: 8 au, at: 100 au, flaring: 1.2}}
     amount: {optical-depth: ${depth}, at: 1 um}
     temperature: ${temperature}

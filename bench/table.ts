@@ -25,7 +25,9 @@ export function rowOf(name: string, measure: Measure): Row {
 }
 
 const number = (value: number) =>
-  value !== 0 && (Math.abs(value) >= 1e5 || Math.abs(value) < 1e-3) ? value.toExponential(2) : String(Number(value.toPrecision(4)))
+  value !== 0 && (Math.abs(value) >= 1e5 || Math.abs(value) < 1e-3)
+    ? value.toExponential(2)
+    : String(Number(value.toPrecision(4)))
 
 /** Lines of text: quantity, median with lowest and highest, and the target with a word on it. */
 export function tableLines(rows: Row[]): string[] {
@@ -34,7 +36,9 @@ export function tableLines(rows: Row[]): string[] {
     number(middle),
     unit,
     `${number(lowest)} to ${number(highest)}`,
-    target ? `${'atLeast' in target ? `>= ${number(target.atLeast)}` : `<= ${number(target.atMost)}`} ${met ? 'met' : 'missed'}` : ''
+    target
+      ? `${'atLeast' in target ? `>= ${number(target.atLeast)}` : `<= ${number(target.atMost)}`} ${met ? 'met' : 'missed'}`
+      : ''
   ])
   const widths = [0, 1, 2, 3].map((k) => Math.max(...cells.map((row) => row[k].length)))
   return cells.map((row) =>

@@ -26,23 +26,32 @@ async function compete({ scene, halfAu, inclination, packets, peelPackets, atLea
   const medium = join(folder, 'medium.bin')
   const images = join(folder, 'peeled.bin')
   writeMedium(medium, lightDust(text))
-  const peel = (forced: 0 | 1) => () => {
-    const times = native!('peel', medium, images, inclination, halfAu * AU, PIXELS, peelPackets, forced)
+  const peel = (forced: 0 | 1) => (repetition: number) => {
+    const times = native!('peel', medium, images, inclination, halfAu * AU, PIXELS, peelPackets, forced, repetition + 1)
     return { ...times, picture: peeledPicture(images) }
   }
-  const ours = async () => {
-    const run = await runCommand({ text }, 1, join(folder, 'ours'))
+  const ours = async (repetition: number) => {
+    const run = await runCommand({ text }, join(folder, 'ours'), { seed: repetition })
     return { ...run, picture: ourPicture(join(run.out, 'images', 'c0.fits')) }
   }
   const [mine, plain, forced] = await interleaved(REPETITIONS, ours, peel(0), peel(1))
   const bright = mine[0].picture
-  const cost = ({ cpuSeconds, picture }: { cpuSeconds: number; picture: Picture }) => cpuSeconds * relativeVariance(picture, bright)
+  const cost = ({ cpuSeconds, picture }: { cpuSeconds: number; picture: Picture }) =>
+    cpuSeconds * relativeVariance(picture, bright)
   const best = mine.map((_, i) => Math.min(cost(plain[i]), cost(forced[i])))
   return [
     { quantity: 'ours, processor time', unit: 's', values: mine.map(({ cpuSeconds }: CommandRun) => cpuSeconds) },
-    { quantity: 'ours, relative sigma', unit: '', values: mine.map(({ picture }) => Math.sqrt(relativeVariance(picture, bright))) },
+    {
+      quantity: 'ours, relative sigma',
+      unit: '',
+      values: mine.map(({ picture }) => Math.sqrt(relativeVariance(picture, bright)))
+    },
     { quantity: 'peel-off, processor time', unit: 's', values: plain.map(({ cpuSeconds }) => cpuSeconds) },
-    { quantity: 'peel-off, relative sigma', unit: '', values: plain.map(({ picture }) => Math.sqrt(relativeVariance(picture, bright))) },
+    {
+      quantity: 'peel-off, relative sigma',
+      unit: '',
+      values: plain.map(({ picture }) => Math.sqrt(relativeVariance(picture, bright)))
+    },
     { quantity: 'merit relative to plain peel-off', unit: '', values: mine.map((run, i) => cost(plain[i]) / cost(run)) },
     { quantity: 'merit relative to forced peel-off', unit: '', values: mine.map((run, i) => cost(forced[i]) / cost(run)) },
     {
@@ -55,11 +64,11 @@ async function compete({ scene, halfAu, inclination, packets, peelPackets, atLea
 }
 
 const shells: Contest[] = [
-  { depth: 0.1, packets: 1e6, peelPackets: 1e6, atLeast: 1e5 },
-  { depth: 1, packets: 1e6, peelPackets: 6e5, atLeast: 5000 },
-  { depth: 10, packets: 1e6, peelPackets: 2e5, atLeast: 2000 },
+  { depth: 0.1, packets: 3e6, peelPackets: 1e6, atLeast: 1e5 },
+  { depth: 1, packets: 3e6, peelPackets: 6e5, atLeast: 5000 },
+  { depth: 10, packets: 2e6, peelPackets: 4e5, atLeast: 2000 },
   // No starlight gets through so much dust: its own glow is looked at.
-  { depth: 100, packets: 1e6, peelPackets: 4e5, atLeast: 500, glow: 300 }
+  { depth: 100, packets: 2e6, peelPackets: 4e5, atLeast: 500, glow: 300 }
 ].map(({ depth, packets, peelPackets, atLeast, glow }) => ({
   name: `shell-${depth}`,
   about: `picture of a shell of optical depth ${depth}${glow ? `, dust at ${glow} K without a star` : ', scattered light'}: whole command against peel-off in C`,

@@ -1,7 +1,7 @@
 // Brute-force peel-off images of a point star and glowing dust in spherical or axisymmetric cells: every emission by dust and every
 // scattering sends its light, dimmed by the cells on the way, to one camera (Yusef-Zadeh, Morris & White 1984, ApJ 278, 186).
 // Analog flights, albedo as a weight. Starlight that is not scattered is left out.
-// peel MEDIUM IMAGES INCLINATION HALF PIXELS PACKETS FORCED: inclination in degrees, half the field in cm; FORCED 1 makes the first
+// peel MEDIUM IMAGES INCLINATION HALF PIXELS PACKETS FORCED SEED: inclination in degrees, half the field in cm; FORCED 1 makes the first
 // scattering of starlight certain. Writes GROUPS images one after another (erg/s/Hz/sr in a pixel, each a full estimate) and prints the times.
 #include "clock.h"
 #include "medium.h"
@@ -211,8 +211,8 @@ static void followPacket(double power, bool forced, double *image) {
 }
 
 int main(int argc, char **argv) {
-  if (argc != 8) {
-    fprintf(stderr, "peel MEDIUM IMAGES INCLINATION HALF PIXELS PACKETS FORCED\n");
+  if (argc != 9) {
+    fprintf(stderr, "peel MEDIUM IMAGES INCLINATION HALF PIXELS PACKETS FORCED SEED\n");
     return 2;
   }
   m = readMedium(argv[1]);
@@ -235,7 +235,7 @@ int main(int argc, char **argv) {
   const double power = (starlight + sum) / each;
   for (int warm = 1; warm >= 0; warm--) {
     for (size_t i = 0; i < size; i++) images[i] = 0;
-    seed(1);
+    seed(atoi(argv[8]) + warm * 1000);
     const double wall = secondsOf(CLOCK_MONOTONIC), cpu = secondsOf(CLOCK_PROCESS_CPUTIME_ID);
     for (int group = 0; group < GROUPS; group++)
       for (int n = 0; n < (warm ? each / 50 : each); n++) followPacket(power, forced, images + (size_t)group * pixels * pixels);

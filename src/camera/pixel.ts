@@ -18,6 +18,8 @@ const NOISE_SHARE = 0.3
 const SPREAD = 30
 /** So is a pixel whose corners differ from its quarters by this many tolerances: a thin dark lane may hide from all rays within. */
 const CORNERS = 10
+/** That is looked into where a pixel is larger than this share of its distance from the centre: a disk's lane is thicker beyond. */
+const LANE = 0.03
 /** Half the distance of those corners over the width of the pixel. */
 const CORNER = 0.499
 const DEEPEST = 10
@@ -38,8 +40,12 @@ export class PixelIntegrator {
   /** Light of the four quarters at each level. */
   private readonly lights = new Float64Array(4 * (DEEPEST + 1))
   private allowed = 0
-  /** Mean light of the corners of the pixel. */
+  /** Mean light of the corners of the pixel; NaN where they are not looked at. */
   private corners = 0
+  /** The brightest ray through a quarter, and where it is. */
+  private brightest = 0
+  private brightestX = 0
+  private brightestY = 0
 
   /** `floor`: intensity below which no accuracy is asked for. */
   constructor(
@@ -69,10 +75,14 @@ export class PixelIntegrator {
     const light = middle[EMITTED] + middle[SCATTERED]
     const noise = standardError(middle.subarray(FIRST_GROUP, RAY_VALUES))
     this.allowed = Math.max(LEEWAY * tolerance * Math.max(this.floor, light), NOISE_SHARE * noise)
-    this.corners = this.cornerLight(x, y, width, height)
+    const near = Math.max(width, height) > LANE * Math.hypot(nearX, nearY)
+    this.corners = near ? this.cornerLight(x, y, width, height) : Number.NaN
+    this.brightest = 0
     this.divide(x, y, width, height, light, 1, 0)
-    // The photon noise of the middle ray, in proportion, stands for the pixel.
-    const ratio = light > 0 ? (mean[EMITTED] + mean[SCATTERED]) / light : 1
+    // The photon noise of the middle ray, in proportion, stands for the pixel; of the brightest one where the middle is dark.
+    const all = mean[EMITTED] + mean[SCATTERED]
+    if (light < 0.5 * all) field.sample(this.brightestX, this.brightestY, middle, true)
+    const ratio = all > 0 ? all / (middle[EMITTED] + middle[SCATTERED]) : 0
     for (let k = FIRST_GROUP; k < RAY_VALUES; k++) mean[k] = ratio * middle[k]
   }
 
@@ -119,13 +129,20 @@ export class PixelIntegrator {
     let low = Number.POSITIVE_INFINITY
     let high = Number.NEGATIVE_INFINITY
     for (let q = 0; q < 4; q++) {
-      field.sample(x + (q % 2 === 0 ? -0.25 : 0.25) * width, y + (q < 2 ? -0.25 : 0.25) * height, ray, false)
+      const qx = x + (q % 2 === 0 ? -0.25 : 0.25) * width
+      const qy = y + (q < 2 ? -0.25 : 0.25) * height
+      field.sample(qx, qy, ray, false)
       emitted += ray[EMITTED]
       scattered += ray[SCATTERED]
       const light = ray[EMITTED] + ray[SCATTERED]
       lights[4 * level + q] = light
       if (light < low) low = light
       if (light > high) high = light
+      if (light > this.brightest) {
+        this.brightest = light
+        this.brightestX = qx
+        this.brightestY = qy
+      }
     }
     const light = 0.25 * (emitted + scattered)
     const error = Math.abs(light - middle) * share

@@ -68,9 +68,15 @@ function brute(grid: SphericalWalls, x: number, y: number, z: number): number {
   const radius = Math.hypot(x, y, z)
   const ir = grid.r.findLastIndex((wall) => wall <= radius)
   if (ir === 0) return 0
-  const it = Math.min(grid.cosTheta.findLastIndex((wall) => wall >= z / radius), grid.cosTheta.length - 2)
+  const it = Math.min(
+    grid.cosTheta.findLastIndex((wall) => wall >= z / radius),
+    grid.cosTheta.length - 2
+  )
   const azimuth = (Math.atan2(y, x) + 2 * Math.PI) % (2 * Math.PI)
-  const ip = Math.min(grid.phi.findLastIndex((wall) => wall <= azimuth), grid.phi.length - 2)
+  const ip = Math.min(
+    grid.phi.findLastIndex((wall) => wall <= azimuth),
+    grid.phi.length - 2
+  )
   return 1 + ((ir - 1) * (grid.cosTheta.length - 1) + it) * (grid.phi.length - 1) + ip
 }
 
@@ -92,12 +98,17 @@ describe('SphericalWalk', () => {
 
   it('sums cell volumes to the sphere', () => {
     fc.assert(
-      fc.property(fc.integer({ min: 2, max: 30 }), fc.integer({ min: 1, max: 20 }), fc.integer({ min: 1, max: 9 }), (nr, nt, np) => {
-        const grid = walls(nr, nt, np, 100)
-        const volume = cellVolumes(grid, new Float64Array(cellCount(grid)))
-        const total = volume.reduce((sum, value) => sum + value, 0)
-        expect(total / ((4 / 3) * Math.PI * 1e6)).toBeCloseTo(1, 10)
-      })
+      fc.property(
+        fc.integer({ min: 2, max: 30 }),
+        fc.integer({ min: 1, max: 20 }),
+        fc.integer({ min: 1, max: 9 }),
+        (nr, nt, np) => {
+          const grid = walls(nr, nt, np, 100)
+          const volume = cellVolumes(grid, new Float64Array(cellCount(grid)))
+          const total = volume.reduce((sum, value) => sum + value, 0)
+          expect(total / ((4 / 3) * Math.PI * 1e6)).toBeCloseTo(1, 10)
+        }
+      )
     )
   })
 

@@ -159,7 +159,7 @@ spectra:
     wavelengths: [${Object.keys(spectrum).join(' um, ')} um]
 `
 
-describe.each(envelopes)('dusty envelope, density r^-$p, optical depth $depth', (envelope) => {
+describe.each(envelopes)('dusty envelope, p = $p, optical depth $depth', (envelope) => {
   let run: RunResult
   beforeAll(async () => {
     run = await runText(sceneOf(envelope))

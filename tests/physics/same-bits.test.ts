@@ -52,9 +52,9 @@ const cases: [string, string, 'emissivity' | 'peel' | 'exit'][] = [
 ]
 
 describe('same seed, same bits', () => {
-  it.each(cases)('with 1, 2 and 3 workers: %s', async (_, text, estimator) => {
+  it.each(cases)('with 1, 2, 3 and 8 workers: %s', async (_, text, estimator) => {
     const one = digest(await runText(text, { workers: 1, estimator }))
-    for (const workers of [2, 3]) expect(digest(await runText(text, { workers, estimator })), `${workers} workers`).toBe(one)
+    for (const workers of [2, 3, 8]) expect(digest(await runText(text, { workers, estimator })), `${workers} workers`).toBe(one)
   })
 
   it('another seed gives other bits', async () => {

@@ -25,7 +25,7 @@ describe('noise of a scattering shell', () => {
     [10, 2.5e-2]
   ])('optical depth %d: median relative sigma below %d', async (depth, promise) => {
     const { precision, lightPackets } = await runText(sceneOf(depth))
-    expect(lightPackets[0].packets).toBe(1e6)
+    expect(Math.abs(lightPackets[0].packets / 1e6 - 1)).toBeLessThan(1e-3)
     expect(precision[0].photonNoise[0]).toBeLessThan(promise)
     expect(precision[0].photonNoise[0]).toBeGreaterThan(0)
     expect(precision[0].samplingError[0]).toBeLessThan(0.01)

@@ -36,6 +36,9 @@ ${[
 /** Pixels are divided alike but for their places: rays are placed to a tenth of 1 %, single pixels to three times that. */
 const PLACING = 0.003
 
+/** What the dust sends at the first and at the second wavelength; the star would outshine it. */
+const PARTS = ['scattered', 'emitted'] as const
+
 type Place = (x: number, y: number) => [number, number]
 
 describe('pictures of a disk', () => {
@@ -49,8 +52,8 @@ describe('pictures of a disk', () => {
    * pixels that hold 95 % of the light: those for which accuracy is promised.
    */
   function apart(a: CameraImages, b: CameraImages, place: Place, k: number): number {
-    const one = plane(a, 'total', k)
-    const other = plane(b, 'total', k)
+    const one = plane(a, PARTS[k], k)
+    const other = plane(b, PARTS[k], k)
     const brightest = Array.from(one.keys()).sort((i, j) => one[j] - one[i])
     let held = 0
     let worst = 0

@@ -45,7 +45,8 @@ describe('a piece on disk', () => {
 
   it('larger than a chunk comes back', async () => {
     const values = Float64Array.from({ length: 1_200_000 }, (_, i) => Math.sin(i))
-    expect((read(await written({ values })) as { values: Float64Array }).values).toEqual(values)
+    const back = read(await written({ values })) as { values: Float64Array }
+    expect(Buffer.from(back.values.buffer).equals(Buffer.from(values.buffer))).toBe(true)
   })
 
   it('cut short anywhere is refused', async () => {
@@ -55,12 +56,12 @@ describe('a piece on disk', () => {
     expect(() => read(Buffer.concat([bytes, Buffer.from('x')]))).toThrow(/checksum/)
   })
 
-  it('with any one bit turned is refused', async () => {
+  it('with one bit turned in any byte is refused', async () => {
     const bytes = await written(piece)
-    for (let bit = 0; bit < 8 * bytes.length; bit++) {
-      bytes[bit >> 3] ^= 1 << (bit & 7)
-      expect(() => read(bytes), `bit ${bit}`).toThrow(/checksum|not a piece/)
-      bytes[bit >> 3] ^= 1 << (bit & 7)
+    for (let i = 0; i < bytes.length; i++) {
+      const turned = Buffer.from(bytes)
+      turned[i] ^= 1 << ((5 * i) % 8)
+      expect(() => read(turned), `byte ${i}`).toThrow(/checksum|not a piece/)
     }
   })
 

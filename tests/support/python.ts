@@ -40,7 +40,8 @@ export function askPython<Answer>(script: string, data: unknown): Answer {
   return JSON.parse(runPython(program, JSON.stringify(data))) as Answer
 }
 
-function outsideTool(debianPackage: string, command: string, args: string[]): OutsideTool {
+/** Whether a program answers, and what brings it. */
+export function outsideTool(debianPackage: string, command: string, args: string[]): OutsideTool {
   const { error, status } = spawnSync(command, args)
   return { command, present: !error && (command !== interpreter || status === 0), debianPackage }
 }

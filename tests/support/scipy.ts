@@ -1,8 +1,4 @@
-import { spawnSync } from 'node:child_process'
-import type { OutsideTool } from './python.js'
+import { outsideTool } from './python.js'
 
 /** SciPy, for integrals and special functions of its own. */
-export const scipy: OutsideTool = {
-  present: spawnSync('/usr/bin/python3', ['-c', 'import scipy']).status === 0,
-  debianPackage: 'python3-scipy'
-}
+export const scipy = outsideTool('python3-scipy', '/usr/bin/python3', ['-c', 'import scipy'])

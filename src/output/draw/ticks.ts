@@ -26,7 +26,7 @@ export function linearTicks(low: number, high: number, count: number): Ticks {
 
 /** Fewest labels of a logarithmic axis that stand at decades or at fixed parts of them, and labels aimed at otherwise. */
 const fewest = 3
-const linearCount = 5
+const linearCount = 7
 
 /** Marks of a logarithmic axis between two positive values: decades, their parts where decades are few, or equal steps. */
 export function logTicks(low: number, high: number, most = 8): Ticks {

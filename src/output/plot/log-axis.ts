@@ -6,6 +6,9 @@ export interface PlotAxis {
   axis: { title: string; values: number[]; labelExpr: string; grid: boolean }
 }
 
+/** Least ratio of the ends of an axis. */
+const narrowest = 1.3
+
 /** A logarithmic axis that holds the positive ones of `values` with some room, over at most `mostDecades` below the largest. */
 export function logAxis(title: string, values: number[], mostDecades = Number.POSITIVE_INFINITY): PlotAxis {
   const positive = values.filter((value) => value > 0 && Number.isFinite(value))
@@ -15,7 +18,7 @@ export function logAxis(title: string, values: number[], mostDecades = Number.PO
     positive.reduce((a, b) => Math.min(a, b), high),
     high / 10 ** mostDecades
   )
-  const room = Math.max((high / low) ** 0.04, 1.15)
+  const room = Math.max((high / low) ** 0.05, Math.sqrt((narrowest * low) / high))
   const domain: [number, number] = [low / room, high * room]
   return {
     scale: { type: 'log', domain, nice: false, reverse: false },

@@ -22,11 +22,19 @@ describe('ticks', () => {
     expect(labels(logTicks(0.5, 20))).toEqual(['1', '3', '10'])
     expect(logTicks(1e-30, 1e30, 6).major.length).toBeLessThanOrEqual(7)
     expect(labels(logTicks(1.01, 1.09)).length).toBeGreaterThan(2)
+    expect(labels(logTicks(6.7, 16.7))).toEqual(['8', '10', '12', '14', '16'])
     expect(labels(logTicks(63, 143))).toEqual(['80', '100', '120', '140'])
   })
 
   it('of short logarithmic axes keep the power of ten in their labels', () => {
-    expect(labels(logTicks(8.7e-23, 1.15e-22))).toEqual(['9×10⁻²³', '10⁻²²', '1.1×10⁻²²'])
+    expect(labels(logTicks(8.7e-23, 1.15e-22))).toEqual([
+      '9×10⁻²³',
+      '9.5×10⁻²³',
+      '10⁻²²',
+      '1.05×10⁻²²',
+      '1.1×10⁻²²',
+      '1.15×10⁻²²'
+    ])
   })
 
   it('lie inside their axis over many decades, both ends included', () => {

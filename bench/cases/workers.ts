@@ -1,0 +1,90 @@
+import { join } from 'node:path'
+import { type BenchCase, interleaved, type Measure, type Tools } from '../case.js'
+import { runCommand } from '../command.js'
+import { lightDust } from '../lit-dust.js'
+import { PacketPool } from '../packet-pool.js'
+import { diskScene, shellScene } from '../scenes.js'
+
+const REPETITIONS = 3
+/** Ten seconds or so on one worker. */
+const PACKETS = 3e6
+const text = diskScene({ depth: 100, packets: PACKETS })
+
+/**
+ * One worker against two. What the main thread does may be done by it alone, so that by Amdahl's law (1967, AFIPS Conf. Proc. 30, 483)
+ * n workers take at most main + (all - main) / n of the processor times of a run with one worker: that holds on a busy machine too.
+ */
+async function compareWorkers({ folder }: Tools): Promise<Measure[]> {
+  const [one, two] = await interleaved(
+    REPETITIONS,
+    (seed) => runCommand({ text }, join(folder, 'one'), { workers: 1, seed }),
+    (seed) => runCommand({ text }, join(folder, 'two'), { workers: 2, seed })
+  )
+  const serial = one.map(({ cpuSeconds, mainCpuSeconds }) => mainCpuSeconds / cpuSeconds)
+  const speedUp = (workers: number) => serial.map((share) => 1 / (share + (1 - share) / workers))
+  const ratio = one.map(({ wallSeconds }, i) => wallSeconds / two[i].wallSeconds)
+  return [
+    { quantity: 'one worker, wall time', unit: 's', values: one.map(({ wallSeconds }) => wallSeconds) },
+    { quantity: 'one worker, processor time', unit: 's', values: one.map(({ cpuSeconds }) => cpuSeconds) },
+    { quantity: 'two workers, wall time', unit: 's', values: two.map(({ wallSeconds }) => wallSeconds) },
+    { quantity: 'two workers, processor time', unit: 's', values: two.map(({ cpuSeconds }) => cpuSeconds) },
+    { quantity: 'speed of two workers over one, wall time', unit: '', values: ratio, target: { atLeast: 1.9 } },
+    {
+      // Nothing of this is waiting: a machine shared with others cannot spoil it.
+      quantity: 'processor time of one worker over that of two',
+      unit: '',
+      values: one.map(({ cpuSeconds }, i) => cpuSeconds / two[i].cpuSeconds)
+    },
+    { quantity: 'share of the main thread (serial at most)', unit: '', values: serial },
+    { quantity: 'speed of 2 workers by that share', unit: '', values: speedUp(2), target: { atLeast: 1.9 } },
+    { quantity: 'speed of 64 workers by that share', unit: '', values: speedUp(64) }
+  ]
+}
+
+/** Shares of a run of ten seconds that are not packets or rays. */
+async function shareOut({ folder }: Tools): Promise<Measure[]> {
+  const { medium } = lightDust(shellScene({ depth: 1, packets: 1 }))
+  const startWorker = async () => {
+    const start = process.cpuUsage()
+    const pool = new PacketPool(medium)
+    await pool.play(1, 'start')
+    const { user, system } = process.cpuUsage(start)
+    await pool.close()
+    return (user + system) / 1e6
+  }
+  const [runs, starts] = await interleaved(
+    REPETITIONS,
+    (seed) => runCommand({ text }, join(folder, 'shares'), { seed }),
+    startWorker
+  )
+  const share = (quantity: string, seconds: (i: number) => number): Measure => ({
+    quantity,
+    unit: '',
+    values: runs.map((_, i) => seconds(i) / 10),
+    target: { atMost: 0.05 }
+  })
+  const phases = ({ record }: (typeof runs)[0]) =>
+    Object.values(record.times).reduce((sum, { cpuSeconds }) => sum + cpuSeconds, 0)
+  return [
+    { quantity: 'whole run, processor time', unit: 's', values: runs.map(({ cpuSeconds }) => cpuSeconds) },
+    share('start of a worker', (i) => starts[i]),
+    share('model', (i) => runs[i].record.times.model.cpuSeconds),
+    share('products', (i) => runs[i].record.times.files.cpuSeconds),
+    { quantity: 'start and end of the program', unit: 's', values: runs.map((run) => run.cpuSeconds - phases(run)) }
+  ]
+}
+
+export const workerCases: BenchCase[] = [
+  {
+    name: 'workers',
+    about: `a disk with ${PACKETS} packets on one worker and on two`,
+    native: false,
+    run: compareWorkers
+  },
+  {
+    name: 'shares',
+    about: 'processor time of the parts of a run that are not packets or rays, as shares of ten seconds',
+    native: false,
+    run: shareOut
+  }
+]

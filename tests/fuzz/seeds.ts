@@ -1,0 +1,84 @@
+/** Sound scenes that the fuzz starts from; together they use every section and kind that there is. */
+export const seeds = [
+  `title: Small wind
+distance: 300 pc
+sky: {ra: 84.21 deg, dec: -31.7 deg}
+seed: first
+sources:
+  - name: giant
+    temperature: 3000 K
+    luminosity: 5000 Lsun
+    at: [0 au, 0 au, 0 au]
+opacities:
+  soot:
+    law: power
+    reference: {wavelength: 0.55 um, absorption: 1e4 cm2/g}
+    slope: 1
+    scattering: {albedo: 0.5, asymmetry: 0.3}
+dust:
+  - name: wind
+    opacity: soot
+    shape: {kind: shell, inner: 10 au, outer: 1000 au, slope: -2}
+    amount: {optical-depth: 1.5, at: 0.55 um}
+grid: {kind: spherical, radial: 12}
+effort: {precision: none, equilibrium: 1000, cameras: 300}
+cameras:
+  - name: face
+    view: {inclination: 35 deg, azimuth: 0 deg, roll: 0 deg}
+    field: 2000 au
+    pixels: 4
+    wavelengths: [2.2 um, 60 um]
+    unit: MJy/sr
+spectra:
+  - name: sed
+    aperture: 6 arcsec
+    wavelengths: {from: 1 um, to: 100 um, count: 3}
+    unit: Jy
+`,
+  `distance: 140 pc
+sources:
+  - {name: star, kind: star, temperature: 4000 K, radius: 2 Rsun, extent: sphere, limb-darkening: 0.6}
+opacities:
+  mixed: {law: table, file: mixed.csv, phase: isotropic}
+  grey: {law: power, reference: {wavelength: 1 um, absorption: 100 cm2/g}, slope: 0, scattering: {albedo: 0.9, asymmetry: -0.2, slope: 4}}
+dust:
+  - name: disk
+    opacity: mixed
+    shape: {kind: disk, inner: 0.5 au, outer: 80 au, surface-slope: -1, scale-height: {value: 10 au, at: 100 au, flaring: 1.25}, taper: {at: 50 au}}
+    amount: {mass: 1e-6 Msun}
+  - name: halo
+    opacity: grey
+    shape: {kind: ball, radius: 90 au}
+    amount: {density: 1e-22 g/cm3, at: 10 au}
+    temperature: 30 K
+grid: {kind: spherical, radial: 12, polar: 8}
+effort: {precision: 20 %, equilibrium: 1000, cameras: 300}
+cameras:
+  - {name: side, view: {inclination: 80 deg}, field: [1 arcsec, 0.5 arcsec], pixels: [4, 2], wavelengths: [1.65 um], unit: mJy/arcsec2}
+spectra:
+  - {name: all, view: {inclination: 80 deg}, wavelengths: [10 um, 1.3 mm], unit: W/m2/um}
+`,
+  `distance: 1 kpc
+sources:
+  - {name: lamp, luminosity: 10 Lsun, spectrum: {table: lamp.csv}}
+opacities:
+  dark: {law: power, reference: {wavelength: 1 um, absorption: 100 cm2/g}, slope: 1.5}
+dust:
+  - {name: cloud, opacity: dark, shape: {kind: shell, inner: 1 pc, outer: {times-inner: 10}}, amount: {optical-depth: 0.1, at: 1 um}, temperature: none}
+effort: {equilibrium: 1000, cameras: 300, precision: none}
+spectra:
+  - {name: sed, aperture: all, wavelengths: [1 um, 3 um], unit: Jy}
+`
+]
+
+/** Tables that the scenes name. */
+export const tables = {
+  'mixed.csv': `# a table
+wavelength [um],absorption [cm2/g],scattering [cm2/g],asymmetry
+0.1,9000,4000,0.6
+1,900,800,0.4
+10,500,3,0.1
+1000,0.5,0,0
+`,
+  'lamp.csv': 'wavelength [um],flux-nu [Jy]\n0.3,1\n1,30\n3,20\n30,0.2\n'
+}
