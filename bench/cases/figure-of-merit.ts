@@ -87,7 +87,7 @@ const disks: Contest[] = [1e2, 1e4, 1e6].flatMap((depth) =>
     scene: (packets: number) => diskScene({ depth, inclinations: [inclination], packets }),
     halfAu: DISK_FIELD.halfAu,
     inclination,
-    packets: 8e5,
+    packets: 2e5,
     peelPackets: 4e5,
     ...(depth === 1e4 && inclination === 60 && { atLeast: 500 })
   }))

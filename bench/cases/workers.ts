@@ -6,15 +6,14 @@ import { PacketPool } from '../packet-pool.js'
 import { diskScene, shellScene } from '../scenes.js'
 
 const REPETITIONS = 3
-/** Ten seconds or so on one worker. */
-const PACKETS = 3e6
-const text = diskScene({ depth: 100, packets: PACKETS })
+const PACKETS = 1e6
 
 /**
  * One worker against two. What the main thread does may be done by it alone, so that by Amdahl's law (1967, AFIPS Conf. Proc. 30, 483)
  * n workers take at most main + (all - main) / n of the processor times of a run with one worker: that holds on a busy machine too.
  */
 async function compareWorkers({ folder }: Tools): Promise<Measure[]> {
+  const text = diskScene({ depth: 100, packets: PACKETS })
   const [one, two] = await interleaved(
     REPETITIONS,
     (seed) => runCommand({ text }, join(folder, 'one'), { workers: 1, seed }),
@@ -43,6 +42,7 @@ async function compareWorkers({ folder }: Tools): Promise<Measure[]> {
 
 /** Shares of a run of ten seconds that are not packets or rays. */
 async function shareOut({ folder }: Tools): Promise<Measure[]> {
+  const text = diskScene({ depth: 100, packets: PACKETS / 4 })
   const { medium } = lightDust(shellScene({ depth: 1, packets: 1 }))
   const startWorker = async () => {
     const start = process.cpuUsage()

@@ -1,10 +1,11 @@
-import { medianOverBulk, standardError } from '../math/stats.js'
+import { medianOverCountedBulk, standardError } from '../math/stats.js'
 import type { PixelFrame } from './direct.js'
 import type { IntensityField } from './field.js'
 import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray.js'
 
-/** Pixels looked at in each direction. */
-const MOST = 16
+/** Rings and directions of a quick look at a picture. */
+const PICTURE_RINGS = 24
+const PICTURE_DIRECTIONS = 12
 /** Pixels that together hold this share of the flux count for precision. */
 export const BULK = 0.95
 
@@ -39,24 +40,36 @@ export function surveyAperture(field: IntensityField, radius: number): Float64Ar
   return sum
 }
 
-/** A quick look at a picture: one ray through the middles of some of its pixels, spread evenly. */
+/** A quick look at a picture: rays through the middles of some pixels, denser towards its centre; each stands for its share of a ring. */
 export function survey(field: IntensityField, frame: PixelFrame): Survey {
   const { width, height, pixelWidth, pixelHeight } = frame
-  const columns = Math.min(width, MOST)
-  const rows = Math.min(height, MOST)
+  const area = pixelWidth * pixelHeight
+  const nearest = 0.5 * Math.sqrt(area)
+  const farthest = 0.5 * Math.hypot(width * pixelWidth, height * pixelHeight)
+  const ratio = Math.max(1, farthest / nearest) ** (1 / PICTURE_RINGS)
   const ray = new Float64Array(RAY_VALUES)
-  const totals = new Float64Array(columns * rows)
-  const errors = new Float64Array(columns * rows)
-  let sum = 0
-  for (let j = 0; j < rows; j++) {
-    const y = (Math.floor(((j + 0.5) * height) / rows) + 0.5 - height / 2) * pixelHeight
-    for (let i = 0; i < columns; i++) {
-      field.sample((Math.floor(((i + 0.5) * width) / columns) + 0.5 - width / 2) * pixelWidth, y, ray, true)
-      const total = ray[EMITTED] + ray[SCATTERED]
-      totals[j * columns + i] = total
-      errors[j * columns + i] = total > 0 ? standardError(ray.subarray(FIRST_GROUP, RAY_VALUES)) / total : 0
-      sum += total
+  const lights: number[] = []
+  const errors: number[] = []
+  const pixels: number[] = []
+  let flux = 0
+  for (let i = -1; i < PICTURE_RINGS; i++) {
+    const from = i < 0 ? 0 : nearest * ratio ** i
+    const to = nearest * ratio ** (i + 1)
+    const count = (Math.PI * (to * to - from * from)) / area / PICTURE_DIRECTIONS
+    const b = Math.sqrt(0.5 * (from * from + to * to))
+    for (let k = 0; k < PICTURE_DIRECTIONS; k++) {
+      const angle = (2 * Math.PI * (k + (i % 2 === 0 ? 0.25 : 0.75))) / PICTURE_DIRECTIONS
+      const column = Math.floor((b * Math.cos(angle)) / pixelWidth + width / 2)
+      const row = Math.floor((b * Math.sin(angle)) / pixelHeight + height / 2)
+      if (column < 0 || column >= width || row < 0 || row >= height || !(count > 0)) continue
+      field.sample((column + 0.5 - width / 2) * pixelWidth, (row + 0.5 - height / 2) * pixelHeight, ray, true)
+      const light = ray[EMITTED] + ray[SCATTERED]
+      lights.push(light)
+      errors.push(light > 0 ? standardError(ray.subarray(FIRST_GROUP, RAY_VALUES)) / light : 0)
+      pixels.push(count)
+      flux += light * count
     }
   }
-  return { error: sum > 0 ? medianOverBulk(errors, totals, BULK) : 0, mean: sum / (columns * rows) }
+  const all = pixels.reduce((sum, count) => sum + count, 0)
+  return { error: flux > 0 ? medianOverCountedBulk(errors, lights, pixels, BULK) : 0, mean: flux / all }
 }

@@ -75,9 +75,11 @@ function wallSeconds({ times }: RunRecord): number {
 
 function picturesText({ files }: RunRecord): string {
   const kinds = [
-    [files.filter((file) => file.startsWith('images/') && file.endsWith('.png')).length, 'pictures in images'],
-    [files.filter((file) => file.startsWith('spectra/') && file.endsWith('.png')).length, 'plots in spectra'],
-    [files.filter((file) => file.startsWith('dust/') && file.endsWith('.png')).length, 'plot in dust']
+    [files.filter((file) => file.startsWith('images/') && file.endsWith('.png')).length, 'picture', 'images'],
+    [files.filter((file) => file.startsWith('spectra/') && file.endsWith('.png')).length, 'plot', 'spectra'],
+    [files.filter((file) => file.startsWith('dust/') && file.endsWith('.png')).length, 'plot', 'dust']
   ].filter(([count]) => Number(count) > 0)
-  return kinds.length > 0 ? `: ${kinds.map(([count, what]) => `${count} ${what}`).join(', ')}` : ''
+  return kinds.length > 0
+    ? `: ${kinds.map(([count, what, folder]) => `${count} ${what}${count === 1 ? '' : 's'} in ${folder}`).join(', ')}`
+    : ''
 }

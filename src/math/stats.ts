@@ -33,3 +33,26 @@ export function medianOverBulk(values: ArrayLike<number>, weights: ArrayLike<num
   const lightest = sorted[first]
   return median(Array.from(values).filter((_, i) => weights[i] >= lightest))
 }
+
+/**
+ * As `medianOverBulk`, where element i stands for `counts[i]` equal ones of weight `weights[i]` each: the value below which half
+ * of those in the bulk lie.
+ */
+export function medianOverCountedBulk(values: number[], weights: number[], counts: number[], fraction: number): number {
+  const order = weights.map((_, i) => i).sort((a, b) => weights[b] - weights[a])
+  const wanted = fraction * order.reduce((sum, i) => sum + weights[i] * counts[i], 0)
+  let held = 0
+  let size = 0
+  while (size < order.length && held < wanted) {
+    const i = order[size++]
+    held += weights[i] * counts[i]
+  }
+  const bulk = order.slice(0, size).sort((a, b) => values[a] - values[b])
+  const half = 0.5 * bulk.reduce((sum, i) => sum + counts[i], 0)
+  let below = 0
+  for (const i of bulk) {
+    below += counts[i]
+    if (below >= half) return values[i]
+  }
+  return Number.NaN
+}

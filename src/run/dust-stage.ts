@@ -1,5 +1,4 @@
 import type { Model } from '../model/model.js'
-import { observedWavelengths } from '../model/wavelengths.js'
 import { dustLight } from '../solve/dust-light.js'
 import { type EquilibriumResult, equilibriumPiece, needsEquilibrium, solveEquilibrium } from '../solve/equilibrium.js'
 import { type DustTemperatures, givenTemperatures } from '../solve/temperatures.js'
@@ -50,30 +49,25 @@ export async function dustStage(
   return stage
 }
 
-/** Wavelengths looked at to see how the noise of the temperatures shows. */
+/** So many wavelengths of the cameras, and of the spectra, are looked at to see how the noise of the temperatures shows. */
 const LOOKS = 8
 
 /** Largest relative error that the noise of the temperatures makes in what will be seen. */
 function errorOfEmission(model: Model, dust: DustTemperatures): number {
   const { wantedAt } = emptyProducts(model.scene)
-  const wavelengths = observedWavelengths(model.scene)
-  let worst = 0
-  const looks = Math.min(LOOKS, wavelengths.length)
-  for (let i = 0; i < looks; i++) {
-    const wavelength = wavelengths[Math.floor(((i + 0.5) * wavelengths.length) / looks)]
-    const light = dustLight(model, dust, wavelength)
+  const { cameras, spectra } = model.scene
+  const wavelengths = new Set([...spread(cameras), ...spread(spectra)])
+  const errors = Array.from(wavelengths, (wavelength) => {
     const wanted = wantedAt(wavelength)
-    worst = Math.max(
-      worst,
-      quickError(
-        model,
-        light,
-        [],
-        wanted,
-        wanted.map(() => 0),
-        'all'
-      )
-    )
-  }
-  return worst / SHARE
+    const indices = wanted.map(() => 0)
+    return quickError(model, dustLight(model, dust, wavelength), [], wanted, indices, 'all')
+  })
+  return Math.max(0, ...errors) / SHARE
+}
+
+/** At most LOOKS of all wavelengths, spread evenly over the list. */
+function spread(observers: { wavelengths: number[] }[]): number[] {
+  const all = [...new Set(observers.flatMap(({ wavelengths }) => wavelengths))].sort((a, b) => a - b)
+  const looks = Math.min(LOOKS, all.length)
+  return Array.from({ length: looks }, (_, i) => all[Math.floor(((i + 0.5) * all.length) / looks)])
 }

@@ -55,7 +55,7 @@ export async function observeWavelength(
   studio: Studio
 ): Promise<boolean> {
   const tolerance = placingTolerance(model)
-  const { pool, ledger, name, stop } = studio
+  const { ledger, name, stop } = studio
   const before = ledger.take(name) as { progress: Progress; values: WantedValues[] } | undefined
   if (before) putValues(wanted, before.values)
   const progress = before?.progress ?? { want: 0, tasks: 0, placing: 0 }
@@ -72,7 +72,8 @@ export async function observeWavelength(
       if (!(await takePicture(model, rows, studio))) return false
       addStars(model, light, medium, view, want, progress.placing)
     } else {
-      const integral = await integralOf(model, data, want.spec.aperture * model.scene.distance, tolerance, pool)
+      const integral = await integralOf(model, data, want.spec.aperture * model.scene.distance, tolerance, studio)
+      if (!integral) return false
       writeFlux(model, directFlux(model, light, medium, view, want.spec.aperture * model.scene.distance), integral, want)
       onDone(1, 1)
     }
@@ -82,21 +83,24 @@ export async function observeWavelength(
   return true
 }
 
+/** The light in an aperture; undefined when it was stopped. */
 async function integralOf(
   model: Model,
   data: FieldData,
   radius: number,
   tolerance: number,
-  pool: WorkerPool
-): Promise<PatchIntegral> {
+  { pool, stop }: Studio
+): Promise<PatchIntegral | undefined> {
   if (data.kind === 'profile') return apertureOf(openField(data), radius, tolerance, true)
   let integral: PatchIntegral | undefined
   pool.share('field', data)
-  await pool.run([{ name: 'aperture', input: { radius, tolerance, mirrored: mirrored(model) } }], (output) => {
+  const tasks = [{ name: 'aperture', input: { radius, tolerance, mirrored: mirrored(model) } }]
+  const take = (output: unknown) => {
     integral = output as PatchIntegral
-  })
+  }
+  await pool.run(tasks, take, stop)
   pool.forget('field')
-  return integral!
+  return integral
 }
 
 function writeFlux(

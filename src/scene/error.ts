@@ -11,15 +11,30 @@ export interface SceneProblem {
   message: string
 }
 
+/** Problems told in words; all are in `problems`. */
+const MOST_TOLD = 50
+/** Longest key or value, and longest message, in words. */
+const SHORT = 80
+const LONG = 1000
+
 /** One or more problems in a scene or in a data file it names. Exit code 2. */
 export class SceneError extends Error {
   constructor(readonly problems: SceneProblem[]) {
-    super(problems.map(describeProblem).join('\n'))
+    const told = problems.slice(0, MOST_TOLD).map(describeProblem)
+    const more = problems.length - told.length
+    super([...told, ...(more > 0 ? [`and ${more} more problems`] : [])].join('\n'))
     this.name = 'SceneError'
   }
 }
 
 function describeProblem({ location, key, given, message }: SceneProblem): string {
-  const subject = [key, given].filter((part) => part).join(' = ')
-  return `${location.file}:${location.line}:${location.column}: ${subject ? `${subject}: ` : ''}${message}`
+  const subject = [key, given]
+    .filter((part) => part)
+    .map((part) => shortened(part!, SHORT))
+    .join(' = ')
+  return `${location.file}:${location.line}:${location.column}: ${subject ? `${subject}: ` : ''}${shortened(message, LONG)}`
+}
+
+function shortened(text: string, most: number): string {
+  return text.length > most ? `${text.slice(0, most - 3)}...` : text
 }

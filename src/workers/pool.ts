@@ -12,6 +12,9 @@ export class WorkerFailure extends Error {
   override name = 'WorkerFailure'
 }
 
+/** Tasks in hand when a run is stopped may take this long to come to their end, s; then they are given up. */
+const GRACE = 5
+
 /** Results wait for their turn, so at most this many tasks a worker are begun ahead of the first unfinished one. */
 const AHEAD = 4
 
@@ -57,7 +60,8 @@ export class WorkerPool {
 
   /**
    * Runs the tasks; `onResult` gets each result in the order of the tasks. When `stop` is aborted, tasks not yet begun are
-   * left, those in hand are finished. Resolves to the number of tasks done; rejects with WorkerFailure.
+   * left, and those in hand are finished, or given up with the whole pool if that takes long. Resolves to the number of tasks
+   * done; rejects with WorkerFailure.
    */
   run(tasks: Task[], onResult: (output: unknown, index: number) => void, stop?: AbortSignal): Promise<number> {
     if (this.job) throw new Error('the pool runs one list of tasks at a time')
@@ -65,6 +69,8 @@ export class WorkerPool {
     return new Promise((resolve, reject) => {
       this.job = { tasks, onResult, stop, resolve, reject, begun: 0, handed: 0, base: this.serial, waiting: new Map() }
       this.serial += tasks.length
+      if (stop?.aborted) this.end()
+      else stop?.addEventListener('abort', this.end)
       this.feed()
     })
   }
@@ -73,6 +79,23 @@ export class WorkerPool {
   async close(): Promise<void> {
     this.closing = true
     await Promise.all(this.workers.map((worker) => worker.terminate()))
+  }
+
+  /** Waits for what is in hand, no longer than GRACE. */
+  private readonly end = () => {
+    const job = this.job
+    this.feed()
+    setTimeout(() => {
+      if (!job || this.job !== job) return
+      this.finish(job, () => job.resolve(job.handed))
+      this.failure ??= new WorkerFailure('the pool was stopped')
+    }, 1000 * GRACE).unref()
+  }
+
+  private finish(job: Job, settle: () => void): void {
+    this.job = undefined
+    job.stop?.removeEventListener('abort', this.end)
+    settle()
   }
 
   private post(worker: Worker, message: ToWorker): void {
@@ -95,8 +118,7 @@ export class WorkerPool {
       job.begun++
     }
     if (this.held.size === 0 && (job.begun === job.tasks.length || job.stop?.aborted)) {
-      this.job = undefined
-      job.resolve(job.handed)
+      this.finish(job, () => job.resolve(job.handed))
     }
   }
 
@@ -127,9 +149,8 @@ export class WorkerPool {
 
   private fail(error: Error): void {
     this.failure ??= error
-    const job = this.job
-    this.job = undefined
-    job?.reject(error)
+    const { job } = this
+    if (job) this.finish(job, () => job.reject(error))
   }
 }
 

@@ -13,7 +13,7 @@ const CASES = Number(process.env.FUZZED ?? 120)
 /** The first case, to look at one again. */
 const FIRST = Number(process.env.FUZZ_FROM ?? 0)
 const PROCESSES = 2
-/** A case still silent after this many seconds hangs: runs are asked to stop after 3. */
+/** A case still silent after this many seconds hangs: runs are asked to stop after 1.5, and then have 5. */
 const HANGS = 40
 const MOST_BYTES = 3e9
 /** One in so many that run also writes its products. */

@@ -91,10 +91,10 @@ function remove({ holder, key }: Place): void {
 function rescaled(value: unknown, uniform: Uniform): unknown {
   const [, number, unit] = /^(-?[\d.e+-]+)(?: (.*))?$/.exec(String(value)) ?? []
   if (number === undefined) return value
-  const size = pick([0, -1, 1e-300, 1e300, 1e-12, 1e12, 1e-3, 1e3, 0.5, 2, 1e5], uniform)
-  const scaled = uniform() < 0.5 ? Number(number) * size : size
-  if (unit === undefined) return uniform() < 0.7 ? scaled : `${scaled} ${pick(UNITS, uniform)}`
-  return uniform() < 0.7 ? `${scaled} ${unit}` : `${number} ${pick(UNITS, uniform)}`
+  const size = pick([0, -1, 1e-300, 1e300, 1e-12, 1e12, 1e-3, 1e3, 0.5, 2, 1.1, 0.9, 3, 10, 1e5], uniform)
+  const scaled = uniform() < 0.8 ? Number(number) * size : size
+  if (unit === undefined) return uniform() < 0.9 ? scaled : `${scaled} ${pick(UNITS, uniform)}`
+  return uniform() < 0.9 ? `${scaled} ${unit}` : `${number} ${pick(UNITS, uniform)}`
 }
 
 function strange(uniform: Uniform): unknown {
@@ -135,7 +135,9 @@ const TREE = {
   },
   replace: (places: Place[], uniform: Uniform) => set(pick(places, uniform), strange(uniform)),
   rescale: (places: Place[], uniform: Uniform) => {
-    const leaves = places.filter((place) => /^-?[\d.]/.test(String(get(place))))
+    const leaves = places.filter(
+      (place) => ['string', 'number'].includes(typeof get(place)) && /^-?[\d.]/.test(String(get(place)))
+    )
     if (leaves.length > 0) {
       const place = pick(leaves, uniform)
       set(place, rescaled(get(place), uniform))
@@ -218,16 +220,16 @@ function splice(text: string, uniform: Uniform, piece: string): string {
   return text.slice(0, at) + piece + text.slice(at + (uniform() < 0.5 ? 0 : 1))
 }
 
-/** A scene with one to four things changed in its tree, or now and then in its text. */
+/** A scene with one to three things changed in its tree, or now and then in its text. */
 export function mutatedScene(text: string, uniform: Uniform): string {
   const tree = parse(text)
-  const count = 1 + whole(4, uniform)
+  const count = 1 + whole(3, uniform)
   for (let i = 0; i < count; i++) {
     const places = placesOf(tree)
     if (places.length > 0) pick(MOVES, uniform)(places, uniform)
   }
-  const written = uniform() < 0.15 ? text : stringify(tree, { aliasDuplicateObjects: false })
-  return uniform() < 0.25 || written === text ? pick(TEXT, uniform)(written, uniform) : written
+  const written = uniform() < 0.1 ? text : stringify(tree, { aliasDuplicateObjects: false })
+  return uniform() < 0.1 || written === text ? pick(TEXT, uniform)(written, uniform) : written
 }
 
 /** A table of numbers with some things changed in it. */

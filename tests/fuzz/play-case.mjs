@@ -12,7 +12,7 @@ const { MemoryError, OutputError, SceneError, Stopped, openRunFolder, parseScene
 )
 
 /** Longest run, s, before it is asked to stop. */
-const SECONDS = 3
+const SECONDS = 1.5
 const MEMORY = 1e9
 
 process.on('message', async ({ text, products }) => {

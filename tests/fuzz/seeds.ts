@@ -45,7 +45,7 @@ dust:
   - name: disk
     opacity: mixed
     shape: {kind: disk, inner: 0.5 au, outer: 80 au, surface-slope: -1, scale-height: {value: 10 au, at: 100 au, flaring: 1.25}, taper: {at: 50 au}}
-    amount: {mass: 1e-6 Msun}
+    amount: {mass: 1e-10 Msun}
   - name: halo
     opacity: grey
     shape: {kind: ball, radius: 90 au}

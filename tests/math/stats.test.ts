@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { stream } from '../../src/math/random.js'
-import { mean, median, medianOverBulk, standardError } from '../../src/math/stats.js'
+import { mean, median, medianOverBulk, medianOverCountedBulk, standardError } from '../../src/math/stats.js'
 
 describe('mean and standard error', () => {
   it('are those of the definition', () => {
@@ -49,5 +49,20 @@ describe('medianOverBulk', () => {
   it('leaves out elements without weight, whatever their value', () => {
     expect(medianOverBulk([...values, Number.NaN], [...weights, 0], 1)).toBe(3)
     expect(medianOverBulk(values, [0, 0, 0, 0, 0], 0.95)).toBeNaN()
+  })
+})
+
+describe('medianOverCountedBulk', () => {
+  it('equals the plain median over the bulk when every element stands for one', () => {
+    const values = [5, 1, 9, 3, 7]
+    const weights = [10, 8, 6, 4, 0.1]
+    expect(medianOverCountedBulk(values, weights, [1, 1, 1, 1, 1], 0.3)).toBe(5)
+    expect(medianOverCountedBulk(values, weights, [1, 1, 1, 1, 1], 0.8)).toBe(5)
+  })
+
+  it('counts an element as often as it stands for', () => {
+    // Written out: 9 nine times, 1 twice: the bulk's median is 9.
+    expect(medianOverCountedBulk([9, 1], [1, 1], [9, 2], 1)).toBe(9)
+    expect(medianOverCountedBulk([9, 1], [1, 1], [2, 9], 1)).toBe(1)
   })
 })
