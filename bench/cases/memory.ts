@@ -20,14 +20,14 @@ const pairs = (): Pair[] => [
   {
     unit: 'cell',
     quantity: 'two dimensions, one camera',
-    small: cellsOf(diskScene({ depth: 100, grid: [101, 40, 1], packets: PACKETS })),
-    large: cellsOf(diskScene({ depth: 100, grid: [401, 200, 1], packets: PACKETS }))
+    small: cellsOf(diskScene({ depth: 100, grid: [101, 40, 1], pixels: 16, packets: PACKETS })),
+    large: cellsOf(diskScene({ depth: 100, grid: [401, 200, 1], pixels: 16, packets: PACKETS }))
   },
   {
     unit: 'cell',
     quantity: 'three dimensions, one camera',
-    small: cellsOf(diskScene({ depth: 100, grid: [47, 46, 46], packets: PACKETS })),
-    large: cellsOf(diskScene({ depth: 100, grid: [101, 100, 100], packets: PACKETS }))
+    small: cellsOf(diskScene({ depth: 100, grid: [47, 46, 46], pixels: 16, packets: PACKETS })),
+    large: cellsOf(diskScene({ depth: 100, grid: [101, 100, 100], pixels: 16, packets: PACKETS }))
   },
   {
     unit: 'pixel',

@@ -38,11 +38,11 @@ class Player {
   async play(text: string, tableTexts: Record<string, string>, products: boolean): Promise<Outcome> {
     for (const [name, content] of Object.entries(tableTexts)) writeFileSync(join(this.folder, name), content)
     this.child ??= await this.begin()
-    const { child } = this
+    const child = this.child
     return new Promise((resolve) => {
       const end = (outcome: Outcome) => {
         clearTimeout(timer)
-        child.removeAllListeners()
+        child.off('message', told).off('exit', died)
         resolve(outcome)
       }
       const lost = (kind: 'hangs' | 'died') => {
@@ -50,9 +50,10 @@ class Player {
         child.kill('SIGKILL')
         end({ kind, seconds: HANGS, bytes: 0 })
       }
+      const told = (outcome: unknown) => end(outcome as Outcome)
+      const died = () => lost('died')
       const timer = setTimeout(() => lost('hangs'), 1000 * HANGS)
-      child.once('message', (outcome) => end(outcome as Outcome))
-      child.once('exit', () => lost('died'))
+      child.on('message', told).on('exit', died)
       child.send({ text, products })
     })
   }

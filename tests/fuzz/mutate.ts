@@ -97,6 +97,16 @@ function rescaled(value: unknown, uniform: Uniform): unknown {
   return uniform() < 0.9 ? `${scaled} ${unit}` : `${number} ${pick(UNITS, uniform)}`
 }
 
+/** Factors that a scene may well survive. */
+const MILD = [0.3, 0.5, 0.9, 1.1, 2, 3, 10, 1e-3, 1e3]
+
+function mildly(value: unknown, uniform: Uniform): unknown {
+  const [, number, rest = ''] = /^(-?[\d.e+-]+)( .*)?$/.exec(String(value)) ?? []
+  if (number === undefined) return value
+  const scaled = Number((Number(number) * pick(MILD, uniform)).toPrecision(6))
+  return rest === '' && typeof value === 'number' ? (Number.isInteger(value) ? Math.round(scaled) : scaled) : `${scaled}${rest}`
+}
+
 function strange(uniform: Uniform): unknown {
   switch (whole(9, uniform)) {
     case 0:
@@ -123,6 +133,14 @@ function strange(uniform: Uniform): unknown {
   }
 }
 
+/** Changes the size of some number. */
+function rescale(places: Place[], change: (value: unknown, uniform: Uniform) => unknown, uniform: Uniform): void {
+  const leaves = places.filter((place) => ['string', 'number'].includes(typeof get(place)) && /^-?[\d.]/.test(String(get(place))))
+  if (leaves.length === 0) return
+  const place = pick(leaves, uniform)
+  set(place, change(get(place), uniform))
+}
+
 const TREE = {
   drop: (places: Place[], uniform: Uniform) => remove(pick(places, uniform)),
   rename: (places: Place[], uniform: Uniform) => {
@@ -134,15 +152,7 @@ const TREE = {
     set({ holder: place.holder, key }, value)
   },
   replace: (places: Place[], uniform: Uniform) => set(pick(places, uniform), strange(uniform)),
-  rescale: (places: Place[], uniform: Uniform) => {
-    const leaves = places.filter(
-      (place) => ['string', 'number'].includes(typeof get(place)) && /^-?[\d.]/.test(String(get(place)))
-    )
-    if (leaves.length > 0) {
-      const place = pick(leaves, uniform)
-      set(place, rescaled(get(place), uniform))
-    }
-  },
+  rescale: (places: Place[], uniform: Uniform) => rescale(places, rescaled, uniform),
   swap: (places: Place[], uniform: Uniform) => {
     const [a, b] = [pick(places, uniform), pick(places, uniform)]
     const [x, y] = [structuredClone(get(a)), structuredClone(get(b))]
@@ -220,13 +230,18 @@ function splice(text: string, uniform: Uniform, piece: string): string {
   return text.slice(0, at) + piece + text.slice(at + (uniform() < 0.5 ? 0 : 1))
 }
 
+/** Share of the scenes of which only numbers are changed, and those so that most stay sound. */
+const MILDLY = 0.35
+
 /** A scene with one to three things changed in its tree, or now and then in its text. */
 export function mutatedScene(text: string, uniform: Uniform): string {
   const tree = parse(text)
   const count = 1 + whole(3, uniform)
+  const mild = uniform() < MILDLY
   for (let i = 0; i < count; i++) {
     const places = placesOf(tree)
-    if (places.length > 0) pick(MOVES, uniform)(places, uniform)
+    if (mild) rescale(places, mildly, uniform)
+    else if (places.length > 0) pick(MOVES, uniform)(places, uniform)
   }
   const written = uniform() < 0.1 ? text : stringify(tree, { aliasDuplicateObjects: false })
   return uniform() < 0.1 || written === text ? pick(TEXT, uniform)(written, uniform) : written

@@ -70,8 +70,11 @@ function niceStep(value: number): number {
   return below >= value * (1 - 1e-9) ? below : niceBelow(below * 2.5)
 }
 
+/** More marks than this are no use; where values differ by rounding alone, there would be no end of them. */
+const mostMarks = 1000
+
 function multiples(low: number, high: number, step: number): number[] {
-  const values: number[] = []
-  for (let i = Math.ceil(low / step - 1e-9); i <= high / step + 1e-9; i++) values.push(i * step)
-  return values
+  const first = Math.ceil(low / step - 1e-9)
+  const count = Math.floor(high / step + 1e-9) - first + 1
+  return count >= 0 && count <= mostMarks ? Array.from({ length: count }, (_, i) => (first + i) * step) : []
 }

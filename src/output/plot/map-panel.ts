@@ -30,7 +30,8 @@ export function mapPanel(
   const axes = [outline(left, top, width, height), ...meridianAxes(view, left, top)]
   const [low, high] = positiveRange(values)
   if (!(high > 0)) return [...axes, text(left + width / 2, top + height / 2, 'does not emit', { fill: '#777' })]
-  const floor = low < high ? low : high / 2
+  // Values that differ by rounding alone are one value.
+  const floor = low < high * (1 - 1e-6) ? low : high / 2
   const fraction = (value: number): number => Math.log(value / floor) / Math.log(high / floor)
   const cells = meridianCells(structure, view, width, height)
   canvas.paint(
