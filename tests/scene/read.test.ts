@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto'
 import { mkdtempSync, writeFileSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
@@ -18,6 +19,7 @@ describe('parseScene', () => {
     const { locate, sources, spectra, cameras, dust, ...rest } = parseScene(example, 'scene.yaml')
     expect(rest).toEqual({
       file: 'scene.yaml',
+      inputs: [{ file: 'scene.yaml', sha256: createHash('sha256').update(example).digest('hex') }],
       title: 'Wind of a cool giant',
       distance: expect.closeTo(320 * 3.085677581491367e18, -8),
       sky: { raDeg: 84.21, decDeg: -31.7 },
