@@ -8,13 +8,22 @@ import { figureOfMerit } from './cases/figure-of-merit.js'
 import { memory } from './cases/memory.js'
 import { packetLoop } from './cases/packet-loop.js'
 import { scaling } from './cases/scaling.js'
+import { stateCases } from './cases/state.js'
 import { wholeRunCases } from './cases/whole-runs.js'
 import { workerCases } from './cases/workers.js'
 import { compileNative } from './native.js'
 import { type Row, rowOf, tableLines } from './table.js'
 
 /** `npm run bench` runs every case, `npm run bench -- NAME...` that case, or all of a family such as `shell`. */
-const cases: BenchCase[] = [...packetLoop, ...figureOfMerit, ...wholeRunCases, ...scaling, ...workerCases, ...memory]
+const cases: BenchCase[] = [
+  ...packetLoop,
+  ...figureOfMerit,
+  ...wholeRunCases,
+  ...scaling,
+  ...workerCases,
+  ...stateCases,
+  ...memory
+]
 
 const project = fileURLToPath(new URL('../../', import.meta.url))
 const wanted = process.argv.slice(2)

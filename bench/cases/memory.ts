@@ -1,4 +1,5 @@
 import { join } from 'node:path'
+import { memoryEstimate, totalMemory } from '../../src/run/memory.js'
 import { type BenchCase, interleaved, type Measure, type Tools } from '../case.js'
 import { runCommand } from '../command.js'
 import { lightDust } from '../lit-dust.js'
@@ -10,30 +11,40 @@ const PACKETS = 50_000
 interface Pair {
   unit: 'cell' | 'pixel'
   quantity: string
-  small: { text: string; count: number }
-  large: { text: string; count: number }
+  small: Size
+  large: Size
 }
 
-const cellsOf = (text: string) => ({ text, count: lightDust(text).model.cells })
+interface Size {
+  text: string
+  count: number
+  /** What the program states before it runs, bytes. */
+  stated: number
+}
+
+function sizeOf(text: string, pixels?: number): Size {
+  const { model } = lightDust(text)
+  return { text, count: pixels ?? model.cells, stated: totalMemory(memoryEstimate(model), 1) }
+}
 
 const pairs = (): Pair[] => [
   {
     unit: 'cell',
     quantity: 'two dimensions, one camera',
-    small: cellsOf(diskScene({ depth: 100, grid: [101, 40, 1], pixels: 16, packets: PACKETS })),
-    large: cellsOf(diskScene({ depth: 100, grid: [401, 200, 1], pixels: 16, packets: PACKETS }))
+    small: sizeOf(diskScene({ depth: 100, grid: [101, 40, 1], pixels: 16, packets: PACKETS })),
+    large: sizeOf(diskScene({ depth: 100, grid: [401, 200, 1], pixels: 16, packets: PACKETS }))
   },
   {
     unit: 'cell',
     quantity: 'three dimensions, one camera',
-    small: cellsOf(diskScene({ depth: 100, grid: [47, 46, 46], pixels: 16, packets: PACKETS })),
-    large: cellsOf(diskScene({ depth: 100, grid: [101, 100, 100], pixels: 16, packets: PACKETS }))
+    small: sizeOf(diskScene({ depth: 100, grid: [47, 46, 46], pixels: 16, packets: PACKETS })),
+    large: sizeOf(diskScene({ depth: 100, grid: [81, 80, 80], pixels: 16, packets: PACKETS }))
   },
   {
     unit: 'pixel',
     quantity: 'one wavelength',
-    small: { text: shellScene({ depth: 1, pixels: 64, packets: PACKETS }), count: 64 ** 2 },
-    large: { text: shellScene({ depth: 1, pixels: 1024, packets: PACKETS }), count: 1024 ** 2 }
+    small: sizeOf(shellScene({ depth: 1, pixels: 64, packets: PACKETS }), 64 ** 2),
+    large: sizeOf(shellScene({ depth: 1, pixels: 512, packets: PACKETS }), 512 ** 2)
   }
 ]
 
@@ -46,8 +57,19 @@ async function memoryEach({ folder }: Tools): Promise<Measure[]> {
       (seed) => runCommand(small, join(folder, 'small'), { seed }),
       (seed) => runCommand(large, join(folder, 'large'), { seed })
     )
-    const values = less.map(({ peakBytes }, i) => (more[i].peakBytes - peakBytes) / (large.count - small.count))
-    measures.push({ quantity, unit: `bytes/${unit}`, values })
+    const extra = large.count - small.count
+    const values = less.map(({ peakBytes }, i) => (more[i].peakBytes - peakBytes) / extra)
+    const stated = (large.stated - small.stated) / extra
+    measures.push(
+      { quantity, unit: `bytes/${unit}`, values },
+      { quantity: `${quantity}, as stated before a run`, unit: `bytes/${unit}`, values: [stated] },
+      {
+        quantity: `${quantity}, used over stated`,
+        unit: '',
+        values: values.map((value) => value / stated),
+        target: { atMost: 2 }
+      }
+    )
   }
   return measures
 }

@@ -7,8 +7,8 @@ import { describe, expect, it } from 'vitest'
 import { stream } from '../../src/math/random.js'
 import { filesIn, folderWith, motelight, program, sceneWith } from './motelight.js'
 
-/** Runs killed; `npm run test:kill` asks for 50. */
-const KILLED = Number(process.env.KILLED ?? 3)
+/** Runs killed in all; `npm run test:kill` asks for 50. */
+const KILLED = Number(process.env.KILLED ?? 4)
 /** Kills of one run at most, so that it comes to its end. */
 const MOST_KILLS = 3
 
@@ -44,7 +44,7 @@ describe('runs killed with SIGKILL at random moments and gone on with', () => {
     const expected = digests(undisturbed)
     const uniform = stream(`kill/${kind}`)
     let withState = 0
-    for (let n = 0; n < KILLED; n++) {
+    for (let n = 0; n < KILLED / scenes.length; n++) {
       const folder = folderWith({ 'scene.yaml': text })
       for (let kills = 0; ; kills++) {
         const all = kills === 0 ? words : [...words, '--resume']
