@@ -10,7 +10,10 @@ import { example, exampleWith } from './example.js'
 
 function expectRoundTrip(scene: Scene): void {
   const again = parseScene(sceneYaml(scene), scene.file)
-  expect({ ...again, locate: undefined }).toStrictEqual({ ...scene, locate: undefined })
+  // The text itself, hence its fingerprint, is another one; the data files are the same.
+  const [, ...data] = scene.inputs
+  expect(again.inputs.slice(1)).toStrictEqual(data)
+  expect({ ...again, locate: undefined, inputs: undefined }).toStrictEqual({ ...scene, locate: undefined, inputs: undefined })
 }
 
 describe('sceneYaml', () => {
