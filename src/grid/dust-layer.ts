@@ -37,5 +37,21 @@ export function upperRanges(layers: DustLayer[], cosTheta: Float64Array): PolarR
   for (let k = cosTheta.length - 2; k >= 0; k--) {
     if (cosTheta[k] > 0) ranges.push({ from: Math.max(0, cosTheta[k + 1]), to: cosTheta[k] })
   }
-  return ranges
+  return fewer(ranges)
+}
+
+/** More ranges say nothing more about where radial walls should be, but take time as their square. */
+const MOST_RANGES = 100
+
+/** Neighbours put together until few enough are left; the one next to the midplane stays as it is. */
+function fewer(ranges: PolarRange[]): PolarRange[] {
+  if (ranges.length <= MOST_RANGES) return ranges
+  const [midplane, ...others] = ranges
+  const step = Math.ceil(others.length / (MOST_RANGES - 1))
+  const count = Math.ceil(others.length / step)
+  const joined = Array.from({ length: count }, (_, i) => ({
+    from: others[i * step].from,
+    to: others[Math.min(others.length, (i + 1) * step) - 1].to
+  }))
+  return [midplane, ...joined]
 }

@@ -1,6 +1,7 @@
 import type { Model } from '../model/model.js'
 import { dustLight } from '../solve/dust-light.js'
-import { type EquilibriumResult, equilibriumPiece, needsEquilibrium, solveEquilibrium } from '../solve/equilibrium.js'
+import { type EquilibriumResult, needsEquilibrium, solveEquilibrium } from '../solve/equilibrium.js'
+import { equilibriumPiece } from '../solve/equilibrium-round.js'
 import { type DustTemperatures, givenTemperatures } from '../solve/temperatures.js'
 import type { Ledger } from '../workers/ledger.js'
 import type { WorkerPool } from '../workers/pool.js'

@@ -2,13 +2,20 @@ import { coolingOf, rowOf } from '../dust/emission.js'
 import { medianOverBulk } from '../math/stats.js'
 import type { Model } from '../model/model.js'
 import type { Scene } from '../scene/types.js'
-import type { EquilibriumTally } from '../transport/equilibrium.js'
-import type { Ledger, Piece } from '../workers/ledger.js'
-import type { Task, WorkerPool } from '../workers/pool.js'
-import { runKept } from '../workers/run-kept.js'
-import { type Batches, divide, groupOf } from './batches.js'
+import type { Ledger } from '../workers/ledger.js'
+import type { WorkerPool } from '../workers/pool.js'
+import { divide } from './batches.js'
 import { type EquilibriumSetup, equilibriumSetup } from './equilibrium-medium.js'
-import { GROUPS } from './groups.js'
+import {
+  type EquilibriumProgress,
+  type EquilibriumRound,
+  type EquilibriumState,
+  emptyTally,
+  equilibriumPiece,
+  pieceOf,
+  playRound,
+  type RoundTally
+} from './equilibrium-round.js'
 import { type DustTemperatures, firstGuess, temperaturesFrom } from './temperatures.js'
 import { ThickCells } from './thick-cells.js'
 
@@ -39,48 +46,6 @@ export interface EquilibriumResult {
   /** False when the most packets were spent before the temperatures reached the precision. */
   reached: boolean
 }
-
-export interface EquilibriumRound {
-  packets: number
-  /** Median relative 1 sigma of the temperature over the cells that hold 95 % of the emission. */
-  error: number
-  /** Median relative change of those temperatures since the round before. */
-  change: number
-  /** The larger of `error` and, once that is small enough, the relative error that shows in what will be observed. */
-  worst: number
-  interactions: number
-}
-
-export interface EquilibriumProgress {
-  round: number
-  done: number
-  packets: number
-  error: number
-}
-
-/** Where the temperatures stand: `tally` holds the first `done` batches of the present round. */
-interface EquilibriumState {
-  rounds: EquilibriumRound[]
-  spent: number
-  /** Packets asked of the present round, and the temperatures with which it emits. */
-  size: number
-  present: Float64Array
-  done: number
-  tally: RoundTally
-}
-
-/** Sums over the batches of a round. */
-interface RoundTally {
-  /** GROUPS arrays of components x cells. */
-  absorbed: Float64Array[]
-  escaped: number
-  returned: number
-  kept: number
-  interactions: number
-}
-
-/** Under this name the ledger holds temperatures half done. */
-export const equilibriumPiece = 'dust-rounds'
 
 /**
  * Radiative equilibrium of all dust with `temperature: solve`: rounds of packets, each at least twice the one before, each
@@ -147,52 +112,6 @@ function growth(excess: number): number {
 /** Whether any dust has to find its temperature, and anything heats it. */
 export function needsEquilibrium({ dust, effort }: Scene): boolean {
   return dust.some(({ temperature }) => temperature === 'solve') && effort.equilibrium > 0
-}
-
-/** Plays what is left of a round; false when it was stopped before its end. */
-function playRound(
-  state: EquilibriumState,
-  batches: Batches,
-  seed: string,
-  pool: WorkerPool,
-  ledger: Ledger,
-  onProgress: (progress: EquilibriumProgress) => void,
-  stop: AbortSignal | undefined
-): Promise<boolean> {
-  const { rounds, tally } = state
-  const round = rounds.length
-  const { count, packets } = batches
-  const error = rounds.at(-1)?.worst ?? Number.NaN
-  const tasks = Array.from(
-    { length: count },
-    (_, batch): Task => ({ name: 'equilibrium', input: { packets, seed: `${seed}/dust/${round}/${batch}` } })
-  )
-  const take = (output: unknown, batch: number) => {
-    addTally(tally, groupOf(batch, batches), output as EquilibriumTally)
-    state.done = batch + 1
-    onProgress({ round, done: state.done * packets, packets: count * packets, error })
-  }
-  return runKept({ tasks, done: state.done, take, name: equilibriumPiece, piece: () => pieceOf(state) }, pool, ledger, stop)
-}
-
-function emptyTally({ medium }: EquilibriumSetup): RoundTally {
-  const absorbed = Array.from({ length: GROUPS }, () => new Float64Array(medium.components * medium.cells))
-  return { absorbed, escaped: 0, returned: 0, kept: 0, interactions: 0 }
-}
-
-function addTally(sum: RoundTally, group: number, tally: EquilibriumTally): void {
-  const absorbed = sum.absorbed[group]
-  for (let i = 0; i < absorbed.length; i++) absorbed[i] += tally.absorbed[i]
-  sum.escaped += tally.escaped
-  sum.returned += tally.returned
-  sum.kept += tally.kept
-  sum.interactions += tally.interactions
-}
-
-/** The state as it is now; later batches do not change it. */
-function pieceOf(state: EquilibriumState): Piece {
-  const { rounds, tally } = state
-  return { ...state, rounds: [...rounds], tally: { ...tally, absorbed: tally.absorbed.map((sum) => sum.slice()) } }
 }
 
 function budgetOf({ escaped, returned, kept }: RoundTally, { luminosity }: EquilibriumSetup, packets: number): EnergyBudget {

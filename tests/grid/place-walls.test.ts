@@ -104,6 +104,15 @@ describe('placeWalls', () => {
     expect(cosTheta.length - 1).toBeLessThanOrEqual(120)
   })
 
+  it('takes no longer for very many polar cells, and finds nearly the same radii', () => {
+    const [few, many] = [100, 8000].map((polar) =>
+      placeWalls({ layers: [layer(flared, 1e4)], dimensions: 2, radial: 60, polar, azimuthal: 0 })
+    )
+    expect(many.cosTheta.length).toBe(8001)
+    expect(many.r.length).toBe(few.r.length)
+    for (let i = 1; i < few.r.length; i++) expect(Math.abs(Math.log(many.r[i] / few.r[i]))).toBeLessThan(0.3)
+  })
+
   it('merges a disk with an envelope', () => {
     const { r } = place([layer(flared, 1e4), layer(wind(0.3 * AU, 5000 * AU), 0.2)], 2)
     expectIncreasing(r)

@@ -26,6 +26,20 @@ export function logAxis(title: string, values: number[], mostDecades = Number.PO
   }
 }
 
+/** Room beyond the frame, as a share of its height, in which values far beyond it are put. */
+const beyond = 0.03
+
+/**
+ * A value where it stands, or just beyond the frame when it lies farther out: what is drawn stays on the sheet, as the
+ * renderer demands of clipped marks.
+ */
+export function nearFrame({ scale: { type, domain } }: PlotAxis, value: number): number {
+  const [low, high] = domain
+  const room = type === 'log' ? (high / low) ** beyond : beyond * (high - low)
+  const [least, most] = type === 'log' ? [low / room, high * room] : [low - room, high + room]
+  return Math.min(most, Math.max(least, value))
+}
+
 /** Positions and the expression that gives their labels. */
 export function marks(major: { value: number; label: string }[]): { values: number[]; labelExpr: string } {
   const labels = Object.fromEntries(major.map(({ value, label }) => [String(value), label]))

@@ -1,7 +1,7 @@
 import type { TopLevelSpec } from 'vega-lite'
 import { AU } from '../../units/constants.js'
 import { rasterize } from '../draw/rasterize.js'
-import { logAxis } from './log-axis.js'
+import { logAxis, nearFrame } from './log-axis.js'
 import type { RadialComponent, RadialStructure } from './structure.js'
 import { vegaSvg } from './vega-svg.js'
 import { wrapped } from './wrapped.js'
@@ -32,6 +32,7 @@ export async function radialPlot({ r, components }: RadialStructure, title: stri
     rows.map(({ density }) => density),
     mostDecadesOfDensity
   )
+  const dusty = rows.filter((row) => row.density > 0)
   const size = { width: 640, height: 280 }
   const spec: TopLevelSpec = {
     title: { text: wrapped(title, 46), subtitle: emitting.some(({ low, high }) => low < high) ? 'bands: 1 sigma' : [] },
@@ -52,7 +53,7 @@ export async function radialPlot({ r, components }: RadialStructure, title: stri
       },
       {
         ...size,
-        data: { values: rows.filter(({ density }) => density > 0) },
+        data: { values: dusty.map((row) => ({ ...row, density: nearFrame(density, row.density) })) },
         mark: { type: 'line', clip: true, point: { size: 10 } },
         encoding: { x, color, y: { field: 'density', type: 'quantitative', ...density } }
       }

@@ -8,7 +8,7 @@ import { rasterize } from '../draw/rasterize.js'
 import { inDegrees } from '../in-degrees.js'
 import { spectrumInUnit } from '../spectrum-in-unit.js'
 import { fluxAxis } from './flux-axis.js'
-import { logAxis } from './log-axis.js'
+import { logAxis, nearFrame } from './log-axis.js'
 import { vegaSvg } from './vega-svg.js'
 import { wrapped } from './wrapped.js'
 
@@ -31,13 +31,16 @@ function specification(measured: ApertureSpectrum, scene: Scene): TopLevelSpec {
   const y = fluxAxis(spec.unit, [...values.total, ...values.direct, ...values.emitted, ...values.scattered])
   const shown = (value: number): boolean => Number.isFinite(value) && (y.scale.type === 'linear' || value > 0)
   const rows = parts.flatMap((part) =>
-    values.wavelengthUm.map((wavelength, k) => ({ wavelength, part, flux: values[part][k] })).filter(({ flux }) => shown(flux))
+    values.wavelengthUm
+      .map((wavelength, k) => ({ wavelength, part, flux: values[part][k] }))
+      .filter(({ flux }) => shown(flux))
+      .map((row) => ({ ...row, flux: nearFrame(y, row.flux) }))
   )
   const bars = values.wavelengthUm
     .map((wavelength, k) => ({
       wavelength,
-      low: Math.max(values.total[k] - values.sigma[k], y.scale.domain[0]),
-      high: values.total[k] + values.sigma[k]
+      low: nearFrame(y, values.total[k] - values.sigma[k]),
+      high: nearFrame(y, values.total[k] + values.sigma[k])
     }))
     .filter(({ low, high }) => shown(low) && shown(high))
   const x = { field: 'wavelength', type: 'quantitative', ...logAxis('wavelength (µm)', values.wavelengthUm) } as const

@@ -51,6 +51,17 @@ describe('ticks', () => {
   })
 })
 
+describe('ranges that are none', () => {
+  it.each([
+    [30, 30],
+    [30, 30 * (1 + 2 ** -52)],
+    [1e300, 1.0000001e300]
+  ])('%d to %d come to an end', (low, high) => {
+    for (const { major, minor } of [linearTicks(low, high, 6), logTicks(low, high)])
+      expect(major.length + minor.length).toBeLessThan(2000)
+  })
+})
+
 describe('labels', () => {
   it('use raised digits for powers', () => {
     expect(['0.002', '10⁴', '10⁻⁵', '2.5×10⁻⁷', '−3']).toEqual([0.002, 1e4, 1e-5, 2.5e-7, -3].map((v) => shortNumber(v)))

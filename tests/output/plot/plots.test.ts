@@ -47,6 +47,36 @@ describe('spectrumPlot', () => {
   })
 })
 
+describe('values far out of the frame', () => {
+  it.each(['Jy', 'mag'])('are left out of the picture without ending the program (%s)', async (unit) => {
+    const steep = await spectrumPlot(exampleSpectrum([1e-4, 3e-4, 9e-4], [1e-69, 1e-34, 1e-200], unit), exampleScene())
+    expect(pixelsOf(steep.png, [0x22, 0x22, 0x22])).toBeGreaterThan(20)
+  })
+
+  it('of the densities of two dusts, too', async () => {
+    const r = Float64Array.of(1, 2, 3, 4).map((value) => value * au)
+    const one = {
+      name: 'thick',
+      density: new Float64Array(4).fill(1),
+      temperature: new Float64Array(4).fill(20),
+      sigma: new Float64Array(4)
+    }
+    const components = [one, { ...one, name: 'thin', density: new Float64Array(4).fill(1e-60) }]
+    expect((await structurePlot({ kind: 'radial', r, components }, 'Two dusts')).length).toBeGreaterThan(1000)
+  })
+
+  it('of a temperature that is the same but for rounding, too', async () => {
+    const temperature = Float64Array.from({ length: 8 }, (_, i) => 30 * (1 + (i % 2) * 2 ** -52))
+    const structure: MeridionalStructure = {
+      kind: 'map',
+      rWalls: new Float64Array([1, 2, 4].map((value) => value * au)),
+      cosThetaWalls: new Float64Array([1, 0.5, 0, -0.5, -1]),
+      components: [{ name: 'dust', density: new Float64Array(8).fill(1), temperature }]
+    }
+    expect((await structurePlot(structure, 'Even warmth')).length).toBeGreaterThan(1000)
+  })
+})
+
 describe('structurePlot', () => {
   const structure: MeridionalStructure = {
     kind: 'map',
