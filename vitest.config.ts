@@ -11,7 +11,7 @@ export default defineConfig({
     globalSetup: ['tests/setup/build.ts'],
     server: { deps: { external: [/\/dist\//] } },
     execArgv: ['--enable-source-maps'],
-    testTimeout: 120_000,
+    testTimeout: 300_000,
     hookTimeout: 120_000,
     maxWorkers: 2
   }

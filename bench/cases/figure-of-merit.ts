@@ -88,7 +88,7 @@ const disks: Contest[] = [1e2, 1e4, 1e6].flatMap((depth) =>
     halfAu: DISK_FIELD.halfAu,
     inclination,
     packets: 2e5,
-    peelPackets: 4e5,
+    peelPackets: 2e5,
     ...(depth === 1e4 && inclination === 60 && { atLeast: 500 })
   }))
 )

@@ -5,7 +5,7 @@ import { lightDust } from '../lit-dust.js'
 import { PacketPool } from '../packet-pool.js'
 import { diskScene } from '../scenes.js'
 
-const REPETITIONS = 3
+const REPETITIONS = 2
 
 /** Numbers of cells in radius, polar angle and azimuth: about 1e3, 1e4, 1e5 and 1e6 in all. */
 const GRIDS: [number, number, number][] = [
@@ -78,7 +78,7 @@ const sweeps: Sweep[] = [
     name: 'packets',
     about: 'processor time of a whole run of a disk against packets',
     unit: 'packets',
-    sizes: [2e5, 8e5, 32e5],
+    sizes: [5e4, 2e5, 8e5],
     scene: (packets) => diskScene({ depth: 100, packets }),
     power: 1.05
   },
@@ -86,7 +86,7 @@ const sweeps: Sweep[] = [
     name: 'wavelengths',
     about: `processor time of a whole run of a disk against wavelengths of a spectrum, ${LITTLE} packets each`,
     unit: 'wavelengths',
-    sizes: [1, 10, 90],
+    sizes: [1, 4, 16],
     scene: (wavelengths) => diskScene({ depth: 100, wavelengths, packets: LITTLE }),
     power: 1.05
   },
@@ -100,11 +100,11 @@ const sweeps: Sweep[] = [
   },
   {
     name: 'cameras',
-    about: `processor time of a whole run of a disk against cameras, ${4 * LITTLE} packets`,
+    about: `processor time of a whole run of a disk against cameras, ${2 * LITTLE} packets`,
     unit: 'cameras',
-    sizes: [1, 2, 4, 8],
+    sizes: [1, 2, 4],
     scene: (cameras) =>
-      diskScene({ depth: 100, inclinations: Array.from({ length: cameras }, (_, i) => 10 + 10 * i), packets: 4 * LITTLE }),
+      diskScene({ depth: 100, inclinations: Array.from({ length: cameras }, (_, i) => 10 + 10 * i), packets: 2 * LITTLE }),
     power: 1.05
   }
 ]

@@ -5,7 +5,7 @@ import { type CommandRun, runCommand } from '../command.js'
 import { diskScene, envelopeScene } from '../scenes.js'
 import { openYardstick } from '../yardstick.js'
 
-const REPETITIONS = 3
+const REPETITIONS = 2
 
 interface WholeRun {
   name: string

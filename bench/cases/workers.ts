@@ -5,7 +5,7 @@ import { lightDust } from '../lit-dust.js'
 import { PacketPool } from '../packet-pool.js'
 import { diskScene, shellScene } from '../scenes.js'
 
-const REPETITIONS = 3
+const REPETITIONS = 2
 const PACKETS = 1e6
 
 /**

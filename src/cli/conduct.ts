@@ -22,6 +22,7 @@ export async function conduct(
       workers,
       estimator,
       stop: signal.stop,
+      onBegin: signal.arm,
       onProgress: progress.show,
       ...(memory !== undefined && { memory })
     })

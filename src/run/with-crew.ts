@@ -14,6 +14,8 @@ export interface RunOptions {
   estimator: Estimator
   onProgress: (progress: RunProgress) => void
   stop?: AbortSignal
+  /** Called when the model is built, and `stop` is heeded from now on. */
+  onBegin?: () => void
   /** Where the run keeps its state; default: nowhere. */
   ledger?: Ledger
   /** Most memory it may take, bytes; default: what the machine has. */
@@ -32,13 +34,14 @@ export interface Crew {
 /** Builds the model, starts workers, and lets `work` use them; the ledger is settled and the workers ended whatever comes. */
 export async function withCrew<Result>(
   scene: Scene,
-  { workers, ledger = noLedger, memory }: RunOptions,
+  { workers, ledger = noLedger, memory, onBegin }: RunOptions,
   work: (crew: Crew) => Promise<Result>
 ): Promise<Result> {
   const clock = stopwatch()
   const plan = planCells(scene)
   requireMemory(plan, workers, memory)
   const model = buildModel(scene, plan)
+  onBegin?.()
   const pool = new WorkerPool(workers, new URL('./thread.js', import.meta.url))
   try {
     return await work({ model, pool, ledger, time: clock() })

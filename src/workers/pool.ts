@@ -84,7 +84,6 @@ export class WorkerPool {
   /** Waits for what is in hand, no longer than GRACE. */
   private readonly end = () => {
     const job = this.job
-    this.feed()
     setTimeout(() => {
       if (!job || this.job !== job) return
       this.finish(job, () => job.resolve(job.handed))

@@ -4,6 +4,7 @@ import { parentPort } from 'node:worker_threads'
 parentPort.on('message', (message) => {
   if (message.kind !== 'task') return
   const { id, name, input } = message
+  if (name === 'never') return
   if (name === 'exit') process.exit(3)
   if (name === 'throw')
     setImmediate(() => {

@@ -36,6 +36,17 @@ describe('a pool of workers', () => {
     expect(await pool.run(doubles(3), () => {})).toBe(3)
   })
 
+  it('gives up what takes too long to finish when stopped', async () => {
+    const stop = new AbortController()
+    const tasks = doubles(20)
+    tasks[6] = { name: 'never', input: 0 }
+    const run = open(2).run(tasks, (_, index) => index === 5 && stop.abort(), stop.signal)
+    const start = performance.now()
+    expect(await run).toBe(6)
+    expect(performance.now() - start).toBeLessThan(30_000)
+    await expect(pool.run(doubles(1), () => {})).rejects.toThrow('the pool was stopped')
+  })
+
   it.each([
     ['throw', /a worker thread died: out of control/],
     ['exit', /a worker thread ended unexpectedly \(code 3\)/],
