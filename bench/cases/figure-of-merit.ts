@@ -14,7 +14,10 @@ interface Contest {
   scene: (packets: number) => string
   halfAu: number
   inclination: number
-  /** Packets of ours and of the yardstick: a few seconds each. */
+  /**
+   * Packets of ours: the whole command takes five to ten seconds. The longer it is, the less its start, rays and products weigh, and
+   * the better it looks. Packets of the yardstick: a few seconds, and its loop alone is timed.
+   */
   packets: number
   peelPackets: number
   atLeast?: number
@@ -87,7 +90,7 @@ const disks: Contest[] = [1e2, 1e4, 1e6].flatMap((depth) =>
     scene: (packets: number) => diskScene({ depth, inclinations: [inclination], packets }),
     halfAu: DISK_FIELD.halfAu,
     inclination,
-    packets: 2e5,
+    packets: 4e5,
     peelPackets: 2e5,
     ...(depth === 1e4 && inclination === 60 && { atLeast: 500 })
   }))

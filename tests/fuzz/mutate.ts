@@ -127,7 +127,7 @@ function strange(uniform: Uniform): unknown {
       return {}
     default: {
       let nest: unknown = 'deep'
-      for (let depth = 10 ** whole(4, uniform); depth > 0; depth--) nest = depth % 2 ? [nest] : { a: nest }
+      for (let depth = 3 ** whole(5, uniform); depth > 0; depth--) nest = depth % 2 ? [nest] : { a: nest }
       return nest
     }
   }
@@ -222,6 +222,7 @@ const TEXT: ((text: string, uniform: Uniform) => string)[] = [
     `a: &a [x, x, x, x, x, x, x, x, x]\n${'bcdefghij'.replace(/./g, (key) => `${key}: &${key} [${Array(9).fill(`*${String.fromCharCode(key.charCodeAt(0) - 1)}`)}]\n`)}${text}`,
   (text) => text.replace(/^(\s*)-/m, '$1- &loop\n$1  self: *loop\n$1 '),
   (text) => text.replaceAll('\n', '\r\n'),
+  (text, uniform) => `${text}deep: ${pick(['[', '{a: ', '- '], uniform).repeat(10 ** whole(6, uniform))}`,
   (text, uniform) => text.repeat(1 + whole(3, uniform))
 ]
 
