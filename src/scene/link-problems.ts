@@ -19,9 +19,12 @@ export function linkProblems(document: YamlDocument): SceneProblem[] {
     const seen = new Set<string>()
     entriesOf(scene[section]).forEach(({ name }, i) => {
       if (typeof name !== 'string') return
-      if (seen.has(name.toLowerCase()))
-        report([section, i, 'name'], 'the name is used twice in this list; names must differ in more than capitals')
-      seen.add(name.toLowerCase())
+      // Names of dust become names of columns, where the three signs are one.
+      const plain = section === 'dust' ? name.toLowerCase().replace(/[._-]/g, '_') : name.toLowerCase()
+      const more = section === 'dust' ? 'capitals and . _ -' : 'capitals'
+      if (seen.has(plain))
+        report([section, i, 'name'], `the name is used twice in this list; names must differ in more than ${more}`)
+      seen.add(plain)
     })
   }
 

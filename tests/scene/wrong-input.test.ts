@@ -128,6 +128,12 @@ describe('wrong input', () => {
     expect(problems[0].message).toMatch(/used twice/)
   })
 
+  test('names of dust that would name the same columns', () => {
+    const entry = /^dust:\n((?: .*\n)+)/m.exec(example)![1].replace(/name: \w+/, 'name: far-out')
+    const problems = problemsOf(example.replace(/^dust:\n(?: .*\n)+/m, `dust:\n${entry}${entry.replace('far-out', 'far_out')}`))
+    expect(problems.map(({ key, message }) => [key, /and \. _ -/.test(message)])).toEqual([['dust.1.name', true]])
+  })
+
   test('nothing that shines, nothing that is asked for', () => {
     const messages = problemsOf('distance: 1 pc').map(({ message }) => message)
     expect(messages).toEqual([expect.stringMatching(/nothing shines/), expect.stringMatching(/nothing is asked for/)])
