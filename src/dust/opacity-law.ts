@@ -1,5 +1,6 @@
 import { interpolateLinear, interpolateLogLog } from '../math/interp.js'
 import type { OpacitySpec, OpacityTable, PhaseLaw, PowerOpacitySpec } from '../scene/types.js'
+import type { ScatteringMatrix } from './scattering-matrix.js'
 
 /** Optical properties of one kind of dust as functions of wavelength (cm). */
 export interface OpacityLaw {
@@ -10,6 +11,8 @@ export interface OpacityLaw {
   /** Mean cosine of the scattering angle; 0 at every wavelength when scattering is isotropic. */
   asymmetry: (wavelength: number) => number
   phase: PhaseLaw
+  /** Scattering matrix at a wavelength, of a law whose light is followed with its polarisation. */
+  matrix?: (wavelength: number) => ScatteringMatrix
   /** Wavelengths (cm) between which the law is given; beyond them it is extrapolated. */
   range: [number, number]
   /** Wavelengths (cm, increasing) where a curve bends sharply. */
