@@ -43,6 +43,7 @@ export function startProgress(
 }
 
 function lineOf(progress: RunProgress, rate: number, elapsed: number, effort: EffortSpec): string {
+  if (progress.stage === 'grains') return grainsLine(progress)
   const { stage, wavelength, index = 0, count = 0, done, of, error, observer } = progress
   const left = secondsLeft(progress, rate, elapsed, effort)
   const at = wavelength === undefined ? '' : `wavelength ${index + 1} of ${count} (${wavelengthText(wavelength * 1e4)}), `
@@ -55,4 +56,8 @@ function lineOf(progress: RunProgress, rate: number, elapsed: number, effort: Ef
     ...(left === undefined ? [] : [`about ${duration(left)} left`])
   ]
   return parts.join(', ')
+}
+
+function grainsLine({ opacity, done, of, round }: RunProgress): string {
+  return `grains of ${opacity}, ${round === 0 ? 'first wavelengths' : `refinement ${round}`}: ${done} of ${of}`
 }

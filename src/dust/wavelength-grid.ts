@@ -15,8 +15,8 @@ export interface WavelengthGrid {
 /** Width of a bin in ln(wavelength). */
 const BIN_WIDTH = 0.015
 /** The range always covered, cm: all emission of dust between 1 K (to 0.5 %; 1e-6 at 20 K) and 1e4 K (to 1e-9). */
-const SHORTEST = 0.05e-4
-const LONGEST = 3
+export const SHORTEST = 0.05e-4
+export const LONGEST = 3
 
 /**
  * Logarithmic bins at most 1.5 % wide from `shortest` to `longest` (cm; widened to 0.05 um to 3 cm, so that all dust emission

@@ -1,3 +1,4 @@
+import type { GrainOptics } from '../dust/grains/grain-optics.js'
 import { makeOpacityLaw, type OpacityLaw } from '../dust/opacity-law.js'
 import type { DustLayer } from '../grid/dust-layer.js'
 import { cellCount, cellVolumes, type SphericalWalls } from '../grid/geometry.js'
@@ -18,11 +19,11 @@ export interface CellPlan extends Pick<Model, 'scene' | 'dimensions' | 'reason' 
   parts: { spec: DustSpec; law: OpacityLaw; shape: Shape; scale: number }[]
 }
 
-/** Lays the cells of a scene. Throws SceneError where the scene asks for what cannot be. */
-export function planCells(scene: Scene): CellPlan {
+/** Lays the cells of a scene; `tables`: optics of grains by the name of the opacity, where they are known. Throws SceneError where the scene asks for what cannot be. */
+export function planCells(scene: Scene, tables: Record<string, GrainOptics> = {}): CellPlan {
   const stars = scene.sources.map((spec) => ({ spec, spectrum: starSpectrum(spec) }))
   const parts = scene.dust.map((spec, index) => {
-    const law = makeOpacityLaw(scene.opacities[spec.opacity])
+    const law = makeOpacityLaw(scene.opacities[spec.opacity], tables[spec.opacity])
     const shape = makeShape(spec.shape)
     return { spec, law, shape, scale: scaleOf(scene, spec, index, shape, law.absorption, law.scattering) }
   })

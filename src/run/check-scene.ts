@@ -1,13 +1,15 @@
-import { buildModel } from '../model/build-model.js'
+import { buildModel, planCells } from '../model/build-model.js'
 import type { Model } from '../model/model.js'
 import type { Scene } from '../scene/types.js'
 import { AU, PARSEC, SOLAR_LUMINOSITY, SOLAR_MASS, SOLAR_RADIUS } from '../units/constants.js'
 import { type Forecast, forecast } from './forecast.js'
+import { grainTables } from './grain-tables.js'
 import { memoryEstimate, totalMemory } from './memory.js'
 import { type OpticalDepths, opticalDepths } from './optical-depths.js'
 import { percent } from './percent.js'
 import { sceneWarnings } from './scene-warnings.js'
 import { runTrial } from './trial.js'
+import type { RunOptions } from './with-crew.js'
 
 /** What a scene means, before it is run. */
 export interface SceneCheck {
@@ -45,9 +47,13 @@ export interface SceneCheck {
 const TRIAL_SECONDS = 8
 
 /** Works out what a scene means, and tries a little of it to see how long all will take. Throws SceneError. */
-export async function checkScene(scene: Scene, { workers }: { workers: number }): Promise<SceneCheck> {
-  const model = buildModel(scene)
-  const trial = await runTrial(scene, TRIAL_SECONDS)
+export async function checkScene(
+  scene: Scene,
+  { workers, onProgress }: Pick<RunOptions, 'workers'> & Partial<Pick<RunOptions, 'onProgress'>>
+): Promise<SceneCheck> {
+  const tables = await grainTables(scene, workers, onProgress)
+  const model = buildModel(scene, planCells(scene, tables))
+  const trial = await runTrial(scene, tables, TRIAL_SECONDS)
   const expected = forecast(model, trial, workers)
   const { walls, cells, reason } = model
   return {

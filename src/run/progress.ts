@@ -1,13 +1,15 @@
 /** What a run is doing, for whoever shows it. */
 export interface RunProgress {
-  stage: 'dust' | 'light' | 'pictures'
+  stage: 'grains' | 'dust' | 'light' | 'pictures'
   /** Wavelength at hand, cm, and how many of how many; absent for the dust. */
   wavelength?: number
   index?: number
   count?: number
   /** The camera or spectrum at hand, for pictures. */
   observer?: { kind: 'camera' | 'spectrum'; name: string }
-  /** Packets (or rows of pixels) done and asked for in the present round. */
+  /** The opacity whose grains are at hand. */
+  opacity?: string
+  /** Packets (or rows of pixels, or wavelengths of grains) done and asked for in the present round. */
   done: number
   of: number
   round: number

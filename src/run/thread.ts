@@ -2,6 +2,7 @@ import { integrateAperture } from '../camera/aperture.js'
 import type { PixelFrame } from '../camera/direct.js'
 import { type FieldData, openField } from '../camera/ray-field.js'
 import { pictureRows } from '../camera/rows.js'
+import { type GrainTableRequest, mixtureOptics } from '../dust/grains/tabulate-grains.js'
 import { stream } from '../math/random.js'
 import type { Detector } from '../transport/detector.js'
 import { type EquilibriumMedium, propagateEnergy } from '../transport/equilibrium.js'
@@ -32,6 +33,10 @@ const field = (shared: Shared) => openField(shared('field') as FieldData)
 
 /** Runs on every worker thread: the work that a run hands out, by name. */
 serve({
+  grains: (wavelength: number, shared: Shared) => {
+    const { populations, angles } = shared('grains') as Pick<GrainTableRequest, 'populations' | 'angles'>
+    return mixtureOptics(populations, [wavelength], angles)
+  },
   equilibrium: ({ packets, seed }: Batch, shared: Shared) =>
     propagateEnergy(shared('equilibrium') as EquilibriumMedium, packets, stream(seed)),
   flights: ({ packets, seed }: Batch, shared: Shared) => tallyFlights(scattering(shared), packets, stream(seed)),

@@ -1,11 +1,13 @@
 import { parentPort, workerData } from 'node:worker_threads'
 import type { Scene } from '../scene/types.js'
+import type { GrainTables } from './grain-tables.js'
 import type { RunProgress } from './progress.js'
 import { type RunResult, runScene } from './run-scene.js'
 import { TRIAL_PACKETS, TRIAL_PIXELS, TRIAL_PRECISION, type Trial } from './trial.js'
 
 /** Runs on the thread of a trial: tells after every step what is known so far. */
-const scene = inSmall(workerData as Omit<Scene, 'locate'>)
+const { scene: full, tables } = workerData as { scene: Omit<Scene, 'locate'>; tables: GrainTables }
+const scene = inSmall(full)
 const trial: Trial = {
   dust: { packets: 0, seconds: 0, noise: 0 },
   light: { packets: 0, seconds: 0, noise: 0 },
@@ -17,7 +19,7 @@ const trial: Trial = {
 let last = performance.now()
 let firstRows = 0
 
-const result = await runScene(scene, { workers: 1, estimator: 'emissivity', onProgress: note })
+const result = await runScene(scene, { workers: 1, estimator: 'emissivity', tables, onProgress: note })
 noteNoise(result)
 trial.complete = true
 parentPort!.postMessage(trial)
@@ -26,7 +28,7 @@ parentPort!.postMessage(trial)
 function note({ stage, done, of, observer, index = 0 }: RunProgress): void {
   const seconds = (performance.now() - last) / 1000
   last = performance.now()
-  if (stage !== 'pictures') {
+  if (stage === 'dust' || stage === 'light') {
     trial[stage].seconds += seconds
     trial[stage].packets = index * TRIAL_PACKETS + done
   } else if (observer?.kind === 'spectrum') {

@@ -1,5 +1,6 @@
 import { Worker } from 'node:worker_threads'
 import type { Scene } from '../scene/types.js'
+import type { GrainTables } from './grain-tables.js'
 
 /** How long parts of a run took on one worker, and how noisy they came out. */
 export interface Trial {
@@ -33,9 +34,9 @@ export const TRIAL_PRECISION = 0.05
  * Runs a scene in small on one worker: a round of packets for the dust, one camera and one spectrum at two wavelengths. It has
  * a thread of its own, which is ended after `mostSeconds` whatever it is doing.
  */
-export function runTrial({ locate, ...scene }: Scene, mostSeconds: number): Promise<Trial> {
+export function runTrial({ locate, ...scene }: Scene, tables: GrainTables, mostSeconds: number): Promise<Trial> {
   return new Promise((resolve, reject) => {
-    const thread = new Worker(new URL('./trial-thread.js', import.meta.url), { workerData: scene })
+    const thread = new Worker(new URL('./trial-thread.js', import.meta.url), { workerData: { scene, tables } })
     let latest: Trial = {
       dust: { packets: 0, seconds: 0, noise: 0 },
       light: { packets: 0, seconds: 0, noise: 0 },

@@ -4,6 +4,7 @@ import type { Scene } from '../scene/types.js'
 import { type Ledger, noLedger } from '../workers/ledger.js'
 import { WorkerPool } from '../workers/pool.js'
 import type { Estimator } from './estimator.js'
+import { type GrainTables, grainTables } from './grain-tables.js'
 import type { RunProgress } from './progress.js'
 import { requireMemory } from './require-memory.js'
 import { type PhaseTime, stopwatch } from './stopwatch.js'
@@ -18,6 +19,8 @@ export interface RunOptions {
   onBegin?: () => void
   /** Where the run keeps its state; default: nowhere. */
   ledger?: Ledger
+  /** Tables of the optics of grains, by a caller who has them. */
+  tables?: GrainTables
   /** Most memory it may take, bytes; default: what the machine has. */
   memory?: number
 }
@@ -34,11 +37,11 @@ export interface Crew {
 /** Builds the model, starts workers, and lets `work` use them; the ledger is settled and the workers ended whatever comes. */
 export async function withCrew<Result>(
   scene: Scene,
-  { workers, ledger = noLedger, memory, onBegin }: RunOptions,
+  { workers, ledger = noLedger, memory, tables, onBegin, onProgress }: RunOptions,
   work: (crew: Crew) => Promise<Result>
 ): Promise<Result> {
   const clock = stopwatch()
-  const plan = planCells(scene)
+  const plan = planCells(scene, tables ?? (await grainTables(scene, workers, onProgress)))
   requireMemory(plan, workers, memory)
   const model = buildModel(scene, plan)
   onBegin?.()

@@ -72,5 +72,5 @@ function isOtherKind(issue: Issue): boolean {
 }
 
 function isMissingKey(issue: Issue): boolean {
-  return issue.path.length === 1 && issue.code === 'invalid_type' && issue.input === undefined
+  return issue.path.length === 1 && issue.code !== 'custom' && issue.input === undefined
 }

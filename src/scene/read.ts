@@ -5,11 +5,12 @@ import { issueProblems, locateProblem } from './issue-problems.js'
 import { largestSceneFile } from './limits.js'
 import { linkProblems } from './link-problems.js'
 import { resolveCamera, resolveSpectrum } from './observers.js'
+import { opacitySpec } from './opacities.js'
 import { type SoundParts, soundParts } from './parts.js'
 import { readText } from './read-text.js'
 import { sceneSchema } from './schema/scene-schema.js'
 import { sha256 } from './sha256.js'
-import { parseOpacityTable, parseSpectrumTable } from './tables.js'
+import { parseSpectrumTable } from './tables.js'
 import type { OpacitySpec, Scene, StarSpec } from './types.js'
 import { wording } from './wording.js'
 import { YamlDocument } from './yaml-document.js'
@@ -54,18 +55,11 @@ export function parseScene(text: string, file: string): Scene {
 }
 
 type Sound<Key extends 'sources' | 'cameras' | 'spectra'> = NonNullable<SoundParts[Key][number]>
-type SoundOpacity = NonNullable<ReturnType<SoundParts['opacities']['get']>>
 
 function starSpec({ spectrumFile, ...star }: Sound<'sources'>, i: number, files: DataFiles): StarSpec | undefined {
   if (spectrumFile === undefined) return { ...star, spectrum: { kind: 'blackbody' } }
   const table = files.read(spectrumFile, ['sources', i, 'spectrum', 'table'], parseSpectrumTable)
   return table && { ...star, spectrum: { kind: 'table', table } }
-}
-
-function opacitySpec(entry: SoundOpacity, name: string, files: DataFiles): OpacitySpec | undefined {
-  if (entry.law === 'power') return entry
-  const table = files.read(entry.file, ['opacities', name, 'file'], parseOpacityTable)
-  return table && { law: 'table', table, phase: entry.phase }
 }
 
 /** Cameras and spectra as seen from the scene's distance; none while that is unknown. */

@@ -4,7 +4,7 @@ import { fluxUnit, fluxUnits } from '../units/flux.js'
 import { intensityUnit } from '../units/intensity.js'
 import { type Column, type CsvTable, parseCsvTable } from './csv-table.js'
 import { SceneError } from './error.js'
-import type { OpacityTable, SpectrumTable } from './types.js'
+import type { ConstantsTable, OpacityTable, SpectrumTable } from './types.js'
 
 const scaled = (units: Record<string, number>): Column['units'] =>
   Object.fromEntries(Object.entries(units).map(([unit, size]) => [unit, (value: number) => value * size]))
@@ -21,6 +21,15 @@ const wavelength: Column = {
     const [least, most] = dimensions.wavelength.range
     return value >= least && value <= most ? undefined : 'a wavelength greater than 0 and of sensible size is expected'
   }
+}
+
+/** Stands for the wavelength where the header says so. */
+const wavenumber: Column = {
+  name: 'wavenumber',
+  units: Object.fromEntries(
+    Object.entries(dimensions.wavenumber.units).map(([unit, size]) => [unit, (value: number) => 1 / (value * size)])
+  ),
+  refuse: (value) => wavelength.refuse(value) && 'a wavenumber greater than 0 and of sensible size is expected'
 }
 
 const notNegative = (value: number) => (value >= 0 ? undefined : 'must not be negative')
@@ -78,6 +87,46 @@ export function parseSpectrumTable(text: string, file: string, shownAs: string):
   return { file, wavelength: sorted, fluxNu }
 }
 
+/** Reads optical constants: wavelength or wavenumber, n and k, rising or falling throughout. `shownAs` names the file in errors. */
+export function parseConstantsTable(text: string, file: string, shownAs: string): ConstantsTable {
+  const place = /^[^#\n]*\bwavenumber\b/m.test(text) ? wavenumber : wavelength
+  const table = parseCsvTable(text, shownAs, [place, { name: 'n', refuse: notNegative }, { name: 'k', refuse: notNegative }])
+  const order = inTurn(table, place.name, shownAs)
+  const [n, k] = ['n', 'k'].map((name) => inOrder(table, name, order))
+  const nothing = order.find((row) => table.columns.get('n')![row] === 0 && table.columns.get('k')![row] === 0)
+  if (nothing !== undefined) throw atLine(shownAs, table.lines[nothing], 'n', 'n and k cannot both be 0')
+  return { file, wavelength: inOrder(table, place.name, order), n, k }
+}
+
+/** Reads a size distribution: radius, and grains per unit of radius. `shownAs` names the file in errors. */
+export function parseSizesTable(text: string, file: string, shownAs: string) {
+  const table = parseCsvTable(text, shownAs, [
+    {
+      name: 'radius',
+      units: scaled(dimensions.wavelength.units),
+      refuse: (value) => (value > 0 ? undefined : 'must be greater than 0')
+    },
+    { name: 'number', refuse: notNegative }
+  ])
+  const order = inTurn(table, 'radius', shownAs)
+  const number = inOrder(table, 'number', order)
+  if (number.every((value) => value === 0)) throw allZero(shownAs)
+  return { file, radius: inOrder(table, 'radius', order), number }
+}
+
+/** Row numbers in increasing order of a column that rises or falls throughout, as it must. */
+function inTurn({ columns, lines }: CsvTable, name: string, file: string): number[] {
+  const values = columns.get(name)!
+  const rising = values[1] > values[0]
+  for (let i = 1; i < values.length; i++) {
+    if (values[i] === values[i - 1]) throw atLine(file, lines[i], name, `the ${name} of line ${lines[i - 1]} is given again`)
+    if (values[i] > values[i - 1] !== rising)
+      throw atLine(file, lines[i], name, `the rows must be in order of ${name}; this one turns back`)
+  }
+  const rows = lines.map((_, i) => i)
+  return rising ? rows : rows.reverse()
+}
+
 /** Row numbers in the order of increasing wavelength. */
 function increasing({ columns, lines }: CsvTable, file: string): number[] {
   const wavelengths = columns.get('wavelength')!
@@ -85,8 +134,7 @@ function increasing({ columns, lines }: CsvTable, file: string): number[] {
   for (let i = 1; i < order.length; i++) {
     if (wavelengths[order[i]] > wavelengths[order[i - 1]]) continue
     const [first, second] = [lines[order[i - 1]], lines[order[i]]].sort((a, b) => a - b)
-    const message = `the wavelength of line ${first} is given again`
-    throw new SceneError([{ location: { file, line: second, column: 1 }, key: 'wavelength', message }])
+    throw atLine(file, second, 'wavelength', `the wavelength of line ${first} is given again`)
   }
   return order
 }
@@ -97,5 +145,9 @@ function inOrder({ columns }: CsvTable, name: string, order: number[]): Float64A
 }
 
 function allZero(file: string): SceneError {
-  return new SceneError([{ location: { file, line: 1, column: 1 }, key: '', message: 'every value of the table is 0' }])
+  return atLine(file, 1, '', 'every value of the table is 0')
+}
+
+function atLine(file: string, line: number, key: string, message: string): SceneError {
+  return new SceneError([{ location: { file, line, column: 1 }, key, message }])
 }

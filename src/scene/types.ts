@@ -64,9 +64,9 @@ export interface SpectrumTable {
   fluxNu: Float64Array
 }
 
-export type PhaseLaw = 'isotropic' | 'henyey-greenstein'
+export type PhaseLaw = 'isotropic' | 'henyey-greenstein' | 'rayleigh' | 'computed'
 
-export type OpacitySpec = PowerOpacitySpec | TableOpacitySpec
+export type OpacitySpec = PowerOpacitySpec | TableOpacitySpec | GrainsOpacitySpec | CurveOpacitySpec
 
 export interface PowerOpacitySpec {
   law: 'power'
@@ -97,6 +97,77 @@ export interface OpacityTable {
   scattering: Float64Array
   asymmetry: Float64Array
 }
+
+/** Grains whose optical properties follow from Mie theory. */
+export interface GrainsOpacitySpec {
+  law: 'grains'
+  populations: GrainPopulation[]
+  phase: PhaseLaw
+}
+
+/** Spheres of one make and many sizes. */
+export interface GrainPopulation {
+  /** Share of the mass of all grains; the shares sum to 1. */
+  massFraction: number
+  constants: ConstantsSpec
+  sizes: SizesSpec
+  /** Density of the solid without its pores, g/cm3. */
+  density: number
+  /** Share of vacuum in the volume of the grain (of its core, when it has a coat). */
+  porosity: number
+  /** Concentric coat with its share of the volume and the density of its material, g/cm3. */
+  coat?: { constants: ConstantsSpec; volumeFraction: number; density: number }
+}
+
+/** Optical constants n + i k. Resonances and widths are wavenumbers, cm-1. */
+export type ConstantsSpec =
+  | { kind: 'table'; table: ConstantsTable }
+  | { kind: 'oscillators'; infinity: number; terms: { at: number; strength: number; damping: number }[] }
+  | { kind: 'handbook'; name: HandbookName }
+  | { kind: 'constant'; n: number; k: number }
+  | { kind: 'bruggeman'; parts: MixturePart[] }
+  | { kind: 'maxwell-garnett'; matrix: ConstantsSpec; inclusions: MixturePart[] }
+
+export interface MixturePart {
+  constants: ConstantsSpec
+  volumeFraction: number
+}
+
+/** Optical constants read from a file. Wavelengths (cm) increase. */
+export interface ConstantsTable {
+  file: string
+  wavelength: Float64Array
+  n: Float64Array
+  k: Float64Array
+}
+
+export const handbookNames = [
+  'silicon-carbide',
+  'magnesium-oxide',
+  'corundum-ordinary',
+  'corundum-extraordinary',
+  'quartz-ordinary'
+] as const
+export type HandbookName = (typeof handbookNames)[number]
+
+/** Numbers of grains by radius (cm). */
+export type SizesSpec =
+  | { kind: 'power'; smallest: number; largest: number; slope: number }
+  | { kind: 'lognormal'; smallest: number; largest: number; median: number; width: number }
+  | { kind: 'table'; file: string; radius: Float64Array; number: Float64Array }
+
+/** A published formula for extinction, scaled at one wavelength. */
+export interface CurveOpacitySpec {
+  law: 'extinction-curve'
+  curve: CurveSpec
+  reference: { wavelength: number; extinction: number }
+  scattering: { albedo: number; asymmetry: number }
+  phase: PhaseLaw
+}
+
+export type CurveSpec = { name: 'cardelli-1989'; rv: number } | { name: 'pei-1992'; galaxy: Galaxy }
+export const galaxies = ['milky-way', 'large-magellanic-cloud', 'small-magellanic-cloud'] as const
+export type Galaxy = (typeof galaxies)[number]
 
 export interface DustSpec {
   name: string

@@ -2,17 +2,8 @@ import { Document, isScalar, visit } from 'yaml'
 import { formatQuantity } from '../units/quantity.js'
 import { completeStar, type StarNumbers } from './complete-star.js'
 import { logRange } from './log-range.js'
-import type {
-  AmountSpec,
-  CameraSpec,
-  DustSpec,
-  OpacitySpec,
-  Scene,
-  ShapeSpec,
-  SpectrumSpec,
-  StarSpec,
-  ViewSpec
-} from './types.js'
+import type { AmountSpec, CameraSpec, DustSpec, Scene, ShapeSpec, SpectrumSpec, StarSpec, ViewSpec } from './types.js'
+import { opacityYaml } from './write-opacity.js'
 
 type Yaml = Record<string, unknown>
 
@@ -91,18 +82,6 @@ function starNumbersYaml(star: StarSpec): Yaml {
     ...(given.temperature !== undefined && { temperature: temperature(given.temperature) }),
     ...(given.luminosity !== undefined && { luminosity: formatQuantity(given.luminosity, 'luminosity') }),
     ...(given.radius !== undefined && { radius: length(given.radius) })
-  }
-}
-
-function opacityYaml(spec: OpacitySpec): Yaml {
-  if (spec.law === 'table') return { law: spec.law, file: spec.table.file, phase: spec.phase }
-  const { wavelength: at, absorption } = spec.reference
-  return {
-    law: spec.law,
-    reference: { wavelength: wavelength(at), absorption: formatQuantity(absorption, 'opacity') },
-    slope: spec.slope,
-    scattering: spec.scattering,
-    phase: spec.phase
   }
 }
 

@@ -36,6 +36,12 @@ export const dimensions = {
     units: { Hz: 1, kHz: 1e3, MHz: 1e6, GHz: 1e9, THz: 1e12 },
     range: [3e5, 3e19]
   },
+  wavenumber: {
+    called: 'a wavenumber',
+    example: '930 cm-1',
+    units: { 'cm-1': 1, 'um-1': 1e4, 'm-1': 0.01 },
+    range: [1e-5, 1e9]
+  },
   angle: {
     called: 'an angle',
     example: '35 deg',

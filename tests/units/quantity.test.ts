@@ -72,7 +72,8 @@ describe('parseQuantity', () => {
       luminosity: 'erg/s',
       temperature: 'K',
       density: 'g/cm3',
-      opacity: 'cm2/g'
+      opacity: 'cm2/g',
+      wavenumber: 'cm-1'
     }
     const pairs = names.flatMap((name) => Object.keys(dimensions[name].units).map((unit) => [name, unit, cgs[name]]))
     const theirs = askPython<number[]>(

@@ -1,3 +1,4 @@
+import type { Galaxy } from '../../scene/types.js'
 import type { ExtinctionCurve } from './extinction-curve.js'
 
 /** a, l (um), b, n of each term. */
@@ -28,15 +29,13 @@ const GALAXIES = {
     [0.012, 18, -1.8, 2],
     [0.03, 25, 0, 2]
   ]
-} as const satisfies Record<string, Terms>
-
-export type PeiGalaxy = keyof typeof GALAXIES
+} as const satisfies Record<Galaxy, Terms>
 
 /**
  * A(lambda) / A(B) = sum a / ((lambda / l)^n + (l / lambda)^n + b) of Pei (1992, ApJ 395, 130), eq. 20 and table 4: background, far
  * ultraviolet, 2175 A, 9.7 um, 18 um and far infrared. Fitted from 0.1 um into the far infrared, taken here as 1000 um; not exactly 1 at B.
  */
-export function pei1992(galaxy: PeiGalaxy): ExtinctionCurve {
+export function pei1992(galaxy: Galaxy): ExtinctionCurve {
   const terms: Terms = GALAXIES[galaxy]
   return {
     ratio: (wavelength) =>

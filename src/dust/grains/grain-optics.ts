@@ -76,3 +76,25 @@ export function emptyOptics(wavelengths: ArrayLike<number>, cosines: ArrayLike<n
     error: each()
   }
 }
+
+/** One wavelength of some optics. */
+export interface OpticsRow {
+  optics: GrainOptics
+  w: number
+}
+
+/** Rows of optics at the same angles, put together. */
+export function opticsOfRows(rows: readonly OpticsRow[]): GrainOptics {
+  const { cosines } = rows[0].optics
+  const all = emptyOptics(
+    rows.map(({ optics, w }) => optics.wavelengths[w]),
+    cosines
+  )
+  const count = cosines.length
+  rows.forEach(({ optics, w }, row) => {
+    for (const name of ['absorption', 'scattering', 'asymmetry', 'error'] as const) all[name][row] = optics[name][w]
+    for (const name of ['s11', 's12', 's33', 's34'] as const)
+      all.matrix[name].set(optics.matrix[name].subarray(w * count, (w + 1) * count), row * count)
+  })
+  return all
+}

@@ -9,8 +9,16 @@ import type { SizeDistribution } from './size-distribution.js'
 
 /** Largest estimated error of an integral, relative to its scale. */
 const TOLERANCE = 1e-4
-/** Spheres spent on one wavelength at most; only the narrow resonances of large transparent spheres need so many. */
+/**
+ * Spheres spent on one wavelength at most, for size parameters up to AFFORDABLE (without and with angles); fewer beyond, as its square
+ * root, since each takes longer: half a second a wavelength. Only the narrow resonances of large transparent spheres need so many; what
+ * error is left is told.
+ */
 const MOST_SPHERES = 30000
+const LEAST_SPHERES = 300
+const AFFORDABLE = { opacities: 1000, matrix: 10 }
+/** Absorption below this share of the scattering need not be known as well. */
+const MINOR = 0.01
 /** Width of the first panels in ln(radius). */
 const FIRST_WIDTH = 1
 
@@ -66,16 +74,20 @@ export function makeSizeIntegrator(sizes: SizeDistribution, shortest: number, co
       write,
       setScales: (magnitudes: Float64Array) => setScales(magnitudes, wavelength)
     }
-    return integrateVector(integrand, range, panels, TOLERANCE, MOST_SPHERES)
+    const largestX = (2 * Math.PI * largest) / wavelength
+    const affordable = count > 0 ? AFFORDABLE.matrix : AFFORDABLE.opacities
+    const most = MOST_SPHERES * Math.sqrt(affordable / Math.max(affordable, largestX))
+    return integrateVector(integrand, range, panels, TOLERANCE, Math.max(LEAST_SPHERES, most))
   }
 }
 
 /**
- * Scales of the errors: absorption and scattering themselves, for the mean cosine the scattering, and for S11 the larger of itself and
+ * Scales of the errors: absorption itself or a hundredth of the scattering, scattering itself, for the mean cosine the scattering, and for S11 the larger of itself and
  * its mean over all directions.
  */
 function setScales(magnitudes: Float64Array, wavelength: number): void {
   const scattering = magnitudes[1]
+  magnitudes[0] = Math.max(magnitudes[0], MINOR * scattering)
   magnitudes[2] = scattering
   const mean = (Math.PI * scattering) / (wavelength * wavelength)
   for (let q = 3; q < magnitudes.length; q++) magnitudes[q] = Math.max(magnitudes[q], mean)

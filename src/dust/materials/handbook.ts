@@ -1,3 +1,4 @@
+import type { HandbookName } from '../../scene/types.js'
 import { longitudinalTerm, type Oscillator, type OscillatorModel } from './oscillator-material.js'
 
 /** Terms from rows of wavenumber (cm-1), strength, and damping relative to the wavenumber. */
@@ -50,6 +51,4 @@ export const handbook = {
       [1227, 0.009, 0.11]
     ])
   }
-} as const satisfies Record<string, OscillatorModel>
-
-export type HandbookName = keyof typeof handbook
+} as const satisfies Record<HandbookName, OscillatorModel>

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
-import { type HandbookName, handbook } from '../../../src/dust/materials/handbook.js'
+import { handbook } from '../../../src/dust/materials/handbook.js'
 import { longitudinalTerm, oscillatorMaterial, oscillatorPermittivity } from '../../../src/dust/materials/oscillator-material.js'
+import type { HandbookName } from '../../../src/scene/types.js'
 import { sphereEfficiencies } from '../mie/sphere.js'
 
 const um = 1e-4
