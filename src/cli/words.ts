@@ -1,5 +1,6 @@
 /** A number for people: `digits` significant digits, an exponent only where it is needed. */
 export function shown(value: number, digits = 3): string {
+  if (value === Number.POSITIVE_INFINITY) return 'infinite'
   if (!Number.isFinite(value)) return 'none'
   const size = Math.abs(value)
   return size !== 0 && (size < 1e-3 || size >= 1e6) ? value.toExponential(digits - 1) : String(Number(value.toPrecision(digits)))

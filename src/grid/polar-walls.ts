@@ -1,4 +1,4 @@
-import type { AxialShape, Shape } from '../shapes/shape.js'
+import type { Shape } from '../shapes/shape.js'
 import { equalSteps } from './equal-steps.js'
 
 /** Cells a scale height near the midplane, before the number of cells is fixed. */
@@ -14,11 +14,13 @@ const POINTS = 4000
 /**
  * Cosines of the polar walls, from 1 to -1, symmetric about the midplane (a wall when their number is even).
  * With t = z/R the number of cells a unit of t is CELLS_A_HEIGHT/H for the thinnest of the aspect ratios H = h/R that are
- * met where t < HEIGHTS H, and falls as t^-4 beyond. `count` 0: chosen so that this resolution is reached, within bounds.
+ * met where t < HEIGHTS H, and falls as t^-4 beyond. The nearest walls are moved onto the cones at which a density jumps.
+ * `count` 0: chosen so that this resolution is reached, within bounds.
  */
 export function polarWalls(shapes: Shape[], count: number): Float64Array {
-  const disks = shapes.filter((shape): shape is AxialShape => shape.symmetry === 'axial')
-  const finest = Math.min(1, ...disks.map((disk) => disk.aspectRatios[0]))
+  const axial = shapes.filter((shape) => shape.symmetry === 'axial')
+  const disks = axial.flatMap(({ aspectRatios }) => (aspectRatios ? [aspectRatios] : []))
+  const finest = Math.min(1, ...disks.map(([thin]) => thin))
   const elevation = new Float64Array(POINTS + 1)
   const cells = new Float64Array(POINTS + 1)
   const span = Math.asinh(Math.PI / 2 / (0.1 * finest))
@@ -28,14 +30,16 @@ export function polarWalls(shapes: Shape[], count: number): Float64Array {
     cells[i] = cells[i - 1] + step * cellsPerRadian(disks, elevation[i - 1] + 0.5 * step)
   }
   const chosen = count > 0 ? count : 2 * Math.round(0.5 * Math.min(MOST, Math.max(FEWEST, 2 * cells[POINTS])))
-  return mirrored(elevation, cells, chosen)
+  return withCones(
+    mirrored(elevation, cells, chosen),
+    axial.flatMap(({ coneEdges }) => coneEdges)
+  )
 }
 
-function cellsPerRadian(disks: AxialShape[], elevation: number): number {
+function cellsPerRadian(disks: [number, number][], elevation: number): number {
   const t = Math.tan(elevation)
   let most = 0
-  for (const { aspectRatios } of disks) {
-    const [thin, thick] = aspectRatios
+  for (const [thin, thick] of disks) {
     const aspect = Math.min(thick, Math.max(thin, t / HEIGHTS))
     const beyond = Math.max(1, t / (HEIGHTS * aspect))
     most = Math.max(most, (CELLS_A_HEIGHT / aspect) * beyond ** -4)
@@ -53,4 +57,19 @@ function mirrored(elevation: Float64Array, cells: Float64Array, count: number): 
     cosTheta[count - k] = -cosTheta[k]
   }
   return cosTheta
+}
+
+/** The walls with those nearest to given cosines (above 0), and their mirror images, moved there; a wall moves once. */
+function withCones(cosTheta: Float64Array, cones: number[]): Float64Array {
+  const last = cosTheta.length - 1
+  const free = new Set(Array.from({ length: Math.ceil(last / 2) - 1 }, (_, i) => i + 1))
+  for (const cone of [...new Set(cones)]) {
+    if (free.size === 0) break
+    const off = (k: number) => Math.abs(Math.acos(cosTheta[k]) - Math.acos(cone))
+    const nearest = [...free].reduce((a, b) => (off(b) < off(a) ? b : a))
+    cosTheta[nearest] = cone
+    cosTheta[last - nearest] = -cone
+    free.delete(nearest)
+  }
+  return cosTheta.sort((a, b) => b - a)
 }

@@ -7,7 +7,7 @@ import { allocateShared } from '../math/allocate.js'
 import { SceneError } from '../scene/error.js'
 import type { DustSpec, Scene } from '../scene/types.js'
 import { AmountError, amountScale } from '../shapes/amount-scale.js'
-import { makeShape } from '../shapes/make-shape.js'
+import { makeShape, plainShape } from '../shapes/make-shape.js'
 import type { Shape } from '../shapes/shape.js'
 import { starSpectrum } from '../sources/star.js'
 import { cellDensities } from './density.js'
@@ -24,8 +24,8 @@ export function planCells(scene: Scene, tables: Record<string, GrainOptics> = {}
   const stars = scene.sources.map((spec) => ({ spec, spectrum: starSpectrum(spec) }))
   const parts = scene.dust.map((spec, index) => {
     const law = makeOpacityLaw(scene.opacities[spec.opacity], tables[spec.opacity])
-    const shape = makeShape(spec.shape)
-    return { spec, law, shape, scale: scaleOf(scene, spec, index, shape, law.absorption, law.scattering) }
+    const scale = scaleOf(scene, spec, index, plainShape(spec.shape), law.absorption, law.scattering)
+    return { spec, law, shape: shapeOf(scene, spec, index), scale }
   })
   const dimensions = chooseDimensions(
     scene,
@@ -75,13 +75,35 @@ function scaleOf(
   }
 }
 
+/** The shape of a component; a SceneError when nothing is left of it. */
+function shapeOf(scene: Scene, spec: DustSpec, index: number): Shape {
+  const shape = makeShape(spec.shape, spec)
+  if (shape.totalMass > 0) return shape
+  const [key, message] = spec.carve
+    ? ['carve', 'nothing is left of the shape']
+    : ['shape', 'the field has no dust within its width']
+  const path = ['dust', index, key]
+  throw new SceneError([{ location: scene.locate(path), key: path.join('.'), message }])
+}
+
 function chooseDimensions(scene: Scene, shapes: Shape[]): 1 | 2 | 3 {
+  if (shapes.some(({ symmetry }) => symmetry === 'none')) {
+    if (scene.grid.azimuthal === 1) {
+      const key = 'grid.azimuthal'
+      const message = 'the scene is not symmetric about z: more than one cell in azimuth is needed'
+      throw new SceneError([{ location: scene.locate(key.split('.')), key, given: '1', message }])
+    }
+    return 3
+  }
   if (scene.grid.azimuthal > 1) return 3
   return shapes.every(({ symmetry }) => symmetry === 'spherical') && scene.grid.polar <= 1 ? 1 : 2
 }
 
 function reasonFor(scene: Scene, dimensions: 1 | 2 | 3): string {
-  if (dimensions === 3) return 'three-dimensional spherical cells, because grid.azimuthal asks for them'
+  if (dimensions === 3)
+    return scene.grid.azimuthal > 1
+      ? 'three-dimensional spherical cells, because grid.azimuthal asks for them'
+      : 'three-dimensional spherical cells, because the scene is not symmetric about z'
   if (dimensions === 1) return 'one-dimensional spherical cells, because the scene has spherical symmetry about the origin'
   if (scene.grid.polar > 1) return 'two-dimensional spherical cells, because grid.polar asks for them'
   return 'two-dimensional spherical cells, because the scene is symmetric about z'

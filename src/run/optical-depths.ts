@@ -27,7 +27,15 @@ export interface ComponentDepth {
   scattering: number
 }
 
-const lines = { shell: 'radius', disk: 'midplane radius', ball: 'radius' }
+const lines = {
+  shell: 'radius',
+  disk: 'midplane radius',
+  ring: 'vertical, through the densest point',
+  infall: 'midplane radius',
+  ball: 'radius',
+  slab: 'thickness',
+  field: 'z, through the centre'
+}
 
 export function opticalDepths(model: Model): OpticalDepths {
   const { scene, components } = model

@@ -1,5 +1,6 @@
 import type { z } from 'zod'
 import { isRecord } from './is-record.js'
+import { dustSchema } from './schema/dust-schema.js'
 import { cameraSchema, spectrumSchema } from './schema/observer-schema.js'
 import { opacitySchema } from './schema/opacity-schema.js'
 import { sceneSchema } from './schema/scene-schema.js'
@@ -17,6 +18,7 @@ export function soundParts(value: unknown) {
     opacities: new Map(
       Object.entries(isRecord(scene.opacities) ? scene.opacities : {}).map(([key, entry]) => [key, sound(opacitySchema, entry)])
     ),
+    dust: soundList(dustSchema, scene.dust),
     cameras: soundList(cameraSchema, scene.cameras),
     spectra: soundList(spectrumSchema, scene.spectra)
   }

@@ -1,6 +1,8 @@
 import { basename, extname } from 'node:path'
 import { DataFiles } from './data-files.js'
+import { parseDensityPoints } from './density-points.js'
 import { SceneError, type SceneProblem } from './error.js'
+import { parseDensityCube } from './fits-cube.js'
 import { issueProblems, locateProblem } from './issue-problems.js'
 import { largestSceneFile } from './limits.js'
 import { linkProblems } from './link-problems.js'
@@ -11,7 +13,7 @@ import { readText } from './read-text.js'
 import { sceneSchema } from './schema/scene-schema.js'
 import { sha256 } from './sha256.js'
 import { parseSpectrumTable } from './tables.js'
-import type { OpacitySpec, Scene, StarSpec } from './types.js'
+import type { DustSpec, OpacitySpec, Scene, ShapeSpec, StarSpec } from './types.js'
 import { wording } from './wording.js'
 import { YamlDocument } from './yaml-document.js'
 
@@ -32,10 +34,11 @@ export function parseScene(text: string, file: string): Scene {
   const files = new DataFiles(file, document)
   const sources = parts.sources.map((entry, i) => entry && starSpec(entry, i, files))
   const opacities = [...parts.opacities].map(([name, entry]) => [name, entry && opacitySpec(entry, name, files)] as const)
+  const dust = parts.dust.map((entry, i) => entry && dustSpec(entry, i, files))
   const { cameras, spectra, problems } = observers(parts, document)
   problems.push(...issueProblems(result.error?.issues ?? [], document), ...linkProblems(document), ...files.problems)
   if (!result.success || problems.length > 0) throw new SceneError(problems.sort(byPlace(file)))
-  const { title = basename(file, extname(file)), distance, sky, seed, dust, grid, effort } = result.data
+  const { title = basename(file, extname(file)), distance, sky, seed, grid, effort } = result.data
   return {
     file,
     title,
@@ -44,7 +47,7 @@ export function parseScene(text: string, file: string): Scene {
     seed,
     sources: sources.filter((star) => star !== undefined),
     opacities: Object.fromEntries(opacities) as Record<string, OpacitySpec>,
-    dust,
+    dust: dust.filter((component) => component !== undefined),
     grid,
     effort,
     cameras,
@@ -54,13 +57,25 @@ export function parseScene(text: string, file: string): Scene {
   }
 }
 
-type Sound<Key extends 'sources' | 'cameras' | 'spectra'> = NonNullable<SoundParts[Key][number]>
+type Sound<Key extends 'sources' | 'dust' | 'cameras' | 'spectra'> = NonNullable<SoundParts[Key][number]>
 
 function starSpec({ spectrumFile, ...star }: Sound<'sources'>, i: number, files: DataFiles): StarSpec | undefined {
   if (spectrumFile === undefined) return { ...star, spectrum: { kind: 'blackbody' } }
   const table = files.read(spectrumFile, ['sources', i, 'spectrum', 'table'], parseSpectrumTable)
   return table && { ...star, spectrum: { kind: 'table', table } }
 }
+
+function dustSpec({ shape, ...component }: Sound<'dust'>, i: number, files: DataFiles): DustSpec | undefined {
+  if (shape.kind !== 'field') return { ...component, shape }
+  const { file, ...field } = shape
+  const path = ['dust', i, 'shape', 'file']
+  const data = /\.csv$/i.test(file)
+    ? files.read<FieldData>(file, path, parseDensityPoints)
+    : files.readField<FieldData>(file, path, parseDensityCube)
+  return data && { ...component, shape: { ...field, data } }
+}
+
+type FieldData = Extract<ShapeSpec, { kind: 'field' }>['data']
 
 /** Cameras and spectra as seen from the scene's distance; none while that is unknown. */
 function observers({ distance, cameras, spectra }: SoundParts, document: YamlDocument) {

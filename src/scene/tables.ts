@@ -4,10 +4,8 @@ import { fluxUnit, fluxUnits } from '../units/flux.js'
 import { intensityUnit } from '../units/intensity.js'
 import { type Column, type CsvTable, parseCsvTable } from './csv-table.js'
 import { SceneError } from './error.js'
+import { scaled } from './scaled-units.js'
 import type { ConstantsTable, OpacityTable, SpectrumTable } from './types.js'
-
-const scaled = (units: Record<string, number>): Column['units'] =>
-  Object.fromEntries(Object.entries(units).map(([unit, size]) => [unit, (value: number) => value * size]))
 
 const wavelength: Column = {
   name: 'wavelength',

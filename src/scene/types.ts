@@ -174,12 +174,15 @@ export interface DustSpec {
   /** Key into `Scene.opacities`. */
   opacity: string
   shape: ShapeSpec
+  /** Fixes the density before anything is carved from it. */
   amount: AmountSpec
   /** `solve`: radiative equilibrium; `none`: no thermal emission; a number: fixed, K. */
   temperature: 'solve' | 'none' | number
+  carve?: CarveSpec[]
+  clumps?: ClumpsSpec
 }
 
-export type ShapeSpec =
+export type ShapeSpec = (
   | { kind: 'shell'; inner: number; outer: number /** density ~ r^slope */; slope: number }
   | {
       kind: 'disk'
@@ -190,7 +193,48 @@ export type ShapeSpec =
       /** Radius of the exponential edge. */
       taper?: number
     }
-  | { kind: 'ball'; radius: number }
+  | { kind: 'ring'; radius: number; width: number; scaleHeight: number; eccentricity: number; periapsis: number }
+  | { kind: 'infall'; inner: number; outer: number; centrifugalRadius: number }
+  | { kind: 'ball'; radius: number; at: Vector }
+  | { kind: 'slab'; thickness: number; width: number; at: Vector }
+  | { kind: 'field'; width: number; at: Vector; data: DensityCube | DensityPoints }
+) & {
+  /** Tips the axis of the shape by `angle` from z towards the azimuth `toward`, rad. */
+  tilt?: { angle: number; toward: number }
+}
+
+/** Relative density in equal cubes, read from a FITS file; x varies fastest. */
+export interface DensityCube {
+  kind: 'cube'
+  file: string
+  /** Numbers of cubes along x, y, z. */
+  size: Vector
+  values: Float32Array | Float64Array
+}
+
+/** Points with smoothing lengths, read from a CSV file; lengths in cm from the middle of the field, masses relative. */
+export interface DensityPoints {
+  kind: 'points'
+  file: string
+  x: Float64Array
+  y: Float64Array
+  z: Float64Array
+  smoothingLength: Float64Array
+  mass: Float64Array
+}
+
+/** Dust taken away: `remaining` is the fraction of the density that stays between two radii, or in a double cone about the axis. */
+export type CarveSpec =
+  | { kind: 'gap'; from: number; to: number; remaining: number }
+  | { kind: 'cavity'; halfAngle: number; remaining: number }
+
+/** Spheres in which the density is `contrast` times that between them; the mass of the component is kept. */
+export interface ClumpsSpec {
+  count: number
+  radius: number
+  contrast: number
+  seed: string
+}
 
 export type AmountSpec =
   | { kind: 'mass'; mass: number }

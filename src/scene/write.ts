@@ -2,7 +2,7 @@ import { Document, isScalar, visit } from 'yaml'
 import { formatQuantity } from '../units/quantity.js'
 import { completeStar, type StarNumbers } from './complete-star.js'
 import { logRange } from './log-range.js'
-import type { AmountSpec, CameraSpec, DustSpec, Scene, ShapeSpec, SpectrumSpec, StarSpec, ViewSpec } from './types.js'
+import type { AmountSpec, CameraSpec, CarveSpec, DustSpec, Scene, ShapeSpec, SpectrumSpec, StarSpec, ViewSpec } from './types.js'
 import { opacityYaml } from './write-opacity.js'
 
 type Yaml = Record<string, unknown>
@@ -85,14 +85,26 @@ function starNumbersYaml(star: StarSpec): Yaml {
   }
 }
 
-function dustYaml({ name, opacity, shape, amount, temperature: given }: DustSpec): Yaml {
+function dustYaml({ name, opacity, shape, amount, temperature: given, carve, clumps }: DustSpec): Yaml {
   return {
     name,
     opacity,
-    shape: shapeYaml(shape),
+    shape: {
+      ...shapeYaml(shape),
+      ...(shape.tilt && { tilt: { angle: angle(shape.tilt.angle), toward: angle(shape.tilt.toward) } })
+    },
     amount: amountYaml(amount),
-    temperature: typeof given === 'number' ? temperature(given) : given
+    temperature: typeof given === 'number' ? temperature(given) : given,
+    ...(carve && { carve: carve.map(carveYaml) }),
+    ...(clumps && { clumps: { ...clumps, radius: length(clumps.radius) } })
   }
+}
+
+function carveYaml(cut: CarveSpec): Yaml {
+  const { remaining } = cut
+  return cut.kind === 'gap'
+    ? { gap: { from: length(cut.from), to: length(cut.to), remaining } }
+    : { cavity: { 'half-angle': angle(cut.halfAngle), remaining } }
 }
 
 function shapeYaml(shape: ShapeSpec): Yaml {
@@ -108,8 +120,28 @@ function shapeYaml(shape: ShapeSpec): Yaml {
         'scale-height': { ...shape.scaleHeight, value: length(shape.scaleHeight.value), at: length(shape.scaleHeight.at) },
         ...(shape.taper !== undefined && { taper: { at: length(shape.taper) } })
       }
+    case 'ring':
+      return {
+        kind: shape.kind,
+        radius: length(shape.radius),
+        width: length(shape.width),
+        'scale-height': length(shape.scaleHeight),
+        eccentricity: shape.eccentricity,
+        periapsis: angle(shape.periapsis)
+      }
+    case 'infall':
+      return {
+        kind: shape.kind,
+        inner: length(shape.inner),
+        outer: length(shape.outer),
+        'centrifugal-radius': length(shape.centrifugalRadius)
+      }
     case 'ball':
-      return { kind: shape.kind, radius: length(shape.radius) }
+      return { kind: shape.kind, radius: length(shape.radius), at: shape.at.map(length) }
+    case 'slab':
+      return { kind: shape.kind, thickness: length(shape.thickness), width: length(shape.width), at: shape.at.map(length) }
+    case 'field':
+      return { kind: shape.kind, file: shape.data.file, width: length(shape.width), at: shape.at.map(length) }
   }
 }
 

@@ -24,10 +24,14 @@ export function amountScale(shape: Shape, amount: AmountSpec, extinctionOpacityA
         throw new AmountError('mass', 'the mass of this shape is infinite at its centre; give `inner` above 0')
       return amount.mass / shape.totalMass
     case 'optical-depth': {
+      if (!(shape.column > 0))
+        throw new AmountError('optical-depth', 'there is no dust on the line along which it is measured; give a mass')
       if (!Number.isFinite(shape.column)) {
         throw new AmountError(
           'optical-depth',
-          'the optical depth of this shape is infinite at its centre; give `inner` above 0, or a mass'
+          shape.innerRadius > 0
+            ? 'the midplane optical depth of rotating infall is infinite at its centrifugal radius; give a mass, or a density at another radius'
+            : 'the optical depth of this shape is infinite at its centre; give `inner` above 0, or a mass'
         )
       }
       const opacity = extinctionOpacityAt(amount.at)

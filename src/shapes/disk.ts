@@ -1,6 +1,8 @@
 import { integrate } from '../math/quadrature.js'
+import { quantileOf } from '../math/quantile.js'
 import type { ShapeSpec } from '../scene/types.js'
 import { oneMinusExpOver, powerIntegral } from './power-integral.js'
+import { lazy, normalQuantile } from './quantiles.js'
 import type { AxialShape } from './shape.js'
 
 type DiskSpec = Extract<ShapeSpec, { kind: 'disk' }>
@@ -34,6 +36,7 @@ export function disk(spec: DiskSpec): AxialShape {
     return (surface(R) * norm * Math.exp(-0.5 * u * u)) / h
   }
 
+  const lnRadius = lazy(() => quantileOf((u) => surface(Math.exp(u)) * Math.exp(2 * u), [Math.log(inner), Math.log(outer)]))
   const reach = (R: number) => Math.hypot(R, HEIGHTS * height(R))
   const bulkEdge = q > 0 ? Math.min(outer, unit * TAPER_DEPTH ** (1 / q)) : outer
   const aspects = [inner, bulkEdge > inner ? bulkEdge : outer].map((R) => height(R) / R)
@@ -50,10 +53,21 @@ export function disk(spec: DiskSpec): AxialShape {
       taper === undefined
         ? ((norm * at) / value) * powerIntegral(inner / at, outer / at, s - flaring)
         : integrate((u) => relativeDensity(Math.exp(u), 0, 0) * Math.exp(u), Math.log(inner), Math.log(outer)),
+    line: { from: [inner, 0, 0], to: [outer, 0, 0] },
     innerRadius: inner,
     outerRadius: Math.max(reach(inner), reach(outer)),
+    sphereEdges: [],
     cylinderEdges: [inner, outer],
-    aspectRatios: [Math.min(...aspects), Math.max(...aspects)]
+    coneEdges: [],
+    aspectRatios: [Math.min(...aspects), Math.max(...aspects)],
+    radialStep: 0.2,
+    place: (u, v, w, out) => {
+      const R = Math.exp(lnRadius(u))
+      out[0] = R * Math.cos(2 * Math.PI * v)
+      out[1] = R * Math.sin(2 * Math.PI * v)
+      out[2] = height(R) * normalQuantile(w)
+    },
+    details: { x: [0], y: [0], z: [0], radius: [inner] }
   }
 }
 

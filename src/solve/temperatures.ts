@@ -66,14 +66,15 @@ export function temperaturesFrom(
   const { temperature, sigma, slope } = result
   const deviation = new Float32Array(temperature.length * GROUPS)
   const perPacket = setup.luminosity / packets
+  const symmetric = components.every(({ shape }) => shape.symmetry !== 'none')
   components.forEach(({ spec, density }, c) => {
     if (spec.temperature !== 'solve') return
     const table = setup.tables[c]
     for (let i = 0; i < cells; i++) {
       if (!(density[i] > 0)) continue
       const at = c * cells + i
-      // The cells and what is in them are the same on both sides of the midplane: each side helps the other.
-      const twin = c * cells + mirrorCell(model, i)
+      // Where cells and what is in them are the same on both sides of the midplane, each side helps the other.
+      const twin = symmetric ? c * cells + mirrorCell(model, i) : at
       let sum = 0
       for (let g = 0; g < GROUPS; g++) sum += 0.5 * (absorbed[g][at] + absorbed[g][twin])
       if (!(sum > 0)) {
@@ -131,6 +132,8 @@ function fillEmpty(model: Model, temperature: Float64Array, sigma: Float64Array,
         if (i + row < cells) near.push(i + row)
         if (it > 0) near.push(i - np)
         if (it < nt - 1) near.push(i + np)
+        const ip = (i - 1) % np
+        if (np > 1) near.push(i - ip + ((ip + 1) % np), i - ip + ((ip + np - 1) % np))
       } else for (let k = 1; k <= row && k < cells; k++) near.push(k)
       const known = near.map((k) => temperature[start + k]).filter((value) => value > 0)
       if (known.length > 0) found.push([i, (known.reduce((sum, value) => sum + value ** 4, 0) / known.length) ** 0.25])

@@ -58,7 +58,7 @@ describe('placeWalls', () => {
   })
 
   it.each([1, 1e3, 1e6])('refines the surface of a ball of optical depth %f, and keeps its core transparent', (tau) => {
-    const { r } = place([layer({ kind: 'ball', radius: AU }, tau)], 1)
+    const { r } = place([layer({ kind: 'ball', radius: AU, at: [0, 0, 0] }, tau)], 1)
     expectIncreasing(r)
     const last = r.length - 1
     expect(r[last]).toBe(AU)
@@ -70,7 +70,7 @@ describe('placeWalls', () => {
     const layers = [
       layer(wind(2 * AU, 10 * AU), 1),
       layer(wind(40 * AU, 50 * AU), 20),
-      layer({ kind: 'ball', radius: 5 * AU }, 0.5)
+      layer({ kind: 'ball', radius: 5 * AU, at: [0, 0, 0] }, 0.5)
     ]
     const { r } = place(layers, 1)
     expectIncreasing(r)

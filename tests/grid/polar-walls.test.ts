@@ -36,7 +36,7 @@ describe('polarWalls', () => {
     const shape = flaredDisk(aspect, flaring)
     const walls = polarWalls([shape], 0)
     expect(walls.length - 1).toBeLessThanOrEqual(120)
-    for (const h of shape.aspectRatios) {
+    for (const h of shape.aspectRatios!) {
       const z = (k: number) => walls[k] / Math.sqrt(1 - walls[k] ** 2) / h
       for (let k = walls.length >> 1; k > 1 && z(k) < 5.4; k--) expect(z(k - 1) - z(k)).toBeLessThan(0.36)
     }

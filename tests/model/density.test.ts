@@ -122,7 +122,7 @@ describe('cellDensities', () => {
   })
 
   it('fills the core of a ball', () => {
-    const shape = makeShape({ kind: 'ball', radius: 7e13 })
+    const shape = makeShape({ kind: 'ball', radius: 7e13, at: [0, 0, 0] })
     const { walls, scale } = wallsFor(shape, 10)
     const { density } = cellDensities(walls, shape, scale)
     for (const value of density) expect(value / scale).toBeCloseTo(1, 6)

@@ -7,7 +7,7 @@ import { AU } from '../../src/units/constants.js'
 
 const specs: ShapeSpec[] = [
   { kind: 'shell', inner: 5 * AU, outer: 400 * AU, slope: -1.5 },
-  { kind: 'ball', radius: 50 * AU },
+  { kind: 'ball', radius: 50 * AU, at: [0, 0, 0] },
   { kind: 'disk', inner: 5 * AU, outer: 200 * AU, surfaceSlope: -1, scaleHeight: { value: 8 * AU, at: 100 * AU, flaring: 1.1 } },
   {
     kind: 'disk',
@@ -46,7 +46,7 @@ describe('amountScale', () => {
   it('refuses what fixes no density', () => {
     const wind = makeShape({ kind: 'shell', inner: 0, outer: AU, slope: -2 })
     const steep = makeShape({ kind: 'shell', inner: 0, outer: AU, slope: -3 })
-    const ball = makeShape({ kind: 'ball', radius: AU })
+    const ball = makeShape({ kind: 'ball', radius: AU, at: [0, 0, 0] })
     expect(() => amountScale(wind, { kind: 'optical-depth', opticalDepth: 1, at: 1e-4 }, opacity)).toThrow(AmountError)
     expect(amountScale(wind, { kind: 'mass', mass: 1e20 }, opacity)).toBeGreaterThan(0)
     expect(() => amountScale(steep, { kind: 'mass', mass: 1e20 }, opacity)).toThrow(/inner/)

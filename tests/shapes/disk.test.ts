@@ -69,7 +69,7 @@ for c in data:
   })
 
   it('reports the range of h/R over which the dust matters', () => {
-    const [thin, thick] = disk({ kind: 'disk', inner: AU, outer: 100 * AU, surfaceSlope: -1, scaleHeight: flared }).aspectRatios
+    const [thin, thick] = disk({ kind: 'disk', inner: AU, outer: 100 * AU, surfaceSlope: -1, scaleHeight: flared }).aspectRatios!
     expect(thin).toBeCloseTo(0.1 * 0.01 ** 0.25, 12)
     expect(thick).toBeCloseTo(0.1, 12)
   })

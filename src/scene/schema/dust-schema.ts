@@ -1,8 +1,8 @@
 import { z } from 'zod'
-import type { AmountSpec, DustSpec } from '../types.js'
-import { count, name, notYet, real, section, text } from './fields.js'
+import type { AmountSpec, CarveSpec, DustSpec } from '../types.js'
+import { count, name, real, section, text } from './fields.js'
 import { quantity } from './quantity-field.js'
-import { shapeSchema } from './shape-schema.js'
+import { shapeSchema, type WrittenShape } from './shape-schema.js'
 
 const mass = section({ mass: quantity('mass').describe('Mass of dust') }).transform(
   (written): AmountSpec => ({ kind: 'mass', mass: written.mass })
@@ -26,23 +26,39 @@ const amount = z
   .describe('Exactly one of mass, optical depth at a wavelength, density at a radius')
 
 const remaining = real({ from: 0, to: 1 }).describe('Fraction of the density that remains')
-const gap = section({ from: quantity('length', 'not negative'), to: quantity('length'), remaining }).refine(
-  ({ from, to }) => from < to,
-  { path: ['from'], error: () => 'must be less than `to`' }
-)
-const cavity = section({ 'half-angle': quantity('angle'), remaining })
+const gap = section({
+  from: quantity('length', 'not negative').describe(
+    'Distance from the axis of a disk, ring, slab or field, from the centre of other shapes'
+  ),
+  to: quantity('length'),
+  remaining
+}).refine(({ from, to }) => from < to, { path: ['from'], error: () => 'must be less than `to`' })
+const cavity = section({
+  'half-angle': quantity('angle')
+    .refine((angle) => angle < Math.PI / 2, { error: () => 'an angle below 90 deg is expected' })
+    .describe("Of a double cone about the shape's axis"),
+  remaining
+})
 const carve = z
   .array(
-    z.union([section({ gap }), section({ cavity })], {
-      error: () => '{gap: {from: 20 au, to: 30 au, remaining: 0.01}} or {cavity: {half-angle: 25 deg, remaining: 0}} is expected'
-    })
+    z
+      .union([section({ gap }), section({ cavity })], {
+        error: () =>
+          '{gap: {from: 20 au, to: 30 au, remaining: 0.01}} or {cavity: {half-angle: 25 deg, remaining: 0}} is expected'
+      })
+      .transform(
+        (written): CarveSpec =>
+          'gap' in written
+            ? { kind: 'gap', ...written.gap }
+            : { kind: 'cavity', halfAngle: written.cavity['half-angle'], remaining: written.cavity.remaining }
+      )
   )
   .min(1)
 const clumps = section({
-  count: count(1, 1e9),
+  count: count(1, 1e6).describe('Number of clumps, placed at random as the mass is'),
   radius: quantity('length'),
-  contrast: real({ from: 1, to: 1e9 }),
-  seed: text.optional()
+  contrast: real({ from: 1, to: 1e9 }).describe('Density in clumps over that between them'),
+  seed: text.prefault('1').describe('Free text; another seed, other places')
 })
 
 /** One entry of `dust`. */
@@ -57,14 +73,11 @@ export const dustSchema = section({
     })
     .prefault('solve')
     .describe('`solve` (default: radiative equilibrium), `none`, or a value such as `40 K`'),
-  carve: notYet(carve, '`carve`').optional().describe('Gaps and cavities'),
-  clumps: notYet(clumps, '`clumps`').optional().describe('Clumps; the total mass is kept')
-}).transform(
-  ({ name, opacity, shape, amount, temperature }): DustSpec => ({
-    name,
-    opacity,
-    shape,
-    amount,
-    temperature
-  })
-)
+  carve: carve.optional().describe('Gaps and cavities, taken from the shape after `amount` has fixed its density'),
+  clumps: clumps.optional().describe('Clumps; the total mass is kept')
+}).transform(({ carve, clumps, ...dust }): WrittenDust => ({ ...dust, ...(carve && { carve }), ...(clumps && { clumps }) }))
+
+/** A component whose data file, if it has one, is not read yet. */
+export interface WrittenDust extends Omit<DustSpec, 'shape'> {
+  shape: WrittenShape
+}

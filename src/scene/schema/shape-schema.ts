@@ -24,15 +24,14 @@ const outer = z
   })
   .describe('Outer radius, or {times-inner: 1000}')
 
-const tilt = notYet(
-  section({ angle: quantity('angle', 'any'), toward: quantity('angle', 'any').prefault('0 deg') }),
-  'a tilted shape'
-).optional()
-
-const place = vector().prefault(['0 au', '0 au', '0 au'])
-const origin = place.refine((at) => at.every((component) => component === 0), {
-  error: () => 'a ball away from the origin: not available yet'
+const tilt = section({
+  angle: quantity('angle', 'any').describe('Angle between z and the axis of the shape'),
+  toward: quantity('angle', 'any').prefault('0 deg').describe('Azimuth that the axis leans to')
 })
+  .optional()
+  .describe('Tips the shape')
+
+const place = vector().prefault(['0 au', '0 au', '0 au']).describe('Centre, default the origin')
 
 const shell = section({
   kind: z.literal('shell').describe('Spherical shell, density ~ r^slope'),
@@ -40,7 +39,12 @@ const shell = section({
   outer,
   slope: real({ from: -20, to: 20 }).prefault(-2).describe('Power of the density, default -2'),
   tilt
-}).transform(({ kind, slope, ...edges }, context): ShapeSpec => ({ kind, ...resolveEdges(edges, context), slope }))
+}).transform(({ kind, slope, tilt, ...edges }, context) => ({
+  kind,
+  ...resolveEdges(edges, context),
+  slope,
+  ...(tilt && { tilt })
+}))
 
 const scaleHeight = section({
   value: length.describe('Scale height at the radius `at`'),
@@ -56,7 +60,7 @@ const disk = section({
   'scale-height': scaleHeight.describe('{value: 10 au, at: 100 au, flaring: 1.25}'),
   taper: section({ at: length }).optional().describe('Exponential edge with index 2 + surface-slope'),
   tilt
-}).transform((written, context): ShapeSpec => {
+}).transform((written, context) => {
   const surfaceSlope = written['surface-slope']
   if (written.taper && surfaceSlope <= -2)
     context.issues.push({
@@ -70,58 +74,61 @@ const disk = section({
     ...resolveEdges(written, context),
     surfaceSlope,
     scaleHeight: written['scale-height'],
-    ...(written.taper && { taper: written.taper.at })
+    ...(written.taper && { taper: written.taper.at }),
+    ...(written.tilt && { tilt: written.tilt })
   }
 })
 
-const ball = section({ kind: z.literal('ball').describe('Uniform sphere'), radius: length, at: origin, tilt }).transform(
-  ({ kind, radius }): ShapeSpec => ({ kind, radius })
-)
+const ball = section({ kind: z.literal('ball').describe('Uniform sphere'), radius: length, at: place, tilt })
 
 const ring = section({
   kind: z.literal('ring').describe('Gaussian ring'),
-  radius: length,
+  radius: length.describe('Semi-major axis of the densest ellipse'),
   width: length.describe('Gaussian sigma in radius'),
   'scale-height': length.describe('Gaussian sigma in height'),
-  eccentricity: real({ from: 0, below: 1 }).prefault(0),
-  periapsis: quantity('angle', 'any').prefault('0 deg'),
+  eccentricity: real({ from: 0, below: 1 }).prefault(0).describe('The origin is a focus; default 0'),
+  periapsis: quantity('angle', 'any').prefault('0 deg').describe('Azimuth of the periapsis'),
   tilt
-})
+}).transform(({ 'scale-height': scaleHeight, tilt, ...written }) => ({ ...written, scaleHeight, ...(tilt && { tilt }) }))
 
 const infall = section({
   kind: z.literal('infall').describe('Rotating infall (Ulrich 1976)'),
   inner,
   outer,
-  'centrifugal-radius': length,
+  'centrifugal-radius': length.describe('Radius at which matter of the equator meets the midplane'),
   tilt
-}).transform((written, context) => resolveEdges(written, context))
+}).transform(({ kind, 'centrifugal-radius': centrifugalRadius, tilt, ...edges }, context) => ({
+  kind,
+  ...resolveEdges(edges, context),
+  centrifugalRadius,
+  ...(tilt && { tilt })
+}))
 
 const slab = section({
   kind: z.literal('slab').describe('Uniform box, thickness along z'),
   thickness: length,
-  width: length,
+  width: length.describe('Width along x and y'),
   at: place,
   tilt
 })
 
 const field = section({
   kind: z.literal('field').describe('Density from a file'),
-  file: dataFile,
-  width: length,
+  file: dataFile.describe(
+    'FITS cube of relative density, or CSV of points with x, y, z, smoothing-length (with units, from the middle of the field) and mass (relative, default 1)'
+  ),
+  width: length.describe('Width of the cube along x, or of the box outside of which points do not count'),
   at: place,
   tilt
 })
 
+/** A shape whose data file, if it has one, is not read yet. */
+export type WrittenShape = Exclude<ShapeSpec, { kind: 'field' }> | z.output<typeof field>
+
 /** `shape` of a dust component. */
-export const shapeSchema = z.discriminatedUnion('kind', [
-  shell,
-  disk,
-  ball,
-  notYet(ring, '`kind: ring`', 'kind'),
-  notYet(infall, '`kind: infall`', 'kind'),
-  notYet(slab, '`kind: slab`', 'kind'),
-  notYet(field, '`kind: field`', 'kind')
-])
+export const shapeSchema = z
+  .discriminatedUnion('kind', [shell, disk, ring, infall, ball, slab, field])
+  .transform((shape): WrittenShape => shape)
 
 interface Edges {
   inner: number
