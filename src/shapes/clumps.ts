@@ -6,7 +6,7 @@ import { onSphere } from './shell.js'
 import { SphereTree } from './sphere-tree.js'
 
 /** Points in all clumps together, and fewest in one, that find how much of the mass they hold. */
-const SAMPLES = 500_000
+const SAMPLES = 200_000
 const FEWEST = 8
 /** Draws for one clump until its centre is where there is dust. */
 const MOST_DRAWS = 1000

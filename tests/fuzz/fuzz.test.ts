@@ -96,7 +96,7 @@ describe('changed inputs', () => {
         const uniform = stream(`fuzz/${n}`)
         const seed = seeds[n % seeds.length]
         const table = n % 5 === 4
-        const text = table ? seeds[1 + (Math.floor(n / 5) % 2)] : mutatedScene(seed, uniform)
+        const text = table ? seeds[1 + (Math.floor(n / 5) % 3)] : mutatedScene(seed, uniform)
         const tableTexts = table
           ? Object.fromEntries(Object.entries(tables).map(([name, content]) => [name, mutatedTable(content, uniform)]))
           : tables

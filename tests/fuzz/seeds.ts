@@ -68,6 +68,36 @@ dust:
 effort: {equilibrium: 1000, cameras: 300, precision: none}
 spectra:
   - {name: sed, aperture: all, wavelengths: [1 um, 3 um], unit: Jy}
+`,
+  `distance: 100 pc
+sources:
+  - {name: star, temperature: 6000 K, luminosity: 3 Lsun}
+opacities:
+  grey: {law: power, reference: {wavelength: 1 um, absorption: 100 cm2/g}, slope: 1, scattering: {albedo: 0.5, asymmetry: 0.2}}
+dust:
+  - name: ring
+    opacity: grey
+    shape: {kind: ring, radius: 90 au, width: 20 au, scale-height: 20 au, eccentricity: 0.2, periapsis: 30 deg, tilt: {angle: 20 deg, toward: 40 deg}}
+    amount: {optical-depth: 0.3, at: 1 um}
+  - name: envelope
+    opacity: grey
+    shape: {kind: infall, inner: 10 au, outer: 200 au, centrifugal-radius: 50 au}
+    amount: {mass: 1e-9 Msun}
+    carve: [{gap: {from: 20 au, to: 30 au, remaining: 0.1}}, {cavity: {half-angle: 25 deg, remaining: 0}}]
+  - name: slab
+    opacity: grey
+    shape: {kind: slab, thickness: 30 au, width: 90 au, at: [0 au, 20 au, 80 au]}
+    amount: {density: 1e-22 g/cm3, at: 1 au}
+    clumps: {count: 5, radius: 12 au, contrast: 10, seed: a}
+    temperature: none
+  - name: cloud
+    opacity: grey
+    shape: {kind: field, file: points.csv, width: 150 au}
+    amount: {mass: 1e-10 Msun}
+grid: {kind: spherical, radial: 8, polar: 6, azimuthal: 5}
+effort: {equilibrium: 500, cameras: 200, precision: none}
+cameras:
+  - {name: oblique, view: {inclination: 60 deg, azimuth: 20 deg}, field: 500 au, pixels: 3, wavelengths: [1 um, 100 um]}
 `
 ]
 
@@ -80,5 +110,6 @@ wavelength [um],absorption [cm2/g],scattering [cm2/g],asymmetry
 10,500,3,0.1
 1000,0.5,0,0
 `,
+  'points.csv': 'x [au],y [au],z [au],smoothing-length [au],mass\n10,20,30,20,1\n-50,0,0,30,2\n0,-60,10,30,2\n',
   'lamp.csv': 'wavelength [um],flux-nu [Jy]\n0.3,1\n1,30\n3,20\n30,0.2\n'
 }

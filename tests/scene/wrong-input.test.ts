@@ -43,7 +43,13 @@ const wrong: [string, [string, string], [line: number, column: number], string, 
   ['opacity that does not exist', ['opacity: soot', 'opacity: sooth'], [17, 5], 'dust.0.opacity', /did you mean `soot`\?/],
   ['opacity of an object', ['opacity: soot', 'opacity: constructor'], [17, 5], 'dust.0.opacity', /there are: soot/],
   ['unknown law', ['law: power', 'law: powr'], [11, 5], 'opacities.soot.law', /did you mean `power`\?.*table, grains/],
-  ['unknown kind of shape', ['kind: shell', 'kind: sphere'], [18, 13], 'dust.0.shape.kind', /accepted: shell, disk, ball/],
+  [
+    'unknown kind of shape',
+    ['kind: shell', 'kind: sphere'],
+    [18, 13],
+    'dust.0.shape.kind',
+    /accepted: shell, disk, ring, infall, ball, slab, field/
+  ],
   ['unknown kind of source', ['- name: giant', '- name: giant\n    kind: stra'], [7, 5], 'sources.0.kind', /`star`/],
   ['no shape', [shell, 'round'], [18, 5], 'dust.0.shape', /a section with keys/],
   [
