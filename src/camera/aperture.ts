@@ -1,5 +1,7 @@
+import { GROUPS } from '../solve/groups.js'
 import type { IntensityField } from './field.js'
 import { integratePatch, type PatchIntegral } from './patch.js'
+import { FIRST_GROUP, Q, RAY_VALUES } from './ray-values.js'
 import { ringsBetween } from './rings.js'
 
 /** Parts of half a circle in which an aperture is first divided. */
@@ -25,6 +27,9 @@ export function integrateAperture(field: IntensityField, radius: number, toleran
   if (mirrored) {
     integral.error *= 2
     for (let k = 0; k < integral.value.length; k++) integral.value[k] *= 2
+    // U and V are odd.
+    integral.value.fill(0, Q + 1, FIRST_GROUP)
+    integral.value.fill(0, RAY_VALUES + GROUPS)
   }
   return integral
 }

@@ -1,6 +1,8 @@
 /** Something that has an intensity at every point (cm) of the picture. */
 export interface IntensityField {
-  /** Writes RAY_VALUES numbers into `out`; the deviations of the groups, for the error, only when `withGroups`. */
+  /** Numbers of a ray: RAY_VALUES, or POLARISED_VALUES where light is polarised. */
+  size: number
+  /** Writes `size` numbers into `out`; the deviations of the groups, for the error, only when `withGroups`. */
   sample(x: number, y: number, out: Float64Array, withGroups: boolean): void
   /** Radii of the cells' walls, cm, increasing from the innermost dust; beyond the last the picture is empty. */
   radii: Float64Array

@@ -1,5 +1,5 @@
 import type { IntensityField } from './field.js'
-import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray.js'
+import { EMITTED, FIRST_GROUP, SCATTERED } from './ray-values.js'
 
 /** Regions of one patch at most. */
 const MOST_REGIONS = 20_000
@@ -35,7 +35,7 @@ interface Region {
 
 /** An integral over a part of the picture, and the estimated error of placing the rays. */
 export interface PatchIntegral {
-  /** RAY_VALUES numbers, intensity x cm2. */
+  /** The numbers of a ray, intensity x cm2. */
   value: Float64Array
   error: number
 }
@@ -49,7 +49,8 @@ export interface PatchIntegral {
 export function integratePatch(field: IntensityField, patch: Patch, tolerance: number, floor: number): PatchIntegral {
   const { angles, rings, outline } = patch
   const heap: Region[] = []
-  const ray = new Float64Array(RAY_VALUES)
+  const { size } = field
+  const ray = new Float64Array(size)
   const edges = new Float64Array(2)
 
   /** One ray of a region, t inwards and v of the way round; returns the area it stands for when it has all the weight. */
@@ -69,9 +70,9 @@ export function integratePatch(field: IntensityField, patch: Patch, tolerance: n
   const measure = (from: number, to: number, start: number, end: number): Region => {
     const middleArea = sample(from, to, start, end, Math.SQRT1_2, 0.5, true)
     const middle = middleArea > 0 ? middleArea * (ray[EMITTED] + ray[SCATTERED]) : 0
-    const value = new Float64Array(RAY_VALUES)
+    const value = new Float64Array(size)
     // The photon noise needs no such care as the value: the middle ray stands for the region.
-    if (middleArea > 0) for (let k = FIRST_GROUP; k < RAY_VALUES; k++) value[k] = middleArea * ray[k]
+    if (middleArea > 0) for (let k = FIRST_GROUP; k < size; k++) value[k] = middleArea * ray[k]
     let low = Number.POSITIVE_INFINITY
     let high = 0
     for (let q = 0; q < 4; q++) {
@@ -80,8 +81,7 @@ export function integratePatch(field: IntensityField, patch: Patch, tolerance: n
       let total = 0
       if (area > 0) {
         total = area * (ray[EMITTED] + ray[SCATTERED])
-        value[EMITTED] += 0.5 * t * area * ray[EMITTED]
-        value[SCATTERED] += 0.5 * t * area * ray[SCATTERED]
+        for (let k = 0; k < FIRST_GROUP; k++) value[k] += 0.5 * t * area * ray[k]
       }
       low = Math.min(low, total)
       high = Math.max(high, total)
@@ -112,9 +112,9 @@ export function integratePatch(field: IntensityField, patch: Patch, tolerance: n
     insert(measure(half, to, start, angle))
     insert(measure(half, to, angle, end))
   }
-  const integral = { value: new Float64Array(RAY_VALUES), error: 0 }
+  const integral = { value: new Float64Array(size), error: 0 }
   for (const region of heap) {
-    for (let k = 0; k < RAY_VALUES; k++) integral.value[k] += region.value[k]
+    for (let k = 0; k < size; k++) integral.value[k] += region.value[k]
     integral.error += region.error
   }
   return integral

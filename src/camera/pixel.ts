@@ -1,7 +1,7 @@
 import { standardError } from '../math/stats.js'
 import type { IntensityField } from './field.js'
 import { integratePatch, type Patch } from './patch.js'
-import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray.js'
+import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray-values.js'
 import { ringsBetween, wallsBetween } from './rings.js'
 
 /** A pixel seen from the centre under more than this angle, rad, is integrated in polar coordinates. */
@@ -31,12 +31,14 @@ const DEEPEST = 10
  * its middle by more than `tolerance` of the pixel, or differ much among themselves or from the corners of the pixel.
  */
 export class PixelIntegrator {
-  /** Mean of the last pixel: RAY_VALUES numbers. */
-  readonly mean = new Float64Array(RAY_VALUES)
+  /** Mean of the last pixel: the numbers of a ray. */
+  readonly mean: Float64Array
   /** Estimated error of that mean from the placing of rays. */
   error = 0
-  private readonly middle = new Float64Array(RAY_VALUES)
-  private readonly ray = new Float64Array(RAY_VALUES)
+  private readonly middle: Float64Array
+  private readonly ray: Float64Array
+  /** Sums of the rays through the quarters at each level. */
+  private readonly sums: Float64Array
   /** Light of the four quarters at each level. */
   private readonly lights = new Float64Array(4 * (DEEPEST + 1))
   private allowed = 0
@@ -52,7 +54,12 @@ export class PixelIntegrator {
     private readonly field: IntensityField,
     private readonly tolerance: number,
     private readonly floor: number
-  ) {}
+  ) {
+    this.mean = new Float64Array(field.size)
+    this.middle = new Float64Array(field.size)
+    this.ray = new Float64Array(field.size)
+    this.sums = new Float64Array(FIRST_GROUP * (DEEPEST + 1))
+  }
 
   /** Integrates over the rectangle about (x, y), cm. */
   integrate(x: number, y: number, width: number, height: number): void {
@@ -66,7 +73,7 @@ export class PixelIntegrator {
     if (patch) {
       const area = width * height
       const { value, error } = integratePatch(field, patch, tolerance, this.floor * area)
-      for (let k = 0; k < RAY_VALUES; k++) mean[k] = value[k] / area
+      for (let k = 0; k < field.size; k++) mean[k] = value[k] / area
       this.error = error / area
       return
     }
@@ -83,7 +90,7 @@ export class PixelIntegrator {
     const all = mean[EMITTED] + mean[SCATTERED]
     if (light < 0.5 * all) field.sample(this.brightestX, this.brightestY, middle, true)
     const ratio = all > 0 ? all / (middle[EMITTED] + middle[SCATTERED]) : 0
-    for (let k = FIRST_GROUP; k < RAY_VALUES; k++) mean[k] = ratio * middle[k]
+    for (let k = FIRST_GROUP; k < field.size; k++) mean[k] = ratio * middle[k]
   }
 
   /** The pixel as a patch, or undefined where plain squares do. */
@@ -123,17 +130,16 @@ export class PixelIntegrator {
   }
 
   private divide(x: number, y: number, width: number, height: number, middle: number, share: number, level: number): void {
-    const { field, mean, tolerance, ray, lights } = this
-    let emitted = 0
-    let scattered = 0
+    const { field, mean, tolerance, ray, lights, sums } = this
+    const from = FIRST_GROUP * level
+    sums.fill(0, from, from + FIRST_GROUP)
     let low = Number.POSITIVE_INFINITY
     let high = Number.NEGATIVE_INFINITY
     for (let q = 0; q < 4; q++) {
       const qx = x + (q % 2 === 0 ? -0.25 : 0.25) * width
       const qy = y + (q < 2 ? -0.25 : 0.25) * height
       field.sample(qx, qy, ray, false)
-      emitted += ray[EMITTED]
-      scattered += ray[SCATTERED]
+      for (let k = 0; k < FIRST_GROUP; k++) sums[from + k] += ray[k]
       const light = ray[EMITTED] + ray[SCATTERED]
       lights[4 * level + q] = light
       if (light < low) low = light
@@ -144,7 +150,7 @@ export class PixelIntegrator {
         this.brightestY = qy
       }
     }
-    const light = 0.25 * (emitted + scattered)
+    const light = 0.25 * (sums[from + EMITTED] + sums[from + SCATTERED])
     const error = Math.abs(light - middle) * share
     const allowed = Math.max(this.allowed, LEEWAY * tolerance * Math.max(mean[EMITTED] + mean[SCATTERED], light * share))
     const hidden = level === 0 && Math.abs(light - this.corners) > CORNERS * allowed
@@ -157,8 +163,7 @@ export class PixelIntegrator {
       return
     }
     this.error += error / 3
-    mean[EMITTED] += 0.25 * share * emitted
-    mean[SCATTERED] += 0.25 * share * scattered
+    for (let k = 0; k < FIRST_GROUP; k++) mean[k] += 0.25 * share * sums[from + k]
   }
 }
 

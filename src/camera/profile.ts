@@ -1,5 +1,6 @@
 import type { IntensityField } from './field.js'
-import { EMITTED, RAY_VALUES, SCATTERED } from './ray.js'
+import { EMITTED, Q, RAY_VALUES, SCATTERED } from './ray-values.js'
+import { doubled, turnStokes } from './stokes-ray.js'
 
 /** Halvings allowed between two cell walls. */
 const DEEPEST = 12
@@ -12,22 +13,26 @@ export class RadialProfile implements IntensityField {
   readonly outermost: number
   readonly flattening = 1
 
-  /** `b`: impact parameters, cm, increasing; `values`: RAY_VALUES numbers a ray; `radii`: of the walls, from the innermost dust. */
+  /**
+   * `b`: impact parameters, cm, increasing; `values`: `size` numbers a ray, with Q referred to the radius; `radii`: of the walls, from
+   * the innermost dust.
+   */
   constructor(
     readonly b: Float64Array,
     readonly values: Float64Array,
-    readonly radii: Float64Array
+    readonly radii: Float64Array,
+    readonly size: number
   ) {
     this.innermost = radii[0]
     this.outermost = b[b.length - 1]
   }
 
   sample(x: number, y: number, out: Float64Array): void {
-    const { b, values } = this
+    const { b, values, size } = this
     const radius = Math.sqrt(x * x + y * y)
     const last = b.length - 1
     if (radius >= b[last]) {
-      out.fill(0, 0, RAY_VALUES)
+      out.fill(0, 0, size)
       return
     }
     let low = 0
@@ -38,14 +43,18 @@ export class RadialProfile implements IntensityField {
       else high = middle
     }
     const share = (radius - b[low]) / (b[low + 1] - b[low])
-    const i = low * RAY_VALUES
-    for (let k = 0; k < RAY_VALUES; k++) out[k] = values[i + k] + share * (values[i + RAY_VALUES + k] - values[i + k])
+    const i = low * size
+    for (let k = 0; k < size; k++) out[k] = values[i + k] + share * (values[i + size + k] - values[i + k])
+    if (size > RAY_VALUES) {
+      const [cos, sin] = doubled(y, -x)
+      turnStokes(out, cos, sin, true)
+    }
   }
 
-  /** Integral of the intensity over the disk within a radius (cm): RAY_VALUES numbers x cm2, exact for straight lines between rays. */
+  /** Integral of the intensity over the disk within a radius (cm): the numbers of a ray x cm2, exact for straight lines between rays; no polarisation is left. */
   integrate(radius: number): Float64Array {
-    const { b, values } = this
-    const sum = new Float64Array(RAY_VALUES)
+    const { b, values, size } = this
+    const sum = new Float64Array(size)
     for (let i = 0; i + 1 < b.length && b[i] < radius; i++) {
       const from = b[i]
       const end = b[i + 1]
@@ -54,11 +63,12 @@ export class RadialProfile implements IntensityField {
       const ring = Math.PI * (to * to - from * from)
       const moment = (2 / 3) * Math.PI * (to ** 3 - from ** 3)
       for (let k = 0; k < RAY_VALUES; k++) {
-        const low = values[i * RAY_VALUES + k]
-        const slope = (values[(i + 1) * RAY_VALUES + k] - low) / (end - from)
+        const low = values[i * size + k]
+        const slope = (values[(i + 1) * size + k] - low) / (end - from)
         sum[k] += (low - slope * from) * ring + slope * moment
       }
     }
+    sum[Q] = 0
     return sum
   }
 }
@@ -67,11 +77,12 @@ export class RadialProfile implements IntensityField {
 export function traceProfile(
   trace: (b: number, out: Float64Array) => void,
   radii: ArrayLike<number>,
-  accuracy: number
+  accuracy: number,
+  size: number
 ): RadialProfile {
   const rows: [number, Float64Array][] = []
   const ray = (b: number): Float64Array => {
-    const out = new Float64Array(RAY_VALUES)
+    const out = new Float64Array(size)
     trace(b, out)
     return out
   }
@@ -98,13 +109,14 @@ export function traceProfile(
     refine(starts[i - 1], previous, starts[i], next, 0)
     previous = next
   }
-  const values = new Float64Array(rows.length * RAY_VALUES)
+  const values = new Float64Array(rows.length * size)
   rows.forEach(([, value], i) => {
-    values.set(value, i * RAY_VALUES)
+    values.set(value, i * size)
   })
   return new RadialProfile(
     Float64Array.from(rows, ([b]) => b),
     values,
-    Float64Array.from(radii).subarray(1)
+    Float64Array.from(radii).subarray(1),
+    size
   )
 }

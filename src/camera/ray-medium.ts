@@ -1,8 +1,9 @@
+import type { ScatteringTables } from '../dust/scattering-tables.js'
 import type { SphericalWalls } from '../grid/geometry.js'
 import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
 import { largestStar } from '../solve/scatter-medium.js'
-import type { ScatteredLight } from '../solve/scattered-light.js'
+import type { PolarisedPart, ScatteredLight } from '../solve/scattered-light.js'
 
 /** What the intensity along rays to one observer at one wavelength follows from, as flat arrays that all threads share. */
 export interface RayMedium {
@@ -20,6 +21,10 @@ export interface RayMedium {
   scatteredGroups: Float32Array
   /** Values a cell: ANGLE_NODES in one dimension, AZIMUTH_BINS in two, 1 in three; 0 when nothing scatters. */
   slots: number
+  /** As `scattered`, the other Stokes parameters; absent where no law polarises or nothing scatters. */
+  polarised?: PolarisedPart
+  /** Some law polarises: rays have POLARISED_VALUES numbers. */
+  polarising: boolean
   /** First scatterings of the point stars at the origin, calculated exactly; absent without them. */
   starlight?: Starlight
   /** Radius of the largest star that is a sphere, cm; it hides what lies behind. */
@@ -34,6 +39,8 @@ export interface Starlight {
   asymmetry: Float64Array
   /** laws x cells, cm-1. */
   scattering: Float64Array
+  /** The laws as tables, where not all are Henyey-Greenstein. */
+  tables?: ScatteringTables
 }
 
 /** Puts together what rays need; without `scattered` only first scatterings are seen. */
@@ -51,8 +58,16 @@ export function rayMedium(model: Model, light: DustLight, scattered: ScatteredLi
     scattered: scattered?.value ?? new Float64Array(),
     scatteredGroups: scattered?.groups ?? new Float32Array(),
     slots: scattered?.slots ?? 0,
+    ...(scattered?.polarised && { polarised: scattered.polarised }),
+    polarising: light.tables?.polarising ?? false,
     ...(luminosity > 0 && {
-      starlight: { luminosity, opticalDepth: light.opticalDepth, asymmetry: light.asymmetry, scattering: light.scattering }
+      starlight: {
+        luminosity,
+        opticalDepth: light.opticalDepth,
+        asymmetry: light.asymmetry,
+        scattering: light.scattering,
+        ...(light.tables && { tables: light.tables })
+      }
     }),
     starRadius: largestStar(model)
   }

@@ -1,8 +1,11 @@
 import { henyeyGreenstein } from '../dust/phase-function.js'
+import { elementAt, S11, S12 } from '../dust/scattering-tables.js'
 import { SphericalWalk } from '../grid/walk.js'
 import { GROUPS } from '../solve/groups.js'
 import { ANGLE_NODES } from '../solve/scattered-light.js'
 import type { RayMedium } from './ray-medium.js'
+import { EMITTED, FIRST_GROUP, POLARISED_VALUES, RAY_VALUES, SCATTERED } from './ray-values.js'
+import { AZIMUTH_LOOKUP, StokesRay } from './stokes-ray.js'
 import type { ViewBasis } from './view.js'
 
 /** Beyond this optical depth nothing is seen. */
@@ -14,13 +17,6 @@ const ANGLE_STEP = 0.4
 const DEPTH_STEP = 1
 const MOST_PIECES = 32
 const GAUSS = 0.5 - 0.5 / Math.sqrt(3)
-const AZIMUTH_LOOKUP = 2048
-
-/** Values of a ray: emitted, scattered, then the deviations of the groups. */
-export const EMITTED = 0
-export const SCATTERED = 1
-export const FIRST_GROUP = 2
-export const RAY_VALUES = FIRST_GROUP + GROUPS
 
 /**
  * The formal solution of radiative transfer along rays to one observer: intensity is the integral of the emission coefficient
@@ -32,12 +28,19 @@ export class RayIntegrator {
   private readonly azimuthPosition: Float32Array
   /** Where rays start from and run to, turned into the half-plane of azimuth 0 in two dimensions. */
   private readonly view: ViewBasis
+  /** Numbers that `trace` writes. */
+  readonly size: number
+  /** Starlight scattered once along the last ray, polarised along the radius in the picture. */
+  private radial = 0
+  private readonly stokes: StokesRay | undefined
 
   constructor(
     private readonly medium: RayMedium,
     view: ViewBasis
   ) {
     this.view = view
+    this.size = medium.polarising ? POLARISED_VALUES : RAY_VALUES
+    this.stokes = medium.polarising ? new StokesRay(medium, view) : undefined
     this.walk = new SphericalWalk(medium.walls)
     this.azimuthPosition = Float32Array.from({ length: AZIMUTH_LOOKUP + 1 }, (_, i) => {
       const angle = Math.acos(Math.min(1, -1 + (2 * (i + 0.5)) / AZIMUTH_LOOKUP))
@@ -47,14 +50,16 @@ export class RayIntegrator {
 
   /**
    * Intensity (erg/s/cm2/Hz/sr) towards the observer along the ray at (x, y) cm in the picture, without the direct light of
-   * stars, into `out` (RAY_VALUES numbers); the deviations of the groups only when `withGroups`.
+   * stars, into `out` (`size` numbers); the deviations of the groups only when `withGroups`. Stokes parameters refer to the
+   * picture's north, in one dimension to the radius in the picture.
    */
   trace(x: number, y: number, out: Float64Array, withGroups: boolean): void {
-    const { medium, walk } = this
+    const { medium, walk, stokes } = this
     const { right, up, observer } = this.view
     const { extinction, emission, emissionGroups, scattered, scatteredGroups, slots, starRadius } = medium
     const dimensions = walk.np > 1 ? 3 : walk.nt > 1 ? 2 : 1
-    out.fill(0, 0, RAY_VALUES)
+    out.fill(0, 0, this.size)
+    this.radial = 0
     // A ray exactly through the origin would see a point star's halo diverge.
     const tiny = 1e-9 * medium.walls.r[walk.nr]
     if (x * x + y * y < tiny * tiny) x = tiny
@@ -70,11 +75,12 @@ export class RayIntegrator {
     const starAt = walk.b2 < starRadius * starRadius ? -Math.sqrt(starRadius * starRadius - walk.b2) : Number.POSITIVE_INFINITY
     const hasEmissionGroups = withGroups && emissionGroups.length > 0
     let depth = 0
+    let atStar = false
     do {
       const cell = walk.cell
       const start = walk.s
       let step = walk.toWall()
-      const atStar = start + step >= starAt
+      atStar = start + step >= starAt
       if (atStar) step = Math.max(0, starAt - start)
       const chi = extinction[cell]
       if (chi > 0 && step > 0) {
@@ -86,6 +92,7 @@ export class RayIntegrator {
           const s = start + 0.5 * step
           let index = cell
           let share = 0
+          let side = 1
           if (dimensions === 1) {
             // cos of the angle to the observer, who stands towards negative s.
             const cosine = -s / Math.sqrt(walk.b2 + s * s)
@@ -97,7 +104,9 @@ export class RayIntegrator {
             const px = walk.x0 + s * walk.ux
             const py = walk.y0 + s * walk.uy
             const rho = Math.sqrt(px * px + py * py)
-            const position = this.azimuthPosition[rho > 0 ? ((px / rho + 1) * (AZIMUTH_LOOKUP / 2)) | 0 : 0]
+            const entry = rho > 0 ? ((px / rho + 1) * (AZIMUTH_LOOKUP / 2)) | 0 : 0
+            const position = this.azimuthPosition[entry]
+            if (stokes) side = py < 0 ? -stokes.oddness[entry] : stokes.oddness[entry]
             const bin = Math.min(slots - 2, position | 0)
             index = cell * slots + bin
             share = position - bin
@@ -108,12 +117,13 @@ export class RayIntegrator {
             const nearest = (share > 0.5 ? index + 1 : index) * GROUPS
             for (let g = 0; g < GROUPS; g++) out[FIRST_GROUP + g] += weight * scatteredGroups[nearest + g]
           }
+          if (stokes) stokes.add(index, share, side, weight, out, withGroups)
         }
         if (medium.starlight) out[SCATTERED] += this.firstScatterings(start, step, chi, depth)
         depth += thickness
       }
-      if (atStar) return
-    } while (depth < OPAQUE && walk.cross() >= 0)
+    } while (!atStar && depth < OPAQUE && walk.cross() >= 0)
+    if (stokes) stokes.finish(x, y, this.radial, out, withGroups)
   }
 
   /** Optical depth from the observer to the surface of a star, or to the plane through the origin where there is none. */
@@ -143,7 +153,7 @@ export class RayIntegrator {
   /** Starlight scattered once between two points of the present cell, dimmed by `depth` and by the cell itself. */
   private firstScatterings(start: number, step: number, chi: number, depth: number): number {
     const { walk, medium } = this
-    const { luminosity, opticalDepth, asymmetry, scattering } = medium.starlight!
+    const { luminosity, opticalDepth, asymmetry, scattering, tables } = medium.starlight!
     const { cells } = medium
     const { cell, ir, b2 } = walk
     const column = ir === 0 ? 0 : walk.it * walk.np + walk.ip
@@ -162,6 +172,7 @@ export class RayIntegrator {
     const pieces = Math.min(MOST_PIECES, Math.ceil(Math.max(steep ? range / ANGLE_STEP : 1, (chi * step) / DEPTH_STEP)))
     const width = range / pieces
     let sum = 0
+    let radial = 0
     for (let i = 0; i < 2 * pieces; i++) {
       const at = from + width * ((i >> 1) + (i % 2 === 0 ? GAUSS : 1 - GAUSS))
       const s = steep ? b * Math.tan(at) : at
@@ -169,10 +180,21 @@ export class RayIntegrator {
       const r = Math.sqrt(r2)
       const cosine = -s / r
       let source = 0
-      for (let law = 0; law < laws; law++) source += scattering[law * cells + cell] * henyeyGreenstein(asymmetry[law], cosine)
-      const dimming = Math.exp(-before - chi * ((r > rInner ? r - rInner : 0) + s - start))
-      sum += steep ? (source * dimming) / b : (source * dimming) / r2
+      let polarised = 0
+      if (tables) {
+        for (let law = 0; law < laws; law++) {
+          source += scattering[law * cells + cell] * elementAt(tables, law, S11, cosine)
+          polarised += scattering[law * cells + cell] * elementAt(tables, law, S12, cosine)
+        }
+      } else {
+        for (let law = 0; law < laws; law++) source += scattering[law * cells + cell] * henyeyGreenstein(asymmetry[law], cosine)
+      }
+      const dimming = Math.exp(-before - chi * ((r > rInner ? r - rInner : 0) + s - start)) / (steep ? b : r2)
+      sum += source * dimming
+      radial += polarised * dimming
     }
-    return (luminosity / (4 * Math.PI)) * sum * 0.5 * width
+    const scale = (luminosity / (4 * Math.PI)) * 0.5 * width
+    this.radial += radial * scale
+    return sum * scale
   }
 }

@@ -2,13 +2,16 @@ import { standardError } from '../math/stats.js'
 import type { PixelFrame } from './direct.js'
 import type { IntensityField } from './field.js'
 import { PixelIntegrator } from './pixel.js'
-import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray.js'
+import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray-values.js'
+import { putStokes, type StokesPlanes, stokesPlanes } from './stokes-planes.js'
 
 /** Rows of a picture without direct starlight; erg/s/cm2/Hz/sr, width x number of rows, lowest row first. */
 export interface PictureRows {
   emitted: Float64Array
   scattered: Float64Array
   sigma: Float64Array
+  /** Where light is polarised. */
+  stokes?: StokesPlanes
   /** Sum over the pixels of the estimated error of placing the rays. */
   placingError: number
 }
@@ -28,10 +31,11 @@ export function pictureRows(
 ): PictureRows {
   const { width, height, pixelWidth, pixelHeight } = frame
   const count = width * (to - from)
-  const rows = {
+  const rows: PictureRows = {
     emitted: new Float64Array(count),
     scattered: new Float64Array(count),
     sigma: new Float64Array(count),
+    ...(field.size > RAY_VALUES && { stokes: stokesPlanes(count) }),
     placingError: 0
   }
   const integrator = new PixelIntegrator(field, tolerance, floor)
@@ -47,6 +51,7 @@ export function pictureRows(
         rows.emitted[at] = integrator.mean[EMITTED]
         rows.scattered[at] = integrator.mean[SCATTERED]
         rows.sigma[at] = sigma
+        if (rows.stokes) putStokes(rows.stokes, at, integrator.mean, at === start + column ? 1 : -1)
         rows.placingError += integrator.error
       }
     }

@@ -1,7 +1,7 @@
 import { medianOverCountedBulk, standardError } from '../math/stats.js'
 import type { PixelFrame } from './direct.js'
 import type { IntensityField } from './field.js'
-import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray.js'
+import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray-values.js'
 
 /** Rings and directions of a quick look at a picture. */
 const PICTURE_RINGS = 24
@@ -20,10 +20,10 @@ export interface Survey {
 const RINGS = 40
 const DIRECTIONS = 8
 
-/** A quick look at an aperture of `radius` (cm): its integral to some per cent, RAY_VALUES numbers x cm2. */
+/** A quick look at an aperture of `radius` (cm): its integral to some per cent, the numbers of a ray x cm2. */
 export function surveyAperture(field: IntensityField, radius: number): Float64Array {
-  const ray = new Float64Array(RAY_VALUES)
-  const sum = new Float64Array(RAY_VALUES)
+  const ray = new Float64Array(field.size)
+  const sum = new Float64Array(field.size)
   const edge = Math.min(radius, field.outermost)
   const ratio = (edge / field.innermost) ** (1 / RINGS)
   for (let i = -1; i < RINGS; i++) {
@@ -34,7 +34,7 @@ export function surveyAperture(field: IntensityField, radius: number): Float64Ar
     for (let k = 0; k < DIRECTIONS; k++) {
       const angle = (2 * Math.PI * (k + (i % 2 === 0 ? 0.25 : 0.75))) / DIRECTIONS
       field.sample(b * Math.cos(angle), b * Math.sin(angle), ray, true)
-      for (let j = 0; j < RAY_VALUES; j++) sum[j] += (Math.PI * (to * to - from * from) * ray[j]) / DIRECTIONS
+      for (let j = 0; j < field.size; j++) sum[j] += (Math.PI * (to * to - from * from) * ray[j]) / DIRECTIONS
     }
   }
   return sum
@@ -47,7 +47,7 @@ export function survey(field: IntensityField, frame: PixelFrame): Survey {
   const nearest = 0.5 * Math.sqrt(area)
   const farthest = 0.5 * Math.hypot(width * pixelWidth, height * pixelHeight)
   const ratio = Math.max(1, farthest / nearest) ** (1 / PICTURE_RINGS)
-  const ray = new Float64Array(RAY_VALUES)
+  const ray = new Float64Array(field.size)
   const lights: number[] = []
   const errors: number[] = []
   const pixels: number[] = []

@@ -1,4 +1,5 @@
 import type { CameraSpec, SpectrumSpec } from '../scene/types.js'
+import type { StokesPlanes } from './stokes-planes.js'
 
 /**
  * Specific-intensity images of one camera, cgs (erg/s/cm2/Hz/sr).
@@ -15,6 +16,8 @@ export interface CameraImages {
   direct: Float64Array
   emitted: Float64Array
   scattered: Float64Array
+  /** Where some dust polarises. */
+  stokes?: StokesPlanes
   /** For each wavelength: the estimated relative error of placing the rays, weighted by flux. */
   samplingError: number[]
 }
@@ -27,5 +30,7 @@ export interface ApertureSpectrum {
   direct: Float64Array
   emitted: Float64Array
   scattered: Float64Array
+  /** Where some dust polarises. */
+  stokes?: StokesPlanes
   samplingError: number[]
 }

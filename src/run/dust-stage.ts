@@ -55,7 +55,7 @@ const LOOKS = 8
 
 /** Largest relative error that the noise of the temperatures makes in what will be seen. */
 function errorOfEmission(model: Model, dust: DustTemperatures): number {
-  const { wantedAt } = emptyProducts(model.scene)
+  const { wantedAt } = emptyProducts(model.scene, 'emissivity')
   const { cameras, spectra } = model.scene
   const wavelengths = new Set([...spread(cameras), ...spread(spectra)])
   const errors = Array.from(wavelengths, (wavelength) => {

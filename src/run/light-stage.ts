@@ -60,7 +60,7 @@ export async function lightStage(
   const play: PacketSource = (request, index, progress) =>
     playRounds(request, pool, ledger, lightPieces(index).packets, progress, stop)
   const packetsFrom = options.packetsFrom ?? play
-  const { images, spectra, wantedAt } = emptyProducts(model.scene)
+  const { images, spectra, wantedAt } = emptyProducts(model.scene, estimator)
   const wavelengths = observedWavelengths(model.scene)
   const lightPackets: LightPackets[] = []
   const clock = stopwatch()

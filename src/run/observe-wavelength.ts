@@ -2,9 +2,11 @@ import { integrateAperture } from '../camera/aperture.js'
 import { pixelFrame, seenFrom } from '../camera/frame.js'
 import type { PatchIntegral } from '../camera/patch.js'
 import { RadialProfile } from '../camera/profile.js'
-import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from '../camera/ray.js'
 import { type FieldData, fieldData, openField } from '../camera/ray-field.js'
+import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from '../camera/ray-values.js'
 import type { PictureRows } from '../camera/rows.js'
+import { putStokes, STOKES } from '../camera/stokes-planes.js'
+import { turnStokes } from '../camera/stokes-ray.js'
 import { survey } from '../camera/survey.js'
 import { standardError } from '../math/stats.js'
 import type { Model } from '../model/model.js'
@@ -107,7 +109,7 @@ function writeFlux(
   { scene: { distance } }: Model,
   direct: number,
   integral: PatchIntegral,
-  { result, k }: Extract<Wanted, { kind: 'spectrum' }>
+  { result, k, spec }: Extract<Wanted, { kind: 'spectrum' }>
 ): void {
   const area = distance * distance
   result.direct[k] = direct / area
@@ -115,6 +117,11 @@ function writeFlux(
   result.scattered[k] = integral.value[SCATTERED] / area
   result.sigma[k] = standardError(integral.value.subarray(FIRST_GROUP, RAY_VALUES)) / area
   result.total[k] = result.direct[k] + result.emitted[k] + result.scattered[k]
+  if (result.stokes && integral.value.length > RAY_VALUES) {
+    const flux = integral.value.map((value) => value / area)
+    turnStokes(flux, Math.cos(2 * spec.view.roll), Math.sin(2 * spec.view.roll), true)
+    putStokes(result.stokes, k, flux, 1)
+  }
   const dust = integral.value[EMITTED] + integral.value[SCATTERED]
   result.samplingError[k] = dust > 0 ? integral.error / (area * result.total[k]) : 0
 }
@@ -151,6 +158,7 @@ async function takePicture(model: Model, work: PictureWork, { pool, ledger, name
     images.emitted.set(rows.emitted, at)
     images.scattered.set(rows.scattered, at)
     images.sigma.set(rows.sigma, at)
+    if (images.stokes && rows.stokes) for (const plane of STOKES) images.stokes[plane].set(rows.stokes[plane], at)
     progress.placing += rows.placingError
     progress.tasks = index + 1
     onDone(Math.min(frame.height, progress.tasks * ROWS_A_TASK), frame.height)

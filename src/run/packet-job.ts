@@ -1,6 +1,7 @@
 import { addDirectLight, directLight, starImage } from '../camera/direct.js'
 import { apertureDetector, cameraDetector, pixelFrame, pixelSolidAngle, seenFrom } from '../camera/frame.js'
 import { rayMedium } from '../camera/ray-medium.js'
+import { STOKES, STOKES_PAIRS, type StokesPlanes, stokesPlanes } from '../camera/stokes-planes.js'
 import { BULK } from '../camera/survey.js'
 import { medianOverBulk, standardError } from '../math/stats.js'
 import type { Model } from '../model/model.js'
@@ -19,6 +20,7 @@ interface Caught {
   emitted: Float64Array
   scattered: Float64Array
   sigma: Float64Array
+  stokes?: StokesPlanes
 }
 
 /**
@@ -72,7 +74,7 @@ function largestError(detectors: Detector[], { direct, emitted, scattered, sigma
 /** What the packets of all groups brought: each sum holds direct, emitted and scattered light, `pixels` values each. */
 function caughtBy(pixels: number, { sums, packets }: GroupSums): Caught {
   const all = packets.reduce((sum, value) => sum + value, 0) || 1
-  const mean = new Float64Array(3 * pixels)
+  const mean = new Float64Array(sums[0]?.length ?? 3 * pixels)
   for (const sum of sums) for (let i = 0; i < mean.length; i++) mean[i] += sum[i] / all
   const estimates = new Float64Array(GROUPS)
   const sigma = Float64Array.from({ length: pixels }, (_, i) => {
@@ -82,7 +84,19 @@ function caughtBy(pixels: number, { sums, packets }: GroupSums): Caught {
     return standardError(estimates)
   })
   const [direct, emitted, scattered] = [0, 1, 2].map((part) => mean.subarray(part * pixels, (part + 1) * pixels))
-  return { direct, emitted, scattered, sigma }
+  if (mean.length === 3 * pixels) return { direct, emitted, scattered, sigma }
+  const stokes = stokesPlanes(pixels)
+  for (const [i, [value, error]] of STOKES_PAIRS.entries()) {
+    const from = (3 + i) * pixels
+    stokes[value].set(mean.subarray(from, from + pixels))
+    for (let pixel = 0; pixel < pixels; pixel++) {
+      sums.forEach((sum, g) => {
+        estimates[g] = sum[from + pixel] / packets[g]
+      })
+      stokes[error][pixel] = standardError(estimates)
+    }
+  }
+  return { direct, emitted, scattered, sigma, stokes }
 }
 
 /** Writes what a detector caught into its image or spectrum; returns where the next detector's values start. */
@@ -100,6 +114,7 @@ function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted
     result.scattered[k] = caught.scattered[offset] / area
     result.sigma[k] = caught.sigma[offset] / area
     result.total[k] = result.direct[k] + result.emitted[k] + result.scattered[k]
+    if (result.stokes && caught.stokes) for (const plane of STOKES) result.stokes[plane][k] = caught.stokes[plane][offset] / area
     return offset + 1
   }
   const { images, k, spec } = want
@@ -108,6 +123,13 @@ function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted
   // Luminosity per sr divided by the squared distance is flux; by the solid angle of a pixel, intensity.
   const scale = 1 / (distance * distance * pixelSolidAngle(spec))
   const direct = images.direct.subarray(at, at + pixels)
+  if (images.stokes && caught.stokes) {
+    for (const plane of STOKES)
+      images.stokes[plane].set(
+        caught.stokes[plane].subarray(offset, offset + pixels).map((value) => value * scale),
+        at
+      )
+  }
   for (const star of stars) addDirectLight(star, depthAt, pixelFrame(spec, distance), direct)
   for (let i = 0; i < pixels; i++) {
     direct[i] += caught.direct[offset + i] * scale

@@ -1,6 +1,6 @@
 import { pixelFrame, seenFrom } from '../camera/frame.js'
-import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from '../camera/ray.js'
 import { fieldData, openField } from '../camera/ray-field.js'
+import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from '../camera/ray-values.js'
 import { survey, surveyAperture } from '../camera/survey.js'
 import { standardError } from '../math/stats.js'
 import type { Model } from '../model/model.js'

@@ -46,7 +46,7 @@ export function runPart(scene: Scene, { index, of }: Part, options: RunOptions):
   const { estimator, onProgress, stop } = options
   return withCrew(scene, options, async ({ model, pool, ledger }) => {
     const { dust } = await dustStage(model, pool, ledger, onProgress, stop)
-    const { wantedAt } = emptyProducts(scene)
+    const { wantedAt } = emptyProducts(scene, estimator)
     const range = shareOf(index - 1, of, divide(scene.effort.cameras))
     const wavelengths = observedWavelengths(scene)
     for (const [k, wavelength] of wavelengths.entries()) {

@@ -10,6 +10,8 @@ import { tallyExits } from '../transport/exit.js'
 import { tallyFlights } from '../transport/flights.js'
 import { type PixelTally, tallyPeeled } from '../transport/peel.js'
 import type { ScatterMedium } from '../transport/scatter-medium.js'
+import { tallyStokesFlights } from '../transport/stokes-flights.js'
+import { tallyStokesTowards } from '../transport/stokes-towards.js'
 import { tallyTowards } from '../transport/towards.js'
 import { type Shared, serve } from '../workers/serve.js'
 
@@ -42,6 +44,9 @@ serve({
   flights: ({ packets, seed }: Batch, shared: Shared) => tallyFlights(scattering(shared), packets, stream(seed)),
   towards: ({ packets, seed, observers }: Batch & { observers: Float64Array }, shared: Shared) =>
     tallyTowards(scattering(shared), observers, packets, stream(seed)),
+  'stokes-flights': ({ packets, seed }: Batch, shared: Shared) => tallyStokesFlights(scattering(shared), packets, stream(seed)),
+  'stokes-towards': ({ packets, seed, observers }: Batch & { observers: Float64Array }, shared: Shared) =>
+    tallyStokesTowards(scattering(shared), observers, packets, stream(seed)),
   peeled: ({ packets, seed, detectors }: Batch & { detectors: Detector[] }, shared: Shared) =>
     inOne(tallyPeeled(scattering(shared), detectors, packets, stream(seed))),
   exits: ({ packets, seed, detectors }: Batch & { detectors: Detector[] }, shared: Shared) =>
@@ -52,11 +57,17 @@ serve({
     integrateAperture(field(shared), radius, tolerance, mirrored)
 })
 
-/** Direct, emitted and scattered light of all pixels as one tally. */
-function inOne({ direct, emitted, scattered }: PixelTally & { direct?: Float64Array }): Float64Array {
-  const tally = new Float64Array(3 * emitted.length)
+/** Direct, emitted and scattered light of all pixels as one tally, and Q, U and V where they are known. */
+function inOne({
+  direct,
+  emitted,
+  scattered,
+  stokes = []
+}: Omit<PixelTally, 'stokes'> & { direct?: Float64Array; stokes?: Float64Array[] }): Float64Array {
+  const tally = new Float64Array((3 + stokes.length) * emitted.length)
   if (direct) tally.set(direct)
   tally.set(emitted, emitted.length)
   tally.set(scattered, 2 * emitted.length)
+  for (const [i, part] of stokes.entries()) tally.set(part, (3 + i) * emitted.length)
   return tally
 }

@@ -1,5 +1,8 @@
+import { STOKES, stokesPlanes } from '../camera/stokes-planes.js'
 import type { ApertureSpectrum, CameraImages } from '../camera/types.js'
+import { isPolarised } from '../scene/is-polarised.js'
 import type { CameraSpec, Scene, SpectrumSpec } from '../scene/types.js'
+import type { Estimator } from './estimator.js'
 
 /** A camera or spectrum that wants the wavelength at hand, and the index of the wavelength in its list. */
 export type Wanted =
@@ -9,16 +12,19 @@ export type Wanted =
 const PLANES = ['total', 'sigma', 'direct', 'emitted', 'scattered'] as const
 
 /** Values of one camera or spectrum at one wavelength. */
-export type WantedValues = Record<(typeof PLANES)[number], Float64Array> & { samplingError: number }
+export type WantedValues = Record<(typeof PLANES)[number], Float64Array> &
+  Partial<Record<(typeof STOKES)[number], Float64Array>> & { samplingError: number }
 
 /** Products full of zeros, and which of them want a wavelength. */
-export function emptyProducts(scene: Scene) {
+export function emptyProducts(scene: Scene, estimator: Estimator) {
   const arrays = (length: number) => ({
     total: new Float64Array(length),
     sigma: new Float64Array(length),
     direct: new Float64Array(length),
     emitted: new Float64Array(length),
-    scattered: new Float64Array(length)
+    scattered: new Float64Array(length),
+    // Exit bins catch intensity alone.
+    ...(estimator !== 'exit' && isPolarised(scene) && { stokes: stokesPlanes(length) })
   })
   const images = scene.cameras.map((camera): CameraImages => {
     const [width, height] = camera.pixels
@@ -48,7 +54,9 @@ export function emptyProducts(scene: Scene) {
 export function valuesOf(wanted: Wanted[]): WantedValues[] {
   return wanted.map((want) => {
     const { product, from, to } = placeOf(want)
-    const copies = PLANES.map((plane) => [plane, product[plane].slice(from, to)])
+    const copies = PLANES.map((plane): [string, Float64Array] => [plane, product[plane].slice(from, to)])
+    const { stokes } = product
+    if (stokes) copies.push(...STOKES.map((plane): [string, Float64Array] => [plane, stokes[plane].slice(from, to)]))
     return { ...Object.fromEntries(copies), samplingError: product.samplingError[want.k] } as WantedValues
   })
 }
@@ -58,6 +66,7 @@ export function putValues(wanted: Wanted[], values: WantedValues[]): void {
   wanted.forEach((want, i) => {
     const { product, from } = placeOf(want)
     for (const plane of PLANES) product[plane].set(values[i][plane], from)
+    if (product.stokes) for (const plane of STOKES) product.stokes[plane].set(values[i][plane]!, from)
     product.samplingError[want.k] = values[i].samplingError
   })
 }

@@ -1,5 +1,6 @@
 import type { z } from 'zod'
 import type { DataFiles } from './data-files.js'
+import { phaseLaw } from './phase-law.js'
 import type { WrittenConstants, WrittenPart } from './schema/constants-schema.js'
 import type { opacitySchema } from './schema/opacity-schema.js'
 import { parseConstantsTable, parseOpacityTable, parseSizesTable } from './tables.js'
@@ -11,20 +12,21 @@ type WrittenPopulation = Extract<WrittenOpacity, { law: 'grains' }>['populations
 /** An entry of `opacities` with the files that it names; undefined, and problems in `files`, when one cannot be used. */
 export function opacitySpec(entry: WrittenOpacity, name: string, files: DataFiles): OpacitySpec | undefined {
   const path = ['opacities', name]
+  const phase = phaseLaw(entry.phase, [...path, 'phase'], files)
   switch (entry.law) {
     case 'table': {
       const table = files.read(entry.file, [...path, 'file'], parseOpacityTable)
-      return table && { law: 'table', table, phase: entry.phase }
+      return table && phase && { law: 'table', table, phase }
     }
     case 'grains': {
-      const { law, populations, inline, phase } = entry
+      const { law, populations, inline } = entry
       const read = populations.map((population, i) =>
         grainPopulation(population, inline ? path : [...path, 'populations', i], files)
       )
-      return whole(read) ? { law, populations: read, phase } : undefined
+      return phase && whole(read) ? { law, populations: read, phase } : undefined
     }
     default:
-      return entry
+      return phase && { ...entry, phase }
   }
 }
 

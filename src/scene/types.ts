@@ -64,7 +64,33 @@ export interface SpectrumTable {
   fluxNu: Float64Array
 }
 
-export type PhaseLaw = 'isotropic' | 'henyey-greenstein' | 'rayleigh' | 'computed'
+/** `computed`: the scattering matrix of Mie theory, for grains. */
+export type PhaseLaw =
+  | 'isotropic'
+  | 'henyey-greenstein'
+  | 'rayleigh'
+  | 'computed'
+  | TwoTermPhase
+  | { kind: 'table'; table: MatrixTable }
+
+/** Sum of two Henyey-Greenstein laws of these mean cosines; `share` of the light is scattered by the first. */
+export interface TwoTermPhase {
+  kind: 'two-term'
+  first: number
+  second: number
+  share: number
+}
+
+/** A scattering matrix read from a file, of any scale, for all wavelengths; s12, s33 and s34 are 0 for a mere phase function. */
+export interface MatrixTable {
+  file: string
+  /** rad, from 0 to pi */
+  angles: Float64Array
+  s11: Float64Array
+  s12: Float64Array
+  s33: Float64Array
+  s34: Float64Array
+}
 
 export type OpacitySpec = PowerOpacitySpec | TableOpacitySpec | GrainsOpacitySpec | CurveOpacitySpec
 

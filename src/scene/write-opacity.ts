@@ -1,5 +1,5 @@
 import { formatQuantity } from '../units/quantity.js'
-import type { ConstantsSpec, CurveSpec, GrainPopulation, MixturePart, OpacitySpec, SizesSpec } from './types.js'
+import type { ConstantsSpec, CurveSpec, GrainPopulation, MixturePart, OpacitySpec, PhaseLaw, SizesSpec } from './types.js'
 
 type Yaml = Record<string, unknown>
 
@@ -8,7 +8,8 @@ const density = (value: number) => formatQuantity(value, 'density')
 
 /** An entry of `opacities` as a scene file has it, with every default filled in. */
 export function opacityYaml(spec: OpacitySpec): Yaml {
-  const { law, phase } = spec
+  const { law } = spec
+  const phase = phaseYaml(spec.phase)
   switch (spec.law) {
     case 'table':
       return { law, file: spec.table.file, phase }
@@ -22,6 +23,12 @@ export function opacityYaml(spec: OpacitySpec): Yaml {
       return { law, ...(alone ? grainYaml(first) : { populations: spec.populations.map(populationYaml) }), phase }
     }
   }
+}
+
+function phaseYaml(phase: PhaseLaw): unknown {
+  if (typeof phase === 'string') return phase
+  if (phase.kind === 'table') return { table: phase.table.file }
+  return { 'two-term': { first: phase.first, second: phase.second, share: phase.share } }
 }
 
 function referenceYaml({ wavelength, ...opacity }: { wavelength: number; absorption?: number; extinction?: number }): Yaml {

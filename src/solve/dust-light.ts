@@ -1,8 +1,10 @@
 import { planckNu, planckNuDerivative } from '../dust/planck.js'
+import type { ScatteringTables } from '../dust/scattering-tables.js'
 import { allocateShared } from '../math/allocate.js'
 import type { Model } from '../model/model.js'
 import { LIGHT_SPEED } from '../units/constants.js'
 import { GROUPS } from './groups.js'
+import { lawsAt } from './laws.js'
 import type { DustTemperatures } from './temperatures.js'
 
 /** The dust of a model at one wavelength, as flat arrays that all threads share. */
@@ -13,9 +15,11 @@ export interface DustLight {
   nu: number
   /** Extinction coefficient, cm-1, by cell. */
   extinction: Float64Array
-  /** Different asymmetry parameters among the components. */
+  /** Mean cosines of the different scattering laws among the components. */
   asymmetry: Float64Array
-  /** laws x cells: scattering coefficient, cm-1, of the dust with that asymmetry. */
+  /** The laws as tables, where not all are Henyey-Greenstein. */
+  tables?: ScatteringTables
+  /** laws x cells: scattering coefficient, cm-1, of the dust with that law. */
   scattering: Float64Array
   /** Thermal emission coefficient, erg/s/cm3/Hz/sr, by cell. */
   emission: Float64Array
@@ -32,15 +36,15 @@ const shared32 = (length: number) => new Float32Array(allocateShared(4 * length)
 export function dustLight(model: Model, dust: DustTemperatures, wavelength: number): DustLight {
   const { components, cells } = model
   const nu = LIGHT_SPEED / wavelength
-  const laws = [...new Set(components.map(({ law }) => law.asymmetry(wavelength)))]
+  const laws = lawsAt(components, wavelength)
   const extinction = shared64(cells)
-  const scattering = shared64(laws.length * cells)
+  const scattering = shared64(laws.asymmetry.length * cells)
   const emission = shared64(cells)
   const emissionGroups = shared32(dust.deviation.length > 0 ? cells * GROUPS : 0)
   components.forEach(({ law, density }, c) => {
     const absorptionOpacity = law.absorption(wavelength)
     const scatteringOpacity = law.scattering(wavelength)
-    const offset = laws.indexOf(law.asymmetry(wavelength)) * cells
+    const offset = laws.of[c] * cells
     for (let i = 0; i < cells; i++) {
       const rho = density[i]
       if (!(rho > 0)) continue
@@ -61,8 +65,9 @@ export function dustLight(model: Model, dust: DustTemperatures, wavelength: numb
     wavelength,
     nu,
     extinction,
-    asymmetry: Float64Array.from(laws.length > 0 ? laws : [0]),
-    scattering: laws.length > 0 ? scattering : shared64(cells),
+    asymmetry: laws.asymmetry,
+    ...(laws.tables && { tables: laws.tables }),
+    scattering,
     emission,
     emissionGroups,
     opticalDepth: radialDepths(model, extinction)

@@ -53,6 +53,7 @@ export function scatterMedium(model: Model, light: DustLight): ScatterMedium {
     cells,
     extinction: light.extinction,
     asymmetry: light.asymmetry,
+    ...(light.tables && { tables: light.tables }),
     scattering: light.scattering,
     launch,
     launchTable: makeSamplingTable(

@@ -18,12 +18,22 @@ export interface ScatteredLight {
   value: Float64Array
   /** cells x slots x GROUPS: deviations of the groups' estimates. */
   groups: Float32Array
+  /** Where a law polarises. */
+  polarised?: PolarisedPart
+}
+
+/** Stokes parameters beside I, as ScatteredLight with so many numbers where that has one. */
+export interface PolarisedPart {
+  /** 1 in one dimension: Q, referred to the radius; else 3: Q, U, V, referred to the projected z axis. */
+  parts: 1 | 3
+  value: Float64Array
+  groups: Float32Array
 }
 
 const RULE = gaussLegendre(4)
 
 /** Mean and deviations over the groups at element `i`, scaled; the mean is returned, the deviations go to `out` at `start`. */
-function spread({ sums, packets }: GroupSums, i: number, scale: number, out: Float32Array, start: number): number {
+export function spread({ sums, packets }: GroupSums, i: number, scale: number, out: Float32Array, start: number): number {
   let sum = 0
   let all = 0
   for (let g = 0; g < GROUPS; g++) {

@@ -4,6 +4,7 @@ import type { GroupSums } from './group-sums.js'
 import type { RoundsRequest } from './rounds.js'
 import { scatterMedium } from './scatter-medium.js'
 import { fromFlights, fromTallies, type ScatteredLight } from './scattered-light.js'
+import { fromStokesFlights, fromStokesTallies, turningMatrices } from './scattered-stokes.js'
 
 /** Packets that find the scattered light at one wavelength, and what their sums mean. */
 export interface Scattering {
@@ -28,14 +29,17 @@ export function scattering(
   const { effort, seed } = model.scene
   const spherical = model.dimensions === 1
   const count = spherical ? 1 : observers.length / 3
-  const lightOf = (sums: GroupSums) =>
-    Array.from({ length: count }, (_, index) =>
-      spherical ? fromFlights(model, light, sums) : fromTallies(model, sums, index, count)
-    )
+  const turning = spherical && light.tables ? turningMatrices(light.tables) : undefined
+  const towards = (sums: GroupSums, index: number) => {
+    if (turning) return fromStokesFlights(model, light, turning, sums)
+    if (spherical) return fromFlights(model, light, sums)
+    return light.tables ? fromStokesTallies(model, light, sums, index, count) : fromTallies(model, sums, index, count)
+  }
+  const lightOf = (sums: GroupSums) => Array.from({ length: count }, (_, index) => towards(sums, index))
   return {
     request: {
       medium,
-      task: spherical ? 'flights' : 'towards',
+      task: `${light.tables ? 'stokes-' : ''}${spherical ? 'flights' : 'towards'}`,
       input: { observers },
       seed: `${seed}/light/${light.wavelength}`,
       atMost: effort.cameras,

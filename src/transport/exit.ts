@@ -2,6 +2,7 @@ import { SphericalWalk } from '../grid/walk.js'
 import { type Detector, detectorPixels, pixelOf } from './detector.js'
 import { collide, pathToStar } from './flight.js'
 import type { PixelTally } from './peel.js'
+import { Polarisation } from './polarisation.js'
 import { Launcher } from './scatter-launch.js'
 import type { ScatterMedium } from './scatter-medium.js'
 
@@ -26,12 +27,14 @@ export function tallyExits(
   const scattered = new Float64Array(pixels)
   const walk = new SphericalWalk(walls)
   const launcher = new Launcher(medium, packets, false)
+  const polarisation = medium.tables && new Polarisation()
   const out = new Float64Array(3)
   const starRadius2 = medium.starRadius ** 2
   const dimension = walls.phi.length > 2 ? 3 : walls.cosTheta.length > 2 ? 2 : 1
 
   for (let n = 0; n < packets; n++) {
     launcher.next(walk, n, uniform, out)
+    polarisation?.reset(walk.ux, walk.uy, walk.uz)
     const first = launcher.weight
     let weight = first
     let tally = launcher.starlight ? direct : emitted
@@ -43,7 +46,7 @@ export function tallyExits(
       const free = Math.min(toStar, toWall)
       const depth = free * extinction[cell]
       if (depth >= remaining) {
-        weight = collide(walk, medium, walk.s + remaining / extinction[cell], weight, first, uniform, out)
+        weight = collide(walk, medium, walk.s + remaining / extinction[cell], weight, first, uniform, out, polarisation)
         tally = scattered
         remaining = -Math.log(uniform())
       } else {

@@ -1,4 +1,5 @@
 import type { SphericalWalk } from '../grid/walk.js'
+import type { Polarisation } from './polarisation.js'
 import { scatterHere, scatteringOf } from './scatter-launch.js'
 import type { ScatterMedium } from './scatter-medium.js'
 
@@ -23,10 +24,11 @@ export function collide(
   weight: number,
   first: number,
   uniform: () => number,
-  out: Float64Array
+  out: Float64Array,
+  polarisation?: Polarisation
 ): number {
   let next = (weight * scatteringOf(medium, walk.cell)) / medium.extinction[walk.cell]
   if (next < ROULETTE_BELOW * first) next = uniform() < SURVIVAL ? next / SURVIVAL : 0
-  if (next > 0) scatterHere(walk, medium, s, uniform, out)
+  if (next > 0) scatterHere(walk, medium, s, uniform, out, polarisation)
   return next
 }

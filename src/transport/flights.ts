@@ -13,6 +13,11 @@ const binOfCosine = Uint8Array.from({ length: LOOKUP + 1 }, (_, i) => {
   return Math.min(FLIGHT_BINS - 1, Math.floor(Math.sqrt(0.5 * (1 - cosine)) * FLIGHT_BINS))
 })
 
+/** Bin of a flight by its cosine with the radius. */
+export function flightBin(cosine: number): number {
+  return binOfCosine[((cosine + 1) * (LOOKUP / 2)) | 0]
+}
+
 /**
  * Light in flight in cells of one dimension: sum of weight x path (erg/s/Hz cm) by radial cell and by the angle between the
  * flight and the radius; cells x FLIGHT_BINS. The point of a segment that decides its bin is drawn along it, so that long

@@ -3,6 +3,7 @@ import type { SphericalWalk } from '../grid/walk.js'
 import { sampleBin } from '../math/cdf.js'
 import { deflect, isotropicDirection } from './direction.js'
 import { emittingCell, launchFromCell, launchFromSurface } from './launch.js'
+import type { Polarisation } from './polarisation.js'
 import type { ScatterLaunch, ScatterMedium } from './scatter-medium.js'
 
 /** Draws the scattering law of a cell: the index into `asymmetry`. */
@@ -61,15 +62,20 @@ function firstScattering(
   return scatteringOf(medium, walk.cell) / medium.extinction[walk.cell]
 }
 
-/** Scatters the packet where the walk stands: a new direction by the law of the dust there. */
+/** Scatters the packet where the walk stands: a new direction, and a new polarisation where there is one, by the law of the dust there. */
 export function scatterHere(
   walk: SphericalWalk,
   medium: ScatterMedium,
   s: number,
   uniform: () => number,
-  out: Float64Array
+  out: Float64Array,
+  polarisation?: Polarisation
 ): void {
   const law = drawLaw(medium, walk.cell, uniform)
+  if (polarisation) {
+    polarisation.scatter(medium.tables!, law, walk, s, uniform, out)
+    return
+  }
   const mu = sampleHenyeyGreenstein(medium.asymmetry[law], uniform())
   const { ux, uy, uz } = walk
   deflect(out, ux, uy, uz, mu, uniform())

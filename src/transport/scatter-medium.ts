@@ -1,3 +1,4 @@
+import type { ScatteringTables } from '../dust/scattering-tables.js'
 import type { SphericalWalls } from '../grid/geometry.js'
 import type { SamplingTable } from '../math/cdf.js'
 
@@ -7,10 +8,12 @@ export interface ScatterMedium {
   cells: number
   /** Extinction coefficient, cm-1, by cell. */
   extinction: Float64Array
-  /** Different asymmetry parameters among the components. */
+  /** Mean cosines of the different scattering laws among the components. */
   asymmetry: Float64Array
-  /** laws x cells: scattering coefficient, cm-1, of the dust with that asymmetry. */
+  /** laws x cells: scattering coefficient, cm-1, of the dust with that law. */
   scattering: Float64Array
+  /** The laws as tables, where not all are Henyey-Greenstein: packets then carry their polarisation. */
+  tables?: ScatteringTables
   launch: ScatterLaunch[]
   /** One row: chooses the launch. */
   launchTable: SamplingTable

@@ -9,7 +9,7 @@ import { AZIMUTH_BINS, azimuthLookup, type ScatterMedium } from './scatter-mediu
  * evenly spaced from a random one, every second one mirrored, are tallied for each flight. Measured on a disk at 60 deg: 16 give
  * 4.2 times the figure of merit of 1; 8 2.8 times, 32 no more than 16.
  */
-const COPIES = 16
+export const COPIES = 16
 
 /**
  * Light scattered towards each observer in cells of two or three dimensions: sum of weight x path x scattering coefficient x

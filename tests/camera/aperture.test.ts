@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { integrateAperture } from '../../src/camera/aperture.js'
-import { EMITTED } from '../../src/camera/ray.js'
+import { EMITTED } from '../../src/camera/ray-values.js'
 import { fieldOf, rim } from './fields.js'
 
 describe('integrateAperture', () => {

@@ -1,9 +1,10 @@
 import type { IntensityField } from '../../src/camera/field.js'
-import { EMITTED } from '../../src/camera/ray.js'
+import { EMITTED, RAY_VALUES } from '../../src/camera/ray-values.js'
 
 /** A field known in closed form, with walls where it is told to have them. */
 export function fieldOf(intensity: (x: number, y: number) => number, radii: number[], flattening = 1): IntensityField {
   return {
+    size: RAY_VALUES,
     sample: (x, y, out) => {
       out.fill(0)
       out[EMITTED] = Math.hypot(x, y) < radii[radii.length - 1] ? intensity(x, y) : 0

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { PixelIntegrator } from '../../src/camera/pixel.js'
-import { EMITTED } from '../../src/camera/ray.js'
+import { EMITTED } from '../../src/camera/ray-values.js'
 import { fieldOf, rim } from './fields.js'
 
 /** Sum over a picture of n x n pixels that covers the square of half width `half`. */

@@ -1,15 +1,9 @@
 import { z } from 'zod'
 import { type CurveSpec, galaxies } from '../types.js'
-import { dataFile, notYet, real, section } from './fields.js'
+import { dataFile, real, section } from './fields.js'
 import { populations, singleGrain } from './grain-schema.js'
+import { grainPhase, phase } from './phase-schema.js'
 import { quantity } from './quantity-field.js'
-
-const rayleigh = notYet(z.literal('rayleigh'), '`rayleigh` scattering')
-const computed = notYet(z.literal('computed'), '`computed` scattering')
-const available = z.enum(['isotropic', 'henyey-greenstein'])
-const phaseError = { error: () => 'accepted: isotropic, henyey-greenstein, rayleigh (and computed for grains)' }
-const phase = z.union([available, rayleigh], phaseError).prefault('henyey-greenstein').describe('Scattering law')
-const grainPhase = z.union([available, rayleigh, computed], phaseError).prefault('henyey-greenstein').describe('Scattering law')
 
 const albedo = real({ from: 0, below: 1 }).describe('Scattering over extinction, default 0')
 const asymmetry = real({ above: -1, below: 1 }).describe('Mean cosine of the scattering angle, default 0')
