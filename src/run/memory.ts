@@ -1,5 +1,6 @@
 import type { Model } from '../model/model.js'
 import { observedWavelengths } from '../model/wavelengths.js'
+import { isPolarised } from '../scene/is-polarised.js'
 import { GROUPS } from '../solve/groups.js'
 import { ANGLE_NODES } from '../solve/scattered-light.js'
 import { AZIMUTH_BINS, FLIGHT_BINS } from '../transport/scatter-medium.js'
@@ -31,18 +32,21 @@ export function memoryEstimate(sizes: Sizes): MemoryEstimate {
   const observers = Math.max(0, ...observedWavelengths(scene).map((wavelength) => observersAt(sizes, wavelength)))
   const [bins, slots] = { 1: [FLIGHT_BINS, ANGLE_NODES], 2: [AZIMUTH_BINS, AZIMUTH_BINS], 3: [1, 1] }[dimensions]
   const seen = dimensions === 1 ? Math.min(1, observers) : observers
-  const tally = 8 * cells * Math.max(components, seen * bins)
+  // Stokes parameters: I and Q in one dimension, else all four; rays need them apart.
+  const parts = isPolarised(scene) ? (dimensions === 1 ? 2 : 4) : 1
+  const tally = 8 * cells * Math.max(components, seen * bins * parts)
   const heat = components * (TABLE_BYTES + cells * 8 * (6 + 2 * GROUPS + GROUPS / 2))
-  const light = cells * seen * (8 * bins * 2 * GROUPS + slots * (8 + 4 * GROUPS))
+  const light = cells * seen * parts * (8 * bins * 2 * GROUPS + slots * (8 + 4 * GROUPS))
   const sizesOf = scene.cameras.map(({ pixels, wavelengths }) => [pixels[0] * pixels[1], wavelengths.length])
   const values = sizesOf.reduce((sum, [pixels, count]) => sum + pixels * count, 0)
   const largest = Math.max(0, ...sizesOf.map(([pixels, count]) => pixels * count))
+  const planes = parts > 1 ? 11 : 5
   return {
     program: PROGRAM_BYTES,
     worker: WORKER_BYTES + WAITING * tally,
     cells: Math.max(heat, light) + 8 * cells * (1 + components),
-    // Five planes; written out once more, and joined.
-    images: values * 8 * 5 + largest * 8 * 12
+    // Five planes, eleven with polarisation; written out once more, and joined.
+    images: values * 8 * planes + largest * 8 * (2 * planes + 2)
   }
 }
 

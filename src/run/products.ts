@@ -5,7 +5,9 @@ import { cameraFits } from '../output/fits/camera-fits.js'
 import { cellsFits } from '../output/fits/cells-fits.js'
 import { spectrumPlot } from '../output/plot/spectrum-plot.js'
 import { structurePlot } from '../output/plot/structure-plot.js'
+import { azimuthalPicture } from '../output/png/azimuthal-picture.js'
 import { cameraPicture } from '../output/png/camera-picture.js'
+import { polarisedPicture } from '../output/png/polarised-picture.js'
 import { spectrumEcsv } from '../output/spectrum-ecsv.js'
 import { wavelengthLabels } from '../output/wavelength-label.js'
 import { sceneYaml } from '../scene/write.js'
@@ -60,10 +62,17 @@ function productsOf({ model, dust, images, spectra }: RunResult): Product[] {
       const { name, wavelengths } = result.camera
       return [
         { file: `images/${name}.fits`, make: () => cameraFits(result, scene) },
-        ...wavelengthLabels(wavelengths).map((label, k) => ({
-          file: `images/${name}-${label}.png`,
-          make: () => cameraPicture(result, k, scene)
-        }))
+        ...wavelengthLabels(wavelengths).flatMap((label, k) => {
+          const path = `images/${name}-${label}`
+          const picture = { file: `${path}.png`, make: () => cameraPicture(result, k, scene) }
+          if (!result.stokes) return [picture]
+          return [
+            picture,
+            { file: `${path}-polarised.png`, make: () => polarisedPicture(result, k, scene) },
+            { file: `${path}-q-phi.png`, make: () => azimuthalPicture(result, k, scene, 'q') },
+            { file: `${path}-u-phi.png`, make: () => azimuthalPicture(result, k, scene, 'u') }
+          ]
+        })
       ]
     }),
     ...spectra.flatMap((result) => {

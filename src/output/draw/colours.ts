@@ -1,4 +1,4 @@
-import { interpolateInferno, interpolateViridis } from 'd3-scale-chromatic'
+import { interpolateInferno, interpolateRdBu, interpolateViridis } from 'd3-scale-chromatic'
 
 /** A perceptually uniform colour map as 256 RGB triplets, from the lowest colour to the highest. */
 export type ColourMap = Uint8Array
@@ -7,6 +7,8 @@ export type ColourMap = Uint8Array
 export const inferno = sampled(interpolateInferno)
 /** For densities. */
 export const viridis = sampled(interpolateViridis)
+/** For what has a sign: blue below 0, white at 0, red above. */
+export const redBlue = sampled((t) => interpolateRdBu(1 - t))
 
 /** Number of the colour for a fraction of the range; beyond the ends, the colour of the end. */
 export function colourIndex(fraction: number): number {

@@ -1,8 +1,10 @@
+import { STOKES_PAIRS } from '../../camera/stokes-planes.js'
 import type { CameraImages } from '../../camera/types.js'
 import type { Scene } from '../../scene/types.js'
-import { intensityUnit } from '../../units/intensity.js'
+import { type IntensityContext, intensityUnit } from '../../units/intensity.js'
 import { inDegrees } from '../in-degrees.js'
 import { pixelContext } from '../pixel-context.js'
+import { stokesUnit } from '../stokes-unit.js'
 import { card, commentCard, realCard } from './card.js'
 import { joined } from './hdu.js'
 import { imageHdu } from './image.js'
@@ -21,7 +23,8 @@ const planes: [Plane, string][] = [
 
 /**
  * The FITS file of a camera in the camera's unit, axes x (west), y (north), wavelength. The primary HDU is the total;
- * image extensions SIGMA, DIRECT, EMITTED, SCATTERED and the table of wavelengths follow.
+ * image extensions SIGMA, DIRECT, EMITTED, SCATTERED, where light is polarised Q, SIGMA_Q, U, SIGMA_U, V and SIGMA_V, and the table
+ * of wavelengths follow.
  */
 export function cameraFits(images: CameraImages, scene: Scene): Uint8Array {
   const { width, height, camera } = images
@@ -32,7 +35,37 @@ export function cameraFits(images: CameraImages, scene: Scene): Uint8Array {
     const origin = i === 0 ? [...originCards(scene), ...viewCards(images)] : []
     return imageHdu(i === 0 ? 'primary' : 'extension', axes, planeInUnit(images, plane), [...name, ...common, ...origin])
   })
-  return joined([...parts, wavelengthTableHdu(camera.wavelengths)])
+  return joined([...parts, ...stokesHdus(images, axes, wcsCards(images, scene)), wavelengthTableHdu(camera.wavelengths)])
+}
+
+/** Extensions Q, U, V and their errors; beside magnitudes they are in MJy/sr. */
+function stokesHdus(images: CameraImages, axes: number[], wcs: string[]): Uint8Array[] {
+  const { stokes, camera } = images
+  if (!stokes) return []
+  const unit = intensityUnit(stokesUnit(camera.unit))
+  const hdu = (name: string, plane: keyof typeof stokes, meaning: string): Uint8Array =>
+    imageHdu(
+      'extension',
+      axes,
+      inUnit(images, (context, i) => unit.fromCgs(stokes[plane][i], context)),
+      [
+        card('EXTNAME', name),
+        commentCard(`This image: ${meaning}.`),
+        card('BUNIT', unit.fits),
+        card('POLCCONV', 'IAU', 'position angle from north through east'),
+        ...wcs
+      ]
+    )
+  return STOKES_PAIRS.flatMap(([plane, sigma]) => {
+    const name = plane.toUpperCase()
+    return [hdu(name, plane, stokesMeaning[plane]), hdu(`SIGMA_${name}`, sigma, `1 sigma of the Monte Carlo part of ${name}`)]
+  })
+}
+
+const stokesMeaning = {
+  q: 'Stokes Q, > 0: electric vector north-south',
+  u: 'Stokes U, > 0: electric vector north-east to south-west',
+  v: 'Stokes V, > 0: electric vector turns north to east'
 }
 
 function viewCards({ camera }: CameraImages): string[] {
@@ -46,14 +79,18 @@ function viewCards({ camera }: CameraImages): string[] {
 
 function planeInUnit(images: CameraImages, plane: Plane): Float64Array {
   const unit = intensityUnit(images.camera.unit)
+  return inUnit(images, (context, i) =>
+    plane === 'sigma' ? unit.sigmaFromCgs(images.total[i], images.sigma[i], context) : unit.fromCgs(images[plane][i], context)
+  )
+}
+
+/** Converts every value of a camera's images, given what its unit depends on. */
+function inUnit(images: CameraImages, convert: (context: IntensityContext, i: number) => number): Float64Array {
   const pixels = images.width * images.height
   const values = new Float64Array(images.total.length)
   for (let k = 0; k < images.camera.wavelengths.length; k++) {
     const context = pixelContext(images, k)
-    for (let i = k * pixels; i < (k + 1) * pixels; i++) {
-      values[i] =
-        plane === 'sigma' ? unit.sigmaFromCgs(images.total[i], images.sigma[i], context) : unit.fromCgs(images[plane][i], context)
-    }
+    for (let i = k * pixels; i < (k + 1) * pixels; i++) values[i] = convert(context, i)
   }
   return values
 }

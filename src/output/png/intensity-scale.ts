@@ -16,8 +16,17 @@ export interface IntensityScale {
   fraction: (valueInUnit: number) => number
 }
 
-/** Chooses the stretch for `values` (cgs, wavelength number `k`) and the marks of a colour bar `height` pixels high. */
-export function intensityScale(images: CameraImages, k: number, values: Float64Array, height: number): IntensityScale {
+/**
+ * Chooses the stretch for `values` (cgs, wavelength number `k`) and the marks of a colour bar `height` pixels high; `what` they are, where
+ * not the specific intensity.
+ */
+export function intensityScale(
+  images: CameraImages,
+  k: number,
+  values: Float64Array,
+  height: number,
+  what?: string
+): IntensityScale {
   const unit = intensityUnit(images.camera.unit)
   const inUnit = (value: number): number => unit.fromCgs(value, pixelContext(images, k))
   const magnitudes = unit.name.startsWith('mag')
@@ -28,10 +37,17 @@ export function intensityScale(images: CameraImages, k: number, values: Float64A
   const common = { stretch, brightest: `${shortNumber(inUnit(stretch.brightest))} ${name}` }
   if (magnitudes) {
     const ticks = linearTicks(Math.min(low, high), Math.max(low, high), count)
-    return { ...common, ticks, title: `AB surface brightness (${name})`, fraction: (value) => (value - low) / (high - low) }
+    return {
+      ...common,
+      ticks,
+      title: `${what ? `${what}, ` : ''}AB surface brightness (${name})`,
+      fraction: (value) => (value - low) / (high - low)
+    }
   }
   const ticks = stretch.kind === 'logarithmic' ? logTicks(low, high, count + 2) : linearTicks(low, high, count)
-  const quantity = unit.name === 'K' ? 'brightness temperature' : 'specific intensity'
+  const quantity = [what, unit.name === 'K' ? 'brightness temperature' : what ? '' : 'specific intensity']
+    .filter(Boolean)
+    .join(', ')
   const title = `${quantity} (${scaledUnit(name, ticks.exponent)})`
   return { ...common, ticks, title, fraction: (value) => stretched(value, { ...stretch, low, high }) }
 }
