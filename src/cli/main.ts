@@ -5,6 +5,7 @@ import { version } from '../output/version.js'
 import { check } from './check.js'
 import { failureOf, reportFailure, UsageError } from './failure.js'
 import { join } from './join.js'
+import { opacity } from './opacity.js'
 import { run } from './run.js'
 import { schema } from './schema.js'
 
@@ -22,8 +23,9 @@ try {
     .command(check)
     .command(run)
     .command(join)
+    .command(opacity)
     .command(schema)
-    .demandCommand(1, 'Which command? There are check, run, join and schema.')
+    .demandCommand(1, 'Which command? There are check, run, join, opacity and schema.')
     .strict()
     .version(version)
     .help()

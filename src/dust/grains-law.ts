@@ -31,13 +31,15 @@ export function grainRequest(
 
 /** Opacities of grains between the rows of a table of their optics. */
 export function grainsLaw(spec: GrainsOpacitySpec, optics = tabulateGrains(grainRequest(spec))): OpacityCurves {
-  const { absorption, scattering, asymmetry, wavelengths: wavelength } = optics
+  const { absorption, scattering, asymmetry, wavelengths: wavelength, error } = optics
+  const worst = error.indexOf(Math.max(...error))
   const known = spec.populations
     .map(makeGrain)
     .flatMap(({ material, coat }) => [material.range, ...(coat ? [coat.material.range] : [])])
   return {
     ...tableLaw({ wavelength, absorption, scattering, asymmetry }),
     range: [Math.max(...known.map(([from]) => from)), Math.min(...known.map(([, to]) => to))],
+    roughness: { error: error[worst], wavelength: wavelength[worst] },
     ...(optics.cosines.length > 0 && { matrix: (at: number) => matrixAt(optics, at) })
   }
 }

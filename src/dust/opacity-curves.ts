@@ -12,6 +12,8 @@ export interface OpacityCurves {
   matrix?: (wavelength: number) => ScatteringMatrix
   /** Wavelengths (cm) between which the law is given; beyond them it is extrapolated. */
   range: [number, number]
+  /** Largest relative error of what the law was computed from, and its wavelength (cm), where there is one. */
+  roughness?: { error: number; wavelength: number }
   /** Wavelengths (cm, increasing) where a curve bends sharply. */
   kinks: number[]
 }

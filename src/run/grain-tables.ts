@@ -16,17 +16,17 @@ export type GrainTables = Record<string, GrainOptics>
 const SHORT = 500
 
 /**
- * Tables for all grains that the dust of a scene consists of, from the user's cache or by Mie theory on `workers` threads. They do not
+ * Tables for those opacities of a scene that are grains (default: those of its dust), from the user's cache or by Mie theory on `workers` threads. They do not
  * depend on the number of threads.
  */
 export async function grainTables(
   scene: Scene,
   workers: number,
-  onProgress: (progress: RunProgress) => void = () => {}
+  onProgress: (progress: RunProgress) => void = () => {},
+  names = [...new Set(scene.dust.map(({ opacity }) => opacity))]
 ): Promise<GrainTables> {
-  const needed = [...new Set(scene.dust.map(({ opacity }) => opacity))]
   const tables: GrainTables = {}
-  for (const name of needed) {
+  for (const name of names) {
     const spec = scene.opacities[name]
     if (spec.law !== 'grains') continue
     const request = grainRequest(spec, ...wavelengthRange(scene))

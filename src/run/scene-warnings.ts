@@ -4,6 +4,7 @@ import { mattering, observedWavelengths } from '../model/wavelengths.js'
 import { wavelengthLabel } from '../output/wavelength-label.js'
 import type { StarSpectrum } from '../sources/star.js'
 import { AU, LIGHT_SPEED } from '../units/constants.js'
+import { grainWarnings } from './grain-warnings.js'
 
 /** Optical depth of the first dusty cell above which the temperature at the inner edge is blurred. */
 const RESOLVED = 0.3
@@ -12,7 +13,14 @@ const BEYOND = 0.01
 
 /** What a scene and its cells make doubtful before anything is run. */
 export function sceneWarnings(model: Model): string[] {
-  return [...model.warnings, ...unresolvedEdge(model), ...starInDust(model), ...fields(model), ...extrapolated(model)]
+  return [
+    ...model.warnings,
+    ...unresolvedEdge(model),
+    ...starInDust(model),
+    ...fields(model),
+    ...extrapolated(model),
+    ...grainWarnings(model)
+  ]
 }
 
 function unresolvedEdge(model: Model): string[] {
@@ -89,7 +97,7 @@ function extrapolated({ scene, components, stars }: Model): string[] {
     ]
     if (what.length === 0) return []
     const [from, to] = range.map((wavelength) => wavelengthLabel(wavelength))
-    return [`opacity ${name}: its table spans ${from} to ${to} and is extrapolated for ${what.join(' and ')}`]
+    return [`opacity ${name}: it is given from ${from} to ${to} and is extrapolated for ${what.join(' and ')}`]
   })
 }
 

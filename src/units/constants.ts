@@ -12,6 +12,9 @@ export const LIGHT_SPEED = 2.99792458e10
 /** Planck constant h, erg s; exact. */
 export const PLANCK = 6.62607015e-27
 
+/** Electronvolt, erg; exact. */
+export const ELECTRONVOLT = 1.602176634e-12
+
 /** Boltzmann constant k, erg/K; exact. */
 export const BOLTZMANN = 1.380649e-16
 

@@ -100,7 +100,7 @@ describe('check', () => {
           ''
         ]
       ),
-      /opacity soot: its table spans 0\.3um to 30um and is extrapolated for 2 observed wavelengths/
+      /opacity soot: it is given from 0\.3um to 30um and is extrapolated for 2 observed wavelengths/
     ],
     [
       'a precision out of reach',
