@@ -7,6 +7,7 @@ import type { BenchCase } from './case.js'
 import { figureOfMerit } from './cases/figure-of-merit.js'
 import { memory } from './cases/memory.js'
 import { packetLoop } from './cases/packet-loop.js'
+import { polarisedCases } from './cases/polarised.js'
 import { scaling } from './cases/scaling.js'
 import { stateCases } from './cases/state.js'
 import { wholeRunCases } from './cases/whole-runs.js'
@@ -19,6 +20,7 @@ const cases: BenchCase[] = [
   ...packetLoop,
   ...figureOfMerit,
   ...wholeRunCases,
+  ...polarisedCases,
   ...scaling,
   ...workerCases,
   ...stateCases,

@@ -3,13 +3,15 @@ interface Effort {
   /** Packets for each wavelength, or the precision to reach. */
   packets?: number
   precision?: string
+  /** Scattering law, default Henyey-Greenstein. */
+  phase?: string
 }
 
 const effortOf = ({ packets, precision }: Effort) =>
   packets ? `{precision: none, cameras: ${packets}}` : `{precision: ${precision}, cameras: 1e9, equilibrium: 1e9}`
 
-const dustOf = (slope: number) =>
-  `{law: power, reference: {wavelength: 1 um, absorption: 1000 cm2/g}, slope: ${slope}, scattering: {albedo: 0.6, asymmetry: 0.5}}`
+const dustOf = (slope: number, phase = 'henyey-greenstein') =>
+  `{law: power, reference: {wavelength: 1 um, absorption: 1000 cm2/g}, slope: ${slope}, scattering: {albedo: 0.6, asymmetry: 0.5}, phase: ${phase}}`
 
 export const SHELL_FIELD = { text: '200 au', halfAu: 100 }
 export const DISK_FIELD = { text: '420 au', halfAu: 210 }
@@ -23,12 +25,12 @@ export interface ShellOptions extends Effort {
 }
 
 /** A scattering shell about a star. */
-export function shellScene({ depth, glow, pixels = PIXELS, ...effort }: ShellOptions): string {
+export function shellScene({ depth, glow, pixels = PIXELS, phase, ...effort }: ShellOptions): string {
   return `title: Bench shell
 distance: 100 pc
 seed: bench
 ${glow ? '' : 'sources: [{name: star, temperature: 5000 K, luminosity: 100 Lsun}]'}
-opacities: {grains: ${dustOf(0)}}
+opacities: {grains: ${dustOf(0, phase)}}
 dust:
   - name: shell
     opacity: grains
@@ -55,14 +57,14 @@ export interface DiskOptions extends Effort {
 
 /** A flared disk about a star, in scattered light unless its temperature is solved. */
 export function diskScene(options: DiskOptions): string {
-  const { depth, inclinations = [60], pixels = PIXELS, grid, temperature = 'none', wavelengths, ...effort } = options
+  const { depth, inclinations = [60], pixels = PIXELS, grid, temperature = 'none', wavelengths, phase, ...effort } = options
   const camera = (inclination: number, i: number) =>
     `  - {name: c${i}, view: {inclination: ${inclination} deg}, field: ${DISK_FIELD.text}, pixels: ${pixels}, wavelengths: [1 um], unit: erg/s/cm2/Hz/sr}`
   return `title: Bench disk
 distance: 140 pc
 seed: bench
 sources: [{name: star, temperature: 4500 K, luminosity: 2 Lsun}]
-opacities: {grains: ${dustOf(temperature === 'solve' ? 1 : 0)}}
+opacities: {grains: ${dustOf(temperature === 'solve' ? 1 : 0, phase)}}
 dust:
   - name: disk
     opacity: grains
