@@ -3,6 +3,7 @@ import yargs from 'yargs'
 import { hideBin } from 'yargs/helpers'
 import { version } from '../output/version.js'
 import { check } from './check.js'
+import { convert } from './convert.js'
 import { failureOf, reportFailure, UsageError } from './failure.js'
 import { join } from './join.js'
 import { opacity } from './opacity.js'
@@ -15,6 +16,12 @@ process.stdout.on('error', (error: NodeJS.ErrnoException) => {
   throw error
 })
 
+/** What a command without enough words lacks. */
+function missingWords(command: string): string {
+  if (command === 'convert') return 'The value to convert is'
+  return command === 'observe' ? 'The run or the instrument file is' : 'The scene file is'
+}
+
 const words = hideBin(process.argv)
 try {
   await yargs(words)
@@ -24,8 +31,9 @@ try {
     .command(run)
     .command(join)
     .command(opacity)
+    .command(convert)
     .command(schema)
-    .demandCommand(1, 'Which command? There are check, run, join, opacity and schema.')
+    .demandCommand(1, 'Which command? There are check, run, join, opacity, convert and schema.')
     .strict()
     .version(version)
     .help()
@@ -39,7 +47,7 @@ try {
     .fail((message, error) => {
       if (error && error.name !== 'YError') throw error
       throw new UsageError(
-        message?.startsWith('Not enough non-option arguments') ? 'The scene file is missing.' : (message ?? error.message)
+        message?.startsWith('Not enough non-option arguments') ? `${missingWords(words[0])} missing.` : (message ?? error.message)
       )
     })
     .parseAsync()

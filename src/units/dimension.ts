@@ -81,7 +81,7 @@ export type Dimension = keyof typeof dimensions
 export function canonicalUnit(unit: string): string {
   return unit
     .normalize('NFKC') // one code point each for micro (U+03BC) and angstrom (U+00C5)
-    .replace('\u03bcm', 'um')
+    .replace('\u03bc', 'u')
     .replace('\u00c5', 'angstrom')
     .replace(/\bmicron\b/, 'um')
 }

@@ -16,13 +16,24 @@ const units: SpectralUnit<IntensityContext>[] = [
   linearUnit('W/m2/Hz/sr', 'W m-2 Hz-1 sr-1', () => 1e3),
   linearUnit('MJy/sr', 'MJy/sr', () => 1e6 * JANSKY),
   linearUnit('Jy/sr', 'Jy/sr', () => JANSKY),
-  linearUnit('mJy/arcsec2', 'mJy/arcsec2', () => (1e-3 * JANSKY) / SQUARE_ARCSECOND),
-  linearUnit('Jy/beam', 'Jy/beam', ({ beamSr }) => JANSKY / known(beamSr)),
-  linearUnit('Jy/pixel', 'Jy/pix', ({ pixelSr }) => JANSKY / pixelSr),
+  ...janskyPer('arcsec2', 'arcsec2', () => SQUARE_ARCSECOND),
+  ...janskyPer('beam', 'beam', ({ beamSr }) => known(beamSr)),
+  ...janskyPer('pixel', 'pix', ({ pixelSr }) => pixelSr),
   // Rayleigh-Jeans brightness temperature: I = 2 k T nu^2 / c^2.
   linearUnit('K', 'K', ({ frequencyHz }) => 2 * BOLTZMANN * (frequencyHz / LIGHT_SPEED) ** 2),
   magnitudeUnit('mag/arcsec2', 'mag/arcsec2', SQUARE_ARCSECOND)
 ]
+
+/** Jy, mJy and uJy in a solid angle (sr); `fits` is its name in FITS units. */
+function janskyPer(
+  name: string,
+  fits: string,
+  solidAngle: (context: IntensityContext) => number
+): SpectralUnit<IntensityContext>[] {
+  return Object.entries({ Jy: JANSKY, mJy: 1e-3 * JANSKY, uJy: 1e-6 * JANSKY }).map(([unit, size]) =>
+    linearUnit(`${unit}/${name}`, `${unit}/${fits}`, (context) => size / solidAngle(context))
+  )
+}
 
 function known(beamSr: number | undefined): number {
   if (beamSr === undefined) throw new RangeError('Jy/beam needs the solid angle of a beam')

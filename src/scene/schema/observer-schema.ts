@@ -44,6 +44,12 @@ const wavelengths = z
 const extent = quantityOf(['angle', 'length'])
 const pixelCount = count(1, mostPixels)
 
+const noBeam = Object.fromEntries(
+  intensityUnits
+    .filter((unit) => unit.endsWith('/beam'))
+    .map((unit) => [unit, `a camera has no beam, so \`${unit}\` has no meaning`])
+)
+
 /** One entry of `cameras`; `field` is still an angle or a length. */
 export const cameraSchema = section({
   name: name.describe('Name of the camera, used for its files'),
@@ -60,9 +66,7 @@ export const cameraSchema = section({
     .prefault(128)
     .describe('Pixels across the width (the height follows from the field), or [width, height]; default 128'),
   wavelengths,
-  unit: unitName(intensityUnits, { 'Jy/beam': 'a camera has no beam, so `Jy/beam` has no meaning' })
-    .prefault('MJy/sr')
-    .describe('Unit of specific intensity, default MJy/sr')
+  unit: unitName(intensityUnits, noBeam).prefault('MJy/sr').describe('Unit of specific intensity, default MJy/sr')
 })
 
 /** One entry of `spectra`; `aperture` is still an angle or a length. */
