@@ -18,8 +18,23 @@ export interface CameraImages {
   scattered: Float64Array
   /** Where some dust polarises. */
   stokes?: StokesPlanes
+  /** The stars whose light is in `direct`, wherever in the pixels they lie. */
+  stars: StarOnSky[]
   /** For each wavelength: the estimated relative error of placing the rays, weighted by flux. */
   samplingError: number[]
+}
+
+/** A star as an observer sees it; angles in rad from the centre of the picture. */
+export interface StarOnSky {
+  name: string
+  east: number
+  north: number
+  /** Angular radius; 0 for a point. */
+  radius: number
+  /** Linear limb-darkening coefficient. */
+  limbDarkening: number
+  /** Flux density dimmed by the dust, one value a wavelength, erg/s/cm2/Hz. */
+  flux: Float64Array
 }
 
 /** Flux densities in an aperture, cgs (erg/s/cm2/Hz); one value a wavelength. */

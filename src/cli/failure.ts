@@ -1,3 +1,4 @@
+import { DataError } from '../data/error.js'
 import { OutputError } from '../run/output-error.js'
 import { Stopped } from '../run/progress.js'
 import { MemoryError } from '../run/require-memory.js'
@@ -16,7 +17,7 @@ export class UsageError extends Error {
 /** What went wrong, for people and for programs. */
 export interface Failure {
   code: ExitCode
-  kind: 'scene' | 'command-line' | 'output' | 'memory' | 'state' | 'stopped' | 'defect'
+  kind: 'scene' | 'command-line' | 'data' | 'output' | 'memory' | 'state' | 'stopped' | 'defect'
   message: string
   problems?: SceneProblem[]
 }
@@ -32,6 +33,7 @@ export function failureOf(error: unknown): Failure {
       message: `${error.message}\nmotelight --help tells what is accepted.`
     }
   }
+  if (error instanceof DataError) return { code: exitCode.wrongInput, kind: 'data', message: error.message }
   if (error instanceof MemoryError) return { code: exitCode.wrongInput, kind: 'memory', message: error.message }
   if (error instanceof StateError || error instanceof PartError)
     return { code: exitCode.wrongInput, kind: 'state', message: error.message }

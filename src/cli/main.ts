@@ -6,7 +6,8 @@ import { check } from './check.js'
 import { convert } from './convert.js'
 import { failureOf, reportFailure, UsageError } from './failure.js'
 import { join } from './join.js'
-import { opacity } from './opacity.js'
+    .command(schema)
+    .demandCommand(1, 'Which command? There are schema, check, run, join, opacity, convert, observe and schema.')
 import { run } from './run.js'
 import { schema } from './schema.js'
 
@@ -32,8 +33,9 @@ try {
     .command(join)
     .command(opacity)
     .command(convert)
+    .command(observe)
     .command(schema)
-    .demandCommand(1, 'Which command? There are check, run, join, opacity, convert and schema.')
+    .demandCommand(1, 'Which command? There are schema, check, run, join, opacity, convert, observe and schema.')
     .strict()
     .version(version)
     .help()

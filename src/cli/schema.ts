@@ -1,11 +1,24 @@
-import type { CommandModule } from 'yargs'
+import type { Argv, CommandModule } from 'yargs'
+import { instrumentJsonSchema } from '../observe/read-instrument.js'
 import { sceneJsonSchema } from '../scene/json-schema.js'
 
-/** `motelight schema`: prints the JSON Schema of scene files. */
-export const schema: CommandModule = {
-  command: 'schema',
-  describe: 'Print the JSON Schema of scene files, for completion in editors',
-  handler: () => {
-    process.stdout.write(`${JSON.stringify(sceneJsonSchema(), null, 2)}\n`)
+const schemas = { scene: sceneJsonSchema, instrument: instrumentJsonSchema }
+
+interface Arguments {
+  file: keyof typeof schemas
+}
+
+/** `motelight schema [FILE]`: prints the JSON Schema of scene or instrument files. */
+export const schema: CommandModule<object, Arguments> = {
+  command: 'schema [file]',
+  describe: 'Print the JSON Schema of scene files or instrument files, for completion in editors',
+  builder: (yargs: Argv) =>
+    yargs.positional('file', {
+      describe: 'What kind of file',
+      choices: Object.keys(schemas) as Arguments['file'][],
+      default: 'scene'
+    }) as Argv<Arguments>,
+  handler: ({ file }) => {
+    process.stdout.write(`${JSON.stringify(schemas[file](), null, 2)}\n`)
   }
 }

@@ -1,9 +1,9 @@
-/** A column of numbers; `unit` in a notation that astropy reads (`um`, `Jy`, `W m-2 Hz-1`). */
+/** A column of numbers or texts; `unit` in a notation that astropy reads (`um`, `Jy`, `W m-2 Hz-1`). */
 export interface EcsvColumn {
   name: string
   unit?: string
   description?: string
-  values: ArrayLike<number>
+  values: ArrayLike<number> | string[]
 }
 
 /**
@@ -16,8 +16,8 @@ export function ecsv(columns: EcsvColumn[], meta: Record<string, string | number
     '%ECSV 1.0',
     '---',
     'datatype:',
-    ...columns.map(({ name, unit, description }) => {
-      const parts = [`name: ${quote(name)}`, 'datatype: float64']
+    ...columns.map(({ name, unit, description, values }) => {
+      const parts = [`name: ${quote(name)}`, `datatype: ${typeof values[0] === 'string' ? 'string' : 'float64'}`]
       if (unit) parts.splice(1, 0, `unit: ${quote(unit)}`)
       if (description) parts.push(`description: ${quote(description)}`)
       return `- {${parts.join(', ')}}`
@@ -27,15 +27,18 @@ export function ecsv(columns: EcsvColumn[], meta: Record<string, string | number
       .join(', ')}}`,
     'schema: astropy-2.0'
   ]
-  const rows = Array.from(columns[0].values, (_, row) => columns.map(({ values }) => numberText(values[row])).join(' '))
+  const rows = Array.from({ length: columns[0].values.length }, (_, row) =>
+    columns.map(({ values }) => cell(values[row])).join(' ')
+  )
   return `${[...header.map((line) => `# ${line}`), columns.map(({ name }) => field(name)).join(' '), ...rows].join('\n')}\n`
 }
 
-function numberText(value: number): string {
+function cell(value: number | string): string {
+  if (typeof value === 'string') return field(value)
   if (Number.isNaN(value)) return 'nan'
   return Number.isFinite(value) ? String(value) : value > 0 ? 'inf' : '-inf'
 }
 
 function field(name: string): string {
-  return /[\s"]/.test(name) ? `"${name.replaceAll('"', '""')}"` : name
+  return name === '' || /[\s"]/.test(name) ? `"${name.replaceAll('"', '""')}"` : name
 }

@@ -1,3 +1,5 @@
+import { unitText } from './draw/numbers.js'
+
 const leastDigits = 3
 const mostDigits = 17
 
@@ -19,4 +21,9 @@ export function wavelengthLabels(wavelengths: number[]): string[] {
     }
     return wavelengthLabel(wavelength, mostDigits)
   })
+}
+
+/** A label for people: `870um` becomes `870 µm`. */
+export function spacedWavelength(label: string): string {
+  return unitText(label.replace(/(?<=\d)(?=[a-z])/, ' '))
 }

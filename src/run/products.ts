@@ -1,6 +1,3 @@
-import { rm } from 'node:fs/promises'
-import { join } from 'node:path'
-import { writeAtomic } from '../output/atomic.js'
 import { cameraFits } from '../output/fits/camera-fits.js'
 import { cellsFits } from '../output/fits/cells-fits.js'
 import { spectrumPlot } from '../output/plot/spectrum-plot.js'
@@ -13,45 +10,20 @@ import { wavelengthLabels } from '../output/wavelength-label.js'
 import { sceneYaml } from '../scene/write.js'
 import { changedInputs } from './changed-inputs.js'
 import { cellColumns, dustStructure } from './dust-cells.js'
-import { asOutputError } from './output-error.js'
 import { resultWarnings } from './result-warnings.js'
 import { type RunFolder, recordName } from './run-folder.js'
 import { type RunMaking, type RunRecord, runRecord } from './run-record.js'
 import type { RunResult } from './run-scene.js'
 import { sceneWarnings } from './scene-warnings.js'
 import { stopwatch } from './stopwatch.js'
+import { type Product, writeFolder } from './write-folder.js'
 
-/** A file of a run: its path in the folder, and how its bytes are made. */
-interface Product {
-  file: string
-  make: () => Promise<string | Uint8Array> | string | Uint8Array
-}
-
-/**
- * Writes all files of a run, the record last. While they are written the record says so and lists old and new files, so that
- * a folder left half-finished is known as one; files of an older run that the new one lacks go at the end. Throws OutputError.
- */
+/** Writes all files of a run, the record last. Throws OutputError. */
 export async function writeProducts(result: RunResult, folder: RunFolder, making: RunMaking): Promise<RunRecord> {
   const time = stopwatch()
-  const products = productsOf(result)
-  const files = [recordName, ...products.map(({ file }) => file)]
   const warnings = [...sceneWarnings(result.model), ...resultWarnings(result), ...changedInputs(result.model.scene.inputs)]
-  const record = (list: string[]) => runRecord(result, making, warnings, { files: list, time: time() })
-  const write = async (file: string, data: string | Uint8Array) => {
-    const path = join(folder.path, file)
-    try {
-      await writeAtomic(path, data)
-    } catch (error) {
-      throw asOutputError(path, error)
-    }
-  }
-  const union = [...new Set([...files, ...folder.oldFiles])]
-  await write(recordName, asText({ ...record(union), state: 'writing' }))
-  for (const { file, make } of products) await write(file, await make())
-  const finished = record(files)
-  await write(recordName, asText(finished))
-  for (const file of folder.oldFiles) if (!files.includes(file)) await rm(join(folder.path, file), { force: true })
-  return finished
+  const record = (files: string[]) => runRecord(result, making, warnings, { files, time: time() })
+  return writeFolder(folder, recordName, productsOf(result), record)
 }
 
 function productsOf({ model, dust, images, spectra }: RunResult): Product[] {
@@ -95,8 +67,4 @@ function productsOf({ model, dust, images, spectra }: RunResult): Product[] {
         ]
       : [])
   ]
-}
-
-function asText(record: RunRecord): string {
-  return `${JSON.stringify(record, null, 2)}\n`
 }

@@ -21,10 +21,10 @@ export const recordName = 'run.json'
 export const stateName = 'state'
 
 /**
- * Makes the folder and tries whether it can be written. Throws OutputError when it cannot, when it holds what the entry does
+ * Makes the folder, whose `record` tells what is in it, and tries whether it can be written. Throws OutputError when it cannot, when it holds what the entry does
  * not allow, or when one of the `inputs` lies in it.
  */
-export async function openRunFolder(path: string, entry: Entry, inputs: InputFile[]): Promise<RunFolder> {
+export async function openRunFolder(path: string, entry: Entry, inputs: InputFile[], record = recordName): Promise<RunFolder> {
   const input = inputs.find(({ file }) => resolve(file).startsWith(resolve(path) + sep))
   if (input) throw new OutputError(`${input.file} lies in the folder ${path}; choose another with --out`)
   const made: string[] = []
@@ -33,30 +33,32 @@ export async function openRunFolder(path: string, entry: Entry, inputs: InputFil
     await makeFolders(path, made)
     const entries = (await readdir(path)).filter((name) => !name.startsWith('.'))
     const state = entries.includes(stateName)
+    if (record !== recordName && (state || entries.includes(recordName)))
+      throw new OutputError(`the folder ${path} holds a run; choose another with --out`)
     if (entries.length > 0 && !(entry === 'replace' || (entry === 'continue' && state)))
-      throw new OutputError(refusal(path, entries))
+      throw new OutputError(refusal(path, entries, record))
     const probe = join(path, `.${process.pid}.part`)
     await writeFile(probe, '')
     await rm(probe)
     if (entry === 'replace') await rm(join(path, stateName), { recursive: true, force: true })
-    return { path, oldFiles: entries.includes(recordName) ? await filesOf(path) : [], abandon }
+    return { path, oldFiles: entries.includes(record) ? await filesOf(path, record) : [], abandon }
   } catch (error) {
     await abandon()
     throw asOutputError(path, error)
   }
 }
 
-function refusal(path: string, entries: string[]): string {
+function refusal(path: string, entries: string[], record: string): string {
   if (entries.includes(stateName))
     return `the folder ${path} holds an unfinished run; go on with it with --resume, choose another with --out, or replace it with --force`
-  const content = entries.includes(recordName) ? 'already holds a run' : 'is not empty'
+  const content = entries.includes(record) ? `already holds a ${record === recordName ? 'run' : 'result'}` : 'is not empty'
   return `the folder ${path} ${content}; choose another with --out, or replace what is there with --force`
 }
 
 /** Files that a run's record lists, as far as they lie in its folder. */
-async function filesOf(path: string): Promise<string[]> {
+async function filesOf(path: string, record: string): Promise<string[]> {
   try {
-    const { files } = JSON.parse(await readFile(join(path, recordName), 'utf8')) as { files?: unknown }
+    const { files } = JSON.parse(await readFile(join(path, record), 'utf8')) as { files?: unknown }
     const inside = (file: unknown): file is string =>
       typeof file === 'string' && resolve(path, file).startsWith(resolve(path) + sep)
     return Array.isArray(files) ? files.filter(inside) : []

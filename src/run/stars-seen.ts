@@ -35,7 +35,13 @@ export function addStars(
   const from = k * frame.width * frame.height
   const direct = images.direct.subarray(from, from + frame.width * frame.height)
   const depthAt = depthTo(medium, view)
-  for (const { spec: star, spectrum } of model.stars) addDirectLight(starImage(star, spectrum, light.nu), depthAt, frame, direct)
+  const { distance } = model.scene
+  for (const { spec: star, spectrum } of model.stars) {
+    const image = starImage(star, spectrum, light.nu)
+    addDirectLight(image, depthAt, frame, direct)
+    const seen = images.stars.find(({ name }) => name === star.name)!
+    seen.flux[k] = directLight(image, depthAt, Number.POSITIVE_INFINITY) / (distance * distance)
+  }
   let sum = 0
   for (let i = 0; i < direct.length; i++) {
     const at = from + i

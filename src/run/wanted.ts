@@ -1,3 +1,4 @@
+import { starsOnSky } from '../camera/stars-on-sky.js'
 import { STOKES, stokesPlanes } from '../camera/stokes-planes.js'
 import type { ApertureSpectrum, CameraImages } from '../camera/types.js'
 import { isPolarised } from '../scene/is-polarised.js'
@@ -13,7 +14,11 @@ const PLANES = ['total', 'sigma', 'direct', 'emitted', 'scattered'] as const
 
 /** Values of one camera or spectrum at one wavelength. */
 export type WantedValues = Record<(typeof PLANES)[number], Float64Array> &
-  Partial<Record<(typeof STOKES)[number], Float64Array>> & { samplingError: number }
+  Partial<Record<(typeof STOKES)[number], Float64Array>> & {
+    samplingError: number
+    /** Of each star in the picture, erg/s/cm2/Hz. */
+    starFlux: number[]
+  }
 
 /** Products full of zeros, and which of them want a wavelength. */
 export function emptyProducts(scene: Scene, estimator: Estimator) {
@@ -29,7 +34,8 @@ export function emptyProducts(scene: Scene, estimator: Estimator) {
   const images = scene.cameras.map((camera): CameraImages => {
     const [width, height] = camera.pixels
     const count = camera.wavelengths.length
-    return { camera, width, height, ...arrays(width * height * count), samplingError: new Array(count).fill(0) }
+    const stars = starsOnSky(scene, camera)
+    return { camera, width, height, ...arrays(width * height * count), stars, samplingError: new Array(count).fill(0) }
   })
   const spectra = scene.spectra.map((spectrum): ApertureSpectrum => {
     const count = spectrum.wavelengths.length
@@ -57,7 +63,8 @@ export function valuesOf(wanted: Wanted[]): WantedValues[] {
     const copies = PLANES.map((plane): [string, Float64Array] => [plane, product[plane].slice(from, to)])
     const { stokes } = product
     if (stokes) copies.push(...STOKES.map((plane): [string, Float64Array] => [plane, stokes[plane].slice(from, to)]))
-    return { ...Object.fromEntries(copies), samplingError: product.samplingError[want.k] } as WantedValues
+    const starFlux = starsOf(want).map(({ flux }) => flux[want.k])
+    return { ...Object.fromEntries(copies), samplingError: product.samplingError[want.k], starFlux } as WantedValues
   })
 }
 
@@ -68,8 +75,13 @@ export function putValues(wanted: Wanted[], values: WantedValues[]): void {
     for (const plane of PLANES) product[plane].set(values[i][plane], from)
     if (product.stokes) for (const plane of STOKES) product.stokes[plane].set(values[i][plane]!, from)
     product.samplingError[want.k] = values[i].samplingError
+    starsOf(want).forEach(({ flux }, star) => {
+      flux[want.k] = values[i].starFlux[star]
+    })
   })
 }
+
+const starsOf = (want: Wanted) => (want.kind === 'camera' ? want.images.stars : [])
 
 function placeOf(want: Wanted) {
   const product = want.kind === 'camera' ? want.images : want.result

@@ -1,8 +1,10 @@
 import { dirname, join, resolve } from 'node:path'
+import { DataError } from '../data/error.js'
+import { readBytes } from '../data/read-bytes.js'
 import { SceneError, type SceneProblem } from './error.js'
 import { locateProblem } from './issue-problems.js'
 import { largestDataFile, largestFieldFile } from './limits.js'
-import { decodeText, readBytes } from './read-text.js'
+import { decodeText } from './read-text.js'
 import { sha256 } from './sha256.js'
 import type { InputFile, ScenePath } from './types.js'
 import type { YamlDocument } from './yaml-document.js'
@@ -49,6 +51,7 @@ export class DataFiles {
       return parse(bytes, file, resolve(name) === name ? name : join(folder, name))
     } catch (error) {
       if (error instanceof Unusable) return refuse(error.message)
+      if (error instanceof DataError) return refuse(error.reason)
       if (!(error instanceof SceneError)) throw error
       this.problems.push(...error.problems)
       return undefined

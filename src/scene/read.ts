@@ -1,4 +1,5 @@
 import { basename, extname } from 'node:path'
+import { byPlace } from './by-place.js'
 import { DataFiles } from './data-files.js'
 import { parseDensityPoints } from './density-points.js'
 import { SceneError, type SceneProblem } from './error.js'
@@ -98,14 +99,4 @@ function observers({ distance, cameras, spectra }: SoundParts, document: YamlDoc
     spectra: resolved('spectra', spectra, resolveSpectrum),
     problems
   }
-}
-
-/** The scene file first, then data files, each from top to bottom. */
-function byPlace(sceneFile: string) {
-  const rank = (problem: SceneProblem) => (problem.location.file === sceneFile ? 0 : 1)
-  return (a: SceneProblem, b: SceneProblem) =>
-    rank(a) - rank(b) ||
-    a.location.file.localeCompare(b.location.file) ||
-    a.location.line - b.location.line ||
-    a.location.column - b.location.column
 }

@@ -7,7 +7,8 @@ import { SceneError } from './error.js'
 import { scaled } from './scaled-units.js'
 import type { ConstantsTable, OpacityTable, SpectrumTable } from './types.js'
 
-const wavelength: Column = {
+/** A column of wavelengths or frequencies. */
+export const wavelengthColumn: Column = {
   name: 'wavelength',
   units: {
     ...scaled(dimensions.wavelength.units),
@@ -27,14 +28,14 @@ const wavenumber: Column = {
   units: Object.fromEntries(
     Object.entries(dimensions.wavenumber.units).map(([unit, size]) => [unit, (value: number) => 1 / (value * size)])
   ),
-  refuse: (value) => wavelength.refuse(value) && 'a wavenumber greater than 0 and of sensible size is expected'
+  refuse: (value) => wavelengthColumn.refuse(value) && 'a wavenumber greater than 0 and of sensible size is expected'
 }
 
 const notNegative = (value: number) => (value >= 0 ? undefined : 'must not be negative')
 const opacityUnits = scaled(dimensions.opacity.units)
 
 const opacityColumns: Column[] = [
-  wavelength,
+  wavelengthColumn,
   { name: 'absorption', units: opacityUnits, refuse: notNegative },
   { name: 'scattering', units: opacityUnits, refuse: notNegative },
   {
@@ -76,7 +77,7 @@ export function parseSpectrumTable(text: string, file: string, shownAs: string):
   const perWavelength = /^[^#\n]*\bflux-lambda\b/m.test(text)
   const flux = perWavelength ? 'flux-lambda' : 'flux-nu'
   const units = perWavelength ? fluxLambdaUnits : fluxNuUnits
-  const table = parseCsvTable(text, shownAs, [wavelength, { name: flux, units, refuse: notNegative }])
+  const table = parseCsvTable(text, shownAs, [wavelengthColumn, { name: flux, units, refuse: notNegative }])
   const order = increasing(table, shownAs)
   const sorted = inOrder(table, 'wavelength', order)
   const values = inOrder(table, flux, order)
@@ -87,7 +88,7 @@ export function parseSpectrumTable(text: string, file: string, shownAs: string):
 
 /** Reads optical constants: wavelength or wavenumber, n and k, rising or falling throughout. `shownAs` names the file in errors. */
 export function parseConstantsTable(text: string, file: string, shownAs: string): ConstantsTable {
-  const place = /^[^#\n]*\bwavenumber\b/m.test(text) ? wavenumber : wavelength
+  const place = /^[^#\n]*\bwavenumber\b/m.test(text) ? wavenumber : wavelengthColumn
   const table = parseCsvTable(text, shownAs, [place, { name: 'n', refuse: notNegative }, { name: 'k', refuse: notNegative }])
   const order = inTurn(table, place.name, shownAs)
   const [n, k] = ['n', 'k'].map((name) => inOrder(table, name, order))
@@ -126,7 +127,7 @@ function inTurn({ columns, lines }: CsvTable, name: string, file: string): numbe
 }
 
 /** Row numbers in the order of increasing wavelength. */
-function increasing({ columns, lines }: CsvTable, file: string): number[] {
+export function increasing({ columns, lines }: CsvTable, file: string): number[] {
   const wavelengths = columns.get('wavelength')!
   const order = lines.map((_, i) => i).sort((a, b) => wavelengths[a] - wavelengths[b])
   for (let i = 1; i < order.length; i++) {
@@ -137,7 +138,8 @@ function increasing({ columns, lines }: CsvTable, file: string): number[] {
   return order
 }
 
-function inOrder({ columns }: CsvTable, name: string, order: number[]): Float64Array {
+/** The values of a column, in that order of rows. */
+export function inOrder({ columns }: CsvTable, name: string, order: number[]): Float64Array {
   const values = columns.get(name)!
   return Float64Array.from(order, (row) => values[row])
 }

@@ -60,6 +60,7 @@ export const dimensions = {
     units: { Lsun: constants.SOLAR_LUMINOSITY, 'erg/s': 1, W: 1e7 },
     range: [1, 1e60]
   },
+  time: { called: 'a time', example: '300 s', units: { s: 1, min: 60, h: 3600 }, range: [1e-12, 1e12] },
   temperature: { called: 'a temperature', example: '2800 K', units: { K: 1 }, range: [1e-3, 1e9] },
   density: {
     called: 'a mass density',

@@ -58,6 +58,7 @@ export function exampleImages(intensity: (x: number, y: number, k: number) => nu
     direct: new Float64Array(total.length),
     emitted: total.map((value) => value / 2),
     scattered: total.map((value) => value / 2),
+    stars: [],
     samplingError: wavelengths.map(() => 0)
   }
 }

@@ -1,5 +1,5 @@
 import { DataError } from '../error.js'
-import { readBytes } from '../read-bytes.js'
+import { bytesOf } from '../read-bytes.js'
 import { FitsHeader } from './header.js'
 
 const BLOCK = 2880
@@ -19,14 +19,18 @@ export interface FitsUnit {
   data: Uint8Array
 }
 
-/**
- * Reads the units of a FITS file (FITS Standard 4.0, section 3): images of every BITPIX and binary tables; what else there is
- * keeps its place in the list as `other`. Throws a DataError that says what is wrong and where.
- */
+/** The units of a FITS file. Throws a DataError that says what is wrong and where. */
 export function readFits(file: string): FitsUnit[] {
-  const bytes = readBytes(file)
+  return parseFits(bytesOf(file), file)
+}
+
+/**
+ * The units in the bytes of a FITS file (FITS Standard 4.0, section 3): images of every BITPIX and binary tables; what else there is
+ * keeps its place in the list as `other`. `file` names it in errors. Throws a DataError.
+ */
+export function parseFits(bytes: Uint8Array, file: string): FitsUnit[] {
   if (bytes[0] === 0x1f && bytes[1] === 0x8b) throw new DataError(file, 'is compressed; unpack it with gunzip first')
-  if (latin(bytes, 0, 9) !== 'SIMPLE  =') throw new DataError(file, 'is not a FITS file (it does not begin with SIMPLE)')
+  if (latin(bytes, 0, 9) !== 'SIMPLE  =') throw new DataError(file, 'is not FITS: it does not begin with SIMPLE')
   const units: FitsUnit[] = []
   let at = 0
   while (at < bytes.length && !isFiller(bytes, at)) {

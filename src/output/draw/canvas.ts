@@ -15,12 +15,21 @@ export class Canvas {
   }
 
   /**
-   * Paints a panel: fractions (0 to 1) of the colour map, row by row from the top; NaN leaves the paper white.
+   * Paints a panel: fractions (0 to 1) of the colour map, row by row from the top; NaN becomes grey of the level `blank`, white
+   * unless given.
    */
-  paint({ left, top, width }: { left: number; top: number; width: number }, fractions: ArrayLike<number>, map: ColourMap): void {
+  paint(
+    { left, top, width }: { left: number; top: number; width: number },
+    fractions: ArrayLike<number>,
+    map: ColourMap,
+    blank = 255
+  ): void {
     for (let i = 0; i < fractions.length; i++) {
-      if (Number.isNaN(fractions[i])) continue
       const at = 4 * ((top + Math.floor(i / width)) * this.width + left + (i % width))
+      if (Number.isNaN(fractions[i])) {
+        this.png.data.fill(blank, at, at + 3)
+        continue
+      }
       const colour = 3 * colourIndex(fractions[i])
       for (let channel = 0; channel < 3; channel++) this.png.data[at + channel] = map[colour + channel]
     }

@@ -1,6 +1,8 @@
 import { STOKES_PAIRS } from '../../camera/stokes-planes.js'
-import type { CameraImages } from '../../camera/types.js'
+import type { CameraImages, StarOnSky } from '../../camera/types.js'
 import type { Scene } from '../../scene/types.js'
+import { ARCSECOND } from '../../units/angles.js'
+import { JANSKY } from '../../units/constants.js'
 import { type IntensityContext, intensityUnit } from '../../units/intensity.js'
 import { inDegrees } from '../in-degrees.js'
 import { pixelContext } from '../pixel-context.js'
@@ -9,6 +11,7 @@ import { card, commentCard, realCard } from './card.js'
 import { joined } from './hdu.js'
 import { imageHdu } from './image.js'
 import { originCards } from './origin-cards.js'
+import { tableHdu } from './table.js'
 import { wavelengthTableHdu, wcsCards } from './wcs.js'
 
 type Plane = 'total' | 'sigma' | 'direct' | 'emitted' | 'scattered'
@@ -23,19 +26,21 @@ const planes: [Plane, string][] = [
 
 /**
  * The FITS file of a camera in the camera's unit, axes x (west), y (north), wavelength. The primary HDU is the total;
- * image extensions SIGMA, DIRECT, EMITTED, SCATTERED, where light is polarised Q, SIGMA_Q, U, SIGMA_U, V and SIGMA_V, and the table
- * of wavelengths follow.
+ * image extensions SIGMA, DIRECT, EMITTED, SCATTERED, where light is polarised Q, SIGMA_Q, U, SIGMA_U, V and SIGMA_V, the table of
+ * wavelengths and that of the stars follow.
  */
 export function cameraFits(images: CameraImages, scene: Scene): Uint8Array {
   const { width, height, camera } = images
   const axes = [width, height, camera.wavelengths.length]
-  const common = [card('BUNIT', intensityUnit(camera.unit).fits), ...wcsCards(images, scene)]
+  const common = [card('BUNIT', intensityUnit(camera.unit).fits), ...wcsCards({ width, height, field: camera.field }, scene.sky)]
   const parts = planes.map(([plane, meaning], i) => {
     const name = [card('EXTNAME', plane.toUpperCase()), commentCard(`This image: ${meaning}.`)]
     const origin = i === 0 ? [...originCards(scene), ...viewCards(images)] : []
     return imageHdu(i === 0 ? 'primary' : 'extension', axes, planeInUnit(images, plane), [...name, ...common, ...origin])
   })
-  return joined([...parts, ...stokesHdus(images, axes, wcsCards(images, scene)), wavelengthTableHdu(camera.wavelengths)])
+  const stokes = stokesHdus(images, axes, wcsCards({ width, height, field: camera.field }, scene.sky))
+  const stars = images.stars.length > 0 ? [starsTableHdu(images)] : []
+  return joined([...parts, ...stokes, wavelengthTableHdu(camera.wavelengths), ...stars])
 }
 
 /** Extensions Q, U, V and their errors; beside magnitudes they are in MJy/sr. */
@@ -66,6 +71,23 @@ const stokesMeaning = {
   q: 'Stokes Q, > 0: electric vector north-south',
   u: 'Stokes U, > 0: electric vector north-east to south-west',
   v: 'Stokes V, > 0: electric vector turns north to east'
+}
+
+/** The extension STARS, one row a star; their names stand in the cards STAR1, STAR2 and so on. */
+function starsTableHdu({ stars, camera }: CameraImages): Uint8Array {
+  const angles = (value: (star: StarOnSky) => number) => Float64Array.from(stars, (star) => value(star) / ARCSECOND)
+  const fluxes = stars.flatMap(({ flux }) => Array.from(flux, (value) => value / JANSKY))
+  return tableHdu(
+    'STARS',
+    [
+      { name: 'east', unit: 'arcsec', values: angles(({ east }) => east) },
+      { name: 'north', unit: 'arcsec', values: angles(({ north }) => north) },
+      { name: 'radius', unit: 'arcsec', values: angles(({ radius }) => radius) },
+      { name: 'limb_darkening', values: Float64Array.from(stars, ({ limbDarkening }) => limbDarkening) },
+      { name: 'flux', unit: 'Jy', values: Float64Array.from(fluxes), repeat: camera.wavelengths.length }
+    ],
+    stars.map(({ name }, i) => card(`STAR${i + 1}`, name, 'name of the star in this row'))
+  )
 }
 
 function viewCards({ camera }: CameraImages): string[] {

@@ -1,4 +1,3 @@
-import type { CameraImages } from '../../camera/types.js'
 import type { Scene } from '../../scene/types.js'
 import { DEGREE } from '../../units/angles.js'
 import { card, commentCard, realCard } from './card.js'
@@ -6,14 +5,19 @@ import { type FitsColumn, tableHdu } from './table.js'
 
 const wavelengthTable = 'WAVELENGTH'
 
+/** Pixels across and up, and full width and height, rad. */
+export interface FieldOfView {
+  width: number
+  height: number
+  field: [number, number]
+}
+
 /**
  * World coordinates of an image cube. Celestial axes: gnomonic projection about the image centre, north up and east to
  * the left (Calabretta & Greisen 2002, A&A 395, 1077). Third axis: vacuum wavelength looked up in a table
  * (Greisen et al. 2006, A&A 446, 747, section 6), which `wavelengthTableHdu` writes.
  */
-export function wcsCards(images: CameraImages, scene: Scene): string[] {
-  const { width, height, camera } = images
-  const [across, up] = camera.field
+export function wcsCards({ width, height, field: [across, up] }: FieldOfView, sky: Scene['sky']): string[] {
   return [
     card('WCSAXES', 3),
     card('CTYPE1', 'RA---TAN', 'right ascension, gnomonic'),
@@ -25,8 +29,8 @@ export function wcsCards(images: CameraImages, scene: Scene): string[] {
     realCard('CRPIX1', (width + 1) / 2, 'centre of the image'),
     realCard('CRPIX2', (height + 1) / 2, 'centre of the image'),
     realCard('CRPIX3', 1),
-    realCard('CRVAL1', scene.sky?.raDeg ?? 0),
-    realCard('CRVAL2', scene.sky?.decDeg ?? 0),
+    realCard('CRVAL1', sky?.raDeg ?? 0),
+    realCard('CRVAL2', sky?.decDeg ?? 0),
     realCard('CRVAL3', 1, 'row of the wavelength table'),
     realCard('CDELT1', -across / width / DEGREE, 'east is to the left'),
     realCard('CDELT2', up / height / DEGREE, 'north is up'),
@@ -34,7 +38,7 @@ export function wcsCards(images: CameraImages, scene: Scene): string[] {
     card('PS3_0', wavelengthTable, 'extension with the wavelengths'),
     card('PS3_1', wavelengthTable, 'its column'),
     card('RADESYS', 'ICRS'),
-    ...(scene.sky ? [] : [commentCard('The scene gives no sky position: CRVAL1 and CRVAL2 are placeholders.')])
+    ...(sky ? [] : [commentCard('The scene gives no sky position: CRVAL1 and CRVAL2 are placeholders.')])
   ]
 }
 

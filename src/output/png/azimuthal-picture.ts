@@ -7,7 +7,7 @@ import { logTicks, scaledUnit, type Ticks } from '../draw/ticks.js'
 import { pixelContext } from '../pixel-context.js'
 import { stokesUnit } from '../stokes-unit.js'
 import { panelSize } from './panel-size.js'
-import { skyPicture } from './sky-picture.js'
+import { cameraView, skyPicture } from './sky-picture.js'
 import { chooseStretch } from './stretch.js'
 
 /**
@@ -38,7 +38,8 @@ const softest = 1e-3
 /** The picture (PNG) of Q_phi or U_phi of wavelength number `k` of a camera that has Stokes parameters; both with the same scale. */
 export function azimuthalPicture(images: CameraImages, k: number, scene: Scene, part: 'q' | 'u'): Uint8Array {
   const planes = azimuthalStokes(images, k)
-  const size = panelSize(images)
+  const view = cameraView(images, k, scene)
+  const size = panelSize(view)
   const unit = intensityUnit(stokesUnit(images.camera.unit))
   const { low, high, brightest, cut, empty } = chooseStretch(Float64Array.from([...planes.q, ...planes.u], Math.abs))
   const most = unit.fromCgs(high, pixelContext(images, k))
@@ -48,7 +49,7 @@ export function azimuthalPicture(images: CameraImages, k: number, scene: Scene, 
   const place = (share: number) => 0.5 + (0.5 * Math.asinh(Math.max(-1, Math.min(1, share)) / soft)) / Math.asinh(1 / soft)
   const limit = unit.fromCgs(brightest, pixelContext(images, k))
   const strongest = cut ? `; a few pixels are stronger, up to ${Number(limit.toPrecision(3))} ${unitText(unit.name)}` : ''
-  return skyPicture(images, k, scene, {
+  return skyPicture(view, {
     values: planes[part],
     size,
     map: redBlue,

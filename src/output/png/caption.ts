@@ -1,25 +1,15 @@
-import type { CameraImages } from '../../camera/types.js'
-import type { Scene } from '../../scene/types.js'
-import { PARSEC } from '../../units/constants.js'
-import { shortNumber, unitText } from '../draw/numbers.js'
 import { fitted, text } from '../draw/svg.js'
-import { inDegrees } from '../in-degrees.js'
-import { wavelengthLabels } from '../wavelength-label.js'
 import type { IntensityScale } from './intensity-scale.js'
+import type { SkyView } from './sky-picture.js'
 
 const titleStyle = { size: 17, anchor: 'start', bold: true } as const
 
-/** Title of the scene, then camera, wavelength, view and distance, at the top of a picture `width` pixels wide. */
-export function headLines({ camera }: CameraImages, k: number, scene: Scene, left: number, width: number): string[] {
-  const wavelength = unitText(wavelengthLabels(camera.wavelengths)[k].replace(/(?<=\d)(?=[a-z])/, ' '))
-  const { inclination, azimuth, roll } = camera.view
-  const [i, a, r] = [inclination, azimuth, roll].map((angle) => `${shortNumber(inDegrees(angle))}°`)
-  const view = `inclination ${i}, azimuth ${a}, roll ${r} east of north`
-  const second = `camera ${camera.name} · ${wavelength} · ${view} · ${shortNumber(scene.distance / PARSEC)} pc`
+/** Title, then subtitle, at the top of a picture `width` pixels wide. */
+export function headLines({ title, subtitle }: Pick<SkyView, 'title' | 'subtitle'>, left: number, width: number): string[] {
   const room = width - 2 * left
   return [
-    text(left, 28, fitted(scene.title, room, titleStyle), titleStyle),
-    text(left, 50, fitted(second, room), { anchor: 'start' })
+    text(left, 28, fitted(title, room, titleStyle), titleStyle),
+    text(left, 50, fitted(subtitle, room), { anchor: 'start' })
   ]
 }
 

@@ -1,4 +1,4 @@
-import type { CameraImages } from '../../camera/types.js'
+import type { FieldOfView } from '../fits/wcs.js'
 
 const longestSide = 720
 const longestSideOfStrip = 960
@@ -9,8 +9,7 @@ const squareWithin = 1e-6
  * Pixels of the panel that shows an image, with the aspect of the field: small images are enlarged by a whole factor,
  * larger ones and those whose pixels are not square are fitted to the longest side, which is longer for strips.
  */
-export function panelSize({ width, height, camera }: CameraImages): [number, number] {
-  const [across, up] = camera.field
+export function panelSize({ width, height, field: [across, up] }: FieldOfView): [number, number] {
   const square = Math.abs((across / width) * (height / up) - 1) < squareWithin
   const longest = Math.max(width, height)
   const most = Math.max(across / up, up / across) < stripAspect ? longestSide : longestSideOfStrip

@@ -2,10 +2,10 @@ import type { CameraImages } from '../../camera/types.js'
 import type { Scene } from '../../scene/types.js'
 import { inferno } from '../draw/colours.js'
 import { stretchNote } from './caption.js'
-import { intensityScale } from './intensity-scale.js'
+import { cameraIntensity, intensityScale } from './intensity-scale.js'
 import { panelSize } from './panel-size.js'
 import { polarisationTicks } from './polarisation-ticks.js'
-import { skyPicture } from './sky-picture.js'
+import { cameraView, skyPicture } from './sky-picture.js'
 import { stretched } from './stretch.js'
 
 /**
@@ -14,12 +14,13 @@ import { stretched } from './stretch.js'
  */
 export function polarisedPicture(images: CameraImages, k: number, scene: Scene): Uint8Array {
   const { q, u } = images.stokes!
-  const size = panelSize(images)
+  const view = cameraView(images, k, scene)
+  const size = panelSize(view)
   const pixels = images.width * images.height
   const values = Float64Array.from({ length: pixels }, (_, i) => Math.hypot(q[k * pixels + i], u[k * pixels + i]))
-  const scale = intensityScale(images, k, values, size[1], 'polarised intensity')
+  const scale = intensityScale(cameraIntensity(images, k, 'polarised intensity'), values, size[1])
   const { marks, note } = polarisationTicks(images, k)
   const colour = (value: number) => stretched(value, scale.stretch)
   const notes = [stretchNote(scale), ...(scale.stretch.empty ? [] : [note])].join('; ')
-  return skyPicture(images, k, scene, { values, size, map: inferno, colour, ...scale, marks, note: notes })
+  return skyPicture(view, { values, size, map: inferno, colour, ...scale, marks, note: notes })
 }

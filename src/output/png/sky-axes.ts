@@ -1,4 +1,3 @@
-import type { CameraSpec } from '../../scene/types.js'
 import { ARCSECOND } from '../../units/angles.js'
 import { AU } from '../../units/constants.js'
 import { type AxisSide, axis, roomyTicks } from '../draw/axis.js'
@@ -9,8 +8,14 @@ export type SkyTicks = Record<AxisSide['side'], Ticks>
 
 const units = { bottom: 'arcsec', left: 'arcsec', top: 'au', right: 'au' }
 
-/** Marks for a panel of `width` x `height` pixels; `distance` in cm. */
-export function skyTicks({ field }: CameraSpec, distance: number, width: number, height: number): SkyTicks {
+/** Full width and height (rad) of what is shown, and its distance (cm). */
+interface SkyFrame {
+  field: [number, number]
+  distance: number
+}
+
+/** Marks for a panel of `width` x `height` pixels. */
+export function skyTicks({ field, distance }: SkyFrame, width: number, height: number): SkyTicks {
   const ticks = (angle: number, unit: number, pixels: number, horizontal: boolean): Ticks => {
     const half = angle / unit / 2
     return roomyTicks(pixels, 2 * half, horizontal, (count) => linearTicks(-half, half, count))
@@ -26,8 +31,7 @@ export function skyTicks({ field }: CameraSpec, distance: number, width: number,
 /** The four sides drawn round a panel; offsets grow towards east (left) and north (up). */
 export function skyAxes(
   ticks: SkyTicks,
-  { field }: CameraSpec,
-  distance: number,
+  { field, distance }: SkyFrame,
   panel: { left: number; top: number; width: number; height: number }
 ): string[] {
   const { left, top, width, height } = panel

@@ -58,3 +58,24 @@ export function compass({ left, top, width, light }: SkyPanel): string[] {
 function inks(light: boolean): [ink: string, halo: string] {
   return light ? [dark, white] : [white, dark]
 }
+
+/** Full widths at half maximum (rad) and position angle of the major axis, east of north. */
+export interface BeamEllipse {
+  major: number
+  minor: number
+  positionAngle: number
+}
+
+/** The ellipse at half maximum of a beam, in the lower right corner; none where it is larger than a fifth of the panel. */
+export function beamMark({ left, top, width, height }: SkyPanel, beam: BeamEllipse, field: [number, number]): string[] {
+  const pixelsPerRad = [width / field[0], height / field[1]]
+  const [major, minor] = [beam.major, beam.minor].map((axis) => (axis * pixelsPerRad[1]) / 2)
+  if (2 * major > height / 5 || 2 * major > width / 5) return []
+  const [x, y] = [left + width - inset - major, top + height - inset - major]
+  const degrees = (-beam.positionAngle * 180) / Math.PI
+  const shape = `rx="${Math.max(1, minor)}" ry="${Math.max(1, major)}" transform="translate(${x} ${y}) scale(${pixelsPerRad[0] / pixelsPerRad[1]} 1) rotate(${degrees})"`
+  return [
+    `<ellipse ${shape} fill="${white}" fill-opacity="0.6" stroke="${dark}" stroke-width="3" paint-order="stroke"/>`,
+    `<ellipse ${shape} fill="none" stroke="${white}" stroke-width="1.5"/>`
+  ]
+}

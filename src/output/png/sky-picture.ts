@@ -1,12 +1,16 @@
 import type { CameraImages } from '../../camera/types.js'
 import type { Scene } from '../../scene/types.js'
-import { AU } from '../../units/constants.js'
+import { AU, PARSEC } from '../../units/constants.js'
 import { axisDepth } from '../draw/axis.js'
 import { Canvas } from '../draw/canvas.js'
 import { colourBar, colourBarWidth } from '../draw/colour-bar.js'
 import type { ColourMap } from '../draw/colours.js'
+import { shortNumber } from '../draw/numbers.js'
 import { drawing, outline, text } from '../draw/svg.js'
 import type { Ticks } from '../draw/ticks.js'
+import type { FieldOfView } from '../fits/wcs.js'
+import { inDegrees } from '../in-degrees.js'
+import { spacedWavelength, wavelengthLabels } from '../wavelength-label.js'
 import { headLines } from './caption.js'
 import { resample } from './resample.js'
 import { skyAxes, skyTicks } from './sky-axes.js'
@@ -16,10 +20,19 @@ const margin = 16
 const headHeight = 62
 const footHeight = 18
 const leastWidth = 640
+const hiddenGrey = 140
+
+/** What is seen, and the words above it. */
+export interface SkyView extends FieldOfView {
+  /** cm */
+  distance: number
+  title: string
+  subtitle: string
+}
 
 /** What a picture shows of a quantity on the sky. */
 export interface SkyLayer {
-  /** Width x height values of the image, row 0 the lowest, in any unit that `colour` knows. */
+  /** Width x height values of the image, row 0 the lowest, in any unit that `colour` knows; NaN where nothing is known. */
   values: Float64Array
   /** Size of the panel, pixels. */
   size: [width: number, height: number]
@@ -38,16 +51,27 @@ export interface SkyLayer {
   note: string
 }
 
+/** Wavelength number `k` of a camera, with its view. */
+export function cameraView({ camera, width, height }: CameraImages, k: number, scene: Scene): SkyView {
+  const wavelength = spacedWavelength(wavelengthLabels(camera.wavelengths)[k])
+  const { inclination, azimuth, roll } = camera.view
+  const [i, a, r] = [inclination, azimuth, roll].map((angle) => `${shortNumber(inDegrees(angle))}°`)
+  const view = `inclination ${i}, azimuth ${a}, roll ${r} east of north`
+  const subtitle = `camera ${camera.name} · ${wavelength} · ${view} · ${shortNumber(scene.distance / PARSEC)} pc`
+  return { width, height, field: camera.field, distance: scene.distance, title: scene.title, subtitle }
+}
+
 /**
- * A picture (PNG) of wavelength number `k` of a camera, with axes in arcsec and au, colour bar, compass, scale, title and view.
- * North is up, east to the left; offsets count towards east and north.
+ * A picture (PNG) of the sky, with axes in arcsec and au, colour bar, compass, scale and title. North is up, east to the left; offsets
+ * count towards east and north. Pixels without a value are grey.
  */
-export function skyPicture(images: CameraImages, k: number, scene: Scene, layer: SkyLayer): Uint8Array {
-  const { camera } = images
+export function skyPicture(view: SkyView, layer: SkyLayer): Uint8Array {
   const { map, colour, note } = layer
   const [width, height] = layer.size
-  const values = northUp(resample(layer.values, images.width, images.height, width, height), width)
-  const ticks = skyTicks(camera, scene.distance, width, height)
+  const inPanel = (values: Float64Array) => northUp(resample(values, view.width, view.height, width, height), width)
+  const values = inPanel(layer.values)
+  const hidden = inPanel(layer.values.map((value) => (Number.isNaN(value) ? 1 : 0)))
+  const ticks = skyTicks(view, width, height)
 
   const left = margin + axisDepth('left', ticks.left)
   const top = headHeight + axisDepth('top', ticks.top)
@@ -61,15 +85,20 @@ export function skyPicture(images: CameraImages, k: number, scene: Scene, layer:
     top,
     width,
     height,
-    auPerPixel: (camera.field[0] * scene.distance) / AU / width,
+    auPerPixel: (view.field[0] * view.distance) / AU / width,
     light: layer.light ?? false
   }
 
-  canvas.paint(panel, values.map(colour), map)
+  canvas.paint(
+    panel,
+    values.map((value, i) => (hidden[i] > 0.5 ? Number.NaN : colour(value))),
+    map,
+    hiddenGrey
+  )
   canvas.overlay(
     drawing(canvas.width, canvas.height, [
-      ...headLines(images, k, scene, margin, canvas.width),
-      ...skyAxes(ticks, camera, scene.distance, panel),
+      ...headLines(view, margin, canvas.width),
+      ...skyAxes(ticks, view, panel),
       outline(left, top, width, height),
       ...(layer.marks?.(panel) ?? []),
       ...scaleBar(panel),

@@ -18,9 +18,9 @@ export interface Stretch {
 /**
  * Chooses a stretch from the positive values of an image. A few pixels (1 in 2000, at least 4) that outshine the rest
  * tenfold, such as a star, do not set the scale. Logarithmic, over at most five decades, when the values span more than
- * a factor of 30 or when `logarithmic` asks for it (magnitudes).
+ * a factor of 30 or when `logarithmic` asks for it (magnitudes); not below `noise`.
  */
-export function chooseStretch(values: Float64Array, logarithmic = false): Stretch {
+export function chooseStretch(values: Float64Array, logarithmic = false, noise = 0): Stretch {
   const lit = values.filter((value) => value > 0 && Number.isFinite(value)).sort()
   if (lit.length === 0) return { kind: 'linear', low: 0, high: 1, brightest: 0, cut: false, empty: true }
   const brightest = lit[lit.length - 1]
@@ -28,7 +28,7 @@ export function chooseStretch(values: Float64Array, logarithmic = false): Stretc
   const common = lit[Math.max(0, lit.length - 1 - few)]
   const cut = lit.length > 2 * few && brightest > isolatedPeak * common
   const high = cut ? common : brightest
-  const low = Math.max(lit[Math.floor(quantileOfFaint * lit.length)], high / 10 ** mostDecades)
+  const low = Math.max(lit[Math.floor(quantileOfFaint * lit.length)], high / 10 ** mostDecades, Math.min(noise, high))
   if (logarithmic || high > leastRatioForLog * low) {
     return { kind: 'logarithmic', low: low < high ? low : high / 10, high, brightest, cut, empty: false }
   }

@@ -1,0 +1,81 @@
+import { convolve } from '../math/convolve.js'
+import { gaussLegendre } from '../math/quadrature.js'
+import type { Beam } from './beam.js'
+
+/** Pixels of an image: how many, and their sides, rad. x runs to the right (west), y up (north). */
+export interface PixelGrid {
+  width: number
+  height: number
+  pixel: [number, number]
+}
+
+/** Solid angle of a pixel, sr. */
+export function pixelSrOf({ pixel: [across, up] }: PixelGrid): number {
+  return across * up
+}
+
+/** Fewest pixels across a beam at which its value at the centre of a pixel stands for the whole pixel. */
+const FINE = 2
+const POINTS = 4
+
+/** Pixels across the smallest width of a beam. */
+export function pixelsAcross(beam: Beam, { pixel }: PixelGrid): number {
+  return beam.width / Math.max(...pixel)
+}
+
+/**
+ * The weight of a beam in a pixel at whole offsets (to the right, up). An image of pixel means, convolved with a beam sampled at the
+ * centres of pixels, is the convolved sky in pixel means, as long as the beam is FINE pixels wide; a narrower one is averaged over
+ * pixels. A beam given as an image is scaled to a sum of 1.
+ */
+export function beamKernel(beam: Beam, grid: PixelGrid): (dx: number, dy: number) => number {
+  const [across, up] = grid.pixel
+  const pixelSr = pixelSrOf(grid)
+  const mean = pixelsAcross(beam, grid) < FINE ? pixelMean(beam, grid) : beam.at
+  const kernel = (dx: number, dy: number) => pixelSr * mean(-dx * across, dy * up)
+  if (beam.ellipse) return kernel
+  let sum = 0
+  for (let dy = 1 - grid.height; dy < grid.height; dy++) {
+    for (let dx = 1 - grid.width; dx < grid.width; dx++) sum += kernel(dx, dy)
+  }
+  return (dx, dy) => kernel(dx, dy) / sum
+}
+
+/** The mean of a beam over the pixel centred at an offset, by a Gauss-Legendre sum with POINTS points across the beam. */
+export function pixelMean(beam: Beam, { pixel: [across, up] }: PixelGrid): (east: number, north: number) => number {
+  const [columns, rows] = [across, up].map((side) => gaussLegendre(2 + Math.ceil((POINTS * side) / beam.width)))
+  return (east, north) => {
+    let sum = 0
+    for (let j = 0; j < rows.nodes.length; j++) {
+      const y = north + 0.5 * up * rows.nodes[j]
+      let row = 0
+      for (let i = 0; i < columns.nodes.length; i++)
+        row += columns.weights[i] * beam.at(east + 0.5 * across * columns.nodes[i], y)
+      sum += rows.weights[j] * row
+    }
+    return sum / 4
+  }
+}
+
+/**
+ * An image and its 1 sigma seen with a beam. With `independent` noise variances add with the squares of the beam's weights;
+ * otherwise the noise is taken as the same within the beam, and 1 sigma is convolved like the image: an upper limit.
+ */
+export function blurred(
+  image: Float64Array,
+  sigma: Float64Array,
+  grid: PixelGrid,
+  beam: Beam,
+  independent: boolean
+): { image: Float64Array; sigma: Float64Array } {
+  const kernel = beamKernel(beam, grid)
+  const { width, height } = grid
+  if (!independent) {
+    const [light, noise] = convolve([image, sigma], width, height, kernel)
+    return { image: light, sigma: noise.map((value) => Math.max(0, value)) }
+  }
+  const nothing = new Float64Array(image.length)
+  const [light] = convolve([image, nothing], width, height, kernel)
+  const [variance] = convolve([sigma.map((value) => value * value), nothing], width, height, (dx, dy) => kernel(dx, dy) ** 2)
+  return { image: light, sigma: variance.map((value) => Math.sqrt(Math.max(0, value))) }
+}

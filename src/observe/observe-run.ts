@@ -1,0 +1,101 @@
+import { wavelengthLabel } from '../output/wavelength-label.js'
+import { SceneError } from '../scene/error.js'
+import { LightError, type LightWeights, lightWeights } from './band.js'
+import { makeBeam } from './beam.js'
+import { pixelsAcross } from './blur.js'
+import { measureFlux, type Photometry } from './photometry.js'
+import { type Picture, takePicture } from './picture.js'
+import { type CameraSource, openRun, type RunSource, readCamera, readSpectrum, type SpectrumSource } from './run-source.js'
+import type { Instrument, ObservationSpec, PictureSpec, VisibilitiesSpec } from './types.js'
+import { measureVisibilities, type Visibilities } from './visibilities.js'
+
+/** What came of pointing an instrument at a run. */
+export interface Observed {
+  run: RunSource
+  instrument: Instrument
+  pictures: { picture: Picture; source: CameraSource }[]
+  fluxes: { photometry: Photometry; source: SpectrumSource }[]
+  visibilities: { measured: Visibilities; source: CameraSource }[]
+}
+
+/** Narrowest beam in pixels of a camera that makes sense to apply. */
+const NARROWEST = 0.1
+
+/** Longest baseline in wavelengths times the side of a pixel where the pixels of a camera begin to hide structure entirely. */
+const NYQUIST = 0.5
+
+/**
+ * Observes a run (its folder) with an instrument. Throws a DataError for a run that cannot be used, a SceneError for what the
+ * instrument asks of it in vain.
+ */
+export function observeRun(
+  path: string,
+  instrument: Instrument,
+  onProgress: (name: string, done: number) => void = () => {}
+): Observed {
+  const run = openRun(path)
+  const observed: Observed = { run, instrument, pictures: [], fluxes: [], visibilities: [] }
+  // The emission coefficient of a cell lights many pixels; packets of the two other estimators light one each.
+  const independent = run.record.estimator !== 'emissivity'
+  const { seed, observations } = instrument
+  const cameras = new Map<string, CameraSource>()
+  observations.forEach((spec, i) => {
+    onProgress(spec.name, i)
+    const refuse = (key: string, message: string): never => {
+      throw new SceneError([instrument.problemAt(['observations', i, key], message)])
+    }
+    if (spec.kind === 'photometry') {
+      if (!run.spectra.includes(spec.spectrum)) refuse('spectrum', absent('spectrum', run.spectra))
+      const source = readSpectrum(run, spec.spectrum)
+      const light = weightsFor(spec, source.wavelengths, refuse)
+      observed.fluxes.push({ photometry: measureFlux(spec, source, light, seed, independent), source })
+      return
+    }
+    const source = cameraOf(spec, run, cameras, refuse)
+    const light = weightsFor(spec, source.wavelengths, refuse)
+    if (spec.kind === 'picture') {
+      if (spec.pixel && (spec.pixel[0] > source.width * source.pixel[0] || spec.pixel[1] > source.height * source.pixel[1]))
+        refuse('pixel', 'larger than the field of the camera')
+      if (spec.beam && pixelsAcross(makeBeam(spec.beam, light.wavelength), source) < NARROWEST)
+        refuse('beam', `narrower than ${NARROWEST} pixels of the camera, which show nothing so small; leave it out`)
+      observed.pictures.push({ picture: takePicture(spec, source, light, seed, independent), source })
+    } else {
+      const measured = measureVisibilities(spec, source, light, seed, independent)
+      if (measured.coarseness > NYQUIST) refuse('baselines', tooCoarse(measured))
+      observed.visibilities.push({ measured, source })
+    }
+  })
+  return observed
+}
+
+type Refuse = (key: string, message: string) => never
+
+function cameraOf(
+  spec: PictureSpec | VisibilitiesSpec,
+  run: RunSource,
+  known: Map<string, CameraSource>,
+  refuse: Refuse
+): CameraSource {
+  if (!run.cameras.includes(spec.camera)) refuse('camera', absent('camera', run.cameras))
+  const source = known.get(spec.camera) ?? readCamera(run, spec.camera)
+  known.set(spec.camera, source)
+  return source
+}
+
+function absent(kind: string, there: string[]): string {
+  return there.length > 0 ? `the run has no such ${kind}; there are ${there.join(', ')}` : `the run has no ${kind}`
+}
+
+function weightsFor({ light }: ObservationSpec, wavelengths: number[], refuse: Refuse): LightWeights {
+  try {
+    return lightWeights(light, wavelengths, (wavelength) => wavelengthLabel(wavelength, 6))
+  } catch (error) {
+    if (!(error instanceof LightError)) throw error
+    return refuse(light.kind === 'line' ? 'wavelength' : 'band', error.message)
+  }
+}
+
+function tooCoarse({ coarseness }: Visibilities): string {
+  const factor = Number((coarseness / NYQUIST).toPrecision(2))
+  return `the pixels of the camera hide what the longest baseline sees; it needs pixels at least ${factor} times smaller`
+}

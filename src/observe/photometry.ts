@@ -1,0 +1,50 @@
+import { drawNormal } from '../math/draw.js'
+import { stream } from '../math/random.js'
+import { LIGHT_SPEED } from '../units/constants.js'
+import type { LightWeights } from './band.js'
+import type { SpectrumSource } from './run-source.js'
+import type { PhotometrySpec } from './types.js'
+import { fluxOf } from './unit.js'
+
+/** A flux density as an instrument records it, cgs. */
+export interface Photometry {
+  spec: PhotometrySpec
+  /** cm; the pivot of a band. */
+  wavelength: number
+  observed: number
+  /** The same without noise. */
+  expected: number
+  /** 1 sigma of the run's Monte Carlo part, and of the instrument's noise (0 without). */
+  sigma: number
+  noise: number
+  /** Estimated relative error of the interpolation between the run's wavelengths. */
+  bandError: number
+}
+
+/** Observes a spectrum of a run; `independent`: the noise of its wavelengths is. */
+export function measureFlux(
+  spec: PhotometrySpec,
+  { total, sigma }: SpectrumSource,
+  { weights, coarse, wavelength }: LightWeights,
+  seed: string,
+  independent: boolean
+): Photometry {
+  const inBand = (parts: Float64Array, values: Float64Array) => values.reduce((sum, value, k) => sum + parts[k] * value, 0)
+  const expected = inBand(weights, total)
+  const error = independent ? Math.hypot(...sigma.map((value, k) => weights[k] * value)) : inBand(weights, sigma)
+  const noise = noiseOf(spec, expected, LIGHT_SPEED / wavelength)
+  return {
+    spec,
+    wavelength,
+    expected,
+    observed: noise > 0 ? expected + noise * drawNormal(stream(`${seed}/${spec.name}`)) : expected,
+    sigma: error,
+    noise,
+    bandError: expected > 0 ? Math.abs(inBand(coarse, total) - expected) / 3 / expected : 0
+  }
+}
+
+function noiseOf({ noise }: PhotometrySpec, flux: number, frequencyHz: number): number {
+  if (!noise) return 0
+  return noise.kind === 'relative' ? noise.level * flux : fluxOf(noise.level, frequencyHz)
+}
