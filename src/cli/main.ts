@@ -1,13 +1,13 @@
 #!/usr/bin/env node
-import yargs from 'yargs'
+import yargs, { type CommandModule } from 'yargs'
 import { hideBin } from 'yargs/helpers'
 import { version } from '../output/version.js'
 import { check } from './check.js'
 import { convert } from './convert.js'
 import { failureOf, reportFailure, UsageError } from './failure.js'
 import { join } from './join.js'
-    .command(schema)
-    .demandCommand(1, 'Which command? There are schema, check, run, join, opacity, convert, observe and schema.')
+import { observe } from './observe.js'
+import { opacity } from './opacity.js'
 import { run } from './run.js'
 import { schema } from './schema.js'
 
@@ -23,19 +23,16 @@ function missingWords(command: string): string {
   return command === 'observe' ? 'The run or the instrument file is' : 'The scene file is'
 }
 
+const commands = [check, run, join, opacity, convert, observe, schema] as CommandModule[]
+const names = commands.map(({ command }) => String(command).split(' ')[0])
+
 const words = hideBin(process.argv)
 try {
   await yargs(words)
     .scriptName('motelight')
     .usage('$0 <command>\n\nImages and spectra of dusty sources from a scene file.')
-    .command(check)
-    .command(run)
-    .command(join)
-    .command(opacity)
-    .command(convert)
-    .command(observe)
-    .command(schema)
-    .demandCommand(1, 'Which command? There are schema, check, run, join, opacity, convert, observe and schema.')
+    .command(commands)
+    .demandCommand(1, `Which command? There are ${names.slice(0, -1).join(', ')} and ${names.at(-1)}.`)
     .strict()
     .version(version)
     .help()
