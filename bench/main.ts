@@ -5,6 +5,7 @@ import { fileURLToPath } from 'node:url'
 import { version } from '../src/output/version.js'
 import type { BenchCase } from './case.js'
 import { figureOfMerit } from './cases/figure-of-merit.js'
+import { grainTableCases } from './cases/grain-tables.js'
 import { memory } from './cases/memory.js'
 import { packetLoop } from './cases/packet-loop.js'
 import { polarisedCases } from './cases/polarised.js'
@@ -24,6 +25,7 @@ const cases: BenchCase[] = [
   ...scaling,
   ...workerCases,
   ...stateCases,
+  ...grainTableCases,
   ...memory
 ]
 

@@ -1,13 +1,16 @@
 import { bracket } from '../math/interp.js'
 import type { GrainsOpacitySpec } from '../scene/types.js'
 import type { GrainOptics } from './grains/grain-optics.js'
-import { makeGrain } from './grains/make-grain.js'
+import { largestRadius, makeGrain } from './grains/make-grain.js'
 import { scatteringAngles } from './grains/scattering-angles.js'
 import { type GrainTableRequest, tabulateGrains } from './grains/tabulate-grains.js'
 import type { OpacityCurves } from './opacity-curves.js'
 import type { ScatteringMatrix } from './scattering-matrix.js'
 import { tableLaw } from './table-law.js'
 import { LONGEST, SHORTEST } from './wavelength-grid.js'
+
+/** Larger spheres are taken to remove and scatter light as at this size parameter: they are in the limit of geometric optics. */
+const LARGEST_X = 1e6
 
 /**
  * What has to be tabulated for grains of a scene, over wavelengths (cm) that hold `shortest` and `longest` and all that dust emits.
@@ -19,13 +22,13 @@ export function grainRequest(
   longest = LONGEST
 ): GrainTableRequest {
   const doublings = (ratio: number) => 2 ** Math.max(0, Math.ceil(Math.log2(ratio)))
-  const from = SHORTEST / doublings(SHORTEST / shortest)
-  const largest = Math.max(...populations.map((population) => makeGrain(population).sizes.largest))
+  const circumference = 2 * Math.PI * largestRadius(populations)
+  const from = Math.max(SHORTEST / doublings(SHORTEST / shortest), circumference / LARGEST_X)
   return {
     populations,
     shortest: from,
     longest: LONGEST * doublings(longest / LONGEST),
-    angles: phase === 'computed' ? scatteringAngles((2 * Math.PI * largest) / from) : new Float64Array(0)
+    angles: phase === 'computed' ? scatteringAngles(circumference / from) : new Float64Array(0)
   }
 }
 

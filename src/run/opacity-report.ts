@@ -1,4 +1,4 @@
-import { makeGrain } from '../dust/grains/make-grain.js'
+import { largestRadius } from '../dust/grains/make-grain.js'
 import { scatteringAngles } from '../dust/grains/scattering-angles.js'
 import { mixtureOptics } from '../dust/grains/tabulate-grains.js'
 import { meanOpacities } from '../dust/mean-opacity.js'
@@ -59,7 +59,7 @@ export async function opacityReports(
   scene: Scene,
   { names, wavelengths, workers, onProgress }: OpacityRequest
 ): Promise<OpacityReport[]> {
-  const tables = await grainTables(scene, workers, onProgress, names)
+  const tables = await grainTables(scene, workers, onProgress, undefined, names)
   return names.map((name) => {
     const spec = scene.opacities[name]
     const law = makeOpacityLaw(spec, tables[name])
@@ -115,7 +115,6 @@ function scatteringOf(spec: OpacitySpec, law: OpacityLaw, wavelength: number): S
 
 /** The matrix of grains at one wavelength, also where a run is content with a simpler law. */
 function mieMatrix({ populations }: GrainsOpacitySpec, wavelength: number): ScatteringMatrix {
-  const largest = Math.max(...populations.map((population) => makeGrain(population).sizes.largest))
-  const angles = scatteringAngles((2 * Math.PI * largest) / wavelength)
+  const angles = scatteringAngles((2 * Math.PI * largestRadius(populations)) / wavelength)
   return { angles, ...mixtureOptics(populations, [wavelength], angles).matrix }
 }

@@ -37,11 +37,11 @@ export interface Crew {
 /** Builds the model, starts workers, and lets `work` use them; the ledger is settled and the workers ended whatever comes. */
 export async function withCrew<Result>(
   scene: Scene,
-  { workers, ledger = noLedger, memory, tables, onBegin, onProgress }: RunOptions,
+  { workers, ledger = noLedger, memory, tables, onBegin, onProgress, stop }: RunOptions,
   work: (crew: Crew) => Promise<Result>
 ): Promise<Result> {
   const clock = stopwatch()
-  const plan = planCells(scene, tables ?? (await grainTables(scene, workers, onProgress)))
+  const plan = planCells(scene, tables ?? (await grainTables(scene, workers, onProgress, stop)))
   requireMemory(plan, workers, memory)
   const model = buildModel(scene, plan)
   onBegin?.()

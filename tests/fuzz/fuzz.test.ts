@@ -63,7 +63,10 @@ class Player {
   }
 
   private begin(): Promise<ChildProcess> {
-    const child = fork(script, [library, this.folder], { execArgv: ['--max-old-space-size=1500'] })
+    const child = fork(script, [library, this.folder], {
+      execArgv: ['--max-old-space-size=1500'],
+      env: { ...process.env, XDG_CACHE_HOME: this.folder }
+    })
     return new Promise((resolve) => child.once('message', () => resolve(child)))
   }
 }

@@ -98,6 +98,34 @@ grid: {kind: spherical, radial: 8, polar: 6, azimuthal: 5}
 effort: {equilibrium: 500, cameras: 200, precision: none}
 cameras:
   - {name: oblique, view: {inclination: 60 deg, azimuth: 20 deg}, field: 500 au, pixels: 3, wavelengths: [1 um, 100 um]}
+`,
+  `distance: 200 pc
+sources:
+  - {name: star, temperature: 6000 K, luminosity: 3 Lsun}
+opacities:
+  several:
+    law: grains
+    populations:
+      - mass-fraction: 0.6
+        constants: {bruggeman: [{constants: {n: 2, k: 1}, volume-fraction: 0.7}, {constants: {n: 1.5}, volume-fraction: 0.3}]}
+        sizes: {smallest: 80 nm, largest: 160 nm, median: 100 nm, width: 0.3}
+        grain-density: 3 g/cm3
+        porosity: 0.2
+      - mass-fraction: 0.4
+        constants: {oscillators: {infinity: 2.6, terms: [{at: 10 um, strength: 0.8, damping: 0.2}, {at: 520 cm-1, strength: 1.6, damping: 180 cm-1}]}}
+        sizes: {file: radii.csv}
+        grain-density: 2 g/cm3
+        coat: {constants: {maxwell-garnett: {matrix: {n: 1.3, k: 0.1}, inclusions: [{constants: nk.csv, volume-fraction: 0.1}]}}, volume-fraction: 0.2, density: 1 g/cm3}
+    phase: isotropic
+  galactic: {law: extinction-curve, curve: pei-1992, galaxy: milky-way, reference: {wavelength: 0.55 um, extinction: 2e4 cm2/g}, scattering: {albedo: 0.6, asymmetry: 0.5}}
+dust:
+  - {name: a, opacity: galactic, shape: {kind: shell, inner: 10 au, outer: 200 au}, amount: {optical-depth: 0.3, at: 1 um}}
+  - {name: b, opacity: several, shape: {kind: ball, radius: 90 au}, amount: {mass: 1e-10 Msun}, temperature: 30 K}
+  - {name: c, opacity: galactic, shape: {kind: ball, radius: 50 au}, amount: {mass: 1e-10 Msun}, temperature: none}
+grid: {kind: spherical, radial: 8}
+effort: {equilibrium: 500, cameras: 200, precision: none}
+spectra:
+  - {name: sed, wavelengths: [1 um, 10 um], unit: Jy}
 `
 ]
 
@@ -110,6 +138,8 @@ wavelength [um],absorption [cm2/g],scattering [cm2/g],asymmetry
 10,500,3,0.1
 1000,0.5,0,0
 `,
+  'nk.csv': 'wavelength [um],n,k\n0.1,1.6,0.5\n1,1.7,0.03\n10,1.5,0.8\n1000,3,0.1\n',
+  'radii.csv': 'radius [nm],number\n100,5\n200,1\n',
   'points.csv': 'x [au],y [au],z [au],smoothing-length [au],mass\n10,20,30,20,1\n-50,0,0,30,2\n0,-60,10,30,2\n',
   'lamp.csv': 'wavelength [um],flux-nu [Jy]\n0.3,1\n1,30\n3,20\n30,0.2\n'
 }

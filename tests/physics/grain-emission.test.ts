@@ -52,3 +52,39 @@ describe('thin dust of silicate-like grains', () => {
     expect(at(9.1)).toBeGreaterThan(2 * at(13))
   })
 })
+
+const scattering = (law: string) => `
+distance: 100 pc
+seed: same
+sources: [{name: star, temperature: 6000 K, luminosity: 1 Lsun}]
+opacities: {tiny: {${law}}}
+dust:
+  - name: shell
+    opacity: tiny
+    shape: {kind: shell, inner: 10 au, outer: 100 au}
+    amount: {optical-depth: 0.5, at: 2 um}
+    temperature: none
+effort: {precision: none, cameras: 4000}
+cameras:
+  - {name: face, field: 200 au, pixels: 8, wavelengths: [2 um]}
+`
+
+describe('light scattered by grains much smaller than its waves', () => {
+  it('is polarised as Rayleigh has it, with the matrix of Mie theory', async () => {
+    // Bohren & Huffman (1983), section 5.1: at x = 0.03 both differ by x^2.
+    const sizes = 'sizes: {smallest: 9 nm, largest: 10 nm}, grain-density: 1 g/cm3'
+    const mie = await runText(scattering(`law: grains, constants: {n: 1.5}, ${sizes}, phase: computed`))
+    const rayleigh = await runText(scattering(`law: grains, constants: {n: 1.5}, ${sizes}, phase: rayleigh`))
+    const [a, b] = [mie, rayleigh].map(({ images }) => images[0])
+    const brightest = (plane: Float64Array) => Math.max(...plane.map(Math.abs))
+    expect(brightest(b.stokes!.q)).toBeGreaterThan(0.02 * brightest(b.scattered))
+    for (const [mine, exact] of [
+      [a.scattered, b.scattered],
+      [a.stokes!.q, b.stokes!.q],
+      [a.stokes!.u, b.stokes!.u]
+    ])
+      mine.forEach((value, i) => {
+        expect(Math.abs(value - exact[i])).toBeLessThan(0.005 * brightest(exact))
+      })
+  })
+})

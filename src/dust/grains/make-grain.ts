@@ -19,6 +19,11 @@ export function makeGrain({ constants, sizes, density: solid, porosity, coat }: 
   }
 }
 
+/** Radius of the largest of all grains, cm. */
+export function largestRadius(populations: readonly GrainPopulation[]): number {
+  return Math.max(...populations.map(({ sizes }) => makeSizes(sizes).largest))
+}
+
 function makeSizes(spec: SizesSpec): SizeDistribution {
   switch (spec.kind) {
     case 'power':
