@@ -21,25 +21,40 @@ export function grainWarnings(model: Model): string[] {
   return [...model.components.flatMap((component) => fluctuating(model, component)), ...rough(model), ...aligned(model)]
 }
 
+/** Isotropic part of light: its wavelengths (cm), and mean intensity, erg/s/cm2/Hz/sr, at a frequency (Hz). */
+interface MeanLight {
+  range: [number, number]
+  meanIntensityNu: (nu: number) => number
+}
+
+/** Light of all sources at a radius (cm), not dimmed on its way. */
+function lightAt({ stars }: Model, radius: number): MeanLight[] {
+  return stars.map(({ spectrum: { range, luminosityNu } }) => ({
+    range,
+    meanIntensityNu: (nu) => luminosityNu(nu) / (4 * Math.PI * radius) ** 2
+  }))
+}
+
 /**
- * Grains that one photon heats above the temperature they would have in equilibrium: at the outer edge, with the light of the stars
- * not dimmed on its way. Dimmed light would make them colder still.
+ * Grains that one photon heats above the temperature they would have in equilibrium: at the outer edge, with light that is not
+ * dimmed. Dimmed light would make them colder still.
  */
-function fluctuating({ scene, stars }: Model, { spec, law, shape }: DustComponent): string[] {
-  const opacity = scene.opacities[spec.opacity]
-  if (opacity.law !== 'grains' || spec.temperature !== 'solve' || stars.length === 0) return []
-  const overLight = (weight: (nu: number) => number) =>
-    stars.reduce((sum, { spectrum: { range, luminosityNu } }) => {
+function fluctuating(model: Model, { spec, law, shape }: DustComponent): string[] {
+  const opacity = model.scene.opacities[spec.opacity]
+  if (opacity.law !== 'grains' || spec.temperature !== 'solve') return []
+  const light = lightAt(model, shape.outerRadius)
+  const absorbed = (weight: (nu: number) => number) =>
+    light.reduce((sum, { range, meanIntensityNu }) => {
       const perLog = (x: number) => {
         const nu = LIGHT_SPEED / Math.exp(x)
-        return nu * luminosityNu(nu) * law.absorption(Math.exp(x)) * weight(nu)
+        return 4 * Math.PI * nu * meanIntensityNu(nu) * law.absorption(Math.exp(x)) * weight(nu)
       }
       return sum + integrate(perLog, Math.log(range[0]), Math.log(range[1]), 1e-3)
     }, 0)
-  const power = overLight(() => 1)
-  const energy = power / overLight((nu) => 1 / (PLANCK * nu))
+  const power = absorbed(() => 1)
+  const energy = power / absorbed((nu) => 1 / (PLANCK * nu))
   if (!Number.isFinite(energy)) return []
-  const temperature = equilibriumTemperature(law, power / (4 * Math.PI * shape.outerRadius ** 2))
+  const temperature = equilibriumTemperature(law, power)
   const radius = fluctuatingRadius(temperature, energy)
   const share = opacity.populations.reduce((sum, population) => sum + population.massFraction * massBelow(population, radius), 0)
   if (share < SMALL_SHARE) return []
