@@ -7,6 +7,7 @@ import type { BenchCase } from './case.js'
 import { figureOfMerit } from './cases/figure-of-merit.js'
 import { grainTableCases } from './cases/grain-tables.js'
 import { memory } from './cases/memory.js'
+import { octree } from './cases/octree.js'
 import { packetLoop } from './cases/packet-loop.js'
 import { polarisedCases } from './cases/polarised.js'
 import { scaling } from './cases/scaling.js'
@@ -23,6 +24,7 @@ const cases: BenchCase[] = [
   ...wholeRunCases,
   ...polarisedCases,
   ...scaling,
+  ...octree,
   ...workerCases,
   ...stateCases,
   ...grainTableCases,

@@ -4,6 +4,7 @@ import { runCommand } from '../command.js'
 import { lightDust } from '../lit-dust.js'
 import { PacketPool } from '../packet-pool.js'
 import { diskScene } from '../scenes.js'
+import { slopeOf } from '../slope.js'
 
 const REPETITIONS = 2
 
@@ -16,16 +17,6 @@ const GRIDS: [number, number, number][] = [
 ]
 const PACKETS = 40_000
 const TO_OBSERVER = Float64Array.of(Math.sin(1), 0, Math.cos(1))
-
-/** The slope of log y against log x by least squares: y ~ x^slope. */
-function slopeOf(x: number[], y: number[]): number {
-  const lx = x.map(Math.log)
-  const ly = y.map(Math.log)
-  const mx = lx.reduce((sum, value) => sum + value, 0) / x.length
-  const my = ly.reduce((sum, value) => sum + value, 0) / y.length
-  const top = lx.reduce((sum, value, i) => sum + (value - mx) * (ly[i] - my), 0)
-  return top / lx.reduce((sum, value) => sum + (value - mx) ** 2, 0)
-}
 
 async function cellCost(): Promise<Measure[]> {
   const crews: { cells: number; pool: PacketPool }[] = []

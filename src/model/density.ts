@@ -35,6 +35,11 @@ export function cellDensities(walls: SphericalWalls, shape: Shape, scale: number
       }
     }
   }
+  return settleMass(density, volume, shape, scale)
+}
+
+/** Turns mean relative densities into g/cm3, in place, with the mass made exact where it is nearly so. */
+export function settleMass(density: Float64Array, volume: Float64Array, shape: Shape, scale: number): CellDensities {
   let mass = 0
   for (let i = 0; i < density.length; i++) mass += density[i] * volume[i]
   const massRatio = mass / shape.totalMass

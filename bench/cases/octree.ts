@@ -1,0 +1,90 @@
+import { growOctree } from '../../src/grid/octree/grow-octree.js'
+import type { Octree } from '../../src/grid/octree/octree.js'
+import { OctreeWalk } from '../../src/grid/octree/octree-walk.js'
+import { stream } from '../../src/math/random.js'
+import { makeShape } from '../../src/shapes/make-shape.js'
+import type { Shape } from '../../src/shapes/shape.js'
+import { type BenchCase, interleaved, type Measure } from '../case.js'
+import { slopeOf } from '../slope.js'
+
+const REPETITIONS = 3
+const SIZES = [1e4, 1e5, 1e6, 1e7]
+const RAYS = 50_000
+
+/** A cloud of clumps about a star, with as many cells as are allowed. */
+function cloud(): Shape {
+  return makeShape(
+    { kind: 'ball', radius: 100, at: [0, 0, 0] },
+    { clumps: { count: 300, radius: 8, contrast: 20, seed: 'bench' } }
+  )
+}
+
+/** Processor time of rays from places where dust is, in any direction, to the outside. */
+function walkRays(shape: Shape, octree: Octree, seed: string): { nanoseconds: number; path: number } {
+  const walk = new OctreeWalk(octree)
+  const uniform = stream(seed)
+  const place = new Float64Array(3)
+  const started = process.cpuUsage()
+  let path = 0
+  for (let n = 0; n < RAYS; n++) {
+    shape.place(uniform(), uniform(), uniform(), place)
+    const mu = 2 * uniform() - 1
+    const sin = Math.sqrt(1 - mu * mu)
+    const azimuth = 2 * Math.PI * uniform()
+    walk.startAt(place[0], place[1], place[2], sin * Math.cos(azimuth), sin * Math.sin(azimuth), mu)
+    do path += walk.toWall()
+    while (walk.cross() >= 0)
+  }
+  const { user, system } = process.cpuUsage(started)
+  return { nanoseconds: (1000 * (user + system)) / RAYS, path }
+}
+
+async function octreeCost(): Promise<Measure[]> {
+  const shape = cloud()
+  const layers = [{ shape, scale: 1e6 / shape.column, extinction: 1 }]
+  const grown = SIZES.map((cells) => {
+    const started = process.cpuUsage()
+    const octree = growOctree({ layers, stars: [[0, 0, 0]], width: 0, finest: 25, cellsAtMost: cells })
+    return { octree, seconds: process.cpuUsage(started).user / 1e6, bytes: process.memoryUsage().rss }
+  })
+  for (const { octree } of grown) walkRays(shape, octree, 'warm-up')
+  const times = await interleaved(
+    REPETITIONS,
+    ...grown.map(
+      ({ octree }) =>
+        (i: number) =>
+          walkRays(shape, octree, `octree/${i}`)
+    )
+  )
+  const largest = grown[grown.length - 1]
+  return [
+    ...times.map((side, k) => ({
+      quantity: `${grown[k].octree.cells} cells`,
+      unit: 'ns/packet',
+      values: side.map(({ nanoseconds }) => nanoseconds)
+    })),
+    {
+      quantity: 'power of the number of cells',
+      unit: '',
+      values: times[0].map((_, i) =>
+        slopeOf(
+          grown.map(({ octree }) => octree.cells),
+          times.map((side) => side[i].nanoseconds)
+        )
+      ),
+      target: { atMost: 1 / 3 }
+    },
+    { quantity: `growing ${largest.octree.cells} cells`, unit: 's', values: [largest.seconds] },
+    { quantity: `memory with ${largest.octree.cells} cells`, unit: 'GB', values: [largest.bytes / 1e9], target: { atMost: 3 } }
+  ]
+}
+
+/** How the cost of a packet grows with the cells of an octree, and what ten million of them take. */
+export const octree: BenchCase[] = [
+  {
+    name: 'octree',
+    about: 'walks through octrees of a cloud of clumps against the number of cells, processor time',
+    native: false,
+    run: octreeCost
+  }
+]

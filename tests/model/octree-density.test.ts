@@ -1,0 +1,111 @@
+import { describe, expect, it } from 'vitest'
+import { growOctree, type OctreeRequest } from '../../src/grid/octree/grow-octree.js'
+import { CORNER, cellCube, cubeVolumes, LEVELS, type Octree, RECORD, SIZE } from '../../src/grid/octree/octree.js'
+import { OctreeWalk } from '../../src/grid/octree/octree-walk.js'
+import { octreeDensities } from '../../src/model/octree-density.js'
+import type { DustSpec, ShapeSpec } from '../../src/scene/types.js'
+import { makeShape } from '../../src/shapes/make-shape.js'
+
+function grown(spec: ShapeSpec, more: Pick<DustSpec, 'carve' | 'clumps'>, tau: number, request: Partial<OctreeRequest> = {}) {
+  const shape = makeShape(spec, more)
+  const scale = tau / (Number.isFinite(shape.column) ? shape.column : shape.totalMass / shape.outerRadius ** 2)
+  const layers = [{ shape, scale, extinction: 1 }]
+  return {
+    shape,
+    scale,
+    octree: growOctree({ layers, stars: [[0, 0, 0]], width: 0, finest: 20, cellsAtMost: 30_000, ...request })
+  }
+}
+
+const disk: ShapeSpec = {
+  kind: 'disk',
+  inner: 1,
+  outer: 300,
+  surfaceSlope: -1,
+  scaleHeight: { value: 10, at: 100, flaring: 1.25 }
+}
+const ball: ShapeSpec = { kind: 'ball', radius: 10, at: [20, 5, 3] }
+const wind: ShapeSpec = { kind: 'shell', inner: 6, outer: 3000, slope: -2 }
+
+describe('growOctree and octreeDensities', () => {
+  it.each([
+    ['shell', wind, {}],
+    ['ball elsewhere', ball, {}],
+    ['tilted disk', { ...disk, tilt: { angle: 0.3, toward: 1 } }, {}],
+    ['eccentric ring', { kind: 'ring', radius: 100, width: 5, scaleHeight: 4, eccentricity: 0.3, periapsis: 1 }, {}],
+    ['slab', { kind: 'slab', thickness: 60, width: 200, at: [0, 0, 0], tilt: { angle: 0.5, toward: 0 } }, {}],
+    [
+      'infall with a cavity',
+      { kind: 'infall', inner: 1, outer: 1000, centrifugalRadius: 50 },
+      { carve: [{ kind: 'cavity', halfAngle: 0.4, remaining: 0 }] }
+    ]
+  ] as [string, ShapeSpec, Pick<DustSpec, 'carve'>][])(
+    'hold the mass of a %s to 1e-3, before any correction',
+    (_, spec, more) => {
+      const { octree, shape, scale } = grown(spec, more, 10)
+      const { density, massRatio } = octreeDensities(octree, shape, scale)
+      expect(Math.abs(massRatio - 1)).toBeLessThan(1e-3)
+      const volume = cubeVolumes(octree, new Float64Array(octree.cells))
+      const mass = density.reduce((sum, value, i) => sum + value * volume[i], 0)
+      expect(mass / (scale * shape.totalMass)).toBeCloseTo(1, 10)
+    }
+  )
+
+  it('finds clumps far smaller than the first cells', () => {
+    const clumps = { count: 30, radius: 2, contrast: 1000, seed: 'a' }
+    const { octree, shape } = grown({ kind: 'ball', radius: 100, at: [0, 0, 0] }, { clumps }, 1)
+    const walk = new OctreeWalk(octree)
+    const cube = new Float64Array(4)
+    const { x, y, z } = shape.details
+    for (let i = 0; i < x.length; i++) {
+      walk.startAt(x[i], y[i], z[i], 0, 0, 1)
+      expect(cellCube(octree, walk.cell, cube)[3]).toBeLessThan(4)
+    }
+    expect(Math.abs(octreeDensities(octree, shape, 1).massRatio - 1)).toBeLessThan(0.01)
+  })
+
+  it('divides near the star and where the dust is, and leaves empty space whole', () => {
+    const { octree } = grown(wind, {}, 5)
+    const walk = new OctreeWalk(octree)
+    const cube = new Float64Array(4)
+    const lengthAt = (x: number, y: number, z: number) => {
+      walk.startAt(x, y, z, 0, 0, 1)
+      return cellCube(octree, walk.cell, cube)[3]
+    }
+    for (const r of [7, 30, 300, 2000]) expect(lengthAt(0.6 * r, 0.64 * r, 0.48 * r) / r).toBeLessThan(0.4)
+    // Only cubes that hold some of the ball are ever divided.
+    expect(farthestDivided(grown(ball, {}, 5, { width: 400 }).octree)).toBe(0)
+  })
+
+  it('keeps to the number of cells and to the level allowed, and comes out the same again', () => {
+    for (const cellsAtMost of [8, 1000, 33_333]) {
+      const { octree } = grown(disk, {}, 100, { cellsAtMost })
+      expect(octree.cells).toBeLessThanOrEqual(cellsAtMost)
+      expect(octree.cells).toBeGreaterThan(cellsAtMost - 8)
+      expect(grown(disk, {}, 100, { cellsAtMost }).octree.records).toEqual(octree.records)
+    }
+    const shallow = grown(disk, {}, 100, { finest: 4 }).octree
+    const volumes = cubeVolumes(shallow, new Float64Array(shallow.cells))
+    expect(Math.min(...volumes) / shallow.side ** 3).toBeCloseTo(2 ** -12, 12)
+    expect(grown(disk, {}, 100, { width: 50 }).octree).toMatchObject({ side: 50 })
+    // Limits that are met end it before the number is reached.
+    expect(grown(wind, {}, 0.01, { cellsAtMost: 1_000_000 }).octree.cells).toBeLessThan(900_000)
+  })
+})
+
+/** Farthest that a cube whose children are cells lies from the ball about (20, 5, 3), in radii of the ball beyond its surface. */
+function farthestDivided({ origin, side, records, nodeOf, cells }: Octree): number {
+  const unit = side / 2 ** LEVELS
+  let farthest = 0
+  for (let cell = 0; cell < cells; cell++) {
+    const at = RECORD * nodeOf[cell]
+    const size = 2 * records[at + SIZE]
+    let distance2 = 0
+    for (const [a, centre] of [20, 5, 3].entries()) {
+      const low = origin[a] + Math.floor(records[at + CORNER + a] / size) * size * unit
+      distance2 += Math.max(0, low - centre, centre - low - size * unit) ** 2
+    }
+    farthest = Math.max(farthest, Math.sqrt(distance2) / 10 - 1)
+  }
+  return farthest
+}
