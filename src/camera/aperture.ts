@@ -1,32 +1,41 @@
 import { GROUPS } from '../solve/groups.js'
 import type { IntensityField } from './field.js'
-import { integratePatch, type PatchIntegral } from './patch.js'
+import { integratePatch, type PatchIntegral, type Sector } from './patch.js'
 import { FIRST_GROUP, Q, RAY_VALUES } from './ray-values.js'
 import { ringsBetween } from './rings.js'
+import { unflattened } from './unflattened.js'
 
 /** Parts of half a circle in which an aperture is first divided. */
-const PARTS = 12
+const PARTS = 8
+/** Rings are of like width within this factor. */
+const ALIKE = 3
+const GOLDEN = 0.6180339887498949
+/** Rings beyond the outermost wall, where a flattened picture has none: as many for each doubling. */
+const RINGS_A_DOUBLING = 2
 
 /**
  * Integral of an intensity field over a disk of `radius` (cm, may be infinite). `mirrored`: the right half of the picture
  * equals the left one, and only one is traced.
  */
 export function integrateAperture(field: IntensityField, radius: number, tolerance: number, mirrored: boolean): PatchIntegral {
+  const { flattening } = field
   const edge = Math.min(radius, field.outermost)
-  const parts = mirrored ? PARTS : 2 * PARTS
-  const angles = Array.from({ length: parts + 1 }, (_, i) => flattened(-Math.PI / 2 + (i * Math.PI) / PARTS, field.flattening))
+  const round = unflattened(field)
+  const rings = ringsBetween(round, 0, edge)
+  const beyond = Math.ceil(RINGS_A_DOUBLING * Math.log2(1 / flattening))
+  for (let i = 1; i <= beyond; i++) rings.push(edge * flattening ** (-i / beyond))
   const patch = {
-    angles: () => angles,
-    rings: ringsBetween(field, 0, edge),
-    outline: (_cos: number, _sin: number, out: Float64Array) => {
+    parts: Array.from({ length: mirrored ? PARTS : 2 * PARTS }, (_, i) => slice(rings, i)).flat(),
+    outline: (cos: number, sin: number, out: Float64Array) => {
       out[0] = 0
-      out[1] = edge
+      out[1] = edge / Math.hypot(cos, flattening * sin)
     }
   }
-  const integral = integratePatch(field, patch, tolerance, 0)
+  const integral = integratePatch(round, patch, tolerance, 0)
+  const scale = (mirrored ? 2 : 1) * flattening
+  integral.error *= scale
+  for (let k = 0; k < integral.value.length; k++) integral.value[k] *= scale
   if (mirrored) {
-    integral.error *= 2
-    for (let k = 0; k < integral.value.length; k++) integral.value[k] *= 2
     // U and V are odd.
     integral.value.fill(0, Q + 1, FIRST_GROUP)
     integral.value.fill(0, RAY_VALUES + GROUPS)
@@ -34,8 +43,18 @@ export function integrateAperture(field: IntensityField, radius: number, toleran
   return integral
 }
 
-/** An angle drawn towards the x axis, as on a circle seen at a slant: the major axis of a tilted disk. */
-function flattened(angle: number, flattening: number): number {
-  const turns = Math.round(angle / Math.PI)
-  return turns * Math.PI + Math.atan(flattening * Math.tan(angle - turns * Math.PI))
+/**
+ * The sectors of a slice. What the rings do wrong would be much the same all the way round: those between rings of like width are
+ * shifted a little, differently in each slice, so that errors average out.
+ */
+function slice(rings: number[], index: number): Sector[] {
+  const shift = ((index * GOLDEN) % 1) - 0.5
+  const shifted = rings.map((ring, i) => {
+    if (i === 0 || i + 1 === rings.length) return ring
+    const below = ring - rings[i - 1]
+    const above = rings[i + 1] - ring
+    return Math.max(below, above) < ALIKE * Math.min(below, above) ? ring + shift * Math.min(below, above) : ring
+  })
+  const start = -Math.PI / 2 + (index * Math.PI) / PARTS
+  return shifted.slice(1).map((to, i) => ({ from: shifted[i], to, start, end: start + Math.PI / PARTS }))
 }

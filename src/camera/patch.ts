@@ -3,34 +3,42 @@ import { EMITTED, FIRST_GROUP, SCATTERED } from './ray-values.js'
 
 /** Regions of one patch at most. */
 const MOST_REGIONS = 20_000
-/** Share of the difference between four rays and the middle one that counts as the error of the four. */
+/** Share of the sum of all differences between four rays and the middle one that counts as error, beside their scatter. */
 const DOUBT = 0.1
-/** Share of the differences inside a region that counts as its error even when its sum seems right. */
-const DISTRUST = 0.002
+/** Share of the differences inside a region that is doubted even when its sum seems right. */
+const DISTRUST = 0.02
 /** Two-point Gauss nodes on [0, 1]. */
 const LOW = 0.5 - 0.5 / Math.sqrt(3)
 const HIGH = 0.5 + 0.5 / Math.sqrt(3)
+/** Two-point Gauss-Jacobi nodes and weights on [0, 1] for the weight 2 t (the roots of t^2 - 6/5 t + 3/10): exact up to t^3. */
+const OUTER = 0.6 - Math.sqrt(0.06)
+const INNER = 0.6 + Math.sqrt(0.06)
+const OUTER_WEIGHT = (INNER - 2 / 3) / (INNER - OUTER)
 
 /** A part of the picture in polar coordinates about its centre. */
 export interface Patch {
-  /**
-   * Angles between which the part between two radii is first divided, rad, increasing. The outline is smooth between them, and
-   * does not cross either radius.
-   */
-  angles: (from: number, to: number) => number[]
-  /** Radii between which it is first divided, cm, increasing: rays just inside a wall see the square root of the distance. */
-  rings: number[]
+  /** Parts in which it is first divided. The outline is smooth within each of them, and crosses neither radius. */
+  parts: Sector[]
   /** Radii where the patch begins and ends in a direction, into `out`. */
   outline: (cos: number, sin: number, out: Float64Array) => void
 }
 
-interface Region {
+/** What lies between two radii, cm, and two angles, rad. Rays just inside a wall see the square root of the distance to it. */
+export interface Sector {
   from: number
   to: number
   start: number
   end: number
+}
+
+interface Region extends Sector {
   value: Float64Array
-  error: number
+  /** Its four rays less the middle one. */
+  difference: number
+  /** Size of that difference, and a share of what the rays differ among themselves. */
+  doubt: number
+  /** It varies more inwards than round. */
+  inwards: boolean
 }
 
 /** An integral over a part of the picture, and the estimated error of placing the rays. */
@@ -42,16 +50,18 @@ export interface PatchIntegral {
 
 /**
  * Integral of an intensity field over a patch. Each region between two rings and two angles is summed at two by two Gauss
- * points, in the angle and in t with area ~ 1 - t^2 inwards from the outer ring, which is exact for the square roots of chords
- * that end there; the one whose sum differs most from the ray through its middle is divided in both directions, until all
- * errors together are below `tolerance` of the sum or of `floor` (intensity x cm2).
+ * points, in the angle and in t with area ~ 1 - t^2 inwards from the outer ring, which is exact for the square roots of chords that
+ * end there; the one whose sum differs most from the ray through its middle is halved in the direction in which it varies
+ * more, until the error is below `tolerance` of the sum or of `floor` (intensity x cm2). Where intensity has steps, as cells make
+ * them, these differences are errors of either sign: they add up in squares. A share of their plain sum is for what is smooth.
  */
 export function integratePatch(field: IntensityField, patch: Patch, tolerance: number, floor: number): PatchIntegral {
-  const { angles, rings, outline } = patch
+  const { parts, outline } = patch
   const heap: Region[] = []
   const { size } = field
   const ray = new Float64Array(size)
   const edges = new Float64Array(2)
+  const lights = new Float64Array(4)
 
   /** One ray of a region, t inwards and v of the way round; returns the area it stands for when it has all the weight. */
   const sample = (from: number, to: number, start: number, end: number, t: number, v: number, withGroups: boolean): number => {
@@ -67,66 +77,59 @@ export function integratePatch(field: IntensityField, patch: Patch, tolerance: n
     field.sample(b * cos, b * sin, ray, withGroups)
     return 0.5 * span * (end - start)
   }
-  const measure = (from: number, to: number, start: number, end: number): Region => {
+  const measure = ({ from, to, start, end }: Sector): Region => {
     const middleArea = sample(from, to, start, end, Math.SQRT1_2, 0.5, true)
     const middle = middleArea > 0 ? middleArea * (ray[EMITTED] + ray[SCATTERED]) : 0
     const value = new Float64Array(size)
     // The photon noise needs no such care as the value: the middle ray stands for the region.
     if (middleArea > 0) for (let k = FIRST_GROUP; k < size; k++) value[k] = middleArea * ray[k]
-    let low = Number.POSITIVE_INFINITY
-    let high = 0
     for (let q = 0; q < 4; q++) {
-      const t = q % 2 === 0 ? LOW : HIGH
-      const area = sample(from, to, start, end, t, q < 2 ? LOW : HIGH, false)
-      let total = 0
-      if (area > 0) {
-        total = area * (ray[EMITTED] + ray[SCATTERED])
-        for (let k = 0; k < FIRST_GROUP; k++) value[k] += 0.5 * t * area * ray[k]
-      }
-      low = Math.min(low, total)
-      high = Math.max(high, total)
+      const area = sample(from, to, start, end, q % 2 === 0 ? OUTER : INNER, q < 2 ? LOW : HIGH, false)
+      const weight = 0.5 * area * (q % 2 === 0 ? OUTER_WEIGHT : 1 - OUTER_WEIGHT)
+      lights[q] = area * (ray[EMITTED] + ray[SCATTERED])
+      for (let k = 0; k < FIRST_GROUP; k++) value[k] += weight * ray[k]
     }
-    const error = DOUBT * Math.abs(value[EMITTED] + value[SCATTERED] - middle) + DISTRUST * (high - low)
-    return { from, to, start, end, value, error }
+    const [a, b, c, d] = lights
+    const difference = value[EMITTED] + value[SCATTERED] - middle
+    const doubt = Math.abs(difference) + DISTRUST * (Math.max(a, b, c, d) - Math.min(a, b, c, d))
+    const inwards = Math.abs(a - b) + Math.abs(c - d) >= Math.abs(a - c) + Math.abs(b - d)
+    return { from, to, start, end, value, difference, doubt, inwards }
   }
 
   let total = 0
-  let error = 0
+  let differences = 0
+  let squares = 0
+  const count = ({ value, difference, doubt }: Region, sign: number) => {
+    total += sign * (value[EMITTED] + value[SCATTERED])
+    differences += sign * difference
+    squares += sign * doubt * doubt
+  }
   const insert = (region: Region) => {
-    total += region.value[EMITTED] + region.value[SCATTERED]
-    error += region.error
+    count(region, 1)
     push(heap, region)
   }
-  for (let i = 0; i + 1 < rings.length; i++) {
-    const divisions = angles(rings[i], rings[i + 1])
-    for (let j = 0; j + 1 < divisions.length; j++) insert(measure(rings[i], rings[i + 1], divisions[j], divisions[j + 1]))
+  const error = () => Math.sqrt(Math.max(0, squares)) + DOUBT * Math.abs(differences)
+  for (const part of parts) insert(measure(part))
+  while (error() > tolerance * Math.max(total, floor) && heap.length < MOST_REGIONS) {
+    const region = pop(heap)
+    const { from, to, start, end, inwards } = region
+    count(region, -1)
+    const half = inwards ? Math.sqrt(0.5 * (from * from + to * to)) : 0.5 * (start + end)
+    insert(measure(inwards ? { from, to: half, start, end } : { from, to, start, end: half }))
+    insert(measure(inwards ? { from: half, to, start, end } : { from, to, start: half, end }))
   }
-  while (error > tolerance * Math.max(total, floor) && heap.length < MOST_REGIONS) {
-    const { from, to, start, end, value, error: gone } = pop(heap)
-    total -= value[EMITTED] + value[SCATTERED]
-    error -= gone
-    const half = Math.sqrt(0.5 * (from * from + to * to))
-    const angle = 0.5 * (start + end)
-    insert(measure(from, half, start, angle))
-    insert(measure(from, half, angle, end))
-    insert(measure(half, to, start, angle))
-    insert(measure(half, to, angle, end))
-  }
-  const integral = { value: new Float64Array(size), error: 0 }
-  for (const region of heap) {
-    for (let k = 0; k < size; k++) integral.value[k] += region.value[k]
-    integral.error += region.error
-  }
+  const integral = { value: new Float64Array(size), error: error() }
+  for (const { value } of heap) for (let k = 0; k < size; k++) integral.value[k] += value[k]
   return integral
 }
 
-/** Binary heap with the largest error on top. */
+/** Binary heap with the largest doubt on top. */
 function push(heap: Region[], region: Region): void {
   let i = heap.length
   heap.push(region)
   while (i > 0) {
     const parent = (i - 1) >> 1
-    if (heap[parent].error >= region.error) break
+    if (heap[parent].doubt >= region.doubt) break
     heap[i] = heap[parent]
     i = parent
   }
@@ -142,8 +145,8 @@ function pop(heap: Region[]): Region {
   for (;;) {
     let child = 2 * i + 1
     if (child >= size) break
-    if (child + 1 < size && heap[child + 1].error > heap[child].error) child++
-    if (heap[child].error <= last.error) break
+    if (child + 1 < size && heap[child + 1].doubt > heap[child].doubt) child++
+    if (heap[child].doubt <= last.doubt) break
     heap[i] = heap[child]
     i = child
   }

@@ -1,8 +1,9 @@
 import { standardError } from '../math/stats.js'
 import type { IntensityField } from './field.js'
-import { integratePatch, type Patch } from './patch.js'
+import { integratePatch, type Patch, type Sector } from './patch.js'
 import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray-values.js'
 import { ringsBetween, wallsBetween } from './rings.js'
+import { unflattened } from './unflattened.js'
 
 /** A pixel seen from the centre under more than this angle, rad, is integrated in polar coordinates. */
 const WIDE = 0.3
@@ -41,6 +42,8 @@ export class PixelIntegrator {
   private readonly sums: Float64Array
   /** Light of the four quarters at each level. */
   private readonly lights = new Float64Array(4 * (DEEPEST + 1))
+  /** The field in which patches are divided. */
+  private readonly round: IntensityField
   private allowed = 0
   /** Mean light of the corners of the pixel; NaN where they are not looked at. */
   private corners = 0
@@ -59,6 +62,7 @@ export class PixelIntegrator {
     this.middle = new Float64Array(field.size)
     this.ray = new Float64Array(field.size)
     this.sums = new Float64Array(FIRST_GROUP * (DEEPEST + 1))
+    this.round = unflattened(field)
   }
 
   /** Integrates over the rectangle about (x, y), cm. */
@@ -71,8 +75,8 @@ export class PixelIntegrator {
     if (nearX * nearX + nearY * nearY >= field.outermost ** 2) return
     const patch = this.patchOf(x, y, width, height)
     if (patch) {
-      const area = width * height
-      const { value, error } = integratePatch(field, patch, tolerance, this.floor * area)
+      const area = (width * height) / field.flattening
+      const { value, error } = integratePatch(this.round, patch, tolerance, this.floor * area)
       for (let k = 0; k < field.size; k++) mean[k] = value[k] / area
       this.error = error / area
       return
@@ -95,18 +99,17 @@ export class PixelIntegrator {
 
   /** The pixel as a patch, or undefined where plain squares do. */
   private patchOf(x: number, y: number, width: number, height: number): Patch | undefined {
-    const { field } = this
+    const { round } = this
     const left = x - 0.5 * width
     const right = x + 0.5 * width
-    const low = y - 0.5 * height
-    const high = y + 0.5 * height
+    const low = (y - 0.5 * height) / this.field.flattening
+    const high = (y + 0.5 * height) / this.field.flattening
     const nearest = Math.hypot(Math.max(0, left, -right), Math.max(0, low, -high))
     const farthest = Math.hypot(Math.max(-left, right), Math.max(-low, high))
     const wide = Math.max(right - left, high - low) > WIDE * nearest
-    if (!wide && wallsBetween(field, nearest, farthest) <= CROWDED) return undefined
+    if (!wide && wallsBetween(round, nearest, farthest) <= CROWDED) return undefined
     return {
-      angles: rectangleAngles(left, right, low, high),
-      rings: ringsBetween(field, nearest, farthest),
+      parts: rectangleParts(left, right, low, high, ringsBetween(round, nearest, farthest)),
       outline: (cos, sin, out) => {
         // Where the ray from the centre is inside both strips of the rectangle.
         const x1 = cos === 0 ? (left <= 0 && right >= 0 ? -Infinity : Infinity) : left / cos
@@ -168,10 +171,10 @@ export class PixelIntegrator {
 }
 
 /**
- * For the part of a rectangle between two radii, the angles under which its corners and its crossings with those radii are seen
- * from the origin, with further ones so that none are far apart.
+ * Parts of a rectangle between rings: divided at the angles under which its corners and its crossings with those rings are seen from
+ * the origin, and further so that none is wide.
  */
-function rectangleAngles(left: number, right: number, low: number, high: number): Patch['angles'] {
+function rectangleParts(left: number, right: number, low: number, high: number, rings: number[]): Sector[] {
   const around = left < 0 && right > 0 && low < 0 && high > 0
   const middle = around ? 0 : Math.atan2(low + high, left + right)
   const turn = (x: number, y: number) => {
@@ -180,7 +183,8 @@ function rectangleAngles(left: number, right: number, low: number, high: number)
   }
   const corners: number[] = []
   for (const x of [left, right]) for (const y of [low, high]) if (x !== 0 || y !== 0) corners.push(turn(x, y))
-  return (from, to) => {
+  return rings.slice(1).flatMap((to, i) => {
+    const from = rings[i]
     const turns = [...corners]
     for (const radius of [from, to]) {
       for (const x of [left, right]) {
@@ -194,12 +198,15 @@ function rectangleAngles(left: number, right: number, low: number, high: number)
     }
     turns.sort((a, b) => a - b)
     if (around) turns.push(turns[0] + 2 * Math.PI)
-    const angles = [turns[0] + middle]
-    for (let i = 1; i < turns.length; i++) {
-      const span = turns[i] - turns[i - 1]
-      const parts = Math.ceil(span / FAN)
-      for (let k = 1; k <= parts; k++) angles.push(turns[i - 1] + (k * span) / parts + middle)
+    const parts: Sector[] = []
+    for (let k = 1; k < turns.length; k++) {
+      const first = turns[k - 1] + middle
+      const span = turns[k] - turns[k - 1]
+      const count = Math.ceil(span / FAN)
+      for (let j = 0; j < count; j++) {
+        parts.push({ from, to, start: first + (j * span) / count, end: first + ((j + 1) * span) / count })
+      }
     }
-    return angles
-  }
+    return parts
+  })
 }

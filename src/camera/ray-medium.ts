@@ -1,5 +1,7 @@
-import type { ScatteringTables } from '../dust/scattering-tables.js'
+import { henyeyGreenstein } from '../dust/phase-function.js'
+import { peakOf, type ScatteringTables } from '../dust/scattering-tables.js'
 import type { SphericalWalls } from '../grid/geometry.js'
+import { allocateShared } from '../math/allocate.js'
 import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
 import { largestStar } from '../solve/scatter-medium.js'
@@ -41,6 +43,8 @@ export interface Starlight {
   scattering: Float64Array
   /** The laws as tables, where not all are Henyey-Greenstein. */
   tables?: ScatteringTables
+  /** By cell: the most that light scattered once can emit there in any direction, erg/s/cm3/Hz/sr. */
+  brightest: Float64Array
 }
 
 /** Puts together what rays need; without `scattered` only first scatterings are seen. */
@@ -66,9 +70,30 @@ export function rayMedium(model: Model, light: DustLight, scattered: ScatteredLi
         opticalDepth: light.opticalDepth,
         asymmetry: light.asymmetry,
         scattering: light.scattering,
-        ...(light.tables && { tables: light.tables })
+        ...(light.tables && { tables: light.tables }),
+        brightest: brightestScattering(model, light, luminosity)
       }
     }),
     starRadius: largestStar(model)
   }
+}
+
+/** The star's light at the inner wall of each cell, scattered in the direction that the law favours most. */
+function brightestScattering({ walls, cells }: Model, light: DustLight, luminosity: number): Float64Array {
+  const { asymmetry, scattering, opticalDepth, tables } = light
+  const nr = walls.r.length - 1
+  const columns = (walls.cosTheta.length - 1) * (walls.phi.length - 1)
+  const brightest = new Float64Array(allocateShared(8 * cells))
+  const peaks = Array.from(asymmetry, (g, law) => (tables ? peakOf(tables, law) : henyeyGreenstein(g, Math.sign(g))))
+  for (let cell = 0; cell < cells; cell++) {
+    const column = cell === 0 ? 0 : (cell - 1) % columns
+    const ir = cell === 0 ? 0 : 1 + Math.floor((cell - 1) / columns)
+    let most = 0
+    peaks.forEach((peak, law) => {
+      most += peak * scattering[law * cells + cell]
+    })
+    const dimming = Math.exp(-opticalDepth[column * (nr + 1) + ir])
+    if (most > 0) brightest[cell] = (most * luminosity * dimming) / (4 * Math.PI * walls.r[ir] ** 2)
+  }
+  return brightest
 }

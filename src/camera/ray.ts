@@ -10,6 +10,8 @@ import type { ViewBasis } from './view.js'
 
 /** Beyond this optical depth nothing is seen. */
 const OPAQUE = 40
+/** First scatterings in a cell are left out where they cannot add this share to what the ray has gathered. */
+const NEGLIGIBLE = 1e-6
 /** A path longer than this share of its distance to the star is summed over the angle at the star. */
 const STEEP = 0.5
 /** Largest steps of that angle (rad) and of optical depth in the two-point sums over first scatterings, and most steps a cell. */
@@ -74,8 +76,10 @@ export class RayIntegrator {
     if (!entered) return
     const starAt = walk.b2 < starRadius * starRadius ? -Math.sqrt(starRadius * starRadius - walk.b2) : Number.POSITIVE_INFINITY
     const hasEmissionGroups = withGroups && emissionGroups.length > 0
+    const brightest = medium.starlight?.brightest
     let depth = 0
     let atStar = false
+    let transmission = 1
     do {
       const cell = walk.cell
       const start = walk.s
@@ -85,7 +89,8 @@ export class RayIntegrator {
       const chi = extinction[cell]
       if (chi > 0 && step > 0) {
         const thickness = chi * step
-        const weight = (Math.exp(-depth) * -Math.expm1(-thickness)) / chi
+        const absorbed = -Math.expm1(-thickness)
+        const weight = (transmission * absorbed) / chi
         out[EMITTED] += weight * emission[cell]
         if (hasEmissionGroups) for (let g = 0; g < GROUPS; g++) out[FIRST_GROUP + g] += weight * emissionGroups[cell * GROUPS + g]
         if (slots > 0) {
@@ -119,8 +124,10 @@ export class RayIntegrator {
           }
           if (stokes) stokes.add(index, share, side, weight, out, withGroups)
         }
-        if (medium.starlight) out[SCATTERED] += this.firstScatterings(start, step, chi, depth)
+        if (brightest && brightest[cell] * weight > NEGLIGIBLE * (out[EMITTED] + out[SCATTERED]))
+          out[SCATTERED] += this.firstScatterings(start, step, chi, depth)
         depth += thickness
+        transmission *= 1 - absorbed
       }
     } while (!atStar && depth < OPAQUE && walk.cross() >= 0)
     if (stokes) stokes.finish(x, y, this.radial, out, withGroups)

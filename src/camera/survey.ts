@@ -2,6 +2,7 @@ import { medianOverCountedBulk, standardError } from '../math/stats.js'
 import type { PixelFrame } from './direct.js'
 import type { IntensityField } from './field.js'
 import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray-values.js'
+import { unflattened } from './unflattened.js'
 
 /** Rings and directions of a quick look at a picture. */
 const PICTURE_RINGS = 24
@@ -17,24 +18,32 @@ export interface Survey {
 }
 
 /** Rings and directions of a quick look at an aperture. */
-const RINGS = 40
+const RINGS = 48
 const DIRECTIONS = 8
+/** It begins at this share of the radius of the innermost dust: at a slant one sees the rim from within. */
+const CAVITY = 0.5
 
 /** A quick look at an aperture of `radius` (cm): its integral to some per cent, the numbers of a ray x cm2. */
 export function surveyAperture(field: IntensityField, radius: number): Float64Array {
-  const ray = new Float64Array(field.size)
-  const sum = new Float64Array(field.size)
+  const { flattening, size } = field
+  const round = unflattened(field)
+  const ray = new Float64Array(size)
+  const sum = new Float64Array(size)
   const edge = Math.min(radius, field.outermost)
-  const ratio = (edge / field.innermost) ** (1 / RINGS)
+  const nearest = Math.min(CAVITY * field.innermost, edge)
+  const ratio = (edge / flattening / nearest) ** (1 / RINGS)
   for (let i = -1; i < RINGS; i++) {
-    const from = i < 0 ? 0 : field.innermost * ratio ** i
-    const to = field.innermost * ratio ** (i + 1)
-    if (!(to > from)) continue
+    const from = i < 0 ? 0 : nearest * ratio ** i
+    const to = nearest * ratio ** (i + 1)
     const b = Math.sqrt(0.5 * (from * from + to * to))
+    const weight = (Math.PI * (to * to - from * from) * flattening) / DIRECTIONS
     for (let k = 0; k < DIRECTIONS; k++) {
       const angle = (2 * Math.PI * (k + (i % 2 === 0 ? 0.25 : 0.75))) / DIRECTIONS
-      field.sample(b * Math.cos(angle), b * Math.sin(angle), ray, true)
-      for (let j = 0; j < field.size; j++) sum[j] += (Math.PI * (to * to - from * from) * ray[j]) / DIRECTIONS
+      const x = b * Math.cos(angle)
+      const y = b * Math.sin(angle)
+      if (Math.hypot(x, y * flattening) > edge) continue
+      round.sample(x, y, ray, true)
+      for (let j = 0; j < size; j++) sum[j] += weight * ray[j]
     }
   }
   return sum

@@ -50,6 +50,14 @@ export function elementAt({ elements }: ScatteringTables, law: number, element: 
   return elements[at] + (place - node) * (elements[at + ELEMENTS] - elements[at])
 }
 
+/** The largest s11 of a law, per sr. */
+export function peakOf({ elements }: ScatteringTables, law: number): number {
+  let peak = 0
+  for (let node = 0; node <= TABLE_STEPS; node++)
+    peak = Math.max(peak, elements[(law * (TABLE_STEPS + 1) + node) * ELEMENTS + S11])
+  return peak
+}
+
 /** Place of a scattering angle drawn from a law: exactly from the interpolation that `elementAt` gives. */
 export function drawPlace({ elements, steps }: ScatteringTables, law: number, uniform: () => number): number {
   const step = sampleBin(steps, law, uniform())
