@@ -1,3 +1,5 @@
+import { standardError } from '../math/stats.js'
+import { GROUPS } from '../solve/groups.js'
 import type { IntensityField } from './field.js'
 import { EMITTED, FIRST_GROUP, SCATTERED } from './ray-values.js'
 
@@ -7,6 +9,8 @@ const MOST_REGIONS = 20_000
 const DOUBT = 0.1
 /** Share of the differences inside a region that is doubted even when its sum seems right. */
 const DISTRUST = 0.02
+/** The error need not be smaller than this share of the photon noise. */
+const NOISE_SHARE = 0.2
 /** Two-point Gauss nodes on [0, 1]. */
 const LOW = 0.5 - 0.5 / Math.sqrt(3)
 const HIGH = 0.5 + 0.5 / Math.sqrt(3)
@@ -52,7 +56,7 @@ export interface PatchIntegral {
  * Integral of an intensity field over a patch. Each region between two rings and two angles is summed at two by two Gauss
  * points, in the angle and in t with area ~ 1 - t^2 inwards from the outer ring, which is exact for the square roots of chords that
  * end there; the one whose sum differs most from the ray through its middle is halved in the direction in which it varies
- * more, until the error is below `tolerance` of the sum or of `floor` (intensity x cm2). Where intensity has steps, as cells make
+ * more, until the error is below `tolerance` of the sum or of `floor` (intensity x cm2), or well below the photon noise. Where intensity has steps, as cells make
  * them, these differences are errors of either sign: they add up in squares. A share of their plain sum is for what is smooth.
  */
 export function integratePatch(field: IntensityField, patch: Patch, tolerance: number, floor: number): PatchIntegral {
@@ -99,10 +103,12 @@ export function integratePatch(field: IntensityField, patch: Patch, tolerance: n
   let total = 0
   let differences = 0
   let squares = 0
+  const groups = new Float64Array(GROUPS)
   const count = ({ value, difference, doubt }: Region, sign: number) => {
     total += sign * (value[EMITTED] + value[SCATTERED])
     differences += sign * difference
     squares += sign * doubt * doubt
+    for (let g = 0; g < GROUPS; g++) groups[g] += sign * value[FIRST_GROUP + g]
   }
   const insert = (region: Region) => {
     count(region, 1)
@@ -110,7 +116,8 @@ export function integratePatch(field: IntensityField, patch: Patch, tolerance: n
   }
   const error = () => Math.sqrt(Math.max(0, squares)) + DOUBT * Math.abs(differences)
   for (const part of parts) insert(measure(part))
-  while (error() > tolerance * Math.max(total, floor) && heap.length < MOST_REGIONS) {
+  const allowed = () => Math.max(tolerance * Math.max(total, floor), NOISE_SHARE * standardError(groups))
+  while (error() > allowed() && heap.length < MOST_REGIONS) {
     const region = pop(heap)
     const { from, to, start, end, inwards } = region
     count(region, -1)

@@ -10,6 +10,8 @@ import type { ViewBasis } from './view.js'
 
 /** Beyond this optical depth nothing is seen. */
 const OPAQUE = 40
+/** Below this optical depth two terms of the exponential do. */
+const THIN = 1e-4
 /** First scatterings in a cell are left out where they cannot add this share to what the ray has gathered. */
 const NEGLIGIBLE = 1e-6
 /** A path longer than this share of its distance to the star is summed over the angle at the star. */
@@ -89,7 +91,8 @@ export class RayIntegrator {
       const chi = extinction[cell]
       if (chi > 0 && step > 0) {
         const thickness = chi * step
-        const absorbed = -Math.expm1(-thickness)
+        // To 2e-9 where the cell is thin, as most are.
+        const absorbed = thickness < THIN ? thickness * (1 - 0.5 * thickness) : -Math.expm1(-thickness)
         const weight = (transmission * absorbed) / chi
         out[EMITTED] += weight * emission[cell]
         if (hasEmissionGroups) for (let g = 0; g < GROUPS; g++) out[FIRST_GROUP + g] += weight * emissionGroups[cell * GROUPS + g]
@@ -119,8 +122,14 @@ export class RayIntegrator {
           out[SCATTERED] +=
             weight * (share > 0 ? scattered[index] + share * (scattered[index + 1] - scattered[index]) : scattered[index])
           if (withGroups) {
-            const nearest = (share > 0.5 ? index + 1 : index) * GROUPS
-            for (let g = 0; g < GROUPS; g++) out[FIRST_GROUP + g] += weight * scatteredGroups[nearest + g]
+            const near = weight * (1 - share)
+            const far = weight * share
+            const at = index * GROUPS
+            // Where the share is none there may be no next bin.
+            if (far === 0) for (let g = 0; g < GROUPS; g++) out[FIRST_GROUP + g] += near * scatteredGroups[at + g]
+            else
+              for (let g = 0; g < GROUPS; g++)
+                out[FIRST_GROUP + g] += near * scatteredGroups[at + g] + far * scatteredGroups[at + GROUPS + g]
           }
           if (stokes) stokes.add(index, share, side, weight, out, withGroups)
         }
