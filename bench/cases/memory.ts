@@ -24,7 +24,7 @@ interface Size {
 
 function sizeOf(text: string, pixels?: number): Size {
   const { model } = lightDust(text)
-  return { text, count: pixels ?? model.cells, stated: totalMemory(memoryEstimate(model), 1) }
+  return { text, count: pixels ?? model.cells, stated: totalMemory(memoryEstimate(model, 1), 1) }
 }
 
 const pairs = (): Pair[] => [

@@ -86,7 +86,7 @@ export async function checkScene(
       azimuthal: walls.phi.length - 1,
       reason
     },
-    memoryBytes: totalMemory(memoryEstimate(model), workers),
+    memoryBytes: totalMemory(memoryEstimate(model, workers), workers),
     workers,
     precision: scene.effort.precision,
     forecast: expected,

@@ -7,7 +7,9 @@ import type { DustTemperatures } from '../solve/temperatures.js'
 import type { Ledger } from '../workers/ledger.js'
 import type { WorkerPool } from '../workers/pool.js'
 import type { Estimator } from './estimator.js'
+import { inLanes } from './in-lanes.js'
 import { lightJob } from './light-job.js'
+import { wavelengthsAbreast } from './memory.js'
 import { type RunProgress, Stopped } from './progress.js'
 import { addTime, type PhaseTime, stopwatch } from './stopwatch.js'
 import { emptyProducts, putValues, valuesOf, type WantedValues } from './wanted.js'
@@ -49,7 +51,7 @@ export interface LightOptions {
   packetsFrom?: PacketSource
 }
 
-/** Images and spectra, wavelength by wavelength, from the ledger as far as it goes. Throws WorkerFailure or Stopped. */
+/** Images and spectra, a few wavelengths at a time, from the ledger as far as it goes. Throws WorkerFailure or Stopped. */
 export async function lightStage(
   model: Model,
   dust: DustTemperatures,
@@ -62,44 +64,53 @@ export async function lightStage(
   const packetsFrom = options.packetsFrom ?? play
   const { images, spectra, wantedAt } = emptyProducts(model.scene, estimator)
   const wavelengths = observedWavelengths(model.scene)
-  const lightPackets: LightPackets[] = []
+  const lightPackets: LightPackets[] = new Array(wavelengths.length)
+  /** The first wavelength that is not done: progress is that of this one. */
+  let front = 0
+  const done = (index: number, packets: LightPackets) => {
+    lightPackets[index] = packets
+    while (lightPackets[front]) front++
+  }
   const clock = stopwatch()
   let time: PhaseTime = { wallSeconds: 0, cpuSeconds: 0 }
-  for (const [index, wavelength] of wavelengths.entries()) {
+  const observe = async (wavelength: number, index: number): Promise<void> => {
     const wanted = wantedAt(wavelength)
     const names = lightPieces(index)
     const before = ledger.take(names.done) as DoneLight | undefined
     if (before) {
       putValues(wanted, before.values)
-      lightPackets.push({ wavelength, packets: before.packets, error: before.error })
+      done(index, { wavelength, packets: before.packets, error: before.error })
       time = addTime(time, before.time)
-      continue
+      return
     }
-    clock()
+    const report = (progress: Omit<RunProgress, 'wavelength' | 'index' | 'count'>) => {
+      if (index === front) onProgress({ wavelength, index, count: wavelengths.length, ...progress })
+    }
     const job = lightJob(model, dustLight(model, dust, wavelength), estimator, wanted)
-    const at = { wavelength, index, count: wavelengths.length }
     const found = job.request
-      ? await packetsFrom(job.request, index, (round) => onProgress({ stage: 'light', ...at, ...round, of: round.packets }))
+      ? await packetsFrom(job.request, index, (round) => report({ stage: 'light', ...round, of: round.packets }))
       : { sums: undefined, packets: 0, error: 0 }
     if (found === 'stopped') throw new Stopped()
     const complete = await job.develop(found.sums, {
       pool,
       ledger,
       name: names.pictures,
-      onDone: (observer, done, of) => onProgress({ stage: 'pictures', ...at, observer, done, of, round: 0, error: Number.NaN }),
+      onDone: (observer, rows, of) => report({ stage: 'pictures', observer, done: rows, of, round: 0, error: Number.NaN }),
       stop
     })
     if (!complete || stop?.aborted) throw new Stopped()
     const { packets, error } = found
+    // What has passed since the one before was done.
     const took = clock()
     time = addTime(time, took)
-    lightPackets.push({ wavelength, packets, error })
+    done(index, { wavelength, packets, error })
     // Pieces must not pile up faster than they are written.
     await ledger.settle()
     ledger.keep(names.done, { values: valuesOf(wanted), packets, error, time: took } satisfies DoneLight)
     ledger.forget(names.packets)
     ledger.forget(names.pictures)
   }
+  await inLanes(wavelengths, wavelengthsAbreast(model, pool.size), observe)
   return { images, spectra, lightPackets, time }
 }
 

@@ -13,6 +13,9 @@ const WAITING = 4
 /** Wavelength bins times rows of a table of dust emission, with its guide. */
 const TABLE_BYTES = 5e6
 
+/** Wavelengths that are under way at a time hold no more than this together, bytes, unless one alone does. */
+const ABREAST_BYTES = 1e9
+
 /** What the estimate needs to know of a model: the cells need not be filled yet. */
 export type Sizes = Pick<Model, 'scene' | 'dimensions' | 'cells'>
 
@@ -26,17 +29,13 @@ export interface MemoryEstimate {
   images: number
 }
 
-export function memoryEstimate(sizes: Sizes): MemoryEstimate {
-  const { cells, dimensions, scene } = sizes
+export function memoryEstimate(sizes: Sizes, workers: number): MemoryEstimate {
+  const { cells, scene } = sizes
   const components = scene.dust.length
-  const observers = Math.max(0, ...observedWavelengths(scene).map((wavelength) => observersAt(sizes, wavelength)))
-  const [bins, slots] = { 1: [FLIGHT_BINS, ANGLE_NODES], 2: [AZIMUTH_BINS, AZIMUTH_BINS], 3: [1, 1] }[dimensions]
-  const seen = dimensions === 1 ? Math.min(1, observers) : observers
-  // Stokes parameters: I and Q in one dimension, else all four; rays need them apart.
-  const parts = isPolarised(scene) ? (dimensions === 1 ? 2 : 4) : 1
+  const { bins, seen, parts } = seenLight(sizes)
   const tally = 8 * cells * Math.max(components, seen * bins * parts)
   const heat = components * (TABLE_BYTES + cells * 8 * (6 + 2 * GROUPS + GROUPS / 2))
-  const light = cells * seen * parts * (8 * bins * 2 * GROUPS + slots * (8 + 4 * GROUPS))
+  const light = lightBytes(sizes)
   const sizesOf = scene.cameras.map(({ pixels, wavelengths }) => [pixels[0] * pixels[1], wavelengths.length])
   const values = sizesOf.reduce((sum, [pixels, count]) => sum + pixels * count, 0)
   const largest = Math.max(0, ...sizesOf.map(([pixels, count]) => pixels * count))
@@ -44,10 +43,32 @@ export function memoryEstimate(sizes: Sizes): MemoryEstimate {
   return {
     program: PROGRAM_BYTES,
     worker: WORKER_BYTES + WAITING * tally,
-    cells: Math.max(heat, light) + 8 * cells * (1 + components),
+    cells: Math.max(heat, light * wavelengthsAbreast(sizes, workers)) + 8 * cells * (1 + components),
     // Five planes, eleven with polarisation; written out once more, and joined.
     images: values * 8 * planes + largest * 8 * (2 * planes + 2)
   }
+}
+
+/** How many wavelengths so many workers go on with at a time: while packets of one fly, rays of another are traced. */
+export function wavelengthsAbreast(sizes: Sizes, workers: number): number {
+  return workers === 1 ? 1 : Math.max(1, Math.min(workers + 1, Math.floor(ABREAST_BYTES / lightBytes(sizes))))
+}
+
+/** Sums of packets and scattered light of a wavelength, bytes. */
+function lightBytes(sizes: Sizes): number {
+  const { bins, slots, seen, parts } = seenLight(sizes)
+  return Math.max(1, sizes.cells * seen * parts * (8 * bins * 2 * GROUPS + slots * (8 + 4 * GROUPS)))
+}
+
+/** Values of the tally and of the scattered light for each cell and observer, the most observers of a wavelength, Stokes parameters. */
+function seenLight(sizes: Sizes): { bins: number; slots: number; seen: number; parts: number } {
+  const { dimensions, scene } = sizes
+  const observers = Math.max(0, ...observedWavelengths(scene).map((wavelength) => observersAt(sizes, wavelength)))
+  const [bins, slots] = { 1: [FLIGHT_BINS, ANGLE_NODES], 2: [AZIMUTH_BINS, AZIMUTH_BINS], 3: [1, 1] }[dimensions]
+  const seen = dimensions === 1 ? Math.min(1, observers) : observers
+  // Stokes parameters: I and Q in one dimension, else all four; rays need them apart.
+  const parts = isPolarised(scene) ? (dimensions === 1 ? 2 : 4) : 1
+  return { bins, slots, seen, parts }
 }
 
 /** The whole of an estimate with so many workers, bytes. */

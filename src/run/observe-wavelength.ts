@@ -91,17 +91,17 @@ async function integralOf(
   data: FieldData,
   radius: number,
   tolerance: number,
-  { pool, stop }: Studio
+  { pool, name, stop }: Studio
 ): Promise<PatchIntegral | undefined> {
   if (data.kind === 'profile') return apertureOf(openField(data), radius, tolerance, true)
   let integral: PatchIntegral | undefined
-  pool.share('field', data)
-  const tasks = [{ name: 'aperture', input: { radius, tolerance, mirrored: mirrored(model) } }]
+  pool.share('field', data, name)
+  const tasks = [{ name: 'aperture', scope: name, input: { radius, tolerance, mirrored: mirrored(model) } }]
   const take = (output: unknown) => {
     integral = output as PatchIntegral
   }
   await pool.run(tasks, take, stop)
-  pool.forget('field')
+  pool.forget('field', name)
   return integral
 }
 
@@ -150,7 +150,11 @@ async function takePicture(model: Model, work: PictureWork, { pool, ledger, name
   const tasks = []
   for (let from = 0; from < frame.height; from += ROWS_A_TASK) {
     const to = Math.min(frame.height, from + ROWS_A_TASK)
-    tasks.push({ name: 'rows', input: { frame, from, to, tolerance, floor, mirrored: mirrored(model) && spec.view.roll === 0 } })
+    tasks.push({
+      name: 'rows',
+      scope: name,
+      input: { frame, from, to, tolerance, floor, mirrored: mirrored(model) && spec.view.roll === 0 }
+    })
   }
   const take = (output: unknown, index: number) => {
     const rows = output as PictureRows
@@ -163,8 +167,8 @@ async function takePicture(model: Model, work: PictureWork, { pool, ledger, name
     progress.tasks = index + 1
     onDone(Math.min(frame.height, progress.tasks * ROWS_A_TASK), frame.height)
   }
-  pool.share('field', data)
+  pool.share('field', data, name)
   const complete = await runKept({ tasks, done: progress.tasks, take, name, piece }, pool, ledger, stop)
-  pool.forget('field')
+  pool.forget('field', name)
   return complete
 }

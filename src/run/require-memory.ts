@@ -8,7 +8,7 @@ export class MemoryError extends Error {
 
 /** Refuses a run that is expected to need more than `limit` bytes; by default what the machine, or its container, has. */
 export function requireMemory(sizes: Sizes, workers: number, limit = machineMemory()): void {
-  const estimate = memoryEstimate(sizes)
+  const estimate = memoryEstimate(sizes, workers)
   const needed = totalMemory(estimate, workers)
   if (needed <= limit) return
   const { worker, cells, images } = estimate

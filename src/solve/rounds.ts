@@ -4,7 +4,8 @@ import { runKept } from '../workers/run-kept.js'
 import { type Batches, divide, groupOf } from './batches.js'
 import { addTally, copySums, emptySums, type GroupSums } from './group-sums.js'
 
-const FIRST_ROUND = 16_384
+/** Packets of the first round, unless exactly so many are asked for. */
+export const FIRST_ROUND = 2048
 /** A round is at most so many times larger than all before it, and that much larger than the error asks for. */
 const FASTEST = 16
 const MARGIN = 1.15
@@ -42,10 +43,16 @@ export interface RoundsOutcome {
   error: number
 }
 
-/** The tasks of a round. */
-export function batchTasks({ task, input, seed }: RoundsRequest, round: number, { count, packets }: Batches): Task[] {
+/** The tasks of a round; `scope`: where the workers find the medium. */
+export function batchTasks(
+  { task, input, seed }: RoundsRequest,
+  scope: string,
+  round: number,
+  { count, packets }: Batches
+): Task[] {
   return Array.from({ length: count }, (_, batch) => ({
     name: task,
+    scope,
     input: { ...input, packets, seed: `${seed}/${round}/${batch}` }
   }))
 }
@@ -77,12 +84,12 @@ export async function playRounds(
     (ledger.take(name) as RoundsState | undefined) ??
     ({ sums: emptySums(), packets: 0, error: Number.NaN, round: 0, size: first, done: 0, finished: false } satisfies RoundsState)
   const piece = (): Piece => ({ ...state, sums: copySums(state.sums) })
-  pool.share('scattering', medium)
+  pool.share('scattering', medium, name)
   while (!state.finished) {
     const batches = divide(state.size)
     const complete = await runKept(
       {
-        tasks: batchTasks(request, state.round, batches),
+        tasks: batchTasks(request, name, state.round, batches),
         done: state.done,
         take: (tally, batch) => {
           addTally(state.sums, groupOf(batch, batches), tally as Float64Array, batches.packets)
@@ -111,6 +118,6 @@ export async function playRounds(
     }
     ledger.offer(name, piece, true)
   }
-  pool.forget('scattering')
+  pool.forget('scattering', name)
   return state
 }

@@ -55,10 +55,10 @@ export async function playShare(
     groups: state.groups.map(({ group, sum }) => ({ group, sum: sum.slice() })),
     loose: [...state.loose]
   })
-  pool.share('scattering', request.medium)
-  const tasks = batchTasks(request, 0, batches).slice(from, to)
+  pool.share('scattering', request.medium, name)
+  const tasks = batchTasks(request, name, 0, batches).slice(from, to)
   const complete = await runKept({ tasks, done: state.done, take, name, piece }, pool, ledger, stop)
-  pool.forget('scattering')
+  pool.forget('scattering', name)
   const { groups, loose } = state
   return complete ? { from, to, groups, loose } : 'stopped'
 }

@@ -1,8 +1,8 @@
 /** Everything that passes between the main thread and a worker. */
 export type ToWorker =
-  | { kind: 'share'; key: string; value: unknown }
-  | { kind: 'forget'; key: string }
-  | { kind: 'task'; id: number; name: string; input: unknown }
+  | { kind: 'share'; scope: string; key: string; value: unknown }
+  | { kind: 'forget'; scope: string; key: string }
+  | { kind: 'task'; id: number; name: string; scope: string; input: unknown }
 
 export type FromWorker =
   | { kind: 'ready' }

@@ -1,9 +1,10 @@
 import { Worker } from 'node:worker_threads'
 import type { FromWorker, ToWorker } from './messages.js'
 
-/** A task for a worker: the name of its handler and what to hand it. */
+/** A task for a worker: the name of its handler, the scope of what it may share with others, and what to hand it. */
 export interface Task {
   name: string
+  scope?: string
   input: unknown
 }
 
@@ -27,9 +28,9 @@ export class WorkerPool {
   cpuSeconds = 0
   private readonly workers: Worker[] = []
   private readonly idle: Worker[] = []
-  private readonly held = new Map<Worker, number>()
   private failure: Error | undefined
-  private job: Job | undefined
+  /** Lists of tasks under way, in the order in which they came. */
+  private readonly jobs: Job[] = []
   private closing = false
   private serial = 0
 
@@ -49,28 +50,44 @@ export class WorkerPool {
     }
   }
 
-  /** Gives every worker a value under a key; typed arrays on shared memory are not copied. */
-  share(key: string, value: unknown): void {
-    for (const worker of this.workers) this.post(worker, { kind: 'share', key, value })
+  /** Gives every worker a value under a key, for the tasks of a scope; typed arrays on shared memory are not copied. */
+  share(key: string, value: unknown, scope = ''): void {
+    for (const worker of this.workers) this.post(worker, { kind: 'share', scope, key, value })
   }
 
-  forget(key: string): void {
-    for (const worker of this.workers) this.post(worker, { kind: 'forget', key })
+  forget(key: string, scope = ''): void {
+    for (const worker of this.workers) this.post(worker, { kind: 'forget', scope, key })
   }
 
   /**
-   * Runs the tasks; `onResult` gets each result in the order of the tasks. When `stop` is aborted, tasks not yet begun are
-   * left, and those in hand are finished, or given up with the whole pool if that takes long. Resolves to the number of tasks
-   * done; rejects with WorkerFailure.
+   * Runs the tasks; `onResult` gets each result in the order of the tasks. Several lists may be under way at a time; what came
+   * first goes first. When `stop` is aborted, tasks not yet begun are left, and those in hand are finished, or given up with the
+   * whole pool if that takes long. Resolves to the number of tasks done; rejects with WorkerFailure.
    */
   run(tasks: Task[], onResult: (output: unknown, index: number) => void, stop?: AbortSignal): Promise<number> {
-    if (this.job) throw new Error('the pool runs one list of tasks at a time')
     if (this.failure) return Promise.reject(this.failure)
     return new Promise((resolve, reject) => {
-      this.job = { tasks, onResult, stop, resolve, reject, begun: 0, handed: 0, base: this.serial, waiting: new Map() }
+      const end = () => {
+        this.end(job)
+        this.feed()
+      }
+      const job: Job = {
+        tasks,
+        onResult,
+        stop,
+        end,
+        resolve,
+        reject,
+        begun: 0,
+        inHand: 0,
+        handed: 0,
+        base: this.serial,
+        waiting: new Map()
+      }
       this.serial += tasks.length
-      if (stop?.aborted) this.end()
-      else stop?.addEventListener('abort', this.end)
+      this.jobs.push(job)
+      if (stop?.aborted) this.end(job)
+      else stop?.addEventListener('abort', end)
       this.feed()
     })
   }
@@ -82,18 +99,17 @@ export class WorkerPool {
   }
 
   /** Waits for what is in hand, no longer than GRACE. */
-  private readonly end = () => {
-    const job = this.job
+  private end(job: Job): void {
     setTimeout(() => {
-      if (!job || this.job !== job) return
+      if (!this.jobs.includes(job)) return
       this.finish(job, () => job.resolve(job.handed))
       this.failure ??= new WorkerFailure('the pool was stopped')
     }, 1000 * GRACE).unref()
   }
 
   private finish(job: Job, settle: () => void): void {
-    this.job = undefined
-    job.stop?.removeEventListener('abort', this.end)
+    this.jobs.splice(this.jobs.indexOf(job), 1)
+    job.stop?.removeEventListener('abort', job.end)
     settle()
   }
 
@@ -102,31 +118,30 @@ export class WorkerPool {
   }
 
   private feed(): void {
-    const job = this.job
-    if (!job) return
-    while (
-      this.idle.length > 0 &&
-      job.begun < job.tasks.length &&
-      job.begun - job.handed < AHEAD * this.size &&
-      !job.stop?.aborted
-    ) {
-      const worker = this.idle.pop() as Worker
-      const { name, input } = job.tasks[job.begun]
-      this.held.set(worker, job.begun)
-      this.post(worker, { kind: 'task', id: job.base + job.begun, name, input })
-      job.begun++
+    for (const job of [...this.jobs]) {
+      while (this.idle.length > 0 && this.mayBegin(job)) {
+        const worker = this.idle.pop() as Worker
+        const { name, scope = '', input } = job.tasks[job.begun]
+        this.post(worker, { kind: 'task', id: job.base + job.begun, name, scope, input })
+        job.begun++
+        job.inHand++
+      }
+      if (job.inHand === 0 && (job.begun === job.tasks.length || job.stop?.aborted)) {
+        this.finish(job, () => job.resolve(job.handed))
+      }
     }
-    if (this.held.size === 0 && (job.begun === job.tasks.length || job.stop?.aborted)) {
-      this.finish(job, () => job.resolve(job.handed))
-    }
+  }
+
+  private mayBegin({ begun, handed, tasks, stop }: Job): boolean {
+    return begun < tasks.length && begun - handed < AHEAD * this.size && !stop?.aborted
   }
 
   private receive(worker: Worker, message: FromWorker): void {
     if (message.kind === 'ready') return
-    this.held.delete(worker)
     this.idle.push(worker)
-    const job = this.job
+    const job = this.jobs.find(({ base, tasks }) => message.id >= base && message.id < base + tasks.length)
     if (!job) return
+    job.inHand--
     if (message.kind === 'failed') {
       this.fail(new WorkerFailure(`a worker thread failed: ${message.message}`, { cause: message.stack }))
       return
@@ -148,8 +163,7 @@ export class WorkerPool {
 
   private fail(error: Error): void {
     this.failure ??= error
-    const { job } = this
-    if (job) this.finish(job, () => job.reject(error))
+    for (const job of [...this.jobs]) this.finish(job, () => job.reject(error))
   }
 }
 
@@ -157,9 +171,12 @@ interface Job {
   tasks: Task[]
   onResult: (output: unknown, index: number) => void
   stop: AbortSignal | undefined
+  /** Called when it is to be stopped. */
+  end: () => void
   resolve: (done: number) => void
   reject: (error: Error) => void
   begun: number
+  inHand: number
   handed: number
   base: number
   waiting: Map<number, unknown>

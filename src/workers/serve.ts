@@ -1,7 +1,7 @@
 import { parentPort } from 'node:worker_threads'
 import type { FromWorker, ToWorker } from './messages.js'
 
-/** What a worker was given to share, by key. */
+/** What a worker was given to share, by key, in the scope of the task. */
 export type Shared = (key: string) => unknown
 
 /** One handler a kind of task; it runs on the worker's thread. */
@@ -12,13 +12,10 @@ export function serve(handlers: Handlers): void {
   const port = parentPort
   if (!port) throw new Error('serve() runs on a worker thread only')
   const store = new Map<string, unknown>()
-  const shared: Shared = (key) => {
-    if (!store.has(key)) throw new Error(`nothing shared under the key ${key}`)
-    return store.get(key)
-  }
+  const within = (scope: string, key: string) => `${scope}/${key}`
   port.on('message', (message: ToWorker) => {
-    if (message.kind === 'share') store.set(message.key, message.value)
-    else if (message.kind === 'forget') store.delete(message.key)
+    if (message.kind === 'share') store.set(within(message.scope, message.key), message.value)
+    else if (message.kind === 'forget') store.delete(within(message.scope, message.key))
     else {
       const reply = answer(message)
       port.postMessage(reply, reply.kind === 'result' ? ownBuffers(reply.output) : [])
@@ -28,6 +25,11 @@ export function serve(handlers: Handlers): void {
 
   function answer(task: Extract<ToWorker, { kind: 'task' }>): FromWorker {
     const start = performance.now()
+    const shared: Shared = (key) => {
+      const place = within(task.scope, key)
+      if (!store.has(place)) throw new Error(`nothing shared under the key ${place}`)
+      return store.get(place)
+    }
     try {
       const output = handlers[task.name](task.input as never, shared)
       return { kind: 'result', id: task.id, output, cpuSeconds: (performance.now() - start) / 1000 }
