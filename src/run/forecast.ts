@@ -29,15 +29,15 @@ const USUAL_PRECISION = 0.01
 export function forecast({ scene, dimensions }: Model, trial: Trial, workers: number): Forecast {
   const { effort, cameras, spectra } = scene
   const { precision } = effort
-  const need = ({ seconds, noise }: TrialPackets, most: number): Needed => {
+  const need = ({ seconds, noise }: TrialPackets, first: number, most: number): Needed => {
     if (seconds === 0) return { needed: 0, most }
     if (precision === null || !trial.complete) return { needed: most, most }
-    return { needed: Math.max(TRIAL_PACKETS, TRIAL_PACKETS * (noise / precision) ** 2), most }
+    return { needed: Math.max(first, first * (noise / precision) ** 2), most }
   }
   // Rounds of the temperatures stand alone, each twice the one before; those of scattered light add up.
-  const last = need(trial.dust, effort.equilibrium)
+  const last = need(trial.dust, TRIAL_PACKETS.dust, effort.equilibrium)
   const dust = { needed: 2 * last.needed, most: last.most }
-  const light = need(trial.light, effort.cameras)
+  const light = need(trial.light, TRIAL_PACKETS.light, effort.cameras)
   const time = ({ needed, most }: Needed, { seconds, packets }: TrialPackets) =>
     (Math.min(needed, most) * seconds) / Math.max(1, packets)
   const finer = (trial.precision / (precision ?? USUAL_PRECISION)) ** BY_TOLERANCE[dimensions === 1 ? 0 : 1]

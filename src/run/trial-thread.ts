@@ -30,7 +30,7 @@ function note({ stage, done, of, observer, index = 0 }: RunProgress): void {
   last = performance.now()
   if (stage === 'dust' || stage === 'light') {
     trial[stage].seconds += seconds
-    trial[stage].packets = index * TRIAL_PACKETS + done
+    trial[stage].packets = index * TRIAL_PACKETS[stage] + done
   } else if (observer?.kind === 'spectrum') {
     trial.apertures.seconds += seconds
     trial.apertures.count++
@@ -70,8 +70,8 @@ function inSmall(full: Omit<Scene, 'locate'>): Scene {
     effort: {
       ...effort,
       precision: Math.max(effort.precision ?? 0, TRIAL_PRECISION),
-      equilibrium: TRIAL_PACKETS,
-      cameras: TRIAL_PACKETS
+      equilibrium: TRIAL_PACKETS.dust,
+      cameras: TRIAL_PACKETS.light
     },
     cameras: cameras
       .slice(0, 1)

@@ -1,5 +1,6 @@
 import { Worker } from 'node:worker_threads'
 import type { Scene } from '../scene/types.js'
+import { FIRST_ROUND } from '../solve/rounds.js'
 import type { GrainTables } from './grain-tables.js'
 
 /** How long parts of a run took on one worker, and how noisy they came out. */
@@ -19,12 +20,12 @@ export interface Trial {
 export interface TrialPackets {
   packets: number
   seconds: number
-  /** Largest relative error that `TRIAL_PACKETS` packets left in what is seen; 0 while unknown. */
+  /** Largest relative error that one first round of packets left in what is seen; 0 while unknown. */
   noise: number
 }
 
-/** Packets for the temperatures and for each wavelength: one first round. */
-export const TRIAL_PACKETS = 16_384
+/** Packets for the temperatures, and for each wavelength: one first round. */
+export const TRIAL_PACKETS = { dust: 16_384, light: FIRST_ROUND }
 /** Pixels along each side of the picture. Rows go out by eights, so half the picture is the second task. */
 export const TRIAL_PIXELS = 16
 /** The least precision asked of a trial: placing rays to better than a tenth of this would take too long. */

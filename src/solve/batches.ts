@@ -1,6 +1,6 @@
 import { GROUPS } from './groups.js'
 
-/** Fewest and most batches in a group, and the packets of a batch that are worth dividing it. */
+/** Fewest batches in a group unless it is told otherwise, the most, and the packets of a batch that are worth dividing it. */
 const FEWEST = 2
 const MOST = 1024
 const PACKETS = 8192
@@ -12,9 +12,9 @@ export interface Batches {
   packets: number
 }
 
-/** Depends on the packets alone, so that results do not depend on who computes them. */
-export function divide(packets: number): Batches {
-  const inGroup = Math.min(MOST, Math.max(FEWEST, Math.ceil(packets / (GROUPS * PACKETS))))
+/** Depends on the packets alone, so that results do not depend on who computes them; `fewest`: batches in a group. */
+export function divide(packets: number, fewest = FEWEST): Batches {
+  const inGroup = Math.min(MOST, Math.max(fewest, Math.ceil(packets / (GROUPS * PACKETS))))
   const count = GROUPS * inGroup
   return { count, packets: Math.max(1, Math.round(packets / count)) }
 }

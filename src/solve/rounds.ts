@@ -86,7 +86,8 @@ export async function playRounds(
   const piece = (): Piece => ({ ...state, sums: copySums(state.sums) })
   pool.share('scattering', medium, name)
   while (!state.finished) {
-    const batches = divide(state.size)
+    // First rounds are small: what a batch costs beside its packets counts.
+    const batches = divide(state.size, precision === null ? undefined : 1)
     const complete = await runKept(
       {
         tasks: batchTasks(request, name, state.round, batches),

@@ -35,7 +35,13 @@ export function scattering(
     if (spherical) return fromFlights(model, light, sums)
     return light.tables ? fromStokesTallies(model, light, sums, index, count) : fromTallies(model, sums, index, count)
   }
-  const lightOf = (sums: GroupSums) => Array.from({ length: count }, (_, index) => towards(sums, index))
+  // What the last look at the error was made from is what pictures are made from.
+  let known: { packets: number; light: ScatteredLight[] } | undefined
+  const lightOf = (sums: GroupSums) => {
+    const packets = sums.packets.reduce((sum, value) => sum + value, 0)
+    if (known?.packets !== packets) known = { packets, light: Array.from({ length: count }, (_, index) => towards(sums, index)) }
+    return known.light
+  }
   return {
     request: {
       medium,

@@ -1,6 +1,6 @@
 import { SphericalWalk } from '../grid/walk.js'
 import { type Detector, detectorPixels, pixelOf } from './detector.js'
-import { collide, pathToStar } from './flight.js'
+import { collide, pathToStar, ROULETTE_BELOW, SURVIVAL } from './flight.js'
 import type { PixelTally } from './peel.js'
 import { Polarisation } from './polarisation.js'
 import { Launcher } from './scatter-launch.js'
@@ -46,7 +46,17 @@ export function tallyExits(
       const free = Math.min(toStar, toWall)
       const depth = free * extinction[cell]
       if (depth >= remaining) {
-        weight = collide(walk, medium, walk.s + remaining / extinction[cell], weight, first, uniform, out, polarisation)
+        weight = collide(
+          walk,
+          medium,
+          walk.s + remaining / extinction[cell],
+          weight,
+          ROULETTE_BELOW * first,
+          SURVIVAL,
+          uniform,
+          out,
+          polarisation
+        )
         tally = scattered
         remaining = -Math.log(uniform())
       } else {

@@ -1,7 +1,7 @@
 import { henyeyGreenstein } from '../dust/phase-function.js'
 import { SphericalWalk } from '../grid/walk.js'
 import { type Detector, detectorPixels, pixelOf } from './detector.js'
-import { collide, pathToStar } from './flight.js'
+import { collide, pathToStar, ROULETTE_BELOW, SURVIVAL } from './flight.js'
 import { Polarisation } from './polarisation.js'
 import { Launcher, scatterHere, scatteringOf } from './scatter-launch.js'
 import type { ScatterMedium } from './scatter-medium.js'
@@ -83,7 +83,7 @@ export function tallyPeeled(medium: ScatterMedium, detectors: Detector[], packet
       if (depth >= remaining) {
         const s = walk.s + remaining / extinction[cell]
         peel(scattered, s, (weight * scatteringOf(medium, cell)) / extinction[cell], true)
-        weight = collide(walk, medium, s, weight, first, uniform, out, polarisation)
+        weight = collide(walk, medium, s, weight, ROULETTE_BELOW * first, SURVIVAL, uniform, out, polarisation)
         remaining = -Math.log(uniform())
       } else {
         remaining -= depth

@@ -1,5 +1,5 @@
 import { SphericalWalk } from '../grid/walk.js'
-import { collide, pathToStar } from './flight.js'
+import { collide, EARLY_BELOW, EARLY_SURVIVAL, pathToStar } from './flight.js'
 import { Polarisation } from './polarisation.js'
 import { Launcher, scatterHere } from './scatter-launch.js'
 import { AZIMUTH_BINS, azimuthLookup, type ScatterMedium } from './scatter-medium.js'
@@ -133,7 +133,7 @@ export function tallyStokesTowards(
         }
       }
       if (collides) {
-        weight = collide(walk, medium, walk.s + step, weight, first, uniform, out, polarisation)
+        weight = collide(walk, medium, walk.s + step, weight, EARLY_BELOW * first, EARLY_SURVIVAL, uniform, out, polarisation)
         remaining = -Math.log(uniform())
         turned = true
       } else {

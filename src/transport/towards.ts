@@ -1,6 +1,6 @@
 import { henyeyGreenstein } from '../dust/phase-function.js'
 import { SphericalWalk } from '../grid/walk.js'
-import { collide, pathToStar } from './flight.js'
+import { collide, EARLY_BELOW, EARLY_SURVIVAL, pathToStar } from './flight.js'
 import { Launcher, scatterHere } from './scatter-launch.js'
 import { AZIMUTH_BINS, azimuthLookup, type ScatterMedium } from './scatter-medium.js'
 
@@ -33,6 +33,8 @@ export function tallyTowards(
   const { lookup, scale } = azimuthLookup()
   const tally = new Float64Array(cells * azimuths * count)
   const towards = new Float64Array(copies * laws * count)
+  /** Where the copies of a step fall in the tally. */
+  const places = new Int32Array(copies)
   const cosTurn = new Float64Array(copies)
   const sinTurn = new Float64Array(copies)
   const walk = new SphericalWalk(walls)
@@ -64,7 +66,7 @@ export function tallyTowards(
             const along3 = (k % 2 === 0 ? uz : -uz) * observers[3 * o + 2]
             const cosine = (cos * ux - sin * uy) * observers[3 * o] + (sin * ux + cos * uy) * observers[3 * o + 1] + along3
             for (let law = 0; law < laws; law++) {
-              towards[(k * laws + law) * count + o] = henyeyGreenstein(asymmetry[law], cosine) / copies
+              towards[(law * copies + k) * count + o] = henyeyGreenstein(asymmetry[law], cosine) / copies
             }
           }
         }
@@ -95,15 +97,18 @@ export function tallyTowards(
       }
       for (let k = 0; k < copies; k++) {
         const bin = axial ? lookup[((cosTurn[k] * x - sinTurn[k] * y + 1) * scale) | 0] : 0
-        const base = ((k % 2 === 0 ? cell : mirror) * azimuths + bin) * count
-        for (let law = 0; law < laws; law++) {
-          const amount = weight * step * scattering[law * cells + cell]
-          const from = (k * laws + law) * count
-          for (let o = 0; o < count; o++) tally[base + o] += amount * towards[from + o]
+        places[k] = ((k % 2 === 0 ? cell : mirror) * azimuths + bin) * count
+      }
+      for (let law = 0; law < laws; law++) {
+        const amount = weight * step * scattering[law * cells + cell]
+        let from = law * copies * count
+        for (let k = 0; k < copies; k++) {
+          const base = places[k]
+          for (let o = 0; o < count; o++) tally[base + o] += amount * towards[from++]
         }
       }
       if (collides) {
-        weight = collide(walk, medium, walk.s + step, weight, first, uniform, out)
+        weight = collide(walk, medium, walk.s + step, weight, EARLY_BELOW * first, EARLY_SURVIVAL, uniform, out)
         remaining = -Math.log(uniform())
         turned = true
       } else {

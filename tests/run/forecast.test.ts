@@ -6,8 +6,8 @@ import { parseScene } from '../../src/scene/read.js'
 import { sceneWith } from '../cli/motelight.js'
 
 const trial: Trial = {
-  dust: { packets: TRIAL_PACKETS, seconds: 1, noise: 0.04 },
-  light: { packets: 2 * TRIAL_PACKETS, seconds: 2, noise: 0.02 },
+  dust: { packets: TRIAL_PACKETS.dust, seconds: 1, noise: 0.04 },
+  light: { packets: 2 * TRIAL_PACKETS.light, seconds: 2, noise: 0.02 },
   pictures: { fixedSeconds: 0, seconds: 2, count: 2 },
   apertures: { seconds: 0, count: 2 },
   precision: 0.05,
@@ -21,8 +21,8 @@ describe('forecast', () => {
   it('lets errors fall as the square root of the packets', () => {
     const { packets, seconds } = forecast(modelWith('precision: 1 %'), trial, 1)
     // (4 % / 1 %)^2 = 16 first rounds in the last round, as many again before it; (2 % / 1 %)^2 = 4 for scattered light.
-    expect(packets.dust.needed).toBeCloseTo(32 * TRIAL_PACKETS, 5)
-    expect(packets.light.needed).toBeCloseTo(4 * TRIAL_PACKETS, 5)
+    expect(packets.dust.needed).toBeCloseTo(32 * TRIAL_PACKETS.dust, 5)
+    expect(packets.light.needed).toBeCloseTo(4 * TRIAL_PACKETS.light, 5)
     expect(seconds.dust).toBeCloseTo(32, 6)
     // Five wavelengths are observed.
     expect(seconds.light).toBeCloseTo(5 * 4, 6)
@@ -31,7 +31,11 @@ describe('forecast', () => {
 
   it('spends no more than is allowed, and exactly that when no precision is asked for', () => {
     for (const precision of ['0.1 %', 'none']) {
-      const { seconds } = forecast(modelWith(`precision: ${precision}, equilibrium: 32768, cameras: 32768`), trial, 1)
+      const { seconds } = forecast(
+        modelWith(`precision: ${precision}, equilibrium: ${2 * TRIAL_PACKETS.dust}, cameras: ${2 * TRIAL_PACKETS.light}`),
+        trial,
+        1
+      )
       expect(seconds.dust).toBeCloseTo(2, 6)
       expect(seconds.light).toBeCloseTo(5 * 2, 6)
     }
