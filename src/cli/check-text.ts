@@ -9,6 +9,7 @@ export function checkText(check: SceneCheck): string {
   return [
     `${check.title} (${check.scene}), at ${shown(check.distancePc)} pc, seed ${check.seed}`,
     ...section('Sources', sources(check)),
+    ...section('Ambient light', ambient(check)),
     ...section('Dust', dust(check)),
     ...section('Optical depth of each component', componentDepths(check)),
     ...section('Optical depth from the observer to the centre', observerDepths(check)),
@@ -35,6 +36,17 @@ function sources({ sources }: SceneCheck): string[] {
       `${shown(luminosityLsun, 4)} Lsun`,
       radiusRsun === undefined ? '' : `${shown(radiusRsun, 4)} Rsun`,
       spectrum
+    ])
+  )
+}
+
+function ambient({ ambient }: SceneCheck): string[] {
+  return table(
+    ambient.map(({ name, spectrum, intensity, inflowLsun }) => [
+      name,
+      spectrum,
+      `4 pi J ${shown(intensity)} erg/s/cm2`,
+      `${shown(inflowLsun)} Lsun enter the cells`
     ])
   )
 }

@@ -9,19 +9,21 @@ import type { DustSpec, Scene } from '../scene/types.js'
 import { AmountError, amountScale } from '../shapes/amount-scale.js'
 import { makeShape, plainShape } from '../shapes/make-shape.js'
 import type { Shape } from '../shapes/shape.js'
+import { ambientField } from '../sources/ambient.js'
 import { starSpectrum } from '../sources/star.js'
 import { cellDensities } from './density.js'
 import type { DustComponent, Model } from './model.js'
 import { mattering } from './wavelengths.js'
 
 /** Cells laid about the dust of a scene, before anything as large as their number is allocated. */
-export interface CellPlan extends Pick<Model, 'scene' | 'dimensions' | 'reason' | 'walls' | 'cells' | 'stars'> {
+export interface CellPlan extends Pick<Model, 'scene' | 'dimensions' | 'reason' | 'walls' | 'cells' | 'stars' | 'fields'> {
   parts: { spec: DustSpec; law: OpacityLaw; shape: Shape; scale: number }[]
 }
 
 /** Lays the cells of a scene; `tables`: optics of grains by the name of the opacity, where they are known. Throws SceneError where the scene asks for what cannot be. */
 export function planCells(scene: Scene, tables: Record<string, GrainOptics> = {}): CellPlan {
-  const stars = scene.sources.map((spec) => ({ spec, spectrum: starSpectrum(spec) }))
+  const stars = scene.sources.flatMap((spec) => (spec.kind === 'star' ? [{ spec, spectrum: starSpectrum(spec) }] : []))
+  const fields = scene.sources.flatMap((spec) => (spec.kind === 'ambient' ? [{ spec, spectrum: ambientField(spec) }] : []))
   const parts = scene.dust.map((spec, index) => {
     const law = makeOpacityLaw(scene.opacities[spec.opacity], tables[spec.opacity])
     const scale = scaleOf(scene, spec, index, plainShape(spec.shape), law.absorption, law.scattering)
@@ -31,19 +33,19 @@ export function planCells(scene: Scene, tables: Record<string, GrainOptics> = {}
     scene,
     parts.map(({ shape }) => shape)
   )
-  const wavelengths = mattering(scene, stars)
+  const wavelengths = mattering(scene, stars, fields)
   const layers: DustLayer[] = parts.map(({ shape, scale, law }) => ({
     shape,
     scale,
     extinction: Math.max(...wavelengths.map((wavelength) => law.absorption(wavelength) + law.scattering(wavelength)))
   }))
   const walls = shareWalls(layers.length > 0 ? placeWalls({ ...scene.grid, layers, dimensions }) : emptyWalls(scene))
-  return { scene, dimensions, reason: reasonFor(scene, dimensions), walls, cells: cellCount(walls), stars, parts }
+  return { scene, dimensions, reason: reasonFor(scene, dimensions), walls, cells: cellCount(walls), stars, fields, parts }
 }
 
 /** Turns a scene into cells filled with dust. Throws SceneError where the scene asks for what cannot be. */
 export function buildModel(scene: Scene, plan = planCells(scene)): Model {
-  const { dimensions, reason, walls, cells, stars, parts } = plan
+  const { dimensions, reason, walls, cells, stars, fields, parts } = plan
   const warnings: string[] = []
   const components: DustComponent[] = parts.map(({ spec, law, shape, scale }) => {
     const { density, massRatio } = cellDensities(walls, shape, scale)
@@ -55,7 +57,7 @@ export function buildModel(scene: Scene, plan = planCells(scene)): Model {
     return { spec, law, shape, mass: scale * shape.totalMass, density }
   })
   const volume = cellVolumes(walls, new Float64Array(allocateShared(8 * cells)))
-  return { scene, dimensions, reason, walls, cells, volume, components, stars, warnings }
+  return { scene, dimensions, reason, walls, cells, volume, components, stars, fields, warnings }
 }
 
 function scaleOf(
@@ -111,7 +113,7 @@ function reasonFor(scene: Scene, dimensions: 1 | 2 | 3): string {
 
 /** A scene without dust: one empty cell about the stars. */
 function emptyWalls(scene: Scene): SphericalWalls {
-  const largest = Math.max(1, ...scene.sources.map(({ radius }) => radius ?? 0))
+  const largest = Math.max(1, ...scene.sources.map((source) => (source.kind === 'star' ? (source.radius ?? 0) : 0)))
   return {
     r: Float64Array.of(0, 2 * largest, 4 * largest),
     cosTheta: Float64Array.of(1, -1),

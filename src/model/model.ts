@@ -1,7 +1,8 @@
 import type { OpacityLaw } from '../dust/opacity-law.js'
 import type { SphericalWalls } from '../grid/geometry.js'
-import type { DustSpec, Scene, StarSpec } from '../scene/types.js'
+import type { AmbientSpec, DustSpec, Scene, StarSpec } from '../scene/types.js'
 import type { Shape } from '../shapes/shape.js'
+import type { AmbientField } from '../sources/ambient.js'
 import type { StarSpectrum } from '../sources/star.js'
 
 /** A scene turned into cells: everything that transport needs and that does not change during a run. */
@@ -16,6 +17,8 @@ export interface Model {
   volume: Float64Array
   components: DustComponent[]
   stars: { spec: StarSpec; spectrum: StarSpectrum }[]
+  /** Light from outside the dust. */
+  fields: { spec: AmbientSpec; spectrum: AmbientField }[]
   /** What the user should know before trusting the result. */
   warnings: string[]
 }

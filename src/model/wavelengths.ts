@@ -11,24 +11,29 @@ export function observedWavelengths(scene: Scene): number[] {
 /** Where dust emits, cm: for scenes with neither stars nor cameras. */
 const TYPICAL = 10e-4
 
-/** Wavelengths at which optical depths have to be resolved: where the stars put their energy, or else those observed. */
-export function mattering(scene: Scene, stars: Model['stars']): number[] {
-  const wavelengths = stars.map(({ spectrum }) => {
-    const [shortest, longest] = spectrum.range
-    let best = shortest
-    let most = 0
-    for (let i = 0; i <= 200; i++) {
-      const wavelength = shortest * (longest / shortest) ** (i / 200)
-      const nu = LIGHT_SPEED / wavelength
-      const power = nu * spectrum.luminosityNu(nu)
-      if (power > most) {
-        most = power
-        best = wavelength
-      }
-    }
-    return [best / 2, best]
-  })
-  if (stars.length > 0) return wavelengths.flat()
+/** Wavelengths at which optical depths have to be resolved: where stars and fields put their energy, or else those observed. */
+export function mattering(scene: Scene, stars: Model['stars'], fields: Model['fields']): number[] {
+  const wavelengths = [
+    ...stars.map(({ spectrum: { range, luminosityNu } }) => peak(range, luminosityNu)),
+    ...fields.map(({ spectrum: { range, intensityNu } }) => peak(range, intensityNu))
+  ]
+  if (wavelengths.length > 0) return wavelengths.flatMap((best) => [best / 2, best])
   const observed = observedWavelengths(scene)
   return observed.length > 0 ? observed : [TYPICAL]
+}
+
+/** Wavelength (cm) within a range where nu times `perHz` is greatest. */
+function peak([shortest, longest]: [number, number], perHz: (nu: number) => number): number {
+  let best = shortest
+  let most = 0
+  for (let i = 0; i <= 200; i++) {
+    const wavelength = shortest * (longest / shortest) ** (i / 200)
+    const nu = LIGHT_SPEED / wavelength
+    const power = nu * perHz(nu)
+    if (power > most) {
+      most = power
+      best = wavelength
+    }
+  }
+  return best
 }

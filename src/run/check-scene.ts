@@ -1,6 +1,7 @@
 import { buildModel, planCells } from '../model/build-model.js'
 import type { Model } from '../model/model.js'
-import type { Scene } from '../scene/types.js'
+import type { AmbientSpec, Scene } from '../scene/types.js'
+import { inflow } from '../sources/ambient.js'
 import { AU, PARSEC, SOLAR_LUMINOSITY, SOLAR_MASS, SOLAR_RADIUS } from '../units/constants.js'
 import { type Forecast, forecast } from './forecast.js'
 import { grainTables } from './grain-tables.js'
@@ -24,6 +25,14 @@ export interface SceneCheck {
     temperatureK?: number
     luminosityLsun: number
     radiusRsun?: number
+  }[]
+  ambient: {
+    name: string
+    spectrum: string
+    /** Intensity of all frequencies over all directions, 4 pi J, erg/s/cm2. */
+    intensity: number
+    /** What enters the outermost cell, Lsun. */
+    inflowLsun: number
   }[]
   dust: {
     name: string
@@ -61,13 +70,19 @@ export async function checkScene(
     scene: scene.file,
     distancePc: scene.distance / PARSEC,
     seed: scene.seed,
-    sources: scene.sources.map(({ name, extent, spectrum, temperature, luminosity, radius }) => ({
+    sources: model.stars.map(({ spec: { name, extent, spectrum, temperature, luminosity, radius } }) => ({
       name,
       extent,
       spectrum: spectrum.kind === 'table' ? spectrum.table.file : spectrum.kind,
       ...(temperature !== undefined && { temperatureK: temperature }),
       luminosityLsun: luminosity / SOLAR_LUMINOSITY,
       ...(radius !== undefined && { radiusRsun: radius / SOLAR_RADIUS })
+    })),
+    ambient: model.fields.map(({ spec, spectrum }) => ({
+      name: spec.name,
+      spectrum: ambientSpectrum(spec),
+      intensity: 4 * Math.PI * spectrum.intensity,
+      inflowLsun: inflow(spectrum, walls.r[walls.r.length - 1]).luminosity / SOLAR_LUMINOSITY
     })),
     dust: model.components.map(({ spec, shape, mass }) => ({
       name: spec.name,
@@ -92,6 +107,12 @@ export async function checkScene(
     forecast: expected,
     warnings: [...sceneWarnings(model), ...doubts(model, expected)]
   }
+}
+
+function ambientSpectrum({ spectrum }: AmbientSpec): string {
+  if (spectrum.kind === 'table') return spectrum.table.file
+  if (spectrum.kind === 'interstellar') return spectrum.kind
+  return `blackbody ${spectrum.terms.map(({ temperature }) => `${temperature} K`).join(', ')}`
 }
 
 function doubts({ scene }: Model, { packets, complete }: Forecast): string[] {

@@ -5,6 +5,7 @@ import { type GrainTableRequest, grainTable, mixtureOptics } from '../dust/grain
 import { grainRequest } from '../dust/grains-law.js'
 import { observedWavelengths } from '../model/wavelengths.js'
 import type { Scene } from '../scene/types.js'
+import { ambientField } from '../sources/ambient.js'
 import { starSpectrum } from '../sources/star.js'
 import { WorkerPool } from '../workers/pool.js'
 import { keepTable, keptTable } from './grain-cache.js'
@@ -47,7 +48,10 @@ const idle = { stage: 'grains', error: Number.NaN } as const
 
 /** Shortest and longest wavelength (cm) of the light of the sources and of the observers. */
 function wavelengthRange(scene: Scene): [number, number] {
-  const wavelengths = [...scene.sources.flatMap((star) => starSpectrum(star).range), ...observedWavelengths(scene)]
+  const shining = scene.sources.flatMap((source) =>
+    source.kind === 'star' ? starSpectrum(source).range : ambientField(source).range
+  )
+  const wavelengths = [...shining, ...observedWavelengths(scene)]
   return [Math.min(...wavelengths), Math.max(...wavelengths)]
 }
 

@@ -32,8 +32,11 @@ export interface RunRecord {
   /** Processor time is that of all threads together. */
   times: Record<'model' | 'dust' | 'light' | 'files', PhaseTime>
   packets: { equilibrium: number; light: { wavelengthUm: number; packets: number }[] }
-  /** The last round of the temperatures, erg/s; `balance` is (emitted - escaped - returned - kept) / emitted. Absent without. */
-  energy?: { emitted: number; escaped: number; returned: number; kept: number; balance: number }
+  /**
+   * The last round of the temperatures, erg/s; `ambient` is what ambient fields send into the outer sphere, and `balance` is
+   * (emitted - escaped - returned - kept) / emitted. Absent without.
+   */
+  energy?: { emitted: number; ambient: number; escaped: number; returned: number; kept: number; balance: number }
   equilibrium?: {
     converged: boolean
     rounds: { packets: number; relativeError: number; relativeChange: number; interactions: number }[]

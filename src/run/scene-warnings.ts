@@ -28,7 +28,7 @@ function unresolvedEdge(model: Model): string[] {
   if (stars.length === 0) return []
   const columns = (walls.cosTheta.length - 1) * (walls.phi.length - 1)
   let [most, at] = [0, 0]
-  for (const wavelength of mattering(scene, stars)) {
+  for (const wavelength of mattering(scene, stars, [])) {
     for (let column = 0; column < columns; column++) {
       for (let ir = 0; ir < walls.r.length - 1; ir++) {
         const cell = ir === 0 ? 0 : 1 + (ir - 1) * columns + column

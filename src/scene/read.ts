@@ -13,8 +13,8 @@ import { type SoundParts, soundParts } from './parts.js'
 import { readText } from './read-text.js'
 import { sceneSchema } from './schema/scene-schema.js'
 import { sha256 } from './sha256.js'
-import { parseSpectrumTable } from './tables.js'
-import type { DustSpec, OpacitySpec, Scene, ShapeSpec, StarSpec } from './types.js'
+import { parseIntensityTable, parseSpectrumTable } from './tables.js'
+import type { AmbientSpec, DustSpec, OpacitySpec, Scene, ShapeSpec, SourceSpec } from './types.js'
 import { wording } from './wording.js'
 import { YamlDocument } from './yaml-document.js'
 
@@ -33,7 +33,7 @@ export function parseScene(text: string, file: string): Scene {
   const result = sceneSchema.safeParse(document.value, { error: wording, reportInput: true })
   const parts = soundParts(document.value)
   const files = new DataFiles(file, document)
-  const sources = parts.sources.map((entry, i) => entry && starSpec(entry, i, files))
+  const sources = parts.sources.map((entry, i) => entry && sourceSpec(entry, i, files))
   const opacities = [...parts.opacities].map(([name, entry]) => [name, entry && opacitySpec(entry, name, files)] as const)
   const dust = parts.dust.map((entry, i) => entry && dustSpec(entry, i, files))
   const { cameras, spectra, problems } = observers(parts, document)
@@ -46,7 +46,7 @@ export function parseScene(text: string, file: string): Scene {
     distance,
     ...(sky && { sky }),
     seed,
-    sources: sources.filter((star) => star !== undefined),
+    sources: sources.filter((source) => source !== undefined),
     opacities: Object.fromEntries(opacities) as Record<string, OpacitySpec>,
     dust: dust.filter((component) => component !== undefined),
     grid,
@@ -60,10 +60,26 @@ export function parseScene(text: string, file: string): Scene {
 
 type Sound<Key extends 'sources' | 'dust' | 'cameras' | 'spectra'> = NonNullable<SoundParts[Key][number]>
 
-function starSpec({ spectrumFile, ...star }: Sound<'sources'>, i: number, files: DataFiles): StarSpec | undefined {
+function sourceSpec(source: Sound<'sources'>, i: number, files: DataFiles): SourceSpec | undefined {
+  if (source.kind === 'ambient') return ambientSpec(source, i, files)
+  const { spectrumFile, ...star } = source
   if (spectrumFile === undefined) return { ...star, spectrum: { kind: 'blackbody' } }
   const table = files.read(spectrumFile, ['sources', i, 'spectrum', 'table'], parseSpectrumTable)
   return table && { ...star, spectrum: { kind: 'table', table } }
+}
+
+function ambientSpec(
+  { name, kind, spectrum, strength }: Extract<Sound<'sources'>, { kind: 'ambient' }>,
+  i: number,
+  files: DataFiles
+): AmbientSpec | undefined {
+  if (spectrum === 'interstellar') return { name, kind, spectrum: { kind: spectrum }, strength }
+  if ('table' in spectrum) {
+    const table = files.read(spectrum.table, ['sources', i, 'spectrum', 'table'], parseIntensityTable)
+    return table && { name, kind, spectrum: { kind: 'table', table }, strength }
+  }
+  const terms = [spectrum].flat().map(({ blackbody, dilution }) => ({ temperature: blackbody, dilution }))
+  return { name, kind, spectrum: { kind: 'blackbodies', terms }, strength }
 }
 
 function dustSpec({ shape, ...component }: Sound<'dust'>, i: number, files: DataFiles): DustSpec | undefined {

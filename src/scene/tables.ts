@@ -5,7 +5,7 @@ import { intensityUnit } from '../units/intensity.js'
 import { type Column, type CsvTable, parseCsvTable } from './csv-table.js'
 import { SceneError } from './error.js'
 import { scaled } from './scaled-units.js'
-import type { ConstantsTable, OpacityTable, SpectrumTable } from './types.js'
+import type { ConstantsTable, IntensityTable, OpacityTable, SpectrumTable } from './types.js'
 
 /** A column of wavelengths or frequencies. */
 export const wavelengthColumn: Column = {
@@ -55,6 +55,15 @@ export function parseOpacityTable(text: string, file: string, shownAs: string): 
   return { file, wavelength: inOrder(table, 'wavelength', order), absorption, scattering, asymmetry }
 }
 
+const intensityNuUnits = Object.fromEntries(
+  ['erg/s/cm2/Hz/sr', 'W/m2/Hz/sr', 'MJy/sr', 'Jy/sr'].map((unit) => [
+    unit,
+    (value: number) => intensityUnit(unit).toCgs(value, { frequencyHz: 1, pixelSr: 1 })
+  ])
+)
+/** Per centimetre of wavelength. */
+const intensityLambdaUnits = scaled({ 'W/m2/um/sr': 1e7, 'erg/s/cm2/um/sr': 1e4, 'erg/s/cm2/angstrom/sr': 1e8 })
+
 /** Only the shape of a spectrum counts, so intensities and fluxes serve alike. */
 const fluxNuUnits = {
   ...Object.fromEntries(
@@ -62,28 +71,34 @@ const fluxNuUnits = {
       .filter((unit) => unit.endsWith('Jy') || unit.endsWith('/Hz'))
       .map((unit) => [unit, (value: number) => fluxUnit(unit).toCgs(value, { frequencyHz: 1 })])
   ),
-  ...Object.fromEntries(
-    ['erg/s/cm2/Hz/sr', 'W/m2/Hz/sr', 'MJy/sr', 'Jy/sr'].map((unit) => [
-      unit,
-      (value: number) => intensityUnit(unit).toCgs(value, { frequencyHz: 1, pixelSr: 1 })
-    ])
-  )
+  ...intensityNuUnits
 }
 /** Per centimetre of wavelength. */
 const fluxLambdaUnits = scaled({ 'W/m2/um': 1e7, 'erg/s/cm2/angstrom': 1e8 })
 
 /** Reads the shape of a stellar spectrum: wavelength and one of flux-nu and flux-lambda. `shownAs` names the file in errors. */
 export function parseSpectrumTable(text: string, file: string, shownAs: string): SpectrumTable {
-  const perWavelength = /^[^#\n]*\bflux-lambda\b/m.test(text)
-  const flux = perWavelength ? 'flux-lambda' : 'flux-nu'
-  const units = perWavelength ? fluxLambdaUnits : fluxNuUnits
-  const table = parseCsvTable(text, shownAs, [wavelengthColumn, { name: flux, units, refuse: notNegative }])
+  const { wavelength, perHz } = parseSpectral(text, shownAs, 'flux', fluxNuUnits, fluxLambdaUnits)
+  return { file, wavelength, fluxNu: perHz }
+}
+
+/** Reads an intensity: wavelength and one of intensity-nu and intensity-lambda. `shownAs` names the file in errors. */
+export function parseIntensityTable(text: string, file: string, shownAs: string): IntensityTable {
+  const { wavelength, perHz } = parseSpectral(text, shownAs, 'intensity', intensityNuUnits, intensityLambdaUnits)
+  return { file, wavelength, intensityNu: perHz }
+}
+
+/** A column `<name>-nu`, or `<name>-lambda` turned into values per Hz, by increasing wavelength. */
+function parseSpectral(text: string, shownAs: string, name: string, nuUnits: Column['units'], lambdaUnits: Column['units']) {
+  const perWavelength = new RegExp(`^[^#\\n]*\\b${name}-lambda\\b`, 'm').test(text)
+  const key = perWavelength ? `${name}-lambda` : `${name}-nu`
+  const units = perWavelength ? lambdaUnits : nuUnits
+  const table = parseCsvTable(text, shownAs, [wavelengthColumn, { name: key, units: units!, refuse: notNegative }])
   const order = increasing(table, shownAs)
   const sorted = inOrder(table, 'wavelength', order)
-  const values = inOrder(table, flux, order)
+  const values = inOrder(table, key, order)
   if (values.every((value) => value === 0)) throw allZero(shownAs)
-  const fluxNu = perWavelength ? values.map((value, i) => (value * sorted[i] ** 2) / LIGHT_SPEED) : values
-  return { file, wavelength: sorted, fluxNu }
+  return { wavelength: sorted, perHz: perWavelength ? values.map((value, i) => (value * sorted[i] ** 2) / LIGHT_SPEED) : values }
 }
 
 /** Reads optical constants: wavelength or wavenumber, n and k, rising or falling throughout. `shownAs` names the file in errors. */

@@ -10,7 +10,7 @@ export interface Scene {
   /** Where the image centre lies on the sky (ICRS, deg), when the user gave it. */
   sky?: { raDeg: number; decDeg: number }
   seed: string
-  sources: StarSpec[]
+  sources: SourceSpec[]
   opacities: Record<string, OpacitySpec>
   dust: DustSpec[]
   grid: GridSpec
@@ -41,6 +41,8 @@ export interface SourceLocation {
 
 export type Vector = [number, number, number]
 
+export type SourceSpec = StarSpec | AmbientSpec
+
 export interface StarSpec {
   name: string
   kind: 'star'
@@ -62,6 +64,25 @@ export interface SpectrumTable {
   wavelength: Float64Array
   /** Proportional to L_nu. */
   fluxNu: Float64Array
+}
+
+/** Isotropic light from outside the dust: the same intensity from every direction. */
+export interface AmbientSpec {
+  name: string
+  kind: 'ambient'
+  spectrum:
+    | { kind: 'blackbodies'; terms: { temperature: number /** Factor on the intensity. */; dilution: number }[] }
+    | { kind: 'interstellar' }
+    | { kind: 'table'; table: IntensityTable }
+  /** Factor on the intensity of the spectrum. */
+  strength: number
+}
+
+/** Specific intensity read from a file, erg/s/cm2/Hz/sr. Wavelengths (cm) increase. */
+export interface IntensityTable {
+  file: string
+  wavelength: Float64Array
+  intensityNu: Float64Array
 }
 
 /** `computed`: the scattering matrix of Mie theory, for grains. */

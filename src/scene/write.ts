@@ -2,7 +2,18 @@ import { Document, isScalar, visit } from 'yaml'
 import { formatQuantity } from '../units/quantity.js'
 import { completeStar, type StarNumbers } from './complete-star.js'
 import { logRange } from './log-range.js'
-import type { AmountSpec, CameraSpec, CarveSpec, DustSpec, Scene, ShapeSpec, SpectrumSpec, StarSpec, ViewSpec } from './types.js'
+import type {
+  AmbientSpec,
+  AmountSpec,
+  CameraSpec,
+  CarveSpec,
+  DustSpec,
+  Scene,
+  ShapeSpec,
+  SpectrumSpec,
+  StarSpec,
+  ViewSpec
+} from './types.js'
 import { opacityYaml } from './write-opacity.js'
 
 type Yaml = Record<string, unknown>
@@ -26,7 +37,7 @@ export function sceneYaml(scene: Scene): string {
       distance: length(scene.distance),
       ...(scene.sky && { sky: { ra: `${scene.sky.raDeg} deg`, dec: `${scene.sky.decDeg} deg` } }),
       seed: scene.seed,
-      sources: scene.sources.map(starYaml),
+      sources: scene.sources.map((source) => (source.kind === 'star' ? starYaml(source) : ambientYaml(source))),
       opacities: Object.fromEntries(Object.entries(scene.opacities).map(([name, spec]) => [name, opacityYaml(spec)])),
       dust: scene.dust.map(dustYaml),
       grid: { kind: scene.grid.kind, ...Object.fromEntries(counts) },
@@ -58,6 +69,16 @@ function starYaml(star: StarSpec): Yaml {
     'limb-darkening': star.limbDarkening,
     ...(star.spectrum.kind === 'table' && { spectrum: { table: star.spectrum.table.file } })
   }
+}
+
+function ambientYaml({ name, kind, spectrum, strength }: AmbientSpec): Yaml {
+  return { name, kind, spectrum: ambientSpectrumYaml(spectrum), strength }
+}
+
+function ambientSpectrumYaml(spectrum: AmbientSpec['spectrum']): unknown {
+  if (spectrum.kind === 'interstellar') return spectrum.kind
+  if (spectrum.kind === 'table') return { table: spectrum.table.file }
+  return spectrum.terms.map(({ temperature: kelvin, dilution }) => ({ blackbody: temperature(kelvin), dilution }))
 }
 
 /** Those of luminosity, temperature and radius from which the others follow exactly. */

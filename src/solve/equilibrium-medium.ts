@@ -4,7 +4,8 @@ import { transportWavelengths, type WavelengthGrid } from '../dust/wavelength-gr
 import { allocateShared } from '../math/allocate.js'
 import { makeSamplingTable } from '../math/cdf.js'
 import type { Model } from '../model/model.js'
-import { starBins } from '../sources/star-bins.js'
+import { inflow } from '../sources/ambient.js'
+import { powerBins } from '../sources/power-bins.js'
 import type { EquilibriumMedium, EquilibriumSource } from '../transport/equilibrium.js'
 
 /** The medium of the temperature phase with what its solution needs on the main thread. */
@@ -16,14 +17,19 @@ export interface EquilibriumSetup {
   luminosity: number
   /** Luminosity of the stars in each bin, erg/s. */
   starlight: Float64Array
+  /** What ambient fields send into the outer sphere in each bin, erg/s. */
+  ambient: Float64Array
 }
+
+/** Least share of the packets of the field, and of all other sources. */
+const LEAST_SHARE = 0.2
 
 const shared = (length: number) => new Float64Array(allocateShared(8 * length))
 
 /** Lays out a model for the temperature phase. Dust of fixed temperature is a source; dust without emission absorbs for good. */
 export function equilibriumSetup(model: Model): EquilibriumSetup {
-  const { components, stars, cells, volume, walls } = model
-  const ranges = stars.map(({ spectrum }) => spectrum.range)
+  const { components, stars, fields, cells, volume, walls } = model
+  const ranges = [...stars, ...fields].map(({ spectrum }) => spectrum.range)
   const grid = transportWavelengths(
     Math.min(...ranges.map(([shortest]) => shortest), Number.POSITIVE_INFINITY),
     Math.max(...ranges.map(([, longest]) => longest), 0),
@@ -47,13 +53,24 @@ export function equilibriumSetup(model: Model): EquilibriumSetup {
   const powers: number[] = []
   const sources: EquilibriumSource[] = []
   for (const { spec, spectrum } of stars) {
-    const light = starBins(spectrum, grid)
+    const light = powerBins(spectrum, grid)
     light.forEach((value, k) => {
       starlight[k] += value
     })
     powers.push(spectrum.luminosity)
     const radius = spec.extent === 'sphere' ? spec.radius! : 0
     sources.push({ kind: 'star', radius, bins: makeSamplingTable(light, 1, bins, allocateShared) })
+  }
+  const outer = walls.r[walls.r.length - 1]
+  const ambient = new Float64Array(bins)
+  for (const { spectrum } of fields) {
+    powerBins(inflow(spectrum, outer), grid).forEach((value, k) => {
+      ambient[k] += value
+    })
+  }
+  if (fields.length > 0) {
+    powers.push(ambient.reduce((sum, value) => sum + value, 0))
+    sources.push({ kind: 'ambient', bins: makeSamplingTable(ambient, 1, bins, allocateShared) })
   }
   components.forEach(({ spec, density: rho }, component) => {
     if (spec.temperature === 'solve') return
@@ -69,6 +86,11 @@ export function equilibriumSetup(model: Model): EquilibriumSetup {
       row: Math.min(rowOf(tables[component], spec.temperature), tables[component].rows - 1.001)
     })
   })
+  const luminosity = powers.reduce((sum, value) => sum + value, 0)
+  const shares = packetShares(
+    Float64Array.from(powers, (power) => power / luminosity),
+    sources.findIndex(({ kind }) => kind === 'ambient')
+  )
   return {
     medium: {
       walls,
@@ -84,11 +106,24 @@ export function equilibriumSetup(model: Model): EquilibriumSetup {
       rosseland: shared(cells),
       planck: shared(components.length * cells),
       sources,
-      sourceTable: makeSamplingTable(Float64Array.from(powers), 1, powers.length)
+      sourceTable: makeSamplingTable(shares, 1, powers.length),
+      sourceEnergy: shares.map((share, i) => powers[i] / luminosity / share)
     },
     grid,
     tables,
-    luminosity: powers.reduce((sum, value) => sum + value, 0),
-    starlight
+    luminosity,
+    starlight,
+    ambient
   }
+}
+
+/**
+ * Shares of the packets: those of the power, but at least LEAST_SHARE for the ambient field and as much for all other sources, so
+ * that each heats well what the other does not reach. `field`: index of the field's share, -1 for none.
+ */
+function packetShares(powers: Float64Array, field: number): Float64Array {
+  if (field < 0 || powers.length === 1) return powers
+  const share = Math.min(1 - LEAST_SHARE, Math.max(LEAST_SHARE, powers[field]))
+  const others = 1 - powers[field]
+  return powers.map((power, i) => (i === field ? share : ((1 - share) * power) / others))
 }

@@ -39,6 +39,7 @@ export interface EquilibriumState {
 export interface RoundTally {
   /** GROUPS arrays of components x cells. */
   absorbed: Float64Array[]
+  emitted: number
   escaped: number
   returned: number
   kept: number
@@ -76,12 +77,13 @@ export function playRound(
 
 export function emptyTally({ medium }: EquilibriumSetup): RoundTally {
   const absorbed = Array.from({ length: GROUPS }, () => new Float64Array(medium.components * medium.cells))
-  return { absorbed, escaped: 0, returned: 0, kept: 0, interactions: 0 }
+  return { absorbed, emitted: 0, escaped: 0, returned: 0, kept: 0, interactions: 0 }
 }
 
 function addTally(sum: RoundTally, group: number, tally: EquilibriumTally): void {
   const absorbed = sum.absorbed[group]
   for (let i = 0; i < absorbed.length; i++) absorbed[i] += tally.absorbed[i]
+  sum.emitted += tally.emitted
   sum.escaped += tally.escaped
   sum.returned += tally.returned
   sum.kept += tally.kept

@@ -29,9 +29,11 @@ const MARGIN = 1.15
 /** Cells that together emit this share of all dust light count for precision and convergence. */
 const BULK = 0.95
 
-/** Where the energy of the last round went, erg/s; the sum of the four ends is `emitted`. */
+/** Where the energy of the last round went, erg/s; the sum of the three ends is `emitted`. */
 export interface EnergyBudget {
   emitted: number
+  /** What ambient fields send into the outer sphere, a part of `emitted` but for the noise of its packets. */
+  ambient: number
   escaped: number
   returned: number
   /** Absorbed by dust that does not take part in the equilibrium. */
@@ -114,9 +116,19 @@ export function needsEquilibrium({ dust, effort }: Scene): boolean {
   return dust.some(({ temperature }) => temperature === 'solve') && effort.equilibrium > 0
 }
 
-function budgetOf({ escaped, returned, kept }: RoundTally, { luminosity }: EquilibriumSetup, packets: number): EnergyBudget {
+function budgetOf(
+  { emitted, escaped, returned, kept }: RoundTally,
+  { luminosity, ambient }: EquilibriumSetup,
+  packets: number
+): EnergyBudget {
   const scale = luminosity / packets
-  return { emitted: luminosity, escaped: escaped * scale, returned: returned * scale, kept: kept * scale }
+  return {
+    emitted: emitted * scale,
+    ambient: ambient.reduce((sum, value) => sum + value, 0),
+    escaped: escaped * scale,
+    returned: returned * scale,
+    kept: kept * scale
+  }
 }
 
 /** Sizes of rounds, each twice the one before, that together spend `total`. */

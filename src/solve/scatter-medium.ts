@@ -41,6 +41,11 @@ export function scatterMedium(model: Model, light: DustLight): ScatterMedium {
     })
     powers.push(removed)
   }
+  const inwards = 4 * Math.PI ** 2 * walls.r[nr] ** 2 * ambientIntensity(model, light.nu)
+  if (inwards > 0) {
+    launch.push({ kind: 'ambient', luminosity: inwards })
+    powers.push(inwards)
+  }
   const emitted = light.emission.map((value, cell) => 4 * Math.PI * value * volume[cell])
   const glow = emitted.reduce((sum, value) => sum + value, 0)
   if (glow > 0) {
@@ -68,4 +73,9 @@ export function scatterMedium(model: Model, light: DustLight): ScatterMedium {
 /** Radius of the largest star that is a sphere, cm; 0 for none. */
 export function largestStar(model: Model): number {
   return model.stars.reduce((most, { spec }) => (spec.extent === 'sphere' ? Math.max(most, spec.radius!) : most), 0)
+}
+
+/** Specific intensity of all ambient fields together, erg/s/cm2/Hz/sr. */
+export function ambientIntensity({ fields }: Pick<Model, 'fields'>, nu: number): number {
+  return fields.reduce((sum, { spectrum }) => sum + spectrum.intensityNu(nu), 0)
 }

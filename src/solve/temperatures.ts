@@ -27,20 +27,26 @@ export function givenTemperatures(model: Model): DustTemperatures {
   return { temperature, sigma: zeros(), deviation: new Float32Array(0), slope: zeros() }
 }
 
-/** First guess: dust warmed by the stars alone, as if nothing stood between. */
+/** First guess: dust warmed by stars and ambient fields, as if nothing stood between. */
 export function firstGuess(model: Model, setup: EquilibriumSetup): Float64Array {
   const { components, cells, walls } = model
-  const { starlight, medium } = setup
+  const { starlight, ambient, medium } = setup
+  const outer = walls.r[walls.r.length - 1]
   const temperature = givenTemperatures(model).temperature
   const angular = (walls.cosTheta.length - 1) * (walls.phi.length - 1)
   components.forEach(({ spec, density }, c) => {
     if (spec.temperature !== 'solve') return
     let heating = 0
-    for (let k = 0; k < medium.bins; k++) heating += medium.absorption[c * medium.bins + k] * starlight[k]
+    let outside = 0
+    for (let k = 0; k < medium.bins; k++) {
+      heating += medium.absorption[c * medium.bins + k] * starlight[k]
+      // 4 pi I = 4 pi (inflow) / (4 pi^2 R^2)
+      outside += (medium.absorption[c * medium.bins + k] * ambient[k]) / (Math.PI * outer * outer)
+    }
     for (let i = 0; i < cells; i++) {
       const ir = i === 0 ? 0 : 1 + Math.floor((i - 1) / angular)
       const r = 0.5 * (walls.r[ir] + walls.r[ir + 1])
-      const guess = temperatureOf(setup.tables[c], heating / (4 * Math.PI * r * r))
+      const guess = temperatureOf(setup.tables[c], heating / (4 * Math.PI * r * r) + outside)
       // Stars may be absent: dust of fixed temperature then does the heating, and the first round finds how much.
       if (density[i] > 0) temperature[c * cells + i] = Math.min(Math.max(guess, COOLEST), HOTTEST)
     }

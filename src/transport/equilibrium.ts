@@ -3,7 +3,7 @@ import type { SphericalWalls } from '../grid/geometry.js'
 import { SphericalWalk } from '../grid/walk.js'
 import { type SamplingTable, sampleBin } from '../math/cdf.js'
 import { deflect, isotropicDirection } from './direction.js'
-import { emittingCell, launchFromCell, launchFromSurface } from './launch.js'
+import { emittingCell, GOLDEN, launchFromCell, launchFromSurface, launchInwards } from './launch.js'
 import { diffuse, emittedBin } from './random-walk.js'
 
 /** What the temperature phase needs to know, as flat arrays that all threads share. Component c, cell i, bin k. */
@@ -27,19 +27,23 @@ export interface EquilibriumMedium {
   /** components x cells: Planck mean absorption opacity, cm2/g, in those cells. */
   planck: Float64Array
   sources: EquilibriumSource[]
-  /** One row, one entry a source: chosen in proportion to luminosity. */
+  /** One row, one entry a source: its share of the packets. */
   sourceTable: SamplingTable
+  /** Energy of a packet of each source, in units of the mean. */
+  sourceEnergy: Float64Array
 }
 
 export type EquilibriumSource =
   | { kind: 'star'; radius: number; bins: SamplingTable }
+  /** Isotropic light from outside. */
+  | { kind: 'ambient'; bins: SamplingTable }
   /** Dust of fixed temperature: cells in proportion to luminosity, bins from the row of `emission` of its component. */
   | { kind: 'dust'; component: number; cells: SamplingTable; row: number }
 
 export interface EquilibriumTally {
-  /** components x cells: sum of path x absorption opacity over packets of unit energy, cm3/g. */
+  /** components x cells: sum of energy x path x absorption opacity, cm3/g; energies in units of the mean of all packets. */
   absorbed: Float64Array
-  /** Numbers of packets, which carry equal energies. */
+  /** Energies: sent out, and where they went. */
   emitted: number
   escaped: number
   returned: number
@@ -49,7 +53,7 @@ export interface EquilibriumTally {
 }
 
 /**
- * Follows packets of equal energy from the sources until they leave. Every cell crossed gains path x absorption opacity
+ * Follows packets from the sources until they leave. Every cell crossed gains energy x path x absorption opacity
  * (Lucy 1999, A&A 344, 282); an absorbed packet is emitted again at once by the same dust, with a wavelength drawn from
  * kappa_abs B(T) of the temperature given (Bjorkman & Wood 2001, ApJ 554, 615, without their correction: T comes from the
  * round before). Inside thick cells a packet is taken by the modified random walk. The same `uniform` stream gives the same tally, bit for bit.
@@ -67,16 +71,20 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
     emission,
     emissionRow,
     rosseland,
-    sources
+    sources,
+    sourceEnergy
   } = medium
   const absorbed = new Float64Array(components * cells)
   const walk = new SphericalWalk(walls)
   const direction = new Float64Array(3)
   const starRadius2 = sources.reduce((most, source) => Math.max(most, source.kind === 'star' ? source.radius ** 2 : 0), 0)
+  let emitted = 0
   let escaped = 0
   let returned = 0
   let kept = 0
   let interactions = 0
+  // Where the even sequence of impact parameters begins; drawn when first needed.
+  let lattice = -1
 
   for (let n = 0; n < packets; n++) {
     // One stratified number chooses the source and, what remains of it, the wavelength.
@@ -85,8 +93,13 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
     const source = sources[index]
     const below = index === 0 ? 0 : medium.sourceTable.cumulative[index - 1]
     choice = Math.min((choice - below) / (medium.sourceTable.cumulative[index] - below), 1 - 1e-12)
+    let energy = sourceEnergy[index]
     let bin: number
-    if (source.kind === 'star') {
+    if (source.kind === 'ambient') {
+      if (lattice < 0) lattice = uniform()
+      bin = sampleBin(source.bins, 0, choice)
+      energy *= launchInwards(walk, walls, (lattice + n * GOLDEN) % 1, uniform, direction)
+    } else if (source.kind === 'star') {
       bin = sampleBin(source.bins, 0, choice)
       if (source.radius > 0) launchFromSurface(walk, source.radius, uniform, direction)
       else {
@@ -99,6 +112,7 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
       launchFromCell(walk, walls, emittingCell(source.cells, uniform), uniform, direction)
     }
 
+    emitted += energy
     let remaining = -Math.log(uniform())
     let alive = true
     while (alive) {
@@ -117,19 +131,19 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
       }
       const depth = step * opacity
       if (depth < remaining) {
-        for (let c = 0; c < components; c++) absorbed[c * cells + cell] += step * absorption[c * bins + bin]
+        for (let c = 0; c < components; c++) absorbed[c * cells + cell] += energy * step * absorption[c * bins + bin]
         remaining -= depth
         if (hitsStar) {
-          returned++
+          returned += energy
           alive = false
         } else if (walk.cross() < 0) {
-          escaped++
+          escaped += energy
           alive = false
         }
         continue
       }
       step = remaining / opacity
-      for (let c = 0; c < components; c++) absorbed[c * cells + cell] += step * absorption[c * bins + bin]
+      for (let c = 0; c < components; c++) absorbed[c * cells + cell] += energy * step * absorption[c * bins + bin]
       const s = walk.s + step
       const x = walk.x0 + s * walk.ux
       const y = walk.y0 + s * walk.uy
@@ -148,7 +162,7 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
       if (absorbs) {
         const row = emissionRow[c * cells + cell]
         if (row < 0) {
-          kept++
+          kept += energy
           alive = false
           continue
         }
@@ -161,7 +175,7 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
       }
       walk.turn(x, y, z, direction[0], direction[1], direction[2])
       if (absorbs && rosseland[cell] > 0) {
-        const steps = diffuse(medium, walk, absorbed, uniform, direction)
+        const steps = diffuse(medium, walk, energy, absorbed, uniform, direction)
         if (steps > 0) {
           interactions += steps
           bin = emittedBin(medium, cell, uniform)
@@ -170,5 +184,5 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
       remaining = -Math.log(uniform())
     }
   }
-  return { absorbed, emitted: packets, escaped, returned, kept, interactions }
+  return { absorbed, emitted, escaped, returned, kept, interactions }
 }

@@ -25,6 +25,7 @@ export function tallyExits(
   const direct = new Float64Array(pixels)
   const emitted = new Float64Array(pixels)
   const scattered = new Float64Array(pixels)
+  const unseen = new Float64Array(pixels)
   const walk = new SphericalWalk(walls)
   const launcher = new Launcher(medium, packets, false)
   const polarisation = medium.tables && new Polarisation()
@@ -37,7 +38,8 @@ export function tallyExits(
     polarisation?.reset(walk.ux, walk.uy, walk.uz)
     const first = launcher.weight
     let weight = first
-    let tally = launcher.starlight ? direct : emitted
+    // Ambient light that meets nothing is no light of the source.
+    let tally = launcher.from === 'star' ? direct : launcher.from === 'dust' ? emitted : unseen
     let remaining = -Math.log(uniform())
     while (weight > 0) {
       const cell = walk.cell

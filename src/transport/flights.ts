@@ -1,6 +1,7 @@
 import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
 import { sampleBin } from '../math/cdf.js'
 import { ROULETTE_BELOW, SURVIVAL } from './flight.js'
+import { impactParameter } from './launch.js'
 import { drawLaw, scatteringOf } from './scatter-launch.js'
 import { FLIGHT_BINS, type ScatterMedium } from './scatter-medium.js'
 
@@ -41,6 +42,8 @@ export function tallyFlights(medium: ScatterMedium, packets: number, uniform: ()
   const single = asymmetry.length === 1
   const tally = new Float64Array(cells * bins)
   const starRadius2 = medium.starRadius ** 2
+  const impact = new Float64Array(2)
+  let lattice = -1
   const launchCumulative = launchTable.cumulative
 
   for (let n = 0; n < packets; n++) {
@@ -67,6 +70,13 @@ export function tallyFlights(medium: ScatterMedium, packets: number, uniform: ()
       radius = radii[cell] + share * (radii[cell + 1] - radii[cell])
       weight = chosen.removed * scale * albedo[cell]
       mu = sampleHenyeyGreenstein(asymmetry[single ? 0 : drawLaw(medium, cell, uniform)], uniform())
+    } else if (chosen.kind === 'ambient') {
+      if (lattice < 0) lattice = uniform()
+      impactParameter(impact, radii[cells], radii[1], (lattice + n * golden) % 1)
+      cell = cells - 1
+      radius = radii[cells]
+      mu = -Math.sqrt(1 - (impact[0] / radius) ** 2)
+      weight = chosen.luminosity * scale * impact[1]
     } else if (chosen.kind === 'sphere-star') {
       radius = chosen.radius
       while (radii[cell + 1] <= radius) cell++

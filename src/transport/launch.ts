@@ -46,6 +46,44 @@ export function launchFromCell(
   walk.start(sin * Math.cos(azimuth), sin * Math.sin(azimuth), mu * radius, out[0], out[1], out[2], ir, it, ip)
 }
 
+/** Steps of an even sequence modulo 1: the golden section (common practice). */
+export const GOLDEN = 0.6180339887498949
+
+/**
+ * Impact parameter (cm) of isotropic light that enters a sphere of radius `outer`, and its weight, into `out`. Half of the packets
+ * (u < 0.5) are spread evenly over the area, as the light is; half as 1 / b^2, evenly within `closest`, so that dust far inside is
+ * met as often. Both kinds have the weight of the mixture, 2 at most (composite biasing, Baes et al. 2016, A&A 590, A55).
+ */
+export function impactParameter(out: Float64Array, outer: number, closest: number, u: number): void {
+  // Of the second kind 1 part lies within `closest`, the others outside.
+  const parts = 1 + 2 * Math.log(outer / closest)
+  const part = (2 * u - 1) * parts
+  let b = outer * Math.sqrt(2 * u)
+  if (u >= 0.5) b = part < 1 ? closest * Math.sqrt(part) : closest * Math.exp(0.5 * (part - 1))
+  out[0] = Math.min(b, outer * (1 - 1e-12))
+  out[1] = 2 / (1 + (outer / Math.max(b, closest)) ** 2 / parts)
+}
+
+/** Starts a packet of isotropic light on its way in through the outer wall; u chooses the impact parameter. Returns its weight. */
+export function launchInwards(
+  walk: SphericalWalk,
+  { r }: SphericalWalls,
+  u: number,
+  uniform: () => number,
+  out: Float64Array
+): number {
+  impactParameter(out, r[r.length - 1], r[1], u)
+  const [b, weight] = out
+  isotropicDirection(out, uniform(), uniform())
+  const [ux, uy, uz] = out
+  deflect(out, ux, uy, uz, 0, uniform())
+  walk.enter(b * out[0], b * out[1], b * out[2], ux, uy, uz)
+  out[0] = ux
+  out[1] = uy
+  out[2] = uz
+  return weight
+}
+
 /** Cell that emits, drawn in proportion to its luminosity. */
 export function emittingCell(cells: SamplingTable, uniform: () => number): number {
   return sampleBin(cells, 0, uniform())

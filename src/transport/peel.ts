@@ -72,7 +72,7 @@ export function tallyPeeled(medium: ScatterMedium, detectors: Detector[], packet
     if (launcher.atScattering) {
       peel(scattered, walk.s, weight, true)
       scatterHere(walk, medium, walk.s, uniform, out, polarisation)
-    } else if (!launcher.starlight) peel(emitted, walk.s, weight, false)
+    } else if (launcher.from === 'dust') peel(emitted, walk.s, weight, false)
     let remaining = -Math.log(uniform())
     while (weight > 0) {
       const cell = walk.cell

@@ -19,6 +19,7 @@ export const LEAST_DEPTH = 6
 export function diffuse(
   medium: EquilibriumMedium,
   walk: SphericalWalk,
+  energy: number,
   absorbed: Float64Array,
   uniform: () => number,
   out: Float64Array
@@ -35,7 +36,7 @@ export function diffuse(
     x += radius * out[0]
     y += radius * out[1]
     z += radius * out[2]
-    const path = 0.5 * chi * radius * radius
+    const path = energy * 0.5 * chi * radius * radius
     for (let c = 0; c < components; c++) absorbed[c * cells + cell] += path * planck[c * cells + cell]
     steps++
   }

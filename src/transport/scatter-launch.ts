@@ -2,7 +2,7 @@ import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
 import type { SphericalWalk } from '../grid/walk.js'
 import { sampleBin } from '../math/cdf.js'
 import { deflect, isotropicDirection } from './direction.js'
-import { emittingCell, launchFromCell, launchFromSurface } from './launch.js'
+import { emittingCell, GOLDEN, launchFromCell, launchFromSurface, launchInwards } from './launch.js'
 import type { Polarisation } from './polarisation.js'
 import type { ScatterLaunch, ScatterMedium } from './scatter-medium.js'
 
@@ -88,8 +88,10 @@ export class Launcher {
   weight = 0
   /** The packet stands where starlight is scattered for the first time, not yet turned; the albedo is in its weight. */
   atScattering = false
-  /** The packet comes from a star. */
-  starlight = false
+  /** Where the packet comes from. */
+  from: 'star' | 'dust' | 'ambient' = 'star'
+  /** Where the even sequence of impact parameters begins; drawn when first needed. */
+  private lattice = -1
 
   /** With `forced`, light of point stars starts where it is scattered for the first time; else at the star. */
   constructor(
@@ -107,11 +109,14 @@ export class Launcher {
     const chance = launchTable.cumulative[index] - below
     const chosen = launch[index]
     const scale = 1 / (chance * this.packets)
-    this.starlight = chosen.kind !== 'dust'
+    this.from = chosen.kind === 'dust' || chosen.kind === 'ambient' ? chosen.kind : 'star'
     this.atScattering = this.forced && chosen.kind === 'point-star'
     if (chosen.kind === 'dust') {
       launchFromCell(walk, walls, emittingCell(chosen.cells, uniform), uniform, out)
       this.weight = chosen.luminosity * scale
+    } else if (chosen.kind === 'ambient') {
+      if (this.lattice < 0) this.lattice = uniform()
+      this.weight = chosen.luminosity * scale * launchInwards(walk, walls, (this.lattice + n * GOLDEN) % 1, uniform, out)
     } else if (chosen.kind === 'sphere-star') {
       launchFromSurface(walk, chosen.radius, uniform, out)
       this.weight = chosen.luminosity * scale

@@ -34,6 +34,8 @@ export type ScatterLaunch =
       opticalDepth: Float64Array
     }
   | { kind: 'sphere-star'; luminosity: number; radius: number }
+  /** Isotropic light from outside: what enters the outer sphere. */
+  | { kind: 'ambient'; luminosity: number }
   /** Cells in proportion to what they emit. */
   | { kind: 'dust'; luminosity: number; cells: SamplingTable }
 

@@ -12,7 +12,7 @@ const ARCSEC = Math.PI / 648000
 const LSUN = 3.828e33 // IAU 2015 Resolution B3
 const SIGMA = 5.670374419e-5 // CODATA 2018, erg/s/cm2/K4
 
-const starOf = (text: string): StarSpec => parseScene(text, 'scene.yaml').sources[0]
+const starOf = (text: string): StarSpec => parseScene(text, 'scene.yaml').sources[0] as StarSpec
 
 describe('parseScene', () => {
   test('a whole scene in cgs, defaults filled in', () => {

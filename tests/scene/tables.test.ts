@@ -110,8 +110,7 @@ describe('tables named by a scene', () => {
     expect(soot).toMatchObject({ law: 'table', phase: 'isotropic', table: { file: join(folder, 'grey.csv') } })
     expect([...soot.table.absorption]).toEqual([2, 1])
     expect(scene.sources[0]).toMatchObject({ luminosity: 3.828e33, spectrum: { kind: 'table' } })
-    expect(scene.sources[0].temperature).toBeUndefined()
-    expect(scene.sources[0].radius).toBeUndefined()
+    expect(scene.sources[0]).toMatchObject({ temperature: undefined, radius: undefined })
   })
 
   test('problems come from the scene or from the table, all at once', () => {

@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import { completeStar } from '../complete-star.js'
-import { dataFile, name, notYet, real, section } from './fields.js'
+import { dataFile, name, real, section } from './fields.js'
 import { quantity, vector } from './quantity-field.js'
 
 const origin = vector().refine((at) => at.every((component) => component === 0), {
@@ -41,23 +41,29 @@ const star = section({
 
 const diluted = section({
   blackbody: quantity('temperature').describe('Temperature of the blackbody'),
-  dilution: real({ from: 0, to: 1 }).prefault(1).describe('Factor on the intensity, default 1')
+  dilution: real({ above: 0, to: 1 }).prefault(1).describe('Factor on the intensity, default 1')
 })
 
-const ambient = notYet(
-  section({
-    name: name.describe('Name of the source'),
-    kind: z.literal('ambient'),
-    spectrum: z
-      .union([z.literal('interstellar'), diluted, section({ table: dataFile }), z.array(diluted).min(1)], {
+const ambient = section({
+  name: name.describe('Name of the source'),
+  kind: z.literal('ambient'),
+  spectrum: z
+    .union(
+      [
+        z.literal('interstellar'),
+        diluted,
+        section({
+          table: dataFile.describe('CSV with columns wavelength [unit] and intensity-nu [unit] or intensity-lambda [unit]')
+        }),
+        z.array(diluted).min(1)
+      ],
+      {
         error: () => '`interstellar`, {blackbody: 2.7255 K, dilution: 1}, a list of such terms, or {table: file.csv} is expected'
-      })
-      .describe('Diluted blackbodies, a table, or `interstellar` (Mathis, Mezger & Panagia 1983)'),
-    strength: real({ from: 0, to: 1e12 }).prefault(1).describe('Factor, default 1')
-  }),
-  'an ambient field',
-  'kind'
-)
+      }
+    )
+    .describe('Diluted blackbodies, a table of intensities, or `interstellar` (starlight of Mathis, Mezger & Panagia 1983)'),
+  strength: real({ above: 0, to: 1e12 }).prefault(1).describe('Factor on the intensity, default 1')
+})
 
 /** One entry of `sources`. */
 export const sourceSchema = z.discriminatedUnion('kind', [star, ambient])

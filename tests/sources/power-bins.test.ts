@@ -3,8 +3,8 @@ import { transportWavelengths } from '../../src/dust/wavelength-grid.js'
 import { makeSamplingTable, sampleBin } from '../../src/math/cdf.js'
 import { stream } from '../../src/math/random.js'
 import type { StarSpec } from '../../src/scene/types.js'
+import { powerBins } from '../../src/sources/power-bins.js'
 import { starSpectrum } from '../../src/sources/star.js'
-import { starBins } from '../../src/sources/star-bins.js'
 
 const star: StarSpec = {
   name: 'star',
@@ -20,11 +20,11 @@ const star: StarSpec = {
 
 const sum = (values: Float64Array) => values.reduce((total, value) => total + value, 0)
 
-describe('starBins', () => {
+describe('powerBins', () => {
   // 0.50 of a blackbody lies below 4107.24848771 um K, 0.25 below 2897.53157101 um K (series of the blackbody fraction)
   const [quarter, half] = [2897.53157101, 4107.24848771].map((lambdaT) => (lambdaT * 1e-4) / 5000)
   const grid = transportWavelengths(...starSpectrum(star).range, [quarter, half])
-  const bins = starBins(starSpectrum(star), grid)
+  const bins = powerBins(starSpectrum(star), grid)
 
   it('share out the luminosity of a blackbody as its fractions say', () => {
     expect(sum(bins) / star.luminosity).toBeCloseTo(1, 14)
@@ -48,7 +48,7 @@ describe('starBins', () => {
     const fluxNu = Float64Array.of(1, 1, 1e8, 1, 1)
     const spectrum = { kind: 'table' as const, table: { file: 'made-up.csv', wavelength, fluxNu } }
     const lined = starSpectrum({ ...star, spectrum })
-    const parts = starBins(lined, grid)
+    const parts = powerBins(lined, grid)
     const at = grid.edges.findIndex((edge) => edge > 1.2e-4) - 1
     expect(sum(parts) / star.luminosity).toBeCloseTo(1, 14)
     // log-log flanks: area 2 x 1e8 / ln(1e8) x half width, against a continuum 3e4 times wider
