@@ -1,4 +1,4 @@
-import type { CameraSpec, Scene } from '../scene/types.js'
+import type { CameraSpec, Scene, StarSpec } from '../scene/types.js'
 import type { StarOnSky } from './types.js'
 import { viewBasis } from './view.js'
 
@@ -6,7 +6,8 @@ import { viewBasis } from './view.js'
 export function starsOnSky({ sources, distance }: Scene, { view, wavelengths }: CameraSpec): StarOnSky[] {
   const { right, up } = viewBasis(view)
   const along = (axis: number[], at: number[]) => axis.reduce((sum, component, i) => sum + component * at[i], 0) / distance
-  return sources.map(({ name, at, extent, radius, limbDarkening }) => ({
+  const stars = sources.filter((source): source is StarSpec => source.kind === 'star')
+  return stars.map(({ name, at, extent, radius, limbDarkening }) => ({
     name,
     east: 0 - along(right, at),
     north: along(up, at),

@@ -20,6 +20,8 @@ export interface CameraImages {
   stokes?: StokesPlanes
   /** The stars whose light is in `direct`, wherever in the pixels they lie. */
   stars: StarOnSky[]
+  /** Ambient light that dust and stars take out of the line of sight, no part of the total; absent without ambient fields. */
+  deficit?: Float64Array
   /** For each wavelength: the estimated relative error of placing the rays, weighted by flux. */
   samplingError: number[]
 }
@@ -47,5 +49,7 @@ export interface ApertureSpectrum {
   scattered: Float64Array
   /** Where some dust polarises. */
   stokes?: StokesPlanes
+  /** As in `CameraImages`. */
+  deficit?: Float64Array
   samplingError: number[]
 }

@@ -24,6 +24,9 @@ export function spectrumEcsv(spectrum: ApertureSpectrum, scene: Scene): string {
     { name: 'direct', unit, description: 'straight from the sources', values: values.direct },
     { name: 'emitted', unit, description: 'emitted by dust and not scattered', values: values.emitted },
     { name: 'scattered', unit, description: 'scattered by dust', values: values.scattered },
+    ...(values.deficit
+      ? [{ name: 'deficit', unit, description: 'ambient light missing in the aperture, not in the flux', values: values.deficit }]
+      : []),
     ...stokesColumns(spectrum)
   ]
   return ecsv(columns, {

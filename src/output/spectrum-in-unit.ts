@@ -10,6 +10,8 @@ export interface SpectrumValues {
   direct: number[]
   emitted: number[]
   scattered: number[]
+  /** Absent without ambient fields. */
+  deficit?: number[]
 }
 
 /** Converts a spectrum from cgs to its own unit. */
@@ -24,6 +26,7 @@ export function spectrumInUnit(measured: ApertureSpectrum): SpectrumValues {
     sigma: contexts.map((context, k) => unit.sigmaFromCgs(measured.total[k], measured.sigma[k], context)),
     direct: convert(measured.direct),
     emitted: convert(measured.emitted),
-    scattered: convert(measured.scattered)
+    scattered: convert(measured.scattered),
+    ...(measured.deficit && { deficit: convert(measured.deficit) })
   }
 }

@@ -10,6 +10,8 @@ import type { Estimator } from './estimator.js'
 import { inLanes } from './in-lanes.js'
 import { lightJob } from './light-job.js'
 import { wavelengthsAbreast } from './memory.js'
+import { observeDeficit } from './observe-deficit.js'
+import type { Studio } from './observe-wavelength.js'
 import { type RunProgress, Stopped } from './progress.js'
 import { addTime, type PhaseTime, stopwatch } from './stopwatch.js'
 import { emptyProducts, putValues, valuesOf, type WantedValues } from './wanted.js'
@@ -86,18 +88,22 @@ export async function lightStage(
     const report = (progress: Omit<RunProgress, 'wavelength' | 'index' | 'count'>) => {
       if (index === front) onProgress({ wavelength, index, count: wavelengths.length, ...progress })
     }
-    const job = lightJob(model, dustLight(model, dust, wavelength), estimator, wanted)
+    const light = dustLight(model, dust, wavelength)
+    const job = lightJob(model, light, estimator, wanted)
     const found = job.request
       ? await packetsFrom(job.request, index, (round) => report({ stage: 'light', ...round, of: round.packets }))
       : { sums: undefined, packets: 0, error: 0 }
     if (found === 'stopped') throw new Stopped()
-    const complete = await job.develop(found.sums, {
+    const studio: Studio = {
       pool,
       ledger,
       name: names.pictures,
       onDone: (observer, rows, of) => report({ stage: 'pictures', observer, done: rows, of, round: 0, error: Number.NaN }),
       stop
-    })
+    }
+    const complete =
+      (await job.develop(found.sums, studio)) &&
+      (model.fields.length === 0 || (await observeDeficit(model, light, wanted, studio)))
     if (!complete || stop?.aborted) throw new Stopped()
     const { packets, error } = found
     // What has passed since the one before was done.

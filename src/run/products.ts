@@ -8,6 +8,8 @@ import { polarisedPicture } from '../output/png/polarised-picture.js'
 import { spectrumEcsv } from '../output/spectrum-ecsv.js'
 import { wavelengthLabels } from '../output/wavelength-label.js'
 import { sceneYaml } from '../scene/write.js'
+import { ambientIntensity } from '../solve/scatter-medium.js'
+import { LIGHT_SPEED } from '../units/constants.js'
 import { changedInputs } from './changed-inputs.js'
 import { cellColumns, dustStructure } from './dust-cells.js'
 import { resultWarnings } from './result-warnings.js'
@@ -33,7 +35,15 @@ function productsOf({ model, dust, images, spectra }: RunResult): Product[] {
     ...images.flatMap((result) => {
       const { name, wavelengths } = result.camera
       return [
-        { file: `images/${name}.fits`, make: () => cameraFits(result, scene) },
+        {
+          file: `images/${name}.fits`,
+          make: () =>
+            cameraFits(
+              result,
+              scene,
+              wavelengths.map((wavelength) => ambientIntensity(model, LIGHT_SPEED / wavelength))
+            )
+        },
         ...wavelengthLabels(wavelengths).flatMap((label, k) => {
           const path = `images/${name}-${label}`
           const picture = { file: `${path}.png`, make: () => cameraPicture(result, k, scene) }

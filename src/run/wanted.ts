@@ -14,7 +14,7 @@ const PLANES = ['total', 'sigma', 'direct', 'emitted', 'scattered'] as const
 
 /** Values of one camera or spectrum at one wavelength. */
 export type WantedValues = Record<(typeof PLANES)[number], Float64Array> &
-  Partial<Record<(typeof STOKES)[number], Float64Array>> & {
+  Partial<Record<(typeof STOKES)[number] | 'deficit', Float64Array>> & {
     samplingError: number
     /** Of each star in the picture, erg/s/cm2/Hz. */
     starFlux: number[]
@@ -29,7 +29,8 @@ export function emptyProducts(scene: Scene, estimator: Estimator) {
     emitted: new Float64Array(length),
     scattered: new Float64Array(length),
     // Exit bins catch intensity alone.
-    ...(estimator !== 'exit' && isPolarised(scene) && { stokes: stokesPlanes(length) })
+    ...(estimator !== 'exit' && isPolarised(scene) && { stokes: stokesPlanes(length) }),
+    ...(hasAmbient(scene) && { deficit: new Float64Array(length) })
   })
   const images = scene.cameras.map((camera): CameraImages => {
     const [width, height] = camera.pixels
@@ -63,6 +64,7 @@ export function valuesOf(wanted: Wanted[]): WantedValues[] {
     const copies = PLANES.map((plane): [string, Float64Array] => [plane, product[plane].slice(from, to)])
     const { stokes } = product
     if (stokes) copies.push(...STOKES.map((plane): [string, Float64Array] => [plane, stokes[plane].slice(from, to)]))
+    if (product.deficit) copies.push(['deficit', product.deficit.slice(from, to)])
     const starFlux = starsOf(want).map(({ flux }) => flux[want.k])
     return { ...Object.fromEntries(copies), samplingError: product.samplingError[want.k], starFlux } as WantedValues
   })
@@ -74,6 +76,7 @@ export function putValues(wanted: Wanted[], values: WantedValues[]): void {
     const { product, from } = placeOf(want)
     for (const plane of PLANES) product[plane].set(values[i][plane], from)
     if (product.stokes) for (const plane of STOKES) product.stokes[plane].set(values[i][plane]!, from)
+    product.deficit?.set(values[i].deficit!, from)
     product.samplingError[want.k] = values[i].samplingError
     starsOf(want).forEach(({ flux }, star) => {
       flux[want.k] = values[i].starFlux[star]
@@ -91,4 +94,8 @@ function placeOf(want: Wanted) {
 
 function indicesOf(values: number[], value: number): number[] {
   return values.flatMap((other, k) => (other === value ? [k] : []))
+}
+
+function hasAmbient({ sources }: Scene): boolean {
+  return sources.some(({ kind }) => kind === 'ambient')
 }

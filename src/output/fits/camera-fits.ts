@@ -14,29 +14,34 @@ import { originCards } from './origin-cards.js'
 import { tableHdu } from './table.js'
 import { wavelengthTableHdu, wcsCards } from './wcs.js'
 
-type Plane = 'total' | 'sigma' | 'direct' | 'emitted' | 'scattered'
+type Plane = 'total' | 'sigma' | 'direct' | 'emitted' | 'scattered' | 'deficit'
 
 const planes: [Plane, string][] = [
   ['total', 'total specific intensity'],
   ['sigma', '1 sigma of the Monte Carlo part'],
   ['direct', 'light straight from the sources'],
   ['emitted', 'light emitted by dust and not scattered'],
-  ['scattered', 'light scattered by dust']
+  ['scattered', 'light scattered by dust'],
+  ['deficit', 'ambient light missing from the line of sight']
 ]
 
 /**
  * The FITS file of a camera in the camera's unit, axes x (west), y (north), wavelength. The primary HDU is the total;
  * image extensions SIGMA, DIRECT, EMITTED, SCATTERED, where light is polarised Q, SIGMA_Q, U, SIGMA_U, V and SIGMA_V, the table of
- * wavelengths and that of the stars follow.
+ * wavelengths and that of the stars follow. With ambient fields there is DEFICIT too, whose header holds their intensity beside the dust,
+ * `ambient` (cgs, one value a wavelength), in the cards AMBI1, AMBI2 and so on.
  */
-export function cameraFits(images: CameraImages, scene: Scene): Uint8Array {
+export function cameraFits(images: CameraImages, scene: Scene, ambient: number[] = []): Uint8Array {
   const { width, height, camera } = images
   const axes = [width, height, camera.wavelengths.length]
   const common = [card('BUNIT', intensityUnit(camera.unit).fits), ...wcsCards({ width, height, field: camera.field }, scene.sky)]
-  const parts = planes.map(([plane, meaning], i) => {
+  const present = planes.filter(([plane]) => images[plane] !== undefined)
+  const parts = present.map(([plane, meaning], i) => {
     const name = [card('EXTNAME', plane.toUpperCase()), commentCard(`This image: ${meaning}.`)]
     const origin = i === 0 ? [...originCards(scene), ...viewCards(images)] : []
-    return imageHdu(i === 0 ? 'primary' : 'extension', axes, planeInUnit(images, plane), [...name, ...common, ...origin])
+    const level = plane === 'deficit' ? ambientCards(images, ambient) : []
+    const cards = [...name, ...common, ...origin, ...level]
+    return imageHdu(i === 0 ? 'primary' : 'extension', axes, planeInUnit(images, plane), cards)
   })
   const stokes = stokesHdus(images, axes, wcsCards({ width, height, field: camera.field }, scene.sky))
   const stars = images.stars.length > 0 ? [starsTableHdu(images)] : []
@@ -90,6 +95,14 @@ function starsTableHdu({ stars, camera }: CameraImages): Uint8Array {
   )
 }
 
+function ambientCards(images: CameraImages, ambient: number[]): string[] {
+  const unit = intensityUnit(images.camera.unit)
+  return ambient.flatMap((intensity, k) => {
+    const value = unit.fromCgs(intensity, pixelContext(images, k))
+    return Number.isFinite(value) ? [realCard(`AMBI${k + 1}`, value, `[BUNIT] ambient light, wavelength ${k + 1}`)] : []
+  })
+}
+
 function viewCards({ camera }: CameraImages): string[] {
   return [
     card('CAMERA', camera.name, 'name of the camera'),
@@ -102,7 +115,7 @@ function viewCards({ camera }: CameraImages): string[] {
 function planeInUnit(images: CameraImages, plane: Plane): Float64Array {
   const unit = intensityUnit(images.camera.unit)
   return inUnit(images, (context, i) =>
-    plane === 'sigma' ? unit.sigmaFromCgs(images.total[i], images.sigma[i], context) : unit.fromCgs(images[plane][i], context)
+    plane === 'sigma' ? unit.sigmaFromCgs(images.total[i], images.sigma[i], context) : unit.fromCgs(images[plane]![i], context)
   )
 }
 
