@@ -12,6 +12,7 @@ import type { Shape } from '../shapes/shape.js'
 import { ambientField } from '../sources/ambient.js'
 import { starSpectrum } from '../sources/star.js'
 import { cellDensities } from './density.js'
+import { withFirstRadii } from './inner-radii.js'
 import type { DustComponent, Model } from './model.js'
 import { mattering } from './wavelengths.js'
 
@@ -21,7 +22,8 @@ export interface CellPlan extends Pick<Model, 'scene' | 'dimensions' | 'reason' 
 }
 
 /** Lays the cells of a scene; `tables`: optics of grains by the name of the opacity, where they are known. Throws SceneError where the scene asks for what cannot be. */
-export function planCells(scene: Scene, tables: Record<string, GrainOptics> = {}): CellPlan {
+export function planCells(asked: Scene, tables: Record<string, GrainOptics> = {}): CellPlan {
+  const scene = withFirstRadii(asked)
   const stars = scene.sources.flatMap((spec) => (spec.kind === 'star' ? [{ spec, spectrum: starSpectrum(spec) }] : []))
   const fields = scene.sources.flatMap((spec) => (spec.kind === 'ambient' ? [{ spec, spectrum: ambientField(spec) }] : []))
   const parts = scene.dust.map((spec, index) => {
@@ -44,8 +46,8 @@ export function planCells(scene: Scene, tables: Record<string, GrainOptics> = {}
 }
 
 /** Turns a scene into cells filled with dust. Throws SceneError where the scene asks for what cannot be. */
-export function buildModel(scene: Scene, plan = planCells(scene)): Model {
-  const { dimensions, reason, walls, cells, stars, fields, parts } = plan
+export function buildModel(asked: Scene, plan = planCells(asked)): Model {
+  const { scene, dimensions, reason, walls, cells, stars, fields, parts } = plan
   const warnings: string[] = []
   const components: DustComponent[] = parts.map(({ spec, law, shape, scale }) => {
     const { density, massRatio } = cellDensities(walls, shape, scale)

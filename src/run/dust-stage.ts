@@ -1,7 +1,10 @@
+import { buildModel } from '../model/build-model.js'
+import { soughtComponents, withInnerRadii } from '../model/inner-radii.js'
 import type { Model } from '../model/model.js'
 import { dustLight } from '../solve/dust-light.js'
 import { type EquilibriumResult, needsEquilibrium, solveEquilibrium } from '../solve/equilibrium.js'
-import { equilibriumPiece } from '../solve/equilibrium-round.js'
+import { type EquilibriumProgress, equilibriumPiece } from '../solve/equilibrium-round.js'
+import { type InnerRadii, radiiPiece, solveInnerRadii } from '../solve/inner-radius.js'
 import { type DustTemperatures, givenTemperatures } from '../solve/temperatures.js'
 import type { Ledger } from '../workers/ledger.js'
 import type { WorkerPool } from '../workers/pool.js'
@@ -19,35 +22,46 @@ export interface DustStage {
   dust: DustTemperatures
   /** Absent when no temperature had to be solved for. */
   equilibrium?: Omit<EquilibriumResult, 'dust'>
+  /** Absent when none was sought. */
+  innerRadii?: InnerRadii
   time: PhaseTime
 }
 
-/** Temperatures from the ledger, or found and kept there. Throws WorkerFailure or Stopped. */
+/**
+ * Temperatures from the ledger, or found and kept there, with the model that they belong to: inner radii that were sought have been
+ * found. Throws SceneError, WorkerFailure or Stopped.
+ */
 export async function dustStage(
   model: Model,
   pool: WorkerPool,
   ledger: Ledger,
   onProgress: (progress: RunProgress) => void,
   stop?: AbortSignal
-): Promise<DustStage> {
+): Promise<DustStage & { model: Model }> {
   const clock = stopwatch()
-  if (!needsEquilibrium(model.scene)) return { dust: givenTemperatures(model), time: clock() }
+  if (!needsEquilibrium(model.scene)) return { model, dust: givenTemperatures(model), time: clock() }
   const before = ledger.take(dustPiece) as DustStage | undefined
-  if (before) return before
-  const found = await solveEquilibrium(
-    model,
-    pool,
-    ledger,
-    (dust) => errorOfEmission(model, dust),
-    (at) => onProgress({ stage: 'dust', of: at.packets, ...at }),
-    stop
-  )
+  if (before) return { ...before, model: withRadii(model, before.innerRadii) }
+  const show = (at: EquilibriumProgress) => onProgress({ stage: 'dust', of: at.packets, ...at })
+  const sought = soughtComponents(model.scene).length > 0
+  const innerRadii = sought ? await solveInnerRadii(model.scene, pool, ledger, show, stop) : undefined
+  if (innerRadii === 'stopped') throw new Stopped()
+  const fitted = withRadii(model, innerRadii)
+  const found = await solveEquilibrium(fitted, pool, ledger, (dust) => errorOfEmission(fitted, dust), show, stop)
   if (found === 'stopped') throw new Stopped()
   const { dust, ...equilibrium } = found
-  const stage = { dust, equilibrium, time: clock() }
+  const stage = { dust, equilibrium, ...(innerRadii && { innerRadii }), time: clock() }
   ledger.keep(dustPiece, stage)
   ledger.forget(equilibriumPiece)
-  return stage
+  ledger.forget(radiiPiece)
+  return { ...stage, model: fitted }
+}
+
+/** The model with the inner radii that were found. */
+function withRadii(model: Model, innerRadii: InnerRadii | undefined): Model {
+  if (!innerRadii) return model
+  const radii = new Map(innerRadii.found.map(({ component, radius }) => [component, radius]))
+  return buildModel(withInnerRadii(model.scene, radii))
 }
 
 /** So many wavelengths of the cameras, and of the spectra, are looked at to see how the noise of the temperatures shows. */

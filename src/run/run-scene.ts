@@ -2,6 +2,7 @@ import type { ApertureSpectrum, CameraImages } from '../camera/types.js'
 import type { Model } from '../model/model.js'
 import type { Scene } from '../scene/types.js'
 import type { EquilibriumResult } from '../solve/equilibrium.js'
+import type { InnerRadii } from '../solve/inner-radius.js'
 import type { DustTemperatures } from '../solve/temperatures.js'
 import { type DustStage, dustStage } from './dust-stage.js'
 import { type LightPackets, lightStage, type PacketSource } from './light-stage.js'
@@ -14,6 +15,8 @@ export interface RunResult {
   dust: DustTemperatures
   /** Absent when no temperature had to be solved for. */
   equilibrium?: Omit<EquilibriumResult, 'dust'>
+  /** Absent when none was sought. */
+  innerRadii?: InnerRadii
   images: CameraImages[]
   spectra: ApertureSpectrum[]
   /** At each observed wavelength. */
@@ -28,9 +31,9 @@ export interface RunResult {
  * MemoryError, WorkerFailure or Stopped.
  */
 export function runScene(scene: Scene, options: RunOptions, packetsFrom?: PacketSource): Promise<RunResult> {
-  return withCrew(scene, options, async ({ model, pool, ledger, time: modelTime }) => {
+  return withCrew(scene, options, async ({ model: first, pool, ledger, time: modelTime }) => {
     const { estimator, onProgress, stop } = options
-    const { dust, equilibrium, time: dustTime } = await dustStage(model, pool, ledger, onProgress, stop)
+    const { model, dust, equilibrium, innerRadii, time: dustTime } = await dustStage(first, pool, ledger, onProgress, stop)
     const light = await lightStage(model, dust, pool, {
       estimator,
       ledger,
@@ -43,6 +46,7 @@ export function runScene(scene: Scene, options: RunOptions, packetsFrom?: Packet
       model,
       dust,
       ...(equilibrium && { equilibrium }),
+      ...(innerRadii && { innerRadii }),
       images,
       spectra,
       lightPackets,
@@ -54,8 +58,5 @@ export function runScene(scene: Scene, options: RunOptions, packetsFrom?: Packet
 
 /** Solves for the dust temperatures of a scene and leaves them in the ledger. Throws as `runScene` does. */
 export function runDust(scene: Scene, options: RunOptions): Promise<DustStage & { model: Model }> {
-  return withCrew(scene, options, async ({ model, pool, ledger }) => ({
-    model,
-    ...(await dustStage(model, pool, ledger, options.onProgress, options.stop))
-  }))
+  return withCrew(scene, options, ({ model, pool, ledger }) => dustStage(model, pool, ledger, options.onProgress, options.stop))
 }

@@ -37,6 +37,15 @@ export function linkProblems(document: YamlDocument): SceneProblem[] {
     report(['dust', i, 'opacity'], `no such entry of \`opacities\`; ${hint}there are: ${known.join(', ') || 'none'}`)
   })
 
+  const stars = entriesOf(scene.sources).filter(({ kind = 'star' }) => kind === 'star')
+  dust.forEach(({ shape, temperature = 'solve' }, i) => {
+    if (!isRecord(shape) || !isRecord(shape.inner)) return
+    if (temperature !== 'solve')
+      report(['dust', i, 'shape', 'inner'], 'an inner radius follows from a temperature only in dust with `temperature: solve`')
+    else if (stars.length === 0)
+      report(['dust', i, 'shape', 'inner'], 'an inner radius follows from a temperature only about a star; give a length')
+  })
+
   const glows = dust.some(({ temperature = 'solve' }) => temperature !== 'solve' && temperature !== 'none')
   if (entriesOf(scene.sources).length === 0 && !glows)
     report([], 'nothing shines: give at least one source, or dust with a fixed temperature')

@@ -248,6 +248,14 @@ export type ShapeSpec = (
 ) & {
   /** Tips the axis of the shape by `angle` from z towards the azimuth `toward`, rad. */
   tilt?: { angle: number; toward: number }
+  /** The inner radius is to be found; until then it, and an outer one that follows from it, are NaN. */
+  sought?: SoughtInner
+}
+
+/** The inner radius is where the component reaches a temperature, K; `timesInner`: outer over inner radius, where it was given so. */
+export interface SoughtInner {
+  temperature: number
+  timesInner?: number
 }
 
 /** Relative density in equal cubes, read from a FITS file; x varies fastest. */

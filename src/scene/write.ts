@@ -10,6 +10,7 @@ import type {
   DustSpec,
   Scene,
   ShapeSpec,
+  SoughtInner,
   SpectrumSpec,
   StarSpec,
   ViewSpec
@@ -131,12 +132,11 @@ function carveYaml(cut: CarveSpec): Yaml {
 function shapeYaml(shape: ShapeSpec): Yaml {
   switch (shape.kind) {
     case 'shell':
-      return { kind: shape.kind, inner: length(shape.inner), outer: length(shape.outer), slope: shape.slope }
+      return { kind: shape.kind, ...edgesYaml(shape), slope: shape.slope }
     case 'disk':
       return {
         kind: shape.kind,
-        inner: length(shape.inner),
-        outer: length(shape.outer),
+        ...edgesYaml(shape),
         'surface-slope': shape.surfaceSlope,
         'scale-height': { ...shape.scaleHeight, value: length(shape.scaleHeight.value), at: length(shape.scaleHeight.at) },
         ...(shape.taper !== undefined && { taper: { at: length(shape.taper) } })
@@ -153,8 +153,7 @@ function shapeYaml(shape: ShapeSpec): Yaml {
     case 'infall':
       return {
         kind: shape.kind,
-        inner: length(shape.inner),
-        outer: length(shape.outer),
+        ...edgesYaml(shape),
         'centrifugal-radius': length(shape.centrifugalRadius)
       }
     case 'ball':
@@ -163,6 +162,13 @@ function shapeYaml(shape: ShapeSpec): Yaml {
       return { kind: shape.kind, thickness: length(shape.thickness), width: length(shape.width), at: shape.at.map(length) }
     case 'field':
       return { kind: shape.kind, file: shape.data.file, width: length(shape.width), at: shape.at.map(length) }
+  }
+}
+
+function edgesYaml({ inner, outer, sought }: { inner: number; outer: number; sought?: SoughtInner }): Yaml {
+  return {
+    inner: sought ? { temperature: temperature(sought.temperature) } : length(inner),
+    outer: sought?.timesInner === undefined ? length(outer) : { 'times-inner': sought.timesInner }
   }
 }
 

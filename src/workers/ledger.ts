@@ -22,3 +22,15 @@ export const noLedger: Ledger = {
   forget: () => {},
   settle: async () => {}
 }
+
+/** A part of a ledger for itself: its pieces have names of their own. */
+export function sectionOf(ledger: Ledger, section: string): Ledger {
+  const named = (name: string) => `${name}-${section}`
+  return {
+    take: (name) => ledger.take(named(name)),
+    keep: (name, piece) => ledger.keep(named(name), piece),
+    offer: (name, make, milestone) => ledger.offer(named(name), make, milestone),
+    forget: (name) => ledger.forget(named(name)),
+    settle: () => ledger.settle()
+  }
+}

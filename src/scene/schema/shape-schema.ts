@@ -1,6 +1,6 @@
 import { z } from 'zod'
-import type { ShapeSpec } from '../types.js'
-import { dataFile, notYet, real, section } from './fields.js'
+import type { ShapeSpec, SoughtInner } from '../types.js'
+import { dataFile, real, section } from './fields.js'
 import { quantity, vector } from './quantity-field.js'
 
 const length = quantity('length')
@@ -9,10 +9,7 @@ const inner = z
   .union(
     [
       length,
-      notYet(
-        section({ temperature: quantity('temperature').describe('Temperature that this component reaches at its inner edge') }),
-        'an inner radius found from a temperature'
-      )
+      section({ temperature: quantity('temperature').describe('Temperature that this component reaches at its inner edge') })
     ],
     { error: () => 'a length with its unit, such as `6 au`, or {temperature: 1500 K} is expected' }
   )
@@ -131,13 +128,18 @@ export const shapeSchema = z
   .transform((shape): WrittenShape => shape)
 
 interface Edges {
-  inner: number
+  inner: number | { temperature: number }
   outer: number | { 'times-inner': number }
 }
 
-function resolveEdges({ inner, outer }: Edges, context: z.RefinementCtx<unknown>): { inner: number; outer: number } {
-  const edge = typeof outer === 'number' ? outer : inner * outer['times-inner']
-  if (!(inner < edge))
-    context.issues.push({ code: 'custom', message: 'must be less than `outer`', path: ['inner'], input: inner })
-  return { inner, outer: edge }
+function resolveEdges(
+  { inner, outer }: Edges,
+  context: z.RefinementCtx<unknown>
+): { inner: number; outer: number; sought?: SoughtInner } {
+  const timesInner = typeof outer === 'number' ? undefined : outer['times-inner']
+  const from = typeof inner === 'number' ? inner : Number.NaN
+  const to = typeof outer === 'number' ? outer : from * outer['times-inner']
+  if (from >= to) context.issues.push({ code: 'custom', message: 'must be less than `outer`', path: ['inner'], input: inner })
+  if (typeof inner === 'number') return { inner: from, outer: to }
+  return { inner: from, outer: to, sought: { temperature: inner.temperature, ...(timesInner !== undefined && { timesInner }) } }
 }

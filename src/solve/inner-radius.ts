@@ -1,0 +1,140 @@
+import { coolingOf, type EmissionTable } from '../dust/emission.js'
+import { standardError } from '../math/stats.js'
+import { buildModel } from '../model/build-model.js'
+import { innerRadiusOf, refusal, soughtComponents, withInnerRadii } from '../model/inner-radii.js'
+import type { Model } from '../model/model.js'
+import type { Scene } from '../scene/types.js'
+import { type Ledger, sectionOf } from '../workers/ledger.js'
+import type { WorkerPool } from '../workers/pool.js'
+import { type EdgeHeating, edgeHeating } from './edge-heating.js'
+import { solveEquilibrium } from './equilibrium.js'
+import { equilibriumSetup } from './equilibrium-medium.js'
+import { type EquilibriumProgress, equilibriumPiece } from './equilibrium-round.js'
+
+/** Packets of the first step; growth of steps once the radii nearly stand: at most, and beyond what the error asks for. */
+const FIRST_STEP = 65_536
+const MOST_GROWTH = 32
+const MARGIN = 1.3
+/** Relative change below which more packets are worth their time, the last change allowed (of which a tenth may be left), and 1 sigma. */
+const NEAR = 0.02
+const SETTLED = 5e-3
+const SIGMA = 7e-4
+const MOST_STEPS = 40
+/** d ln(heating) / d ln(r) in the light of a star, and between which it is believed when two steps tell otherwise. */
+const INVERSE_SQUARE = -2
+const SLOPES = [-5, -1]
+
+/** The inner radius of a component, where it was sought. */
+export interface FoundRadius {
+  component: number
+  /** cm */
+  radius: number
+  /** Relative 1 sigma of the radius. */
+  sigma: number
+}
+
+export interface InnerRadii {
+  found: FoundRadius[]
+  /** False when packets or steps ran out before they were known well enough. */
+  settled: boolean
+  steps: number
+  /** Packets spent. */
+  packets: number
+}
+
+/** Name under which the ledger holds the radii as far as they are. */
+export const radiiPiece = 'dust-radii'
+
+interface State extends Record<string, unknown> {
+  radii: number[]
+  /** Packets of the present step, and of all before. */
+  size: number
+  spent: number
+  step: number
+  slopes: number[]
+  /** ln of radius and of heating of the step before, by component sought. */
+  before: { radius: number; heating: number }[]
+  /** When they are found. */
+  result?: InnerRadii
+}
+
+/**
+ * Finds the radii at which components reach the temperatures asked for at their inner edges. Each step solves for the temperatures
+ * of the whole model and moves every radius by the ratio of heating to the cooling at its temperature, which falls as r^-2 in the
+ * light of a star, or as the last steps tell. Steps grow until the radii are known to 0.07 % (1 sigma). Throws SceneError.
+ */
+export async function solveInnerRadii(
+  scene: Scene,
+  pool: WorkerPool,
+  ledger: Ledger,
+  onProgress: (progress: EquilibriumProgress) => void,
+  stop?: AbortSignal
+): Promise<InnerRadii | 'stopped'> {
+  const sought = soughtComponents(scene)
+  const most = scene.effort.equilibrium
+  const state = (ledger.take(radiiPiece) as State | undefined) ?? {
+    radii: sought.map((i) => innerRadiusOf(scene.dust[i])),
+    size: Math.min(FIRST_STEP, most),
+    spent: 0,
+    step: 0,
+    slopes: sought.map(() => INVERSE_SQUARE),
+    before: []
+  }
+  while (!state.result) {
+    const moved = withInnerRadii(scene, new Map(sought.map((i, k) => [i, state.radii[k]])))
+    const effort = { ...scene.effort, precision: null, equilibrium: state.size }
+    const model = buildModel({ ...moved, effort, seed: `${scene.seed}/radii/${state.step}` })
+    const section = sectionOf(ledger, `${state.step}`)
+    const solved = await solveEquilibrium(model, pool, section, () => 0, onProgress, stop)
+    if (solved === 'stopped') return solved
+    state.spent += solved.packets
+    state.step++
+    const { tables } = equilibriumSetup(model)
+    const changes = sought.map((i, k) => stepOf(model, tables[i], i, k, solved.dust, state))
+    const furthest = Math.max(...changes.map(({ change }) => Math.abs(change)))
+    const sigma = Math.max(...changes.map((each) => each.sigma))
+    const known = furthest <= SETTLED && sigma <= SIGMA
+    const over = state.step === MOST_STEPS || (furthest <= NEAR && state.size >= most) || !Number.isFinite(furthest)
+    changes.forEach(({ change }, k) => {
+      if (Number.isFinite(change)) state.radii[k] *= Math.exp(change)
+    })
+    if (known || over) {
+      const found = sought.map((component, k) => ({ component, radius: state.radii[k], sigma: changes[k].sigma }))
+      state.result = { found, settled: known, steps: state.step, packets: state.spent }
+    } else if (furthest <= NEAR && sigma > SIGMA) {
+      const needed = MARGIN * (sigma / SIGMA) ** 2
+      state.size = Math.min(most, Math.ceil(state.size * Math.min(MOST_GROWTH, needed)))
+    }
+    ledger.keep(radiiPiece, structuredClone(state))
+    section.forget(equilibriumPiece)
+  }
+  return state.result
+}
+
+/** The change of ln(radius) that a component's heating asks for, and its 1 sigma; remembers the step in the state. */
+function stepOf(
+  model: Model,
+  table: EmissionTable,
+  component: number,
+  k: number,
+  dust: Parameters<typeof edgeHeating>[1],
+  { slopes, before }: State
+): { change: number; sigma: number } {
+  const spec = model.components[component].spec
+  const inner = innerRadiusOf(spec)
+  const heating: EdgeHeating = edgeHeating(model, dust, table, component, inner)
+  const here = { radius: Math.log(inner), heating: heating.value }
+  const last = before[k]
+  if (last && Math.abs(here.radius - last.radius) > NEAR) {
+    const slope = (here.heating - last.heating) / (here.radius - last.radius)
+    if (slope > SLOPES[0] && slope < SLOPES[1]) slopes[k] = slope
+  }
+  before[k] = here
+  const target = Math.log(coolingOf(table, spec.shape.sought!.temperature))
+  const change = (target - heating.value) / slopes[k]
+  if (Math.abs(change) > Math.log(1e3)) {
+    const { temperature } = spec.shape.sought!
+    throw refusal(model.scene, component, `the dust has ${temperature} K at no radius that the star alone decides; give a length`)
+  }
+  return { change, sigma: standardError(heating.groups) / Math.abs(slopes[k]) }
+}

@@ -1,0 +1,34 @@
+import { describe, expect, test } from 'vitest'
+import { parseScene } from '../../src/scene/read.js'
+import { sceneYaml } from '../../src/scene/write.js'
+import { exampleWith, problemsOf } from './example.js'
+
+const edges = 'inner: 6 au, outer: 3000 au'
+const giant = '- name: giant\n    temperature: 2800 K\n    luminosity: 6000 Lsun'
+
+describe('an inner radius to be found', () => {
+  test.each([
+    ['inner: {temperature: 1500 K}, outer: 3000 au', { temperature: 1500 }, 3000 * 1.495978707e13],
+    ['inner: {temperature: 800 K}, outer: {times-inner: 1000}', { temperature: 800, timesInner: 1000 }, Number.NaN]
+  ])('%s', (written, sought, outer) => {
+    const scene = parseScene(exampleWith([edges, written]), 's.yaml')
+    expect(scene.dust[0].shape).toMatchObject({ inner: Number.NaN, outer, sought })
+    expect(sceneYaml(scene)).toContain(sought.timesInner ? '{times-inner: 1000}' : '{temperature: 1500 K}')
+    expect(parseScene(sceneYaml(scene), 's.yaml').dust).toEqual(scene.dust)
+  })
+
+  test.each([
+    [
+      'dust that does not emit',
+      [['{optical-depth: 1.5, at: 0.55 um}', '{mass: 1 Mearth}\n    temperature: none']],
+      /`temperature: solve`/
+    ],
+    ['dust of a fixed temperature', [['{optical-depth: 1.5, at: 0.55 um}', '{mass: 1 Mearth}\n    temperature: 40 K']], /solve/],
+    ['no star', [[giant, '- name: sky\n    kind: ambient\n    spectrum: interstellar']], /about a star/]
+  ] as [string, [string, string][], RegExp][])('makes no sense with %s', (_, changes, message) => {
+    const problems = problemsOf(exampleWith([edges, 'inner: {temperature: 900 K}, outer: 3000 au'], ...changes))
+    expect(problems.map(({ key }) => key)).toEqual(['dust.0.shape.inner'])
+    expect(problems[0].message).toMatch(message)
+    expect(problems[0].location.line).toBeGreaterThan(10)
+  })
+})
