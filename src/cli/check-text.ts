@@ -53,12 +53,16 @@ function ambient({ ambient }: SceneCheck): string[] {
 
 function dust({ dust }: SceneCheck): string[] {
   return table(
-    dust.map(({ name, opacity, shape, temperature, innerAu, outerAu, massMsun }) => [
+    dust.map(({ name, opacity, shape, temperature, innerAu, innerSoughtK, sublimationK, outerAu, massMsun }) => [
       name,
       `${shape} of ${opacity}`,
       `${shown(innerAu)} to ${shown(outerAu)} au`,
       `${shown(massMsun)} Msun`,
-      temperatureText(temperature)
+      temperatureText(temperature),
+      [
+        ...(innerSoughtK === undefined ? [] : [`inner radius guessed: run seeks where it has ${innerSoughtK} K`]),
+        ...(sublimationK === undefined ? [] : [`run removes what is hotter than ${sublimationK} K`])
+      ].join(', ')
     ])
   )
 }

@@ -22,8 +22,14 @@ export function runText(record: RunRecord, folder: string): string {
   ].join('\n')
 }
 
-function dustRows({ name, massMsun, temperatures }: DustFinding): string[][] {
-  const mass = [`dust ${name}`, `${shown(massMsun)} Msun`]
+function dustRows({ name, massMsun, sublimatedMsun = 0, innerRadius, temperatures }: DustFinding): string[][] {
+  const found = innerRadius && `${withError(innerRadius.au, innerRadius.sigmaAu)} au at ${innerRadius.kelvin} K`
+  const mass = [
+    `dust ${name}`,
+    `${shown(massMsun)} Msun`,
+    ...(sublimatedMsun > 0 ? [`${shown(sublimatedMsun)} Msun sublimated`] : []),
+    ...(found ? [`inner radius ${found}`] : [])
+  ]
   if (!temperatures) return [mass]
   const { hottest, innerEdge, coldest } = temperatures
   const at = ({ kelvin, sigmaKelvin, radiusAu }: typeof hottest) => `${withError(kelvin, sigmaKelvin)} K at ${shown(radiusAu)} au`

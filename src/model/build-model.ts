@@ -12,7 +12,7 @@ import type { Shape } from '../shapes/shape.js'
 import { ambientField } from '../sources/ambient.js'
 import { starSpectrum } from '../sources/star.js'
 import { cellDensities } from './density.js'
-import { withFirstRadii } from './inner-radii.js'
+import { hollowed, withFirstRadii } from './inner-radii.js'
 import type { DustComponent, Model } from './model.js'
 import { mattering } from './wavelengths.js'
 
@@ -56,7 +56,9 @@ export function buildModel(asked: Scene, plan = planCells(asked)): Model {
         `dust ${spec.name}: the cells do not resolve its shape (their mass is ${massRatio.toFixed(3)} of what it should be); ask for more cells under grid`
       )
     }
-    return { spec, law, shape, mass: scale * shape.totalMass, density }
+    const mass = scale * shape.totalMass
+    const massBefore = spec.hollow === undefined ? mass : scale * makeShape(spec.shape, spec).totalMass
+    return { spec, law, shape, mass, massBefore, density }
   })
   const volume = cellVolumes(walls, new Float64Array(allocateShared(8 * cells)))
   return { scene, dimensions, reason, walls, cells, volume, components, stars, fields, warnings }
@@ -81,7 +83,7 @@ function scaleOf(
 
 /** The shape of a component; a SceneError when nothing is left of it. */
 function shapeOf(scene: Scene, spec: DustSpec, index: number): Shape {
-  const shape = makeShape(spec.shape, spec)
+  const shape = makeShape(hollowed(spec), spec)
   if (shape.totalMass > 0) return shape
   const [key, message] = spec.carve
     ? ['carve', 'nothing is left of the shape']

@@ -3,56 +3,85 @@ import { planckNu } from '../dust/planck.js'
 import { blackbodyRange } from '../dust/wavelength-grid.js'
 import { integrate } from '../math/quadrature.js'
 import { SceneError } from '../scene/error.js'
-import type { DustSpec, Scene } from '../scene/types.js'
+import type { DustSpec, Scene, ShapeSpec } from '../scene/types.js'
 import { starSpectrum } from '../sources/star.js'
 import { AU, LIGHT_SPEED } from '../units/constants.js'
 
-/** Index of every component whose inner radius is to be found. */
-export function soughtComponents({ dust }: Scene): number[] {
-  return dust.flatMap(({ shape }, i) => (shape.sought ? [i] : []))
+/** An inner radius that is to be found: where a component reaches a temperature, K. */
+export interface SoughtRadius {
+  component: number
+  temperature: number
+  /** Where the radius stands, cm, and the least it can be. */
+  radius: number
+  least: number
 }
 
-/** The inner radius of a component, cm; NaN for shapes without one. */
-export function innerRadiusOf({ shape }: DustSpec): number {
-  return 'inner' in shape ? shape.inner : Number.NaN
+/**
+ * Every inner radius to be found: those given by a temperature, and those to which dust sublimates. Shapes without an inner radius, and
+ * clumps, which would move with it, sublimate cell by cell alone.
+ */
+export function soughtRadii({ dust }: Scene): SoughtRadius[] {
+  return dust.flatMap(({ shape, sublimation, hollow, clumps }, component) => {
+    if (!('inner' in shape)) return []
+    const { inner, sought } = shape
+    if (sought) return [{ component, temperature: sought.temperature, radius: inner, least: 0 }]
+    if (sublimation === undefined || clumps) return []
+    return [{ component, temperature: sublimation, radius: hollow ?? inner, least: inner }]
+  })
+}
+
+/** The shape of a component with what a run has found to be hollow. */
+export function hollowed({ shape, hollow }: DustSpec): ShapeSpec {
+  return hollow !== undefined && 'inner' in shape ? { ...shape, inner: hollow } : shape
 }
 
 /** A scene whose inner radii to be found have a first guess where they have no value yet. Throws SceneError. */
 export function withFirstRadii(scene: Scene): Scene {
-  const unknown = soughtComponents(scene).filter((i) => Number.isNaN(innerRadiusOf(scene.dust[i])))
+  const unknown = soughtRadii(scene).filter(({ radius }) => Number.isNaN(radius))
   if (unknown.length === 0) return scene
-  return withInnerRadii(scene, new Map(unknown.map((i) => [i, thinRadius(scene, i)])))
+  return withInnerRadii(
+    scene,
+    unknown.map((sought) => ({ ...sought, radius: thinRadius(scene, sought) }))
+  )
 }
 
-/** A scene with these inner radii (cm, by component). Throws SceneError for one that lies beyond the outer radius or inside a star. */
-export function withInnerRadii(scene: Scene, radii: Map<number, number>): Scene {
+/** A scene with these inner radii. Throws SceneError for one that lies beyond the outer radius or inside a star. */
+export function withInnerRadii(scene: Scene, radii: Pick<SoughtRadius, 'component' | 'radius'>[]): Scene {
   const surface = scene.sources.reduce(
     (most, source) => (source.kind === 'star' && source.extent === 'sphere' ? Math.max(most, source.radius!) : most),
     0
   )
-  const dust = scene.dust.map((spec, i): DustSpec => {
-    const inner = radii.get(i)
+  const dust = [...scene.dust]
+  for (const { component, radius } of radii) {
+    const spec = dust[component]
     const { shape } = spec
-    if (inner === undefined || !('inner' in shape)) return spec
-    const outer = shape.sought?.timesInner === undefined ? shape.outer : inner * shape.sought.timesInner
-    const would = `at ${shape.sought?.temperature} K it would lie at ${Number((inner / AU).toPrecision(3))} au`
-    if (!(inner < outer)) throw refusal(scene, i, `${would}, beyond the outer radius; give a length or a higher temperature`)
-    if (inner <= surface) throw refusal(scene, i, `${would}, inside a star; give a length or a lower temperature`)
-    return { ...spec, shape: { ...shape, inner, outer } }
-  })
+    if (!('inner' in shape)) continue
+    const { sought } = shape
+    const outer = sought?.timesInner === undefined ? shape.outer : radius * sought.timesInner
+    const place = `${Number((radius / AU).toPrecision(3))} au`
+    if (!sought) {
+      if (!(radius < outer)) throw refusal(scene, component, `all of the dust would sublimate: it is too hot out to ${place}`)
+      dust[component] = { ...spec, hollow: radius }
+      continue
+    }
+    const would = `at ${sought.temperature} K it would lie at ${place}`
+    if (!(radius < outer))
+      throw refusal(scene, component, `${would}, beyond the outer radius; give a length or a higher temperature`)
+    if (radius <= surface) throw refusal(scene, component, `${would}, inside a star; give a length or a lower temperature`)
+    dust[component] = { ...spec, shape: { ...shape, inner: radius, outer } }
+  }
   return { ...scene, dust }
 }
 
-/** An error at the inner radius of a component. */
+/** An error at the temperature that an inner radius follows from. */
 export function refusal(scene: Scene, component: number, message: string): SceneError {
-  const path = ['dust', component, 'shape', 'inner']
+  const path = ['dust', component, ...(scene.dust[component].sublimation === undefined ? ['shape', 'inner'] : ['sublimation'])]
   return new SceneError([{ location: scene.locate(path), key: path.join('.'), message }])
 }
 
 /** Where dust has its temperature in nothing but the light of the stars: 4 pi int kappa B d(nu) = int kappa L d(nu) / (4 pi r^2). */
-function thinRadius({ sources, opacities, dust }: Scene, component: number): number {
+function thinRadius({ sources, opacities, dust }: Scene, { component, temperature }: SoughtRadius): number {
   const { absorption } = makeOpacityLaw(opacities[dust[component].opacity])
-  const { temperature } = dust[component].shape.sought!
   const absorbed = ([shortest, longest]: [number, number], perHz: (nu: number) => number) =>
     integrate(
       (x) => {

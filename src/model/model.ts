@@ -29,6 +29,8 @@ export interface DustComponent {
   shape: Shape
   /** g */
   mass: number
+  /** What `amount` stands for, g: the mass with all that has sublimated. */
+  massBefore: number
   /** g/cm3, one value a cell. */
   density: Float64Array
 }

@@ -40,6 +40,10 @@ export interface SceneCheck {
     shape: string
     temperature: string | number
     innerAu: number
+    /** The inner radius is only a first guess: it will be sought where the dust has this temperature. */
+    innerSoughtK?: number
+    /** Dust hotter than this will be removed. */
+    sublimationK?: number
     outerAu: number
     massMsun: number
   }[]
@@ -90,6 +94,8 @@ export async function checkScene(
       shape: spec.shape.kind,
       temperature: spec.temperature,
       innerAu: shape.innerRadius / AU,
+      ...(spec.shape.sought && { innerSoughtK: spec.shape.sought.temperature }),
+      ...(spec.sublimation !== undefined && { sublimationK: spec.sublimation }),
       outerAu: shape.outerRadius / AU,
       massMsun: mass / SOLAR_MASS
     })),

@@ -1,10 +1,11 @@
 import { buildModel } from '../model/build-model.js'
-import { soughtComponents, withInnerRadii } from '../model/inner-radii.js'
+import { soughtRadii, withInnerRadii } from '../model/inner-radii.js'
 import type { Model } from '../model/model.js'
 import { dustLight } from '../solve/dust-light.js'
 import { type EquilibriumResult, needsEquilibrium, solveEquilibrium } from '../solve/equilibrium.js'
 import { type EquilibriumProgress, equilibriumPiece } from '../solve/equilibrium-round.js'
 import { type InnerRadii, radiiPiece, solveInnerRadii } from '../solve/inner-radius.js'
+import { type Sublimation, sublimate, sublimationPiece, withoutDust } from '../solve/sublimation.js'
 import { type DustTemperatures, givenTemperatures } from '../solve/temperatures.js'
 import type { Ledger } from '../workers/ledger.js'
 import type { WorkerPool } from '../workers/pool.js'
@@ -24,12 +25,14 @@ export interface DustStage {
   equilibrium?: Omit<EquilibriumResult, 'dust'>
   /** Absent when none was sought. */
   innerRadii?: InnerRadii
+  /** Absent when no dust may sublimate. */
+  sublimation?: Sublimation
   time: PhaseTime
 }
 
 /**
  * Temperatures from the ledger, or found and kept there, with the model that they belong to: inner radii that were sought have been
- * found. Throws SceneError, WorkerFailure or Stopped.
+ * found, and dust that is too hot is gone. Throws SceneError, WorkerFailure or Stopped.
  */
 export async function dustStage(
   model: Model,
@@ -41,27 +44,34 @@ export async function dustStage(
   const clock = stopwatch()
   if (!needsEquilibrium(model.scene)) return { model, dust: givenTemperatures(model), time: clock() }
   const before = ledger.take(dustPiece) as DustStage | undefined
-  if (before) return { ...before, model: withRadii(model, before.innerRadii) }
+  if (before) return { ...before, model: fitted(model, before) }
   const show = (at: EquilibriumProgress) => onProgress({ stage: 'dust', of: at.packets, ...at })
-  const sought = soughtComponents(model.scene).length > 0
-  const innerRadii = sought ? await solveInnerRadii(model.scene, pool, ledger, show, stop) : undefined
-  if (innerRadii === 'stopped') throw new Stopped()
-  const fitted = withRadii(model, innerRadii)
-  const found = await solveEquilibrium(fitted, pool, ledger, (dust) => errorOfEmission(fitted, dust), show, stop)
-  if (found === 'stopped') throw new Stopped()
-  const { dust, ...equilibrium } = found
-  const stage = { dust, equilibrium, ...(innerRadii && { innerRadii }), time: clock() }
+  const fit: DustFit = {}
+  if (soughtRadii(model.scene).length > 0)
+    fit.innerRadii = unlessStopped(await solveInnerRadii(model.scene, pool, ledger, show, stop))
+  if (model.scene.dust.some(({ sublimation }) => sublimation !== undefined))
+    fit.sublimation = unlessStopped(await sublimate(fitted(model, fit), pool, ledger, show, stop))
+  const last = fitted(model, fit)
+  const found = await solveEquilibrium(last, pool, ledger, (dust) => errorOfEmission(last, dust), show, stop)
+  const { dust, ...equilibrium } = unlessStopped(found)
+  const stage = { dust, equilibrium, ...fit, time: clock() }
   ledger.keep(dustPiece, stage)
-  ledger.forget(equilibriumPiece)
-  ledger.forget(radiiPiece)
-  return { ...stage, model: fitted }
+  for (const name of [equilibriumPiece, radiiPiece, sublimationPiece]) ledger.forget(name)
+  return { ...stage, model: last }
 }
 
-/** The model with the inner radii that were found. */
-function withRadii(model: Model, innerRadii: InnerRadii | undefined): Model {
-  if (!innerRadii) return model
-  const radii = new Map(innerRadii.found.map(({ component, radius }) => [component, radius]))
-  return buildModel(withInnerRadii(model.scene, radii))
+function unlessStopped<Result>(result: Result | 'stopped'): Result {
+  if (result === 'stopped') throw new Stopped()
+  return result
+}
+
+/** What of the dust depends on its temperature. */
+type DustFit = Pick<DustStage, 'innerRadii' | 'sublimation'>
+
+/** The model with the inner radii that were found, without the dust that is gone. */
+function fitted(model: Model, { innerRadii, sublimation }: DustFit): Model {
+  const moved = innerRadii ? buildModel(withInnerRadii(model.scene, innerRadii.found)) : model
+  return sublimation ? withoutDust(moved, sublimation.gone) : moved
 }
 
 /** So many wavelengths of the cameras, and of the spectra, are looked at to see how the noise of the temperatures shows. */

@@ -20,6 +20,10 @@ export interface Findings {
 export interface DustFinding {
   name: string
   massMsun: number
+  /** What of the mass that the scene gives has sublimated; absent where none may. */
+  sublimatedMsun?: number
+  /** Where the inner radius was found from a temperature, or dust has sublimated within it. */
+  innerRadius?: { au: number; sigmaAu: number; kelvin: number }
   /** Absent for dust that does not emit. */
   temperatures?: { hottest: CellTemperature; innerEdge: CellTemperature; coldest: CellTemperature }
 }
@@ -31,11 +35,20 @@ export interface CellTemperature {
 }
 
 /** Sums up a result. */
-export function findings({ model, dust, images, spectra }: RunResult): Findings {
+export function findings({ model, dust, innerRadii, images, spectra }: RunResult): Findings {
   return {
-    dust: model.components.map(({ spec: { name }, mass }, c) => {
+    dust: model.components.map(({ spec: { name, sublimation }, mass, massBefore }, c) => {
       const temperatures = temperaturesOf(model, dust, c)
-      return { name, massMsun: mass / SOLAR_MASS, ...(temperatures && { temperatures }) }
+      const found = innerRadii?.found.find(({ component }) => component === c)
+      return {
+        name,
+        massMsun: mass / SOLAR_MASS,
+        ...(sublimation !== undefined && { sublimatedMsun: Math.max(0, massBefore - mass) / SOLAR_MASS }),
+        ...(found && {
+          innerRadius: { au: found.radius / AU, sigmaAu: (found.radius * found.sigma) / AU, kelvin: found.temperature }
+        }),
+        ...(temperatures && { temperatures })
+      }
     }),
     images: images.flatMap((result) => result.camera.wavelengths.map((wavelength, k) => imageFinding(result, wavelength, k))),
     spectra: spectra.flatMap((result) => {

@@ -7,22 +7,51 @@ import type { RunResult } from './run-scene.js'
 /** Dust that survives higher temperatures is unknown; silicates go at about 1500 K, carbon at about 2000 K (common practice). */
 const TOO_HOT = 1500
 
+/** Dust that may sublimate counts as too hot beyond this much of its temperature: cells just inside are averages. */
+const SLACK = 1.05
+/** Share of the mass that may sublimate without a word. */
+const LITTLE = 1e-3
+
 /** What the user should know about a result before trusting it. */
 export function resultWarnings(result: RunResult): string[] {
   const { model, dust } = result
   return [
     ...model.components.flatMap(({ spec }, c) => {
       const hottest = maxOf(dust.temperature, c * model.cells, (c + 1) * model.cells)
-      return hottest > TOO_HOT
+      return hottest > (spec.sublimation === undefined ? TOO_HOT : SLACK * spec.sublimation)
         ? [
             `dust ${spec.name}: reaches ${hottest.toFixed(0)} K; solid grains hardly survive above 1500 K (silicates) to 2000 K (carbon)`
           ]
         : []
     }),
+    ...sublimated(result),
+    ...unsettledRadii(result),
     ...emptyCells(result),
     ...precisionWarnings(result),
     ...tooFew(result)
   ]
+}
+
+function sublimated({ model, sublimation }: RunResult): string[] {
+  const lost = model.components.flatMap(({ spec, mass, massBefore }) => {
+    const share = 1 - mass / massBefore
+    if (spec.sublimation === undefined || share < LITTLE) return []
+    const depth = spec.amount.kind === 'optical-depth' ? ' and its optical depth' : ''
+    return [
+      `dust ${spec.name}: ${percent(share)} of its mass would be hotter than ${spec.sublimation} K and is gone; its amount${depth} in the scene counts that in`
+    ]
+  })
+  return sublimation && !sublimation.settled
+    ? [...lost, `sublimation: dust was still too hot after ${sublimation.steps} steps`]
+    : lost
+}
+
+function unsettledRadii({ model, innerRadii }: RunResult): string[] {
+  if (!innerRadii || innerRadii.settled) return []
+  return innerRadii.found.map(
+    ({ component, sigma }) =>
+      `dust ${model.components[component].spec.name}: its inner radius is known to ${percent(sigma)} only (1 sigma) with the packets of effort.equilibrium`
+  )
 }
 
 function emptyCells({ model, dust }: RunResult): string[] {

@@ -41,6 +41,10 @@ export interface RunRecord {
     converged: boolean
     rounds: { packets: number; relativeError: number; relativeChange: number; interactions: number }[]
   }
+  /** How inner radii were found; absent where none was sought. */
+  innerRadii?: { settled: boolean; steps: number; packets: number }
+  /** How dust that sublimates was removed from the cells; absent where none may. */
+  sublimation?: { settled: boolean; steps: number; packets: number; cells: number }
   precision: {
     /** Relative 1 sigma asked for; null: exactly the packets given. */
     asked: number | null
@@ -67,7 +71,7 @@ export function runRecord(
   warnings: string[],
   written: { files: string[]; time: PhaseTime }
 ): RunRecord {
-  const { model, equilibrium, lightPackets, precision } = result
+  const { model, equilibrium, innerRadii, sublimation, lightPackets, precision } = result
   const { scene } = model
   const { estimator, started, workers } = making
   const reached = isReached(result)
@@ -98,6 +102,17 @@ export function runRecord(
           relativeChange: change,
           interactions
         }))
+      }
+    }),
+    ...(innerRadii && {
+      innerRadii: { settled: innerRadii.settled, steps: innerRadii.steps, packets: innerRadii.packets }
+    }),
+    ...(sublimation && {
+      sublimation: {
+        settled: sublimation.settled,
+        steps: sublimation.steps,
+        packets: sublimation.packets,
+        cells: sublimation.gone.reduce((sum, value) => sum + value, 0)
       }
     }),
     precision: {

@@ -3,6 +3,7 @@ import type { Model } from '../model/model.js'
 import type { Scene } from '../scene/types.js'
 import type { EquilibriumResult } from '../solve/equilibrium.js'
 import type { InnerRadii } from '../solve/inner-radius.js'
+import type { Sublimation } from '../solve/sublimation.js'
 import type { DustTemperatures } from '../solve/temperatures.js'
 import { type DustStage, dustStage } from './dust-stage.js'
 import { type LightPackets, lightStage, type PacketSource } from './light-stage.js'
@@ -17,6 +18,8 @@ export interface RunResult {
   equilibrium?: Omit<EquilibriumResult, 'dust'>
   /** Absent when none was sought. */
   innerRadii?: InnerRadii
+  /** Absent when no dust may sublimate. */
+  sublimation?: Sublimation
   images: CameraImages[]
   spectra: ApertureSpectrum[]
   /** At each observed wavelength. */
@@ -33,7 +36,14 @@ export interface RunResult {
 export function runScene(scene: Scene, options: RunOptions, packetsFrom?: PacketSource): Promise<RunResult> {
   return withCrew(scene, options, async ({ model: first, pool, ledger, time: modelTime }) => {
     const { estimator, onProgress, stop } = options
-    const { model, dust, equilibrium, innerRadii, time: dustTime } = await dustStage(first, pool, ledger, onProgress, stop)
+    const {
+      model,
+      dust,
+      equilibrium,
+      innerRadii,
+      sublimation,
+      time: dustTime
+    } = await dustStage(first, pool, ledger, onProgress, stop)
     const light = await lightStage(model, dust, pool, {
       estimator,
       ledger,
@@ -47,6 +57,7 @@ export function runScene(scene: Scene, options: RunOptions, packetsFrom?: Packet
       dust,
       ...(equilibrium && { equilibrium }),
       ...(innerRadii && { innerRadii }),
+      ...(sublimation && { sublimation }),
       images,
       spectra,
       lightPackets,

@@ -38,7 +38,11 @@ export function linkProblems(document: YamlDocument): SceneProblem[] {
   })
 
   const stars = entriesOf(scene.sources).filter(({ kind = 'star' }) => kind === 'star')
-  dust.forEach(({ shape, temperature = 'solve' }, i) => {
+  dust.forEach(({ shape, sublimation, temperature = 'solve' }, i) => {
+    if (sublimation !== undefined && temperature !== 'solve')
+      report(['dust', i, 'sublimation'], 'dust can sublimate only with `temperature: solve`')
+    if (sublimation !== undefined && isRecord(shape) && isRecord(shape.inner))
+      report(['dust', i, 'sublimation'], 'goes round in a circle with `inner: {temperature: ...}`; give one of the two')
     if (!isRecord(shape) || !isRecord(shape.inner)) return
     if (temperature !== 'solve')
       report(['dust', i, 'shape', 'inner'], 'an inner radius follows from a temperature only in dust with `temperature: solve`')

@@ -227,6 +227,10 @@ export interface DustSpec {
   temperature: 'solve' | 'none' | number
   carve?: CarveSpec[]
   clumps?: ClumpsSpec
+  /** Dust that would be hotter is gone, K. */
+  sublimation?: number
+  /** Within this radius (cm) it is, as far as a run has found; beyond, `amount` fixes the density as ever. */
+  hollow?: number
 }
 
 export type ShapeSpec = (

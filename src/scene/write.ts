@@ -107,7 +107,7 @@ function starNumbersYaml(star: StarSpec): Yaml {
   }
 }
 
-function dustYaml({ name, opacity, shape, amount, temperature: given, carve, clumps }: DustSpec): Yaml {
+function dustYaml({ name, opacity, shape, amount, temperature: given, sublimation, carve, clumps }: DustSpec): Yaml {
   return {
     name,
     opacity,
@@ -117,6 +117,7 @@ function dustYaml({ name, opacity, shape, amount, temperature: given, carve, clu
     },
     amount: amountYaml(amount),
     temperature: typeof given === 'number' ? temperature(given) : given,
+    ...(sublimation !== undefined && { sublimation: temperature(sublimation) }),
     ...(carve && { carve: carve.map(carveYaml) }),
     ...(clumps && { clumps: { ...clumps, radius: length(clumps.radius) } })
   }

@@ -1,7 +1,7 @@
 import { coolingOf, type EmissionTable } from '../dust/emission.js'
 import { standardError } from '../math/stats.js'
 import { buildModel } from '../model/build-model.js'
-import { innerRadiusOf, refusal, soughtComponents, withInnerRadii } from '../model/inner-radii.js'
+import { refusal, type SoughtRadius, soughtRadii, withInnerRadii } from '../model/inner-radii.js'
 import type { Model } from '../model/model.js'
 import type { Scene } from '../scene/types.js'
 import { type Ledger, sectionOf } from '../workers/ledger.js'
@@ -27,6 +27,8 @@ const SLOPES = [-5, -1]
 /** The inner radius of a component, where it was sought. */
 export interface FoundRadius {
   component: number
+  /** That it has there, K. */
+  temperature: number
   /** cm */
   radius: number
   /** Relative 1 sigma of the radius. */
@@ -70,18 +72,19 @@ export async function solveInnerRadii(
   onProgress: (progress: EquilibriumProgress) => void,
   stop?: AbortSignal
 ): Promise<InnerRadii | 'stopped'> {
-  const sought = soughtComponents(scene)
+  const first = soughtRadii(scene)
   const most = scene.effort.equilibrium
   const state = (ledger.take(radiiPiece) as State | undefined) ?? {
-    radii: sought.map((i) => innerRadiusOf(scene.dust[i])),
+    radii: first.map(({ radius }) => radius),
     size: Math.min(FIRST_STEP, most),
     spent: 0,
     step: 0,
-    slopes: sought.map(() => INVERSE_SQUARE),
+    slopes: first.map(() => INVERSE_SQUARE),
     before: []
   }
   while (!state.result) {
-    const moved = withInnerRadii(scene, new Map(sought.map((i, k) => [i, state.radii[k]])))
+    const sought = first.map((each, k) => ({ ...each, radius: state.radii[k] }))
+    const moved = withInnerRadii(scene, sought)
     const effort = { ...scene.effort, precision: null, equilibrium: state.size }
     const model = buildModel({ ...moved, effort, seed: `${scene.seed}/radii/${state.step}` })
     const section = sectionOf(ledger, `${state.step}`)
@@ -90,7 +93,7 @@ export async function solveInnerRadii(
     state.spent += solved.packets
     state.step++
     const { tables } = equilibriumSetup(model)
-    const changes = sought.map((i, k) => stepOf(model, tables[i], i, k, solved.dust, state))
+    const changes = sought.map((each, k) => stepOf(model, tables[each.component], each, k, solved.dust, state))
     const furthest = Math.max(...changes.map(({ change }) => Math.abs(change)))
     const sigma = Math.max(...changes.map((each) => each.sigma))
     const known = furthest <= SETTLED && sigma <= SIGMA
@@ -99,7 +102,10 @@ export async function solveInnerRadii(
       if (Number.isFinite(change)) state.radii[k] *= Math.exp(change)
     })
     if (known || over) {
-      const found = sought.map((component, k) => ({ component, radius: state.radii[k], sigma: changes[k].sigma }))
+      const found = sought.flatMap(({ component, temperature, least }, k) => {
+        const radius = state.radii[k]
+        return radius > least ? [{ component, temperature, radius, sigma: changes[k].sigma }] : []
+      })
       state.result = { found, settled: known, steps: state.step, packets: state.spent }
     } else if (furthest <= NEAR && sigma > SIGMA) {
       const needed = MARGIN * (sigma / SIGMA) ** 2
@@ -115,13 +121,11 @@ export async function solveInnerRadii(
 function stepOf(
   model: Model,
   table: EmissionTable,
-  component: number,
+  { component, temperature, radius: inner, least }: SoughtRadius,
   k: number,
   dust: Parameters<typeof edgeHeating>[1],
   { slopes, before }: State
 ): { change: number; sigma: number } {
-  const spec = model.components[component].spec
-  const inner = innerRadiusOf(spec)
   const heating: EdgeHeating = edgeHeating(model, dust, table, component, inner)
   const here = { radius: Math.log(inner), heating: heating.value }
   const last = before[k]
@@ -130,11 +134,13 @@ function stepOf(
     if (slope > SLOPES[0] && slope < SLOPES[1]) slopes[k] = slope
   }
   before[k] = here
-  const target = Math.log(coolingOf(table, spec.shape.sought!.temperature))
+  const target = Math.log(coolingOf(table, temperature))
   const change = (target - heating.value) / slopes[k]
+  const sigma = standardError(heating.groups) / Math.abs(slopes[k])
+  // Dust that is cool enough where its shape begins loses nothing.
+  if (inner * Math.exp(change) <= least) return { change: Math.log(least / inner), sigma: inner === least ? 0 : sigma }
   if (Math.abs(change) > Math.log(1e3)) {
-    const { temperature } = spec.shape.sought!
     throw refusal(model.scene, component, `the dust has ${temperature} K at no radius that the star alone decides; give a length`)
   }
-  return { change, sigma: standardError(heating.groups) / Math.abs(slopes[k]) }
+  return { change, sigma }
 }

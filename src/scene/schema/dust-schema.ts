@@ -73,9 +73,19 @@ export const dustSchema = section({
     })
     .prefault('solve')
     .describe('`solve` (default: radiative equilibrium), `none`, or a value such as `40 K`'),
+  sublimation: quantity('temperature')
+    .optional()
+    .describe('Dust that would be hotter is removed, such as `1500 K`; `amount` counts it in'),
   carve: carve.optional().describe('Gaps and cavities, taken from the shape after `amount` has fixed its density'),
   clumps: clumps.optional().describe('Clumps; the total mass is kept')
-}).transform(({ carve, clumps, ...dust }): WrittenDust => ({ ...dust, ...(carve && { carve }), ...(clumps && { clumps }) }))
+}).transform(
+  ({ carve, clumps, sublimation, ...dust }): WrittenDust => ({
+    ...dust,
+    ...(sublimation !== undefined && { sublimation }),
+    ...(carve && { carve }),
+    ...(clumps && { clumps })
+  })
+)
 
 /** A component whose data file, if it has one, is not read yet. */
 export interface WrittenDust extends Omit<DustSpec, 'shape'> {
