@@ -22,7 +22,8 @@ describe('dust that sublimates', () => {
     // Dusty envelope of Ivezic et al. (1997), r^-2 and optical depth 10 from r1 to 1000 r1: 800 K at r1 = 11.2089 R*, as in
     // `dusty-envelope.test.ts`. The density is what the shell has at 5 r1; dust that is there inside r1 has to go.
     const r1 = 11.2089 * starRadius
-    const density = 10 / (2 * r1 * 0.999) / 25
+    // 1000 cm2/g at 1 um.
+    const density = 10 / (1000 * r1 * 0.999) / 25
     const shape = `{kind: shell, inner: ${5 * starRadius} cm, outer: ${1000 * r1} cm, slope: -2}`
     const result = await runText(sceneOf('grains', shape, `{density: ${density} g/cm3, at: ${5 * r1} cm}`))
     const [{ radius, temperature }] = result.innerRadii!.found
