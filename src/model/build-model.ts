@@ -22,12 +22,30 @@ export interface CellPlan extends Pick<Model, 'scene' | 'dimensions' | 'reason' 
 }
 
 /** Lays the cells of a scene; `tables`: optics of grains by the name of the opacity, where they are known. Throws SceneError where the scene asks for what cannot be. */
-export function planCells(asked: Scene, tables: Record<string, GrainOptics> = {}): CellPlan {
-  const scene = withFirstRadii(asked)
+export function planCells(scene: Scene, tables: Record<string, GrainOptics> = {}): CellPlan {
+  return layCells(
+    scene,
+    scene.dust.map(({ opacity }) => makeOpacityLaw(scene.opacities[opacity], tables[opacity]))
+  )
+}
+
+/** The model of another scene whose dust is made of the same. Throws SceneError where the scene asks for what cannot be. */
+export function rebuildModel({ components }: Model, scene: Scene): Model {
+  return buildModel(
+    scene,
+    layCells(
+      scene,
+      components.map(({ law }) => law)
+    )
+  )
+}
+
+function layCells(asked: Scene, laws: OpacityLaw[]): CellPlan {
+  const scene = withFirstRadii(asked, laws)
   const stars = scene.sources.flatMap((spec) => (spec.kind === 'star' ? [{ spec, spectrum: starSpectrum(spec) }] : []))
   const fields = scene.sources.flatMap((spec) => (spec.kind === 'ambient' ? [{ spec, spectrum: ambientField(spec) }] : []))
   const parts = scene.dust.map((spec, index) => {
-    const law = makeOpacityLaw(scene.opacities[spec.opacity], tables[spec.opacity])
+    const law = laws[index]
     const scale = scaleOf(scene, spec, index, plainShape(spec.shape), law.absorption, law.scattering)
     return { spec, law, shape: shapeOf(scene, spec, index), scale }
   })

@@ -1,4 +1,4 @@
-import { makeOpacityLaw } from '../dust/opacity-law.js'
+import type { OpacityLaw } from '../dust/opacity-law.js'
 import { planckNu } from '../dust/planck.js'
 import { blackbodyRange } from '../dust/wavelength-grid.js'
 import { integrate } from '../math/quadrature.js'
@@ -36,12 +36,12 @@ export function hollowed({ shape, hollow }: DustSpec): ShapeSpec {
 }
 
 /** A scene whose inner radii to be found have a first guess where they have no value yet. Throws SceneError. */
-export function withFirstRadii(scene: Scene): Scene {
+export function withFirstRadii(scene: Scene, laws: OpacityLaw[]): Scene {
   const unknown = soughtRadii(scene).filter(({ radius }) => Number.isNaN(radius))
   if (unknown.length === 0) return scene
   return withInnerRadii(
     scene,
-    unknown.map((sought) => ({ ...sought, radius: thinRadius(scene, sought) }))
+    unknown.map((sought) => ({ ...sought, radius: thinRadius(scene, laws[sought.component], sought.temperature) }))
   )
 }
 
@@ -80,8 +80,7 @@ export function refusal(scene: Scene, component: number, message: string): Scene
 }
 
 /** Where dust has its temperature in nothing but the light of the stars: 4 pi int kappa B d(nu) = int kappa L d(nu) / (4 pi r^2). */
-function thinRadius({ sources, opacities, dust }: Scene, { component, temperature }: SoughtRadius): number {
-  const { absorption } = makeOpacityLaw(opacities[dust[component].opacity])
+function thinRadius({ sources }: Scene, { absorption }: OpacityLaw, temperature: number): number {
   const absorbed = ([shortest, longest]: [number, number], perHz: (nu: number) => number) =>
     integrate(
       (x) => {

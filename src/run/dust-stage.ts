@@ -1,4 +1,4 @@
-import { buildModel } from '../model/build-model.js'
+import { rebuildModel } from '../model/build-model.js'
 import { soughtRadii, withInnerRadii } from '../model/inner-radii.js'
 import type { Model } from '../model/model.js'
 import { dustLight } from '../solve/dust-light.js'
@@ -47,8 +47,7 @@ export async function dustStage(
   if (before) return { ...before, model: fitted(model, before) }
   const show = (at: EquilibriumProgress) => onProgress({ stage: 'dust', of: at.packets, ...at })
   const fit: DustFit = {}
-  if (soughtRadii(model.scene).length > 0)
-    fit.innerRadii = unlessStopped(await solveInnerRadii(model.scene, pool, ledger, show, stop))
+  if (soughtRadii(model.scene).length > 0) fit.innerRadii = unlessStopped(await solveInnerRadii(model, pool, ledger, show, stop))
   if (model.scene.dust.some(({ sublimation }) => sublimation !== undefined))
     fit.sublimation = unlessStopped(await sublimate(fitted(model, fit), pool, ledger, show, stop))
   const last = fitted(model, fit)
@@ -70,7 +69,7 @@ type DustFit = Pick<DustStage, 'innerRadii' | 'sublimation'>
 
 /** The model with the inner radii that were found, without the dust that is gone. */
 function fitted(model: Model, { innerRadii, sublimation }: DustFit): Model {
-  const moved = innerRadii ? buildModel(withInnerRadii(model.scene, innerRadii.found)) : model
+  const moved = innerRadii ? rebuildModel(model, withInnerRadii(model.scene, innerRadii.found)) : model
   return sublimation ? withoutDust(moved, sublimation.gone) : moved
 }
 

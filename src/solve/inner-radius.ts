@@ -1,9 +1,8 @@
 import { coolingOf, type EmissionTable } from '../dust/emission.js'
 import { standardError } from '../math/stats.js'
-import { buildModel } from '../model/build-model.js'
+import { rebuildModel } from '../model/build-model.js'
 import { refusal, type SoughtRadius, soughtRadii, withInnerRadii } from '../model/inner-radii.js'
 import type { Model } from '../model/model.js'
-import type { Scene } from '../scene/types.js'
 import { type Ledger, sectionOf } from '../workers/ledger.js'
 import type { WorkerPool } from '../workers/pool.js'
 import { type EdgeHeating, edgeHeating } from './edge-heating.js'
@@ -66,12 +65,13 @@ interface State extends Record<string, unknown> {
  * light of a star, or as the last steps tell. Steps grow until the radii are known to 0.07 % (1 sigma). Throws SceneError.
  */
 export async function solveInnerRadii(
-  scene: Scene,
+  start: Model,
   pool: WorkerPool,
   ledger: Ledger,
   onProgress: (progress: EquilibriumProgress) => void,
   stop?: AbortSignal
 ): Promise<InnerRadii | 'stopped'> {
+  const { scene } = start
   const first = soughtRadii(scene)
   const most = scene.effort.equilibrium
   const state = (ledger.take(radiiPiece) as State | undefined) ?? {
@@ -86,7 +86,7 @@ export async function solveInnerRadii(
     const sought = first.map((each, k) => ({ ...each, radius: state.radii[k] }))
     const moved = withInnerRadii(scene, sought)
     const effort = { ...scene.effort, precision: null, equilibrium: state.size }
-    const model = buildModel({ ...moved, effort, seed: `${scene.seed}/radii/${state.step}` })
+    const model = rebuildModel(start, { ...moved, effort, seed: `${scene.seed}/radii/${state.step}` })
     const section = sectionOf(ledger, `${state.step}`)
     const solved = await solveEquilibrium(model, pool, section, () => 0, onProgress, stop)
     if (solved === 'stopped') return solved
