@@ -44,7 +44,13 @@ export async function dustStage(
   const clock = stopwatch()
   if (!needsEquilibrium(model.scene)) return { model, dust: givenTemperatures(model), time: clock() }
   const before = ledger.take(dustPiece) as DustStage | undefined
-  if (before) return { ...before, model: fitted(model, before) }
+  const sweep = () => {
+    for (const name of [equilibriumPiece, radiiPiece, sublimationPiece]) ledger.forget(name)
+  }
+  if (before) {
+    sweep()
+    return { ...before, model: fitted(model, before) }
+  }
   const show = (at: EquilibriumProgress) => onProgress({ stage: 'dust', of: at.packets, ...at })
   const fit: DustFit = {}
   if (soughtRadii(model.scene).length > 0) fit.innerRadii = unlessStopped(await solveInnerRadii(model, pool, ledger, show, stop))
@@ -55,7 +61,7 @@ export async function dustStage(
   const { dust, ...equilibrium } = unlessStopped(found)
   const stage = { dust, equilibrium, ...fit, time: clock() }
   ledger.keep(dustPiece, stage)
-  for (const name of [equilibriumPiece, radiiPiece, sublimationPiece]) ledger.forget(name)
+  sweep()
   return { ...stage, model: last }
 }
 

@@ -41,6 +41,8 @@ function sublimated({ model, sublimation }: RunResult): string[] {
       `dust ${spec.name}: ${percent(share)} of its mass would be hotter than ${spec.sublimation} K and is gone; its amount${depth} in the scene counts that in`
     ]
   })
+  if (sublimation?.gone.includes(1) && model.components.some(({ spec }) => spec.shape.sought))
+    lost.push('sublimation: dust went after inner radii were found from temperatures; see what the inner edges have now')
   return sublimation && !sublimation.settled
     ? [...lost, `sublimation: dust was still too hot after ${sublimation.steps} steps`]
     : lost

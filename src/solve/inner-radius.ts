@@ -82,13 +82,16 @@ export async function solveInnerRadii(
     slopes: first.map(() => INVERSE_SQUARE),
     before: []
   }
+  const sweep = () => {
+    if (state.step > 0) sectionOf(ledger, `${state.step - 1}`).forget(equilibriumPiece)
+  }
   while (!state.result) {
+    sweep()
     const sought = first.map((each, k) => ({ ...each, radius: state.radii[k] }))
     const moved = withInnerRadii(scene, sought)
     const effort = { ...scene.effort, precision: null, equilibrium: state.size }
     const model = rebuildModel(start, { ...moved, effort, seed: `${scene.seed}/radii/${state.step}` })
-    const section = sectionOf(ledger, `${state.step}`)
-    const solved = await solveEquilibrium(model, pool, section, () => 0, onProgress, stop)
+    const solved = await solveEquilibrium(model, pool, sectionOf(ledger, `${state.step}`), () => 0, onProgress, stop)
     if (solved === 'stopped') return solved
     state.spent += solved.packets
     state.step++
@@ -112,8 +115,8 @@ export async function solveInnerRadii(
       state.size = Math.min(most, Math.ceil(state.size * Math.min(MOST_GROWTH, needed)))
     }
     ledger.keep(radiiPiece, structuredClone(state))
-    section.forget(equilibriumPiece)
   }
+  sweep()
   return state.result
 }
 

@@ -48,11 +48,15 @@ export async function sublimate(
     size: Math.min(FIRST_STEPS, most),
     finished: false
   }
+  const section = (step: number) => sectionOf(ledger, `gone-${step}`)
+  const sweep = () => {
+    if (state.steps > 0) section(state.steps - 1).forget(equilibriumPiece)
+  }
   while (!state.finished) {
+    sweep()
     const effort = { ...scene.effort, precision: null, equilibrium: state.size }
     const left = withoutDust({ ...model, scene: { ...scene, effort, seed: `${scene.seed}/gone/${state.steps}` } }, state.gone)
-    const section = sectionOf(ledger, `gone-${state.steps}`)
-    const solved = await solveEquilibrium(left, pool, section, () => 0, onProgress, stop)
+    const solved = await solveEquilibrium(left, pool, section(state.steps), () => 0, onProgress, stop)
     if (solved === 'stopped') return solved
     const { temperature, sigma } = solved.dust
     let hot = 0
@@ -70,8 +74,8 @@ export async function sublimate(
     state.finished = (state.settled && state.size === most) || state.steps === MOST_STEPS
     if (state.settled) state.size = most
     ledger.keep(sublimationPiece, structuredClone(state))
-    section.forget(equilibriumPiece)
   }
+  sweep()
   const { gone, settled, steps, packets } = state
   return { gone, settled, steps, packets }
 }

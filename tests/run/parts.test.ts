@@ -58,9 +58,10 @@ describe('batches', () => {
 })
 
 describe('parts', () => {
-  it.each<['shell' | 'disk', Estimator]>([
+  it.each<['shell' | 'disk' | 'fitted', Estimator]>([
     ['shell', 'emissivity'],
     ['disk', 'emissivity'],
+    ['fitted', 'emissivity'],
     ['shell', 'peel']
   ])('%s, %s: 1/5 to 5/5 joined are the same bits as one run', async (kind, estimator) => {
     const scene = sceneOf(kind)

@@ -4,7 +4,7 @@ import { Stopped } from '../../src/run/progress.js'
 import { runScene } from '../../src/run/run-scene.js'
 import type { Ledger, Piece } from '../../src/workers/ledger.js'
 import { digest } from './digest.js'
-import { smallScene } from './small-scenes.js'
+import { smallScene, type smallScenes } from './small-scenes.js'
 
 class Killed extends Error {}
 
@@ -42,10 +42,11 @@ class MortalLedger implements Ledger {
   }
 }
 
-const cases: ['shell' | 'disk' | 'precise', Estimator][] = [
+const cases: [keyof typeof smallScenes, Estimator][] = [
   ['shell', 'emissivity'],
   ['disk', 'emissivity'],
   ['precise', 'emissivity'],
+  ['fitted', 'emissivity'],
   ['shell', 'peel'],
   ['precise', 'exit']
 ]

@@ -5,6 +5,10 @@ const shell = 'shape: {kind: shell, inner: 2 au, outer: 60 au}, amount: {optical
 const disk =
   'shape: {kind: disk, inner: 2 au, outer: 60 au, scale-height: {value: 5 au, at: 60 au, flaring: 1.2}}, amount: {optical-depth: 20, at: 1 um}'
 
+/** Its inner radius is found from a temperature, and other dust sublimates. */
+const fittedDust = `shape: {kind: shell, inner: {temperature: 300 K}, outer: {times-inner: 20}}, amount: {optical-depth: 3, at: 1 um}}
+  - {name: more, opacity: grains, shape: {kind: ball, radius: 9 au}, amount: {optical-depth: 0.1, at: 1 um}, sublimation: 900 K`
+
 const textOf = (dust: string, grid: string, effort: string) => `
 distance: 100 pc
 seed: small
@@ -23,9 +27,13 @@ spectra:
 const fixed = '{precision: none, equilibrium: 5000, cameras: 1500}'
 
 /** Scenes that run in well under a second. */
-export const smallScenes: Record<'shell' | 'disk' | 'precise', string> = {
+export const smallScenes: Record<'shell' | 'disk' | 'precise' | 'fitted', string> = {
   shell: textOf(shell, '{kind: spherical, radial: 15}', fixed),
   disk: textOf(disk, '{kind: spherical, radial: 8, polar: 6}', fixed),
+  fitted: textOf(fittedDust, '{kind: spherical, radial: 15}', fixed).replace(
+    'sources: [',
+    'sources: [{name: sky, kind: ambient, spectrum: interstellar, strength: 1000}, '
+  ),
   precise: textOf(shell, '{kind: spherical, radial: 15}', '{precision: 5 %, equilibrium: 1e5, cameras: 5e4}')
 }
 
