@@ -58,6 +58,7 @@ function lineOf(progress: RunProgress, rate: number, elapsed: number, effort: Ef
   return parts.join(', ')
 }
 
-function grainsLine({ opacity, done, of, round }: RunProgress): string {
-  return `grains of ${opacity}, ${round === 0 ? 'first wavelengths' : `refinement ${round}`}: ${done} of ${of}`
+function grainsLine({ opacity, wavelength, done, of, round }: RunProgress): string {
+  const rows = round === 0 ? 'first wavelengths' : `refinement ${round}`
+  return `grains of ${opacity}, ${wavelength === undefined ? rows : 'scattering matrices'}: ${done} of ${of}`
 }

@@ -12,7 +12,7 @@ import { percent } from './percent.js'
 
 /** Share of the mass in grains out of equilibrium, and error of the integration over sizes, that are worth a word. */
 const SMALL_SHARE = 0.01
-const ROUGH = 0.002
+const ROUGH = 0.005
 /** Beyond this wavelength (cm) polarised light of aligned grains is what is mostly observed. */
 const EMITTED = 30e-4
 

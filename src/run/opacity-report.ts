@@ -73,7 +73,11 @@ export async function opacityReports(
       law: spec.law,
       phase: typeof spec.phase === 'string' ? spec.phase : spec.phase.kind,
       curves: curvesOf(law, rows),
-      scattering: wavelengths.map((wavelength) => scatteringOf(spec, law, wavelength)),
+      scattering: wavelengths.map((wavelength, done) => {
+        if (spec.law === 'grains')
+          onProgress({ stage: 'grains', opacity: name, wavelength, done, of: wavelengths.length, round: 0, error: Number.NaN })
+        return scatteringOf(spec, law, wavelength)
+      }),
       means: { temperatureK, ...meanOpacities(law, temperatureK) }
     }
   })

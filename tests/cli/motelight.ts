@@ -63,10 +63,7 @@ export function filesIn(folder: string): string[] {
     .sort()
 }
 
-/** Where the program keeps its caches in tests: not where the user has his. */
-const cache = join(tmpdir(), 'motelight-test-cache')
-
 /** Runs the program in a folder as a user would; never throws for an exit code. */
 export function motelight(cwd: string, ...words: string[]) {
-  return execa('node', [program, ...words], { cwd, reject: false, env: { MOTELIGHT_DEBUG: '', XDG_CACHE_HOME: cache } })
+  return execa('node', [program, ...words], { cwd, reject: false, env: { MOTELIGHT_DEBUG: '' } })
 }

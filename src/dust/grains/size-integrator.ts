@@ -18,7 +18,7 @@ const MOST_SPHERES = 30000
 const LEAST_SPHERES = 300
 const AFFORDABLE = { opacities: 1000, matrix: 10 }
 /** Absorption below this share of the scattering need not be known as well. */
-const MINOR = 0.01
+const MINOR = 1e-3
 /** Width of the first panels in ln(radius). */
 const FIRST_WIDTH = 1
 
@@ -82,7 +82,7 @@ export function makeSizeIntegrator(sizes: SizeDistribution, shortest: number, co
 }
 
 /**
- * Scales of the errors: absorption itself or a hundredth of the scattering, scattering itself, for the mean cosine the scattering, and for S11 the larger of itself and
+ * Scales of the errors: absorption itself or a thousandth of the scattering, scattering itself, for the mean cosine the scattering, and for S11 the larger of itself and
  * its mean over all directions.
  */
 function setScales(magnitudes: Float64Array, wavelength: number): void {
