@@ -9,7 +9,7 @@ import { version } from '../output/version.js'
 import { readPiece, writePiece } from './state/piece-file.js'
 
 /** To be raised with every change of Mie theory, materials or their tables that changes a number. */
-const METHOD = 1
+const METHOD = 2
 
 /** The table kept for a request; undefined when there is none, or none that can be used. */
 export function keptTable(request: GrainTableRequest): GrainOptics | undefined {
