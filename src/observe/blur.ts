@@ -58,24 +58,15 @@ export function pixelMean(beam: Beam, { pixel: [across, up] }: PixelGrid): (east
 }
 
 /**
- * An image and its 1 sigma seen with a beam. With `independent` noise variances add with the squares of the beam's weights;
- * otherwise the noise is taken as the same within the beam, and 1 sigma is convolved like the image: an upper limit.
+ * An image and its 1 sigma seen with a beam. The noise is taken as alike within the beam, so that 1 sigma is convolved like the
+ * image: an upper limit.
  */
 export function blurred(
   image: Float64Array,
   sigma: Float64Array,
   grid: PixelGrid,
-  beam: Beam,
-  independent: boolean
+  beam: Beam
 ): { image: Float64Array; sigma: Float64Array } {
-  const kernel = beamKernel(beam, grid)
-  const { width, height } = grid
-  if (!independent) {
-    const [light, noise] = convolve([image, sigma], width, height, kernel)
-    return { image: light, sigma: noise.map((value) => Math.max(0, value)) }
-  }
-  const nothing = new Float64Array(image.length)
-  const [light] = convolve([image, nothing], width, height, kernel)
-  const [variance] = convolve([sigma.map((value) => value * value), nothing], width, height, (dx, dy) => kernel(dx, dy) ** 2)
-  return { image: light, sigma: variance.map((value) => Math.sqrt(Math.max(0, value))) }
+  const [light, noise] = convolve([image, sigma], grid.width, grid.height, beamKernel(beam, grid))
+  return { image: light, sigma: noise.map((value) => Math.max(0, value)) }
 }

@@ -35,8 +35,6 @@ export function observeRun(
 ): Observed {
   const run = openRun(path)
   const observed: Observed = { run, instrument, pictures: [], fluxes: [], visibilities: [] }
-  // The emission coefficient of a cell lights many pixels; packets of the two other estimators light one each.
-  const independent = run.record.estimator !== 'emissivity'
   const { seed, observations } = instrument
   const cameras = new Map<string, CameraSource>()
   observations.forEach((spec, i) => {
@@ -48,7 +46,7 @@ export function observeRun(
       if (!run.spectra.includes(spec.spectrum)) refuse('spectrum', absent('spectrum', run.spectra))
       const source = readSpectrum(run, spec.spectrum)
       const light = weightsFor(spec, source.wavelengths, refuse)
-      observed.fluxes.push({ photometry: measureFlux(spec, source, light, seed, independent), source })
+      observed.fluxes.push({ photometry: measureFlux(spec, source, light, seed), source })
       return
     }
     const source = cameraOf(spec, run, cameras, refuse)
@@ -58,9 +56,9 @@ export function observeRun(
         refuse('pixel', 'larger than the field of the camera')
       if (spec.beam && pixelsAcross(makeBeam(spec.beam, light.wavelength), source) < NARROWEST)
         refuse('beam', `narrower than ${NARROWEST} pixels of the camera, which show nothing so small; leave it out`)
-      observed.pictures.push({ picture: takePicture(spec, source, light, seed, independent), source })
+      observed.pictures.push({ picture: takePicture(spec, source, light, seed), source })
     } else {
-      const measured = measureVisibilities(spec, source, light, seed, independent)
+      const measured = measureVisibilities(spec, source, light, seed)
       if (measured.coarseness > NYQUIST) refuse('baselines', tooCoarse(measured))
       observed.visibilities.push({ measured, source })
     }

@@ -12,7 +12,7 @@ const UNRESOLVED = 0.25
 /** Light in the pixels of a detector, cgs. */
 interface SeenLight {
   image: Float64Array
-  /** 1 sigma of the run's Monte Carlo part. */
+  /** 1 sigma of the run's Monte Carlo part, as if the noise of all that is added up were alike: an upper limit. */
   sigma: Float64Array
   /** Flux density in the field of the run. */
   flux: number
@@ -29,8 +29,7 @@ export function throughOptics(
   { beam: spec, core }: PictureSpec,
   source: CameraSource,
   { weights, coarse, wavelength }: LightWeights,
-  grid: PixelGrid,
-  independent: boolean
+  grid: PixelGrid
 ): SeenLight {
   const starlight = core?.starlight ?? 1
   const limit = UNRESOLVED * Math.max(...source.pixel)
@@ -40,27 +39,20 @@ export function throughOptics(
   const image = new Float64Array(grid.width * grid.height)
   const sigma = new Float64Array(image.length)
   for (const { at, of } of layers) {
-    const layer = weightedSum(source, of, weights, starlight, points.length > 0, independent)
+    const layer = weightedSum(source, of, weights, starlight, points.length > 0)
     const beam = spec && makeBeam(spec, at)
-    const seen = beam ? blurred(layer.image, layer.sigma, source, beam, independent) : layer
+    const seen = beam ? blurred(layer.image, layer.sigma, source, beam) : layer
     regridded(seen.image, source, grid).forEach((value, i) => {
       image[i] += value
     })
     regridded(seen.sigma, source, grid).forEach((value, i) => {
-      sigma[i] = independent ? Math.hypot(sigma[i], value) : sigma[i] + value
+      sigma[i] += value
     })
     for (const { east, north, flux } of points)
       addPoint(image, grid, beam!, east, north, starlight * of.reduce((sum, k) => sum + weights[k] * flux[k], 0))
   }
   const fluxes = source.wavelengths.map((_, k) => {
-    const { image: all } = weightedSum(
-      source,
-      [k],
-      new Float64Array(weights.length).fill(1),
-      starlight,
-      points.length > 0,
-      independent
-    )
+    const { image: all } = weightedSum(source, [k], new Float64Array(weights.length).fill(1), starlight, points.length > 0)
     return sumOf(all) * pixelSrOf(source) + points.reduce((sum, star) => sum + starlight * star.flux[k], 0)
   })
   const inBand = (parts: Float64Array) => fluxes.reduce((sum, flux, k) => sum + parts[k] * flux, 0)
@@ -74,8 +66,7 @@ function weightedSum(
   of: number[],
   weights: Float64Array,
   starlight: number,
-  withoutDirect: boolean,
-  independent: boolean
+  withoutDirect: boolean
 ): { image: Float64Array; sigma: Float64Array } {
   const pixels = width * height
   const image = new Float64Array(pixels)
@@ -84,10 +75,10 @@ function weightedSum(
   for (const k of of) {
     for (let i = 0, j = k * pixels; i < pixels; i++, j++) {
       image[i] += weights[k] * (total[j] + (kept - 1) * direct[j])
-      noise[i] += independent ? (weights[k] * sigma[j]) ** 2 : weights[k] * sigma[j]
+      noise[i] += weights[k] * sigma[j]
     }
   }
-  return { image, sigma: independent ? noise.map(Math.sqrt) : noise }
+  return { image, sigma: noise }
 }
 
 function addPoint(image: Float64Array, grid: PixelGrid, beam: Beam, east: number, north: number, flux: number): void {

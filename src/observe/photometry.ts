@@ -14,31 +14,29 @@ export interface Photometry {
   observed: number
   /** The same without noise. */
   expected: number
-  /** 1 sigma of the run's Monte Carlo part, and of the instrument's noise (0 without). */
+  /** 1 sigma of the run's Monte Carlo part (as if alike at all wavelengths: an upper limit), and of the instrument's noise (0 without). */
   sigma: number
   noise: number
   /** Estimated relative error of the interpolation between the run's wavelengths. */
   bandError: number
 }
 
-/** Observes a spectrum of a run; `independent`: the noise of its wavelengths is. */
+/** Observes a spectrum of a run. */
 export function measureFlux(
   spec: PhotometrySpec,
   { total, sigma }: SpectrumSource,
   { weights, coarse, wavelength }: LightWeights,
-  seed: string,
-  independent: boolean
+  seed: string
 ): Photometry {
   const inBand = (parts: Float64Array, values: Float64Array) => values.reduce((sum, value, k) => sum + parts[k] * value, 0)
   const expected = inBand(weights, total)
-  const error = independent ? Math.hypot(...sigma.map((value, k) => weights[k] * value)) : inBand(weights, sigma)
   const noise = noiseOf(spec, expected, LIGHT_SPEED / wavelength)
   return {
     spec,
     wavelength,
     expected,
     observed: noise > 0 ? expected + noise * drawNormal(stream(`${seed}/${spec.name}`)) : expected,
-    sigma: error,
+    sigma: inBand(weights, sigma),
     noise,
     bandError: expected > 0 ? Math.abs(inBand(coarse, total) - expected) / 3 / expected : 0
   }

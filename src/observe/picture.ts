@@ -40,14 +40,8 @@ export interface Picture {
   masked: number
 }
 
-/** Observes a camera of a run; `seed` is that of the noise. `independent`: the noise of the run's pixels is. */
-export function takePicture(
-  spec: PictureSpec,
-  source: CameraSource,
-  light: LightWeights,
-  seed: string,
-  independent: boolean
-): Picture {
+/** Observes a camera of a run; `seed` is that of the noise. */
+export function takePicture(spec: PictureSpec, source: CameraSource, light: LightWeights, seed: string): Picture {
   const grid = detectorGrid(source, spec.pixel)
   const beam = spec.beam && makeBeam(spec.beam, light.wavelength)
   const context: IntensityContext = {
@@ -55,7 +49,7 @@ export function takePicture(
     pixelSr: pixelSrOf(grid),
     ...(beam && { beamSr: beam.solidAngle })
   }
-  const seen = throughOptics(spec, source, light, grid, independent)
+  const seen = throughOptics(spec, source, light, grid)
   const zero = spec.zeroMagnitude
   const background = spec.background ? intensityOf(spec.background.level, context, zero) : 0
   const removed = spec.background?.subtracted ? background : 0

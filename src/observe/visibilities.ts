@@ -28,13 +28,12 @@ export interface Visibilities {
   coarseness: number
 }
 
-/** Observes a camera of a run with an interferometer; `independent`: the noise of the run's pixels is. */
+/** Observes a camera of a run with an interferometer. */
 export function measureVisibilities(
   spec: VisibilitiesSpec,
   source: CameraSource,
   { weights, wavelength }: LightWeights,
-  seed: string,
-  independent: boolean
+  seed: string
 ): Visibilities {
   const count = spec.baselines.length
   const expected = { re: new Float64Array(count), im: new Float64Array(count) }
@@ -49,7 +48,7 @@ export function measureVisibilities(
       expected.re[i] += weight * (dust.re + stars.re)
       expected.im[i] += weight * (dust.im + stars.im)
       const noise = transformed(plane.sigma, source, u, v)
-      variance[i] += weight ** 2 * (plane.scatter + (independent ? 0 : noise.re ** 2 + noise.im ** 2))
+      variance[i] += weight ** 2 * (plane.scatter + noise.re ** 2 + noise.im ** 2)
     })
   })
   const noise = spec.noise ? fluxOf(spec.noise.level, LIGHT_SPEED / wavelength) : 0

@@ -119,7 +119,7 @@ export async function visibilityPlot(measured: Visibilities, title: string): Pro
       high: of(amplitude + noise)
     }
   })
-  const x = { field: 'baseline', type: 'quantitative', title: 'projected baseline (m)', axis: { format: '~g' } } as const
+  const x = { field: 'baseline', type: 'quantitative', title: 'projected baseline (m)', axis: { format: '~r' } } as const
   const y = { field: 'amplitude', type: 'quantitative', title: `amplitude (${spec.unit})` } as const
   const subtitle = `${spec.name} · ${spacedWavelength(wavelengthLabel(wavelength))} · line: mean over all directions`
   const plot: TopLevelSpec = {

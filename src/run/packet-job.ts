@@ -1,5 +1,5 @@
-import { addDirectLight, directLight, starImage } from '../camera/direct.js'
-import { apertureDetector, cameraDetector, pixelFrame, pixelSolidAngle, seenFrom } from '../camera/frame.js'
+import { directLight, starImage } from '../camera/direct.js'
+import { apertureDetector, cameraDetector, pixelSolidAngle, seenFrom } from '../camera/frame.js'
 import { rayMedium } from '../camera/ray-medium.js'
 import { STOKES, STOKES_PAIRS, type StokesPlanes, stokesPlanes } from '../camera/stokes-planes.js'
 import { BULK } from '../camera/survey.js'
@@ -11,7 +11,7 @@ import { GROUPS } from '../solve/groups.js'
 import { scatterMedium } from '../solve/scatter-medium.js'
 import { type Detector, detectorPixels } from '../transport/detector.js'
 import type { LightJob } from './light-job.js'
-import { depthTo } from './stars-seen.js'
+import { depthTo, paintStars } from './stars-seen.js'
 import type { Wanted } from './wanted.js'
 
 /** Values of all detectors: luminosity per sr (erg/s/Hz/sr). */
@@ -104,11 +104,14 @@ function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted
   const { distance } = model.scene
   const view = seenFrom(model, want.spec.view)
   const depthAt = depthTo(rayMedium(model, light, undefined), view)
-  const stars = addStars ? model.stars.map(({ spec, spectrum }) => starImage(spec, spectrum, light.nu)) : []
   if (want.kind === 'spectrum') {
     const { result, k, spec } = want
     const area = distance * distance
-    const direct = stars.reduce((sum, star) => sum + directLight(star, depthAt, spec.aperture * distance), 0)
+    const stars = addStars ? model.stars : []
+    const direct = stars.reduce(
+      (sum, star) => sum + directLight(starImage(star.spec, star.spectrum, light.nu), depthAt, spec.aperture * distance),
+      0
+    )
     result.direct[k] = (caught.direct[offset] + direct) / area
     result.emitted[k] = caught.emitted[offset] / area
     result.scattered[k] = caught.scattered[offset] / area
@@ -122,7 +125,7 @@ function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted
   const at = k * pixels
   // Luminosity per sr divided by the squared distance is flux; by the solid angle of a pixel, intensity.
   const scale = 1 / (distance * distance * pixelSolidAngle(spec))
-  const direct = images.direct.subarray(at, at + pixels)
+  const direct = addStars ? paintStars(model, light, depthAt, want) : images.direct.subarray(at, at + pixels)
   if (images.stokes && caught.stokes) {
     for (const plane of STOKES)
       images.stokes[plane].set(
@@ -130,7 +133,6 @@ function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted
         at
       )
   }
-  for (const star of stars) addDirectLight(star, depthAt, pixelFrame(spec, distance), direct)
   for (let i = 0; i < pixels; i++) {
     direct[i] += caught.direct[offset + i] * scale
     images.emitted[at + i] = caught.emitted[offset + i] * scale

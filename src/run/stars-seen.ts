@@ -28,20 +28,12 @@ export function addStars(
   light: DustLight,
   medium: RayMedium,
   view: ViewBasis,
-  { spec, images, k }: Extract<Wanted, { kind: 'camera' }>,
+  want: Extract<Wanted, { kind: 'camera' }>,
   placing: number
 ): void {
-  const frame = pixelFrame(spec, model.scene.distance)
-  const from = k * frame.width * frame.height
-  const direct = images.direct.subarray(from, from + frame.width * frame.height)
-  const depthAt = depthTo(medium, view)
-  const { distance } = model.scene
-  for (const { spec: star, spectrum } of model.stars) {
-    const image = starImage(star, spectrum, light.nu)
-    addDirectLight(image, depthAt, frame, direct)
-    const seen = images.stars.find(({ name }) => name === star.name)!
-    seen.flux[k] = directLight(image, depthAt, Number.POSITIVE_INFINITY) / (distance * distance)
-  }
+  const { images, k } = want
+  const direct = paintStars(model, light, depthTo(medium, view), want)
+  const from = k * direct.length
   let sum = 0
   for (let i = 0; i < direct.length; i++) {
     const at = from + i
@@ -49,4 +41,24 @@ export function addStars(
     sum += images.total[at]
   }
   images.samplingError[k] = sum > 0 ? placing / sum : 0
+}
+
+/** Adds the direct light of the stars to their pixels, and notes how bright each is; returns the plane of direct light. */
+export function paintStars(
+  model: Model,
+  light: DustLight,
+  depthAt: (x: number, y: number) => number,
+  { spec, images, k }: Extract<Wanted, { kind: 'camera' }>
+): Float64Array {
+  const { distance } = model.scene
+  const frame = pixelFrame(spec, distance)
+  const pixels = frame.width * frame.height
+  const direct = images.direct.subarray(k * pixels, (k + 1) * pixels)
+  for (const { spec: star, spectrum } of model.stars) {
+    const image = starImage(star, spectrum, light.nu)
+    addDirectLight(image, depthAt, frame, direct)
+    const seen = images.stars.find(({ name }) => name === star.name)!
+    seen.flux[k] = directLight(image, depthAt, Number.POSITIVE_INFINITY) / (distance * distance)
+  }
+  return direct
 }

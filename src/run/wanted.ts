@@ -35,7 +35,8 @@ export function emptyProducts(scene: Scene, estimator: Estimator) {
   const images = scene.cameras.map((camera): CameraImages => {
     const [width, height] = camera.pixels
     const count = camera.wavelengths.length
-    const stars = starsOnSky(scene, camera)
+    // Exit bins catch direct light like all other, wherever it leaves.
+    const stars = estimator === 'exit' ? [] : starsOnSky(scene, camera)
     return { camera, width, height, ...arrays(width * height * count), stars, samplingError: new Array(count).fill(0) }
   })
   const spectra = scene.spectra.map((spectrum): ApertureSpectrum => {

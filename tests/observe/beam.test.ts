@@ -13,7 +13,7 @@ const gauss = (major: number, minor: number, degrees: number): BeamSpec => ({
   positionAngle: degrees * DEGREE
 })
 const see = (source: ReturnType<typeof cameraSource>, beam?: BeamSpec, change = {}) =>
-  takePicture(pictureSpec({ ...(beam && { beam }), ...change }), source, firstWavelength(source), 'seed', false)
+  takePicture(pictureSpec({ ...(beam && { beam }), ...change }), source, firstWavelength(source), 'seed')
 
 /** A kernel image of a function of offsets (arcsec), rows from south to north, east to the left. */
 function kernelOf(value: (east: number, north: number) => number, side = 41, pixel = 0.05): Kernel {
@@ -185,14 +185,11 @@ describe('beams', () => {
     expect(as.beam!.solidAngle / by.beam!.solidAngle).toBeCloseTo(1, 3)
   })
 
-  it('1 sigma of the run: convolved like light, or in quadrature where pixels are independent', () => {
-    const source = cameraSource(() => MJY)
-    const light = firstWavelength(source)
+  it('1 sigma of the run is convolved like light, and added up like it over wavelengths', () => {
+    const source = cameraSource((east) => MJY * (east > 0 ? 1 : 0), { wavelengths: [1e-3, 2e-3] })
+    const half = new Float64Array([0.5, 0.5])
     const spec = pictureSpec({ beam: gauss(0.5, 0.5, 0) })
-    const middle = 32 * 64 + 32
-    expect(takePicture(spec, source, light, '', false).sigma[middle] / MJY).toBeCloseTo(0.01, 8)
-    // Sum of squares of a Gaussian kernel: 1 / (4 pi sigma^2) pixels.
-    const expected = 0.01 / Math.sqrt(4 * Math.PI * (0.5 / FWHM / 0.1) ** 2)
-    expect(takePicture(spec, source, light, '', true).sigma[middle] / MJY).toBeCloseTo(expected, 5)
+    const { sigma, expected } = takePicture(spec, source, { weights: half, coarse: half, wavelength: 1.4e-3 }, '')
+    for (const at of [32 * 64 + 20, 32 * 64 + 31, 32 * 64 + 32]) expect(sigma[at] / expected[at]).toBeCloseTo(0.01, 8)
   })
 })

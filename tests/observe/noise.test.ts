@@ -7,7 +7,7 @@ import { cameraSource, firstWavelength, MJY, pictureSpec, total } from './source
 const FWHM = 2 * Math.sqrt(2 * Math.LN2)
 const source = cameraSource(() => MJY, { width: 128, height: 128 })
 const see = (change: Partial<PictureSpec>, seed = 'night') =>
-  takePicture(pictureSpec(change), source, firstWavelength(source), seed, false)
+  takePicture(pictureSpec(change), source, firstWavelength(source), seed)
 const COUNT = 128 * 128
 
 /** Mean product of noise this many pixels apart, of interior pixels. */
