@@ -73,7 +73,8 @@ describe('parseQuantity', () => {
       temperature: 'K',
       density: 'g/cm3',
       opacity: 'cm2/g',
-      wavenumber: 'cm-1'
+      wavenumber: 'cm-1',
+      time: 's'
     }
     const pairs = names.flatMap((name) => Object.keys(dimensions[name].units).map((unit) => [name, unit, cgs[name]]))
     const theirs = askPython<number[]>(
