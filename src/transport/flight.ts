@@ -21,7 +21,8 @@ export function pathToStar(walk: SphericalWalk, starRadius2: number): number {
 
 /**
  * What happens at the end of a flight inside a cell, `s` along the path: the weight loses what is absorbed, and the packet
- * goes on in a new direction. Below the `least` weight it plays roulette with that chance of `survival`. Returns the new weight, 0 when the roulette ends the packet.
+ * goes on in a new direction. Below the `least` weight it plays roulette with that chance of `survival`. Returns the new weight, 0 when
+ * the roulette ends the packet.
  */
 export function collide(
   walk: SphericalWalk,

@@ -10,6 +10,44 @@ describe('integrateAperture', () => {
     expect(error).toBeLessThan(1e-3 * value[EMITTED])
   })
 
+  it('finds the same rim on a disk tilted by 60 deg, and tells the error', () => {
+    const tilted = fieldOf(
+      (x, y) => {
+        const r = Math.hypot(x, 2 * y)
+        return r < 1 || r > 100 ? 0 : r < 1.001 ? 1000 : 1 / (r * r)
+      },
+      [...rim.field.radii],
+      0.5
+    )
+    const { value, error } = integrateAperture(tilted, Number.POSITIVE_INFINITY, 1e-3, true)
+    expect(Math.abs((2 * value[EMITTED]) / rim.integral - 1)).toBeLessThan(1e-3)
+    expect(error).toBeLessThan(1e-3 * value[EMITTED])
+  })
+
+  it('needs few rays for a smooth disk, whatever its tilt', () => {
+    // Plummer's law: I = (1 + r^2)^-2, flux pi R^2 / (1 + R^2) within R, times the axis ratio.
+    const radii = Array.from({ length: 100 }, (_, i) => 0.01 * 1.1 ** i)
+    const edge = radii[99]
+    for (const flattening of [1, 0.7, 0.2]) {
+      const plain = fieldOf(
+        (x, y) => (x * x + (y / flattening) ** 2 < edge * edge ? (1 + x * x + (y / flattening) ** 2) ** -2 : 0),
+        radii,
+        flattening
+      )
+      let rays = 0
+      const counted = {
+        ...plain,
+        sample: (...of: Parameters<typeof plain.sample>) => {
+          rays++
+          plain.sample(...of)
+        }
+      }
+      const { value } = integrateAperture(counted, Number.POSITIVE_INFINITY, 1e-3, true)
+      expect(Math.abs(value[EMITTED] / ((flattening * Math.PI * edge * edge) / (1 + edge * edge)) - 1)).toBeLessThan(1e-3)
+      expect(rays).toBeLessThan(5000)
+    }
+  })
+
   it('is exact for chords through spheres, square roots of the distance to their edges', () => {
     // Volumes of spheres of radius 1 and 3: the integral of the chord over the picture.
     const spheres = fieldOf(

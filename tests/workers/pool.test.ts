@@ -22,6 +22,30 @@ describe('a pool of workers', () => {
     expect(results).toEqual(doubles(40).map(({ input }) => 2 * (input as number)))
   })
 
+  it('runs several lists at a time, each in its order, and one may begin when another is taken', async () => {
+    const crew = open(2)
+    const results: number[][] = [[], [], []]
+    const list = (k: number) => crew.run(doubles(30 + k), (output) => results[k].push(output as number))
+    const third: Promise<number>[] = []
+    const first = crew.run(doubles(30), (output, index) => {
+      results[0].push(output as number)
+      if (index === 3) third.push(list(2))
+    })
+    expect(await Promise.all([first, list(1)])).toEqual([30, 31])
+    expect(await third[0]).toBe(32)
+    results.forEach((found, k) => {
+      expect(found).toEqual(doubles(30 + k).map(({ input }) => 2 * (input as number)))
+    })
+  })
+
+  it('a failure ends every list', async () => {
+    const crew = open(2)
+    const tasks = doubles(20)
+    tasks[5] = { name: 'fail', input: 0 }
+    const lists = await Promise.allSettled([crew.run(tasks, () => {}), crew.run([...doubles(20), ...tasks], () => {})])
+    expect(lists.map(({ status }) => status)).toEqual(['rejected', 'rejected'])
+  })
+
   it('finishes what is in hand when stopped, and can go on', async () => {
     const stop = new AbortController()
     const results: unknown[] = []
