@@ -5,6 +5,7 @@ import { wavelengthLabel } from '../output/wavelength-label.js'
 import type { StarSpectrum } from '../sources/star.js'
 import { AU, LIGHT_SPEED } from '../units/constants.js'
 import { grainWarnings } from './grain-warnings.js'
+import { scatteringWarnings } from './scattering-warnings.js'
 
 /** Optical depth of the first dusty cell above which the temperature at the inner edge is blurred. */
 const RESOLVED = 0.3
@@ -19,7 +20,8 @@ export function sceneWarnings(model: Model): string[] {
     ...starInDust(model),
     ...fields(model),
     ...extrapolated(model),
-    ...grainWarnings(model)
+    ...grainWarnings(model),
+    ...scatteringWarnings(model)
   ]
 }
 

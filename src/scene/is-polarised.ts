@@ -5,7 +5,8 @@ export function isPolarised({ dust, opacities }: Pick<Scene, 'dust' | 'opacities
   return dust.some(({ opacity }) => polarises(opacities[opacity].phase))
 }
 
-function polarises(phase: PhaseLaw): boolean {
+/** Whether a scattering law polarises. */
+export function polarises(phase: PhaseLaw): boolean {
   if (typeof phase === 'string') return phase === 'rayleigh' || phase === 'computed'
   return phase.kind === 'table' && phase.table.s12.some((value) => value !== 0)
 }

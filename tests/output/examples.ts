@@ -1,3 +1,4 @@
+import { type StokesPlanes, stokesPlanes } from '../../src/camera/stokes-planes.js'
 import type { ApertureSpectrum, CameraImages } from '../../src/camera/types.js'
 import type { Scene } from '../../src/scene/types.js'
 
@@ -26,6 +27,8 @@ export function exampleScene(change: Partial<Scene> = {}): Scene {
 }
 
 interface ImageOptions {
+  /** Q and U (cgs) of a pixel, V a hundredth of the intensity, errors a tenth of V. */
+  polarised?: (x: number, y: number) => [q: number, u: number]
   pixels?: [number, number]
   fieldArcsec?: [number, number]
   unit?: string
@@ -59,8 +62,26 @@ export function exampleImages(intensity: (x: number, y: number, k: number) => nu
     emitted: total.map((value) => value / 2),
     scattered: total.map((value) => value / 2),
     stars: [],
-    samplingError: wavelengths.map(() => 0)
+    samplingError: wavelengths.map(() => 0),
+    ...(options.polarised && { stokes: exampleStokes(total, width, height, options.polarised) })
   }
+}
+
+function exampleStokes(
+  total: Float64Array,
+  width: number,
+  height: number,
+  polarised: NonNullable<ImageOptions['polarised']>
+): StokesPlanes {
+  const planes = stokesPlanes(total.length)
+  for (let i = 0; i < total.length; i++) {
+    const [q, u] = polarised(i % width, Math.floor(i / width) % height)
+    planes.q[i] = q
+    planes.u[i] = u
+    planes.v[i] = total[i] / 100
+    for (const sigma of ['sigmaQ', 'sigmaU', 'sigmaV'] as const) planes[sigma][i] = total[i] / 1000
+  }
+  return planes
 }
 
 /** A spectrum with the totals given (cgs), 10 % errors, half direct and half emitted. */

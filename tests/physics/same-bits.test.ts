@@ -1,5 +1,6 @@
 import { createHash } from 'node:crypto'
 import { describe, expect, it } from 'vitest'
+import { STOKES } from '../../src/camera/stokes-planes.js'
 import type { RunResult } from '../../src/run/run-scene.js'
 import { runText } from './run-text.js'
 
@@ -7,12 +8,12 @@ const shell = 'shape: {kind: shell, inner: 2 au, outer: 60 au}, amount: {optical
 const disk =
   'shape: {kind: disk, inner: 2 au, outer: 60 au, scale-height: {value: 5 au, at: 60 au, flaring: 1.2}}, amount: {optical-depth: 20, at: 1 um}'
 
-const sceneOf = (dust: string, grid: string, effort: string, seed = 'bits') => `
+const sceneOf = (dust: string, grid: string, effort: string, seed = 'bits', phase = 'henyey-greenstein') => `
 distance: 100 pc
 seed: ${seed}
 sources: [{name: star, temperature: 4000 K, luminosity: 50 Lsun}]
 opacities:
-  grains: {law: power, reference: {wavelength: 1 um, absorption: 500 cm2/g}, slope: 1, scattering: {albedo: 0.4, asymmetry: 0.3}}
+  grains: {law: power, reference: {wavelength: 1 um, absorption: 500 cm2/g}, slope: 1, scattering: {albedo: 0.4, asymmetry: 0.3}, phase: ${phase}}
 dust:
   - {name: main, opacity: grains, ${dust}}
 grid: ${grid}
@@ -31,6 +32,7 @@ function digest({ dust, images, spectra, lightPackets }: RunResult): string {
   add(dust.sigma)
   for (const product of [...images, ...spectra]) {
     for (const part of ['total', 'sigma', 'direct', 'emitted', 'scattered'] as const) add(product[part])
+    for (const part of STOKES) if (product.stokes) add(product.stokes[part])
     add(Float64Array.from(product.samplingError))
   }
   add(Float64Array.from(lightPackets, ({ packets }) => packets))
@@ -38,6 +40,7 @@ function digest({ dust, images, spectra, lightPackets }: RunResult): string {
 }
 
 const fixed = '{precision: none, equilibrium: 2e4, cameras: 5e3}'
+const few = '{precision: none, cameras: 2e3}'
 const cases: [string, string, 'emissivity' | 'peel' | 'exit'][] = [
   ['shell, temperatures solved', sceneOf(shell, '{kind: auto}', fixed), 'emissivity'],
   [
@@ -48,6 +51,13 @@ const cases: [string, string, 'emissivity' | 'peel' | 'exit'][] = [
   ['disk, temperatures solved', sceneOf(disk, '{kind: spherical, radial: 30, polar: 20}', fixed), 'emissivity'],
   ['disk, three dimensions', sceneOf(disk, '{kind: spherical, radial: 15, polar: 10, azimuthal: 4}', fixed), 'emissivity'],
   ['shell, peel-off', sceneOf(shell, '{kind: auto}', fixed), 'peel'],
+  ['shell, polarised', sceneOf(`${shell}, temperature: none`, '{kind: auto}', few, 'bits', 'rayleigh'), 'emissivity'],
+  [
+    'disk, polarised',
+    sceneOf(`${disk}, temperature: none`, '{kind: spherical, radial: 15, polar: 10}', few, 'bits', 'rayleigh'),
+    'emissivity'
+  ],
+  ['shell, polarised, peel-off', sceneOf(`${shell}, temperature: none`, '{kind: auto}', few, 'bits', 'rayleigh'), 'peel'],
   ['shell, exit bins', sceneOf(shell, '{kind: auto}', fixed), 'exit']
 ]
 

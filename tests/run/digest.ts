@@ -1,4 +1,5 @@
 import { createHash } from 'node:crypto'
+import { STOKES } from '../../src/camera/stokes-planes.js'
 import type { RunResult } from '../../src/run/run-scene.js'
 
 /** A digest of every number that a user gets. */
@@ -10,6 +11,7 @@ export function digest({ dust, equilibrium, images, spectra, lightPackets }: Run
   if (equilibrium) hash.update(JSON.stringify([equilibrium.rounds, equilibrium.budget, equilibrium.packets, equilibrium.reached]))
   for (const product of [...images, ...spectra]) {
     for (const part of ['total', 'sigma', 'direct', 'emitted', 'scattered'] as const) add(product[part])
+    for (const part of STOKES) if (product.stokes) add(product.stokes[part])
     add(Float64Array.from(product.samplingError))
   }
   for (const { packets, error } of lightPackets) add(Float64Array.of(packets, error))

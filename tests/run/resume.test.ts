@@ -47,6 +47,7 @@ const cases: [keyof typeof smallScenes, Estimator][] = [
   ['disk', 'emissivity'],
   ['precise', 'emissivity'],
   ['fitted', 'emissivity'],
+  ['polarised', 'emissivity'],
   ['shell', 'peel'],
   ['precise', 'exit']
 ]
