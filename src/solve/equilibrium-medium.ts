@@ -7,6 +7,7 @@ import type { Model } from '../model/model.js'
 import { inflow } from '../sources/ambient.js'
 import { powerBins } from '../sources/power-bins.js'
 import type { EquilibriumMedium, EquilibriumSource } from '../transport/equilibrium.js'
+import { binnedLaws } from './binned-laws.js'
 
 /** The medium of the temperature phase with what its solution needs on the main thread. */
 export interface EquilibriumSetup {
@@ -101,6 +102,7 @@ export function equilibriumSetup(model: Model): EquilibriumSetup {
       absorption,
       extinction,
       asymmetry,
+      ...binnedLaws(components, grid),
       emission: tables.map(({ sampling }) => sampling),
       emissionRow,
       rosseland: shared(cells),

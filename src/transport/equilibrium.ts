@@ -1,4 +1,5 @@
 import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
+import { cosineAt, drawPlace, type ScatteringTables } from '../dust/scattering-tables.js'
 import type { SphericalWalls } from '../grid/geometry.js'
 import { SphericalWalk } from '../grid/walk.js'
 import { type SamplingTable, sampleBin } from '../math/cdf.js'
@@ -18,6 +19,9 @@ export interface EquilibriumMedium {
   absorption: Float64Array
   extinction: Float64Array
   asymmetry: Float64Array
+  /** components x bins: scattering law among `tables`; -1 for Henyey-Greenstein with the asymmetry. */
+  lawOf: Int32Array
+  tables?: ScatteringTables
   /** For each component, the bins of its emission: one row for each tabulated temperature. */
   emission: SamplingTable[]
   /** components x cells: row of `emission` at the present temperature, with a fraction. Negative: absorbs for good. */
@@ -68,6 +72,8 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
     absorption,
     extinction,
     asymmetry,
+    lawOf,
+    tables,
     emission,
     emissionRow,
     rosseland,
@@ -170,7 +176,9 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
         bin = sampleBin(emission[c], low + (uniform() < row - low ? 1 : 0), uniform())
         isotropicDirection(direction, uniform(), uniform())
       } else {
-        const mu = sampleHenyeyGreenstein(asymmetry[c * bins + bin], uniform())
+        const law = lawOf[c * bins + bin]
+        const mu =
+          law < 0 ? sampleHenyeyGreenstein(asymmetry[c * bins + bin], uniform()) : cosineAt(drawPlace(tables!, law, uniform))
         deflect(direction, walk.ux, walk.uy, walk.uz, mu, uniform())
       }
       walk.turn(x, y, z, direction[0], direction[1], direction[2])
