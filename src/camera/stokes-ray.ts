@@ -42,16 +42,19 @@ export class StokesRay {
     const { polarised } = this.medium
     if (!polarised) return
     const { parts, value, groups } = polarised
-    const nearest = share > 0.5 ? index + 1 : index
     for (let part = 0; part < parts; part++) {
       const at = index * parts + part
       const here = value[at]
       const amount = part === 0 ? weight : weight * side
       out[Q + part] += amount * (share > 0 ? here + share * (value[at + parts] - here) : here)
       if (!withGroups) continue
-      const from = (nearest * parts + part) * GROUPS
       const to = RAY_VALUES + part * GROUPS
-      for (let g = 0; g < GROUPS; g++) out[to + g] += amount * groups[from + g]
+      const near = amount * (1 - share)
+      for (let g = 0; g < GROUPS; g++) out[to + g] += near * groups[at * GROUPS + g]
+      // Where the share is none there may be no next slot.
+      if (share === 0) continue
+      const far = amount * share
+      for (let g = 0; g < GROUPS; g++) out[to + g] += far * groups[(at + parts) * GROUPS + g]
     }
   }
 
