@@ -25,7 +25,7 @@ export function integrateAperture(field: IntensityField, radius: number, toleran
   const beyond = Math.ceil(RINGS_A_DOUBLING * Math.log2(1 / flattening))
   for (let i = 1; i <= beyond; i++) rings.push(edge * flattening ** (-i / beyond))
   const patch = {
-    parts: Array.from({ length: mirrored ? PARTS : 2 * PARTS }, (_, i) => slice(rings, i)).flat(),
+    parts: Array.from({ length: mirrored ? PARTS : 2 * PARTS }, (_, i) => slice(rings, i, field.size > RAY_VALUES)).flat(),
     outline: (cos: number, sin: number, out: Float64Array) => {
       out[0] = 0
       out[1] = edge / Math.hypot(cos, flattening * sin)
@@ -45,10 +45,11 @@ export function integrateAperture(field: IntensityField, radius: number, toleran
 
 /**
  * The sectors of a slice. What the rings do wrong would be much the same all the way round: those between rings of like width are
- * shifted a little, differently in each slice, so that errors average out.
+ * shifted a little, differently in each slice, so that errors average out; where light is polarised alike in slices a quarter of a circle
+ * apart, so that their errors of Q and U cancel.
  */
-function slice(rings: number[], index: number): Sector[] {
-  const shift = ((index * GOLDEN) % 1) - 0.5
+function slice(rings: number[], index: number, polarised: boolean): Sector[] {
+  const shift = (((polarised ? index % (PARTS / 2) : index) * GOLDEN) % 1) - 0.5
   const shifted = rings.map((ring, i) => {
     if (i === 0 || i + 1 === rings.length) return ring
     const below = ring - rings[i - 1]
