@@ -9,6 +9,8 @@ const TOO_HOT = 1500
 
 /** Dust that may sublimate counts as too hot beyond this much of its temperature: cells just inside are averages. */
 const SLACK = 1.05
+/** Share of a source's light above which ambient light missing behind it is worth a word. */
+const NOTICED = 0.01
 /** Share of the mass that may sublimate without a word. */
 const LITTLE = 1e-3
 
@@ -26,6 +28,7 @@ export function resultWarnings(result: RunResult): string[] {
     }),
     ...sublimated(result),
     ...unsettledRadii(result),
+    ...seenAgainstLight(result),
     ...emptyCells(result),
     ...precisionWarnings(result),
     ...tooFew(result)
@@ -46,6 +49,26 @@ function sublimated({ model, sublimation }: RunResult): string[] {
   return sublimation && !sublimation.settled
     ? [...lost, `sublimation: dust was still too hot after ${sublimation.steps} steps`]
     : lost
+}
+
+/** Observers that look at the source against ambient light which it takes away noticeably. */
+function seenAgainstLight({ images, spectra }: RunResult): string[] {
+  const products = [
+    ...images.map(({ camera, ...planes }) => ({ what: `camera ${camera.name}`, where: 'extension', of: camera, ...planes })),
+    ...spectra.map(({ spectrum, ...planes }) => ({ what: `spectrum ${spectrum.name}`, where: 'column', of: spectrum, ...planes }))
+  ]
+  return products.flatMap(({ what, where, of: { wavelengths }, total, deficit }) => {
+    if (!deficit) return []
+    const size = total.length / wavelengths.length
+    const sum = (values: Float64Array, k: number) => values.subarray(k * size, (k + 1) * size).reduce((a, b) => a + b, 0)
+    const shares = wavelengths.map((_, k) => sum(deficit, k) / sum(total, k))
+    const many = shares.filter((share) => share > NOTICED).length
+    if (many === 0) return []
+    const most = shares.reduce((best, share, k) => (share > shares[best] ? k : best), 0)
+    return [
+      `${what}: ambient light that the source takes out of its background is more than ${percent(NOTICED)} of its own light at ${many} of ${wavelengths.length} wavelengths (${percent(shares[most])} at ${wavelengthLabel(wavelengths[most])}); it is not subtracted: see the ${where} ${where === 'column' ? 'deficit' : 'DEFICIT'}`
+    ]
+  })
 }
 
 function unsettledRadii({ model, innerRadii }: RunResult): string[] {

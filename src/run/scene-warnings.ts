@@ -86,11 +86,13 @@ function fields({ scene, components }: Model): string[] {
   })
 }
 
-function extrapolated({ scene, components, stars }: Model): string[] {
+function extrapolated({ scene, components, stars, fields }: Model): string[] {
   const laws = new Map(components.map(({ spec, law }) => [spec.opacity, law]))
   return [...laws].flatMap(([name, { range }]) => {
     const observed = observedWavelengths(scene).filter((wavelength) => wavelength < range[0] || wavelength > range[1])
-    const shining = stars.filter(({ spectrum }) => shareBeyond(spectrum, range) > BEYOND).map(({ spec }) => spec.name)
+    const shining = [...stars, ...fields.map(asStar)]
+      .filter(({ spectrum }) => shareBeyond(spectrum, range) > BEYOND)
+      .map(({ spec }) => spec.name)
     const what = [
       ...(observed.length > 0
         ? [`${observed.length} observed wavelengths (${wavelengthLabel(observed[0])}${observed.length > 1 ? ' ...' : ''})`]
@@ -103,8 +105,16 @@ function extrapolated({ scene, components, stars }: Model): string[] {
   })
 }
 
-/** Share of a star's luminosity at wavelengths outside a range (cm). */
-function shareBeyond({ luminosity, luminosityNu, range }: StarSpectrum, [from, to]: [number, number]): number {
+/** The intensity of a field in place of a luminosity: only shares of it count. */
+function asStar({ spec, spectrum: { intensity, intensityNu, range } }: Model['fields'][number]) {
+  return { spec, spectrum: { luminosity: intensity, luminosityNu: intensityNu, range } }
+}
+
+/** Share of a source's light at wavelengths outside a range (cm). */
+function shareBeyond(
+  { luminosity, luminosityNu, range }: Pick<StarSpectrum, 'luminosity' | 'luminosityNu' | 'range'>,
+  [from, to]: [number, number]
+): number {
   const inside = [Math.max(from, range[0]), Math.min(to, range[1])]
   if (inside[0] >= inside[1]) return 1
   const perLog = (x: number) => {

@@ -18,6 +18,8 @@ const MARGIN = 1.3
 const NEAR = 0.02
 const SETTLED = 5e-3
 const SIGMA = 7e-4
+/** 1 sigma that will do when no more packets may be spent: two of them are 0.2 %. */
+const ENOUGH = 1e-3
 const MOST_STEPS = 40
 /** d ln(heating) / d ln(r) in the light of a star, and between which it is believed when two steps tell otherwise. */
 const INVERSE_SQUARE = -2
@@ -109,7 +111,7 @@ export async function solveInnerRadii(
         const radius = state.radii[k]
         return radius > least ? [{ component, temperature, radius, sigma: changes[k].sigma }] : []
       })
-      state.result = { found, settled: known, steps: state.step, packets: state.spent }
+      state.result = { found, settled: furthest <= SETTLED && sigma <= ENOUGH, steps: state.step, packets: state.spent }
     } else if (furthest <= NEAR && sigma > SIGMA) {
       const needed = MARGIN * (sigma / SIGMA) ** 2
       state.size = Math.min(most, Math.ceil(state.size * Math.min(MOST_GROWTH, needed)))
