@@ -66,7 +66,7 @@ function seenAgainstLight({ images, spectra }: RunResult): string[] {
     if (many === 0) return []
     const most = shares.reduce((best, share, k) => (share > shares[best] ? k : best), 0)
     return [
-      `${what}: ambient light that the source takes out of its background is more than ${percent(NOTICED)} of its own light at ${many} of ${wavelengths.length} wavelengths (${percent(shares[most])} at ${wavelengthLabel(wavelengths[most])}); it is not subtracted: see the ${where} ${where === 'column' ? 'deficit' : 'DEFICIT'}`
+      `${what}: ambient light that the source takes out of its background is more than ${percent(NOTICED)} of its own light at ${many} of ${wavelengths.length} wavelengths (${Number(shares[most].toPrecision(2))} times its light at ${wavelengthLabel(wavelengths[most])}); it is not subtracted: see the ${where} ${where === 'column' ? 'deficit' : 'DEFICIT'}`
     ]
   })
 }

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { planckNu } from '../../src/dust/planck.js'
+import { resultWarnings } from '../../src/run/result-warnings.js'
 import type { RunResult } from '../../src/run/run-scene.js'
 import { LIGHT_SPEED } from '../../src/units/constants.js'
 import { plane, sumOf } from './pictures.js'
@@ -84,7 +85,11 @@ describe('dust in a bath of blackbody radiation', () => {
   })
 
   it('takes out of a thin field what a chord absorbs and scatters', async () => {
-    const { images, spectra } = await runText(sceneOf(shell, 0.1, '1e4'))
+    const result = await runText(sceneOf(shell, 0.1, '1e4'))
+    const { images, spectra } = result
+    expect(resultWarnings(result)).toContainEqual(
+      expect.stringMatching(/camera c: ambient light .* not subtracted: see the extension DEFICIT/)
+    )
     const [image] = images
     // Through the middle of a shell, whose radius has optical depth 0.1; the middle pixel spans 0.15 of the radius.
     const middle = image.deficit![image.deficit!.length >> 1]

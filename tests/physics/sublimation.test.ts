@@ -38,7 +38,14 @@ describe('dust that sublimates', () => {
   })
 
   it('leaves alone what is cool enough', async () => {
-    const result = await runText(sceneOf('grey', '{kind: shell, inner: 60 au, outer: 100 au}', '{optical-depth: 1, at: 1 um}'))
+    const result = await runText(
+      sceneOf(
+        'grey',
+        '{kind: shell, inner: 60 au, outer: 100 au}',
+        '{optical-depth: 1, at: 1 um}',
+        '{precision: 3 %, equilibrium: 2e5}'
+      )
+    )
     expect(result.innerRadii!.found).toEqual([])
     expect(result.sublimation!.gone.every((value) => value === 0)).toBe(true)
     expect(findings(result).dust[0].sublimatedMsun).toBe(0)
