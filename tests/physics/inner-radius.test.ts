@@ -23,7 +23,7 @@ describe('an inner radius found from its temperature', () => {
     [0, 1, 8.3446],
     [0, 10, 8.3598],
     [0, 100, 8.4964]
-  ])('is that of the dusty envelope to 0.2 %% for r^-%d and optical depth %d', async (slope, depth, expected) => {
+  ])('is that of the dusty envelope: r^-%d, optical depth %d, radius %d within 0.002', async (slope, depth, expected) => {
     const shape = `{kind: shell, inner: {temperature: 800 K}, outer: {times-inner: 1000}, slope: ${-slope}}`
     const { innerRadii, model } = await runText(sceneOf(shape, `{optical-depth: ${depth}, at: 1 um}`))
     const [{ radius, sigma }] = innerRadii!.found
