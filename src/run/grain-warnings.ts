@@ -28,11 +28,14 @@ interface MeanLight {
 }
 
 /** Light of all sources at a radius (cm), not dimmed on its way. */
-function lightAt({ stars }: Model, radius: number): MeanLight[] {
-  return stars.map(({ spectrum: { range, luminosityNu } }) => ({
-    range,
-    meanIntensityNu: (nu) => luminosityNu(nu) / (4 * Math.PI * radius) ** 2
-  }))
+function lightAt({ stars, fields }: Model, radius: number): MeanLight[] {
+  return [
+    ...stars.map(({ spectrum: { range, luminosityNu } }) => ({
+      range,
+      meanIntensityNu: (nu: number) => luminosityNu(nu) / (4 * Math.PI * radius) ** 2
+    })),
+    ...fields.map(({ spectrum: { range, intensityNu } }) => ({ range, meanIntensityNu: intensityNu }))
+  ]
 }
 
 /**

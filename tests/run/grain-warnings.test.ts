@@ -33,6 +33,18 @@ describe('grains out of equilibrium', () => {
     expect(energy).toBeLessThan(1.5)
   })
 
+  it('are told in interstellar light: below about 10 nm, as the literature has it', () => {
+    // Draine (2003, ARA&A 41, 241), recalled: steady temperatures need more than about 10 nm
+    const dim: [string, string][] = [
+      ['    temperature: 3000 K\n    luminosity: 5000 Lsun', '    kind: ambient\n    spectrum: interstellar'],
+      [power, grains('{smallest: 5 nm, largest: 250 nm}')]
+    ]
+    const [warning] = about(warningsOf(...dim), /one photon/)
+    const nm = Number(/below ([\d.]+) nm/.exec(warning)?.[1])
+    expect(nm).toBeGreaterThan(5)
+    expect(nm).toBeLessThan(20)
+  })
+
   it.each([
     ['large grains', [[power, grains('{smallest: 50 nm, largest: 1 um}')], far]],
     ['warm dust', [tiny, ['outer: 1000 au', 'outer: 20 au']]],
