@@ -35,11 +35,11 @@ export const observe: CommandModule<object, Arguments> = {
     const instrument = readInstrument(file, { seed })
     const path = out ?? `${resolve(run)}-${basename(file, extname(file))}`
     const steps = startSteps(process.stderr, quiet)
-    const observed = observeRun(run, instrument, (name, done) =>
-      steps.show(`${name}: ${done + 1} of ${instrument.observations.length}`)
-    )
-    const folder = await openRunFolder(path, force ? 'replace' : 'begin', [...instrument.inputs], observationRecordName)
+    const folder = await openRunFolder(path, force ? 'replace' : 'begin', instrument.inputs, observationRecordName)
     try {
+      const observed = observeRun(run, instrument, (name, done) =>
+        steps.show(`${name}: ${done + 1} of ${instrument.observations.length}`)
+      )
       // Drawing needs large packages; other commands start faster without them.
       const { writeObservation } = await import('../observe/observation-files.js')
       const record = await writeObservation(observed, folder)
