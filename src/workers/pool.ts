@@ -67,10 +67,7 @@ export class WorkerPool {
   run(tasks: Task[], onResult: (output: unknown, index: number) => void, stop?: AbortSignal): Promise<number> {
     if (this.failure) return Promise.reject(this.failure)
     return new Promise((resolve, reject) => {
-      const end = () => {
-        this.end(job)
-        this.feed()
-      }
+      const end = () => this.end(job)
       const job: Job = {
         tasks,
         onResult,
