@@ -11,8 +11,8 @@
 static inline double larger(double a, double b) { return a > b ? a : b; }
 static inline double smaller(double a, double b) { return a < b ? a : b; }
 
-enum { FLIGHT_BINS = 64, LOOKUP = 1 << 16 };
-static const double ROULETTE_BELOW = 1e-3, SURVIVAL = 0.1, GOLDEN = 0.6180339887498949;
+enum { FLIGHT_BINS = 64, STEPS = 4096 };
+static const double ROULETTE_BELOW = 1e-3, SURVIVAL = 0.1;
 
 // Alea, the generator of Johannes Baagoe, seeded by a hash of a text, as the package seedrandom has it.
 static double s0, s1, s2, carry, hash;
@@ -53,13 +53,40 @@ static inline double uniform(void) {
   return s2 + 0x1p-33;
 }
 
-static uint8_t binOfCosine[LOOKUP + 1];
+static uint8_t binOfFlight[STEPS + 1];
 
-static void makeLookup(void) {
-  for (int i = 0; i <= LOOKUP; i++) {
-    const double cosine = smaller(1, -1 + 2 * (i + 0.5) / LOOKUP);
-    binOfCosine[i] = smaller(FLIGHT_BINS - 1, floor(sqrt(0.5 * (1 - cosine)) * FLIGHT_BINS));
+// Tables of the exponential deviates: see src/math/exponential.ts.
+enum { LOG_STEPS = 256 };
+static const double LN2 = 0.6931471805599453;
+static double reciprocal[LOG_STEPS], rest[LOG_STEPS], power[33];
+
+static void makeTables(void) {
+  for (int i = 0; i <= STEPS; i++) {
+    const double square = (i + 0.5) / (STEPS / 2) - 1, cosine = copysign(sqrt(fabs(square)), square);
+    binOfFlight[i] = smaller(FLIGHT_BINS - 1, floor(sqrt(larger(0, 0.5 * (1 - cosine))) * FLIGHT_BINS));
   }
+  for (int i = 0; i < LOG_STEPS; i++) {
+    reciprocal[i] = 1 / (1 + (i + 0.5) / LOG_STEPS);
+    rest[i] = LN2 + log(reciprocal[i]);
+  }
+  for (int i = 0; i <= 32; i++) power[i] = ldexp(1, i - 31);
+}
+
+static inline double exponential(double u) {
+  const double scaled = u * 0x1p32;
+  const uint32_t k = (uint64_t)scaled;
+  const int zeros = __builtin_clzll((uint64_t)k << 32 | 0x80000000u);
+  const int i = (uint32_t)((uint64_t)k << zeros | (1ull << zeros) >> 1) >> 23 & (LOG_STEPS - 1);
+  const double d = scaled * power[zeros] * reciprocal[i] - 1;
+  return zeros * LN2 + rest[i] - (d - d * d * (1. / 2 - d * (1. / 3)));
+}
+
+static inline double cosAzimuth(double u) {
+  const double w = u - 0.5, x = w * w, x2 = x * x;
+  const double low = 3.14159265353629 - x * 5.167712764624471;
+  const double middle = 2.5501633189452115 - x * 0.5992521978037336;
+  const double high = 0.08205040171614679 - x * 0.007028386258010294;
+  return w * (low + x2 * (middle + x2 * high));
 }
 
 static inline double sampleHenyeyGreenstein(double g, double u) {
@@ -71,10 +98,10 @@ static inline double sampleHenyeyGreenstein(double g, double u) {
 // Adds a segment to the tally, at a point drawn along it.
 #define TALLY(step)                                                                                                            \
   do {                                                                                                                         \
-    along += GOLDEN;                                                                                                           \
-    along -= (int)along;                                                                                                       \
-    const double at = s + along * (step);                                                                                      \
-    tally[cell * FLIGHT_BINS + binOfCosine[(int)((at / sqrt(b2 + at * at) + 1) * (LOOKUP / 2))]] += weight * (step);           \
+    place += 0x9e3779b9u;                                                                                                      \
+    const double at = s + place * 0x1p-32 * (step), at2 = at * at;                                                             \
+    const int bin = binOfFlight[(int)(STEPS / 2 * SIGNED(at) / (b2 + at2) + STEPS / 2)];                                     \
+    tally[cell * FLIGHT_BINS + bin] += weight * (step);                                                                        \
   } while (0)
 
 static void tallyFlights(const Medium *m, int packets, double *tally) {
@@ -97,56 +124,57 @@ static void tallyFlights(const Medium *m, int packets, double *tally) {
     const double share = smaller(1, (first - depths[cell]) / (depths[cell + 1] - depths[cell]));
     const double radius = radii[cell] + share * (radii[cell + 1] - radii[cell]);
     double weight = m->removed * scale * albedo[cell];
-    double mu = sampleHenyeyGreenstein(g, uniform());
+    const double mu = sampleHenyeyGreenstein(g, uniform());
     const double least = ROULETTE_BELOW * weight;
     double s = radius * mu;
     double b2 = radius * radius * (1 - mu * mu);
-    double remaining = -log(uniform());
-    double along = uniform();
+    uint32_t place = uniform() * 0x1p32;
     while (weight > 0) {
+      double remaining = exponential(uniform());
       double opacity = 0;
       bool collides = false;
+#define SIGNED(at) at * fabs(at)
       while (s < 0) {
         const double below = squares[cell] - b2;
         const bool inwards = below > 0;
-        const double wall = inwards ? -sqrt(below) : sqrt(larger(0, squares[cell + 1] - b2));
-        const double step = larger(0, wall - s);
+        const double next = larger(inwards ? -sqrt(below) : sqrt(squares[cell + 1] - b2), s);
+        const double step = next - s;
         opacity = extinction[cell];
         const double depth = step * opacity;
         collides = depth >= remaining;
         if (collides) break;
         TALLY(step);
         remaining -= depth;
-        s += step;
+        s = next;
         cell += inwards ? -1 : 1;
         if (cell == cells) goto left;
       }
+#undef SIGNED
+#define SIGNED(at) at2
       while (!collides) {
-        const double step = larger(0, sqrt(larger(0, squares[cell + 1] - b2)) - s);
+        const double next = larger(sqrt(squares[cell + 1] - b2), s);
+        const double step = next - s;
         opacity = extinction[cell];
         const double depth = step * opacity;
         collides = depth >= remaining;
         if (collides) break;
         TALLY(step);
         remaining -= depth;
-        s += step;
+        s = next;
         cell++;
         if (cell == cells) goto left;
       }
+#undef SIGNED
+#define SIGNED(at) at * fabs(at)
       const double step = remaining / opacity;
       TALLY(step);
       weight *= albedo[cell];
       if (weight < least) weight = uniform() < SURVIVAL ? weight / SURVIVAL : 0;
       s += step;
       const double r2 = b2 + s * s;
-      const double r = sqrt(r2);
-      const double before = smaller(1, larger(-1, s / r));
       const double turn = sampleHenyeyGreenstein(g, uniform());
-      const double across = sqrt((1 - before * before) * (1 - turn * turn));
-      mu = smaller(1, larger(-1, before * turn + across * cos(2 * M_PI * uniform())));
-      s = r * mu;
-      b2 = r2 * (1 - mu * mu);
-      remaining = -log(uniform());
+      s = s * turn + sqrt(b2 * (1 - turn * turn)) * cosAzimuth(uniform());
+      b2 = larger(0, r2 - s * s);
     }
   left:;
   }
@@ -162,7 +190,7 @@ int main(int argc, char **argv) {
   const Medium m = readMedium(argv[1]);
   const size_t size = (size_t)m.cells * FLIGHT_BINS;
   double *tally = malloc(size * sizeof(double));
-  makeLookup();
+  makeTables();
   seed("warm-up");
   tallyFlights(&m, atoi(argv[5]), tally);
   seed(argv[3]);

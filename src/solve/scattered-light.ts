@@ -2,7 +2,7 @@ import { azimuthalHenyeyGreenstein } from '../dust/phase-function.js'
 import { allocateShared } from '../math/allocate.js'
 import { gaussLegendre } from '../math/quadrature.js'
 import type { Model } from '../model/model.js'
-import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS } from '../transport/scatter-medium.js'
+import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS, flightLookup } from '../transport/scatter-medium.js'
 import type { DustLight } from './dust-light.js'
 import type { GroupSums } from './group-sums.js'
 import { GROUPS } from './groups.js'
@@ -81,12 +81,13 @@ export function fromFlights(model: Model, light: DustLight, flights: GroupSums):
 /** Nodes x bins: the law, averaged over azimuth and over a bin of flight directions, for each angle to the observer. */
 function turningLaw(g: number): Float64Array {
   const matrix = new Float64Array(ANGLE_NODES * FLIGHT_BINS)
+  const { edges } = flightLookup()
   for (let node = 0; node < ANGLE_NODES; node++) {
     const towards = 1 - 2 * (node / (ANGLE_NODES - 1)) ** 2
     for (let m = 0; m < FLIGHT_BINS; m++) {
-      // mu = 1 - 2 u^2: even in mu within the bin.
-      const high = 1 - 2 * (m / FLIGHT_BINS) ** 2
-      const low = 1 - 2 * ((m + 1) / FLIGHT_BINS) ** 2
+      // Even in mu within the bin.
+      const high = edges[m]
+      const low = edges[m + 1]
       let sum = 0
       for (let i = 0; i < RULE.nodes.length; i++) {
         sum +=

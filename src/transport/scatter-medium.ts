@@ -42,6 +42,28 @@ export type ScatterLaunch =
 /** Number of bins for the direction of flight in one dimension, even in the sine of half the angle to the radius. */
 export const FLIGHT_BINS = 64
 
+/** Steps of the lookup of those bins: the signed square of the cosine, from -1 to 1. */
+export const FLIGHT_STEPS = 4096
+
+/**
+ * Which bin a flight falls in: bin = lookup[(1 + cosine |cosine|) * FLIGHT_STEPS / 2 | 0], which needs no root. The bins are even but
+ * for the step of the lookup; `edges` are their true edges in the cosine, descending from 1 to -1.
+ */
+export function flightLookup(): { lookup: Uint8Array; edges: Float64Array } {
+  const cosineAt = (step: number) => {
+    const square = (2 * step) / FLIGHT_STEPS - 1
+    return Math.sign(square) * Math.sqrt(Math.abs(square))
+  }
+  const binAt = (cosine: number) => Math.min(FLIGHT_BINS - 1, Math.floor(Math.sqrt(0.5 * (1 - cosine)) * FLIGHT_BINS))
+  const lookup = new Uint8Array(FLIGHT_STEPS + 1)
+  const edges = new Float64Array(FLIGHT_BINS + 1).fill(1)
+  for (let i = FLIGHT_STEPS - 1; i >= 0; i--) {
+    lookup[i] = binAt(cosineAt(i + 0.5))
+    edges[lookup[i] + 1] = cosineAt(i)
+  }
+  return { lookup, edges }
+}
+
 /** Number of bins in azimuth from the camera's plane, folded, in two dimensions. */
 export const AZIMUTH_BINS = 16
 
