@@ -2,7 +2,7 @@ import type { ScatteringTables } from '../dust/scattering-tables.js'
 import { allocateShared } from '../math/allocate.js'
 import { gaussLegendre } from '../math/quadrature.js'
 import type { Model } from '../model/model.js'
-import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS } from '../transport/scatter-medium.js'
+import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS, flightLookup } from '../transport/scatter-medium.js'
 import { FRAME, scatterTowards } from '../transport/scatter-towards.js'
 import type { DustLight } from './dust-light.js'
 import type { GroupSums } from './group-sums.js'
@@ -19,12 +19,13 @@ export type TurningMatrices = Float64Array[]
 /** The scattering matrix between the planes of the radius, averaged over azimuth and over a bin of flight directions. */
 export function turningMatrices(tables: ScatteringTables): TurningMatrices {
   return Array.from({ length: tables.laws }, (_, law) => {
+    const { edges } = flightLookup()
     const matrix = new Float64Array(ANGLE_NODES * FLIGHT_BINS * 4)
     for (let node = 0; node < ANGLE_NODES; node++) {
       const towards = 1 - 2 * (node / (ANGLE_NODES - 1)) ** 2
       for (let m = 0; m < FLIGHT_BINS; m++) {
-        const high = 1 - 2 * (m / FLIGHT_BINS) ** 2
-        const low = 1 - 2 * ((m + 1) / FLIGHT_BINS) ** 2
+        const high = edges[m]
+        const low = edges[m + 1]
         for (let i = 0; i < WITHIN_BIN.nodes.length; i++) {
           const flight = 0.5 * (low + high) + 0.5 * (high - low) * WITHIN_BIN.nodes[i]
           addAzimuths(tables, law, flight, towards, 0.5 * WITHIN_BIN.weights[i], matrix, (node * FLIGHT_BINS + m) * 4)

@@ -19,7 +19,7 @@ const flights = new Float64Array(MOST_CELLS * FLIGHT_BINS)
 
 /** Bin of a flight by its cosine with the radius. */
 export function flightBin(cosine: number): number {
-  return binOfCosine[((cosine + 1) * (LOOKUP / 2)) | 0]
+  return lookup[((1 + cosine * Math.abs(cosine)) * (FLIGHT_STEPS / 2)) | 0]
 }
 
 /**
