@@ -83,7 +83,7 @@ function emptyCells({ model, dust }: RunResult): string[] {
   return model.components.flatMap(({ spec, density }, c) => {
     if (spec.temperature !== 'solve') return []
     const empty = density.filter((value, i) => value > 0 && Number.isNaN(dust.sigma[c * model.cells + i])).length
-    return empty > 0 ? [`dust ${spec.name}: no packet came to ${empty} cells; their temperature is that of their neighbours`] : []
+    return empty > 0 ? [`dust ${spec.name}: no packet came to ${empty} cells; their temperature comes from their neighbours`] : []
   })
 }
 

@@ -83,7 +83,7 @@ export async function solveEquilibrium(
     if (!(await playRound(state, batches, model.scene.seed, pool, ledger, onProgress, stop))) return 'stopped'
     const packets = batches.count * batches.packets
     state.spent += packets
-    const dust = temperaturesFrom(model, setup, state.tally.absorbed, packets)
+    const dust = temperaturesFrom(model, setup, thick, state.tally.absorbed, packets)
     const { error, change } = judge(model, setup, dust, state.present)
     const steady = state.rounds.length > 0 && change <= Math.max(precision ?? 0, 2 * error)
     // The last round should hold about half of all packets: another one must fit twice over, or be the rest.

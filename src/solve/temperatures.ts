@@ -1,13 +1,15 @@
 import { coolingOf, type EmissionTable, temperatureOf } from '../dust/emission.js'
 import type { Model } from '../model/model.js'
 import type { EquilibriumSetup } from './equilibrium-medium.js'
+import { fillThick } from './fill-thick.js'
 import { GROUPS } from './groups.js'
+import type { ThickCells } from './thick-cells.js'
 
 /** Temperatures of all dust; component c, cell i at c * cells + i. */
 export interface DustTemperatures {
   /** K; 0 where a component has no dust or does not emit. */
   temperature: Float64Array
-  /** 1 sigma, K; 0 where the temperature is given, NaN where no packet came and a neighbour's was taken. */
+  /** 1 sigma, K; 0 where the temperature is given, NaN where no packet came. */
   sigma: Float64Array
   /** x GROUPS: relative deviation of each group's absorbed energy from the mean of all; empty when none is solved. */
   deviation: Float32Array
@@ -64,6 +66,7 @@ const HOTTEST = 5000
 export function temperaturesFrom(
   model: Model,
   setup: EquilibriumSetup,
+  thick: ThickCells,
   absorbed: Float64Array[],
   packets: number
 ): DustTemperatures {
@@ -100,7 +103,9 @@ export function temperaturesFrom(
     }
     fillEmpty(model, temperature, sigma, density, c)
   })
-  return { temperature, sigma, deviation, slope }
+  const dust = { temperature, sigma, deviation, slope }
+  fillThick(setup, model, thick, dust)
+  return dust
 }
 
 /** d ln(cooling) / d ln(T): how steeply the emission of dust rises with its temperature. */

@@ -50,7 +50,7 @@ export class ThickCells {
   /** Updates the medium for new temperatures (K; components x cells). */
   update(temperature: Float64Array): void {
     const { medium, tables } = this.setup
-    const { cells, components, bins, density, rosseland, planck, emissionRow } = medium
+    const { cells, components, density, rosseland, planck, emissionRow } = medium
     rosseland.fill(0)
     for (let cell = 0; cell < cells; cell++) {
       let most = 0
@@ -64,24 +64,34 @@ export class ThickCells {
         hottest = Math.max(hottest, temperature[at])
       }
       if (!solved || most * this.size[cell] < LEAST_DEPTH || hottest === 0) continue
-      const row = Math.min(
-        ROWS - 1,
-        Math.max(0, Math.round((Math.log(hottest / COLDEST) / Math.log(HOTTEST / COLDEST)) * (ROWS - 1)))
-      )
-      let inverse = 0
-      for (let k = 0; k < bins; k++) {
-        let extinction = 0
-        for (let c = 0; c < components; c++) extinction += density[c * cells + cell] * this.transport[c * bins + k]
-        inverse += this.weights[row * bins + k] / extinction
-      }
-      if (this.size[cell] < LEAST_DEPTH * inverse) continue
-      rosseland[cell] = 1 / inverse
+      const mean = this.meanExtinction(cell, hottest)
+      if (this.size[cell] * mean < LEAST_DEPTH) continue
+      rosseland[cell] = mean
       for (let c = 0; c < components; c++) {
         const at = c * cells + cell
         const here = temperature[at]
         planck[at] = here > 0 ? (Math.PI * coolingOf(tables[c], here)) / (STEFAN_BOLTZMANN * here ** 4) : 0
       }
     }
+  }
+
+  /** Rosseland mean of the transport extinction of a cell at a temperature (K), cm-1; 0 without dust. */
+  meanExtinction(cell: number, temperature: number): number {
+    const { cells, components, bins, density } = this.setup.medium
+    const position = (Math.log(temperature / COLDEST) / Math.log(HOTTEST / COLDEST)) * (ROWS - 1)
+    const row = Math.min(ROWS - 1, Math.max(0, Math.round(position)))
+    let inverse = 0
+    for (let k = 0; k < bins; k++) {
+      let extinction = 0
+      for (let c = 0; c < components; c++) extinction += density[c * cells + cell] * this.transport[c * bins + k]
+      inverse += this.weights[row * bins + k] / extinction
+    }
+    return 1 / inverse
+  }
+
+  /** Optical depth by that mean over half the smallest extent of a cell. */
+  halfDepth(cell: number, temperature: number): number {
+    return this.size[cell] * this.meanExtinction(cell, temperature)
   }
 }
 

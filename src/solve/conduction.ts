@@ -1,0 +1,93 @@
+import type { SphericalWalls } from '../grid/geometry.js'
+import type { Model } from '../model/model.js'
+
+/** Walls of the unknown cells through which radiation diffuses; those of unknown cell k are `first[k]` up to `first[k + 1]`. */
+export interface Conduction {
+  first: Int32Array
+  /** The cell beyond the wall, and its place among the unknown ones, or -1. */
+  neighbour: Int32Array
+  other: Int32Array
+  /** Area of the wall over the optical depth between the middles of the two cells, cm2. */
+  conductance: Float64Array
+}
+
+/** `extinction` gives the Rosseland mean of a cell, cm-1, 0 where there is no dust that conducts. */
+export function conductances(
+  { walls, cells }: Pick<Model, 'walls' | 'cells'>,
+  unknown: number[],
+  extinction: (cell: number) => number
+): Conduction {
+  const place = new Int32Array(cells).fill(-1)
+  unknown.forEach((cell, k) => {
+    place[cell] = k
+  })
+  const first = new Int32Array(unknown.length + 1)
+  const neighbour: number[] = []
+  const conductance: number[] = []
+  unknown.forEach((cell, k) => {
+    const here = extinction(cell)
+    forEachWall(walls, cell, (beyond, area, path, pathBeyond) => {
+      const there = extinction(beyond)
+      if (!(here > 0 && there > 0)) return
+      neighbour.push(beyond)
+      conductance.push(area / (here * path + there * pathBeyond))
+    })
+    first[k + 1] = neighbour.length
+  })
+  return {
+    first,
+    neighbour: Int32Array.from(neighbour),
+    other: Int32Array.from(neighbour, (cell) => place[cell]),
+    conductance: Float64Array.from(conductance)
+  }
+}
+
+/**
+ * Calls `visit` for every wall that a cell shares with another: that cell, the area (cm2), and the paths (cm) from the middles of the
+ * two cells to the wall. Paths along the radius are such that shells conduct exactly: area x int dr / (area at r).
+ */
+export function forEachWall(
+  { r, cosTheta, phi }: SphericalWalls,
+  cell: number,
+  visit: (beyond: number, area: number, path: number, pathBeyond: number) => void
+): void {
+  const nr = r.length - 1
+  const nt = cosTheta.length - 1
+  const np = phi.length - 1
+  const index = (ir: number, it: number, ip: number) => (ir === 0 ? 0 : 1 + ((ir - 1) * nt + it) * np + ip)
+  const middle = (ir: number) => 0.5 * (r[ir] + r[ir + 1])
+  const across = (wall: number, ir: number) => r[wall] * Math.abs(1 - r[wall] / middle(ir))
+  const radial = (wall: number, it: number, ip: number, from: number, to: number) =>
+    visit(
+      index(to, it, ip),
+      r[wall] ** 2 * (cosTheta[it] - cosTheta[it + 1]) * (phi[ip + 1] - phi[ip]),
+      across(wall, from),
+      across(wall, to)
+    )
+  if (cell === 0) {
+    if (nr > 1) for (let it = 0; it < nt; it++) for (let ip = 0; ip < np; ip++) radial(1, it, ip, 0, 1)
+    return
+  }
+  const ip = (cell - 1) % np
+  const it = Math.floor((cell - 1) / np) % nt
+  const ir = 1 + Math.floor((cell - 1) / (np * nt))
+  radial(ir, it, ip, ir, ir - 1)
+  if (ir < nr - 1) radial(ir + 1, it, ip, ir, ir + 1)
+  const strip = 0.5 * (r[ir + 1] ** 2 - r[ir] ** 2)
+  const theta = (wall: number) => Math.acos(cosTheta[wall])
+  const half = (k: number) => 0.5 * middle(ir) * (theta(k + 1) - theta(k))
+  for (const [wall, beyond] of [
+    [it, it - 1],
+    [it + 1, it + 1]
+  ]) {
+    if (beyond < 0 || beyond >= nt) continue
+    const area = strip * Math.sin(theta(wall)) * (phi[ip + 1] - phi[ip])
+    visit(index(ir, beyond, ip), area, half(it), half(beyond))
+  }
+  if (np > 1) {
+    const area = strip * (theta(it + 1) - theta(it))
+    const lever = 0.5 * middle(ir) * Math.sin(0.5 * (theta(it) + theta(it + 1)))
+    for (const beyond of [(ip + np - 1) % np, (ip + 1) % np])
+      visit(index(ir, it, beyond), area, lever * (phi[ip + 1] - phi[ip]), lever * (phi[beyond + 1] - phi[beyond]))
+  }
+}
