@@ -6,6 +6,7 @@ import { Interrupted } from '../run/run-in-folder.js'
 import { PartError } from '../run/run-part.js'
 import { StateError } from '../run/state/state-folder.js'
 import { SceneError, type SceneProblem } from '../scene/error.js'
+import { SlurmError } from '../sweep/slurm/slurm-command.js'
 import { type ExitCode, exitCode } from './exit-code.js'
 import { resumeCommand } from './resume-command.js'
 
@@ -17,7 +18,7 @@ export class UsageError extends Error {
 /** What went wrong, for people and for programs. */
 export interface Failure {
   code: ExitCode
-  kind: 'scene' | 'command-line' | 'data' | 'output' | 'memory' | 'state' | 'stopped' | 'defect'
+  kind: 'scene' | 'command-line' | 'data' | 'output' | 'memory' | 'state' | 'slurm' | 'stopped' | 'defect'
   message: string
   problems?: SceneProblem[]
 }
@@ -37,6 +38,7 @@ export function failureOf(error: unknown): Failure {
   if (error instanceof MemoryError) return { code: exitCode.wrongInput, kind: 'memory', message: error.message }
   if (error instanceof StateError || error instanceof PartError)
     return { code: exitCode.wrongInput, kind: 'state', message: error.message }
+  if (error instanceof SlurmError) return { code: exitCode.wrongInput, kind: 'slurm', message: error.message }
   if (error instanceof Interrupted) return interruption(error)
   if (error instanceof OutputError) return { code: exitCode.wrongInput, kind: 'output', message: error.message }
   if (error instanceof Stopped) {

@@ -10,6 +10,7 @@ import { observe } from './observe.js'
 import { opacity } from './opacity.js'
 import { run } from './run.js'
 import { schema } from './schema.js'
+import { sweep } from './sweep.js'
 
 // A reader such as `head` that closes our output early is no error.
 process.stdout.on('error', (error: NodeJS.ErrnoException) => {
@@ -20,10 +21,11 @@ process.stdout.on('error', (error: NodeJS.ErrnoException) => {
 /** What a command without enough words lacks. */
 function missingWords(command: string): string {
   if (command === 'convert') return 'The value to convert is'
+  if (command === 'sweep') return 'The plan file is'
   return command === 'observe' ? 'The run or the instrument file is' : 'The scene file is'
 }
 
-const commands = [check, run, join, opacity, convert, observe, schema] as CommandModule[]
+const commands = [check, run, join, opacity, convert, observe, sweep, schema] as CommandModule[]
 const names = commands.map(({ command }) => String(command).split(' ')[0])
 
 const words = hideBin(process.argv)

@@ -10,22 +10,21 @@ import { wavelengthLabels } from '../output/wavelength-label.js'
 import { sceneYaml } from '../scene/write.js'
 import { ambientIntensity } from '../solve/scatter-medium.js'
 import { LIGHT_SPEED } from '../units/constants.js'
-import { changedInputs } from './changed-inputs.js'
 import { cellColumns, dustStructure } from './dust-cells.js'
-import { resultWarnings } from './result-warnings.js'
 import { type RunFolder, recordName } from './run-folder.js'
 import { type RunMaking, type RunRecord, runRecord } from './run-record.js'
 import type { RunResult } from './run-scene.js'
-import { sceneWarnings } from './scene-warnings.js'
 import { stopwatch } from './stopwatch.js'
+import { warningsOf } from './warnings-of.js'
 import { type Product, writeFolder } from './write-folder.js'
 
 /** Writes all files of a run, the record last. Throws OutputError. */
 export async function writeProducts(result: RunResult, folder: RunFolder, making: RunMaking): Promise<RunRecord> {
   const time = stopwatch()
-  const warnings = [...sceneWarnings(result.model), ...resultWarnings(result), ...changedInputs(result.model.scene.inputs)]
+  const warnings = warningsOf(result)
+  const products = productsOf(result).filter(({ file }) => !(making.dataOnly && /\.(png|svg|html)$/.test(file)))
   const record = (files: string[]) => runRecord(result, making, warnings, { files, time: time() })
-  return writeFolder(folder, recordName, productsOf(result), record)
+  return writeFolder(folder, recordName, products, record)
 }
 
 function productsOf({ model, dust, images, spectra }: RunResult): Product[] {

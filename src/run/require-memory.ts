@@ -29,7 +29,7 @@ export function requireMemory(sizes: Sizes, workers: number, limit = machineMemo
 }
 
 /** Memory of the machine or of the container that the program runs in, bytes. */
-function machineMemory(): number {
+export function machineMemory(): number {
   const constrained = process.constrainedMemory()
   return constrained > 0 ? Math.min(totalmem(), constrained) : totalmem()
 }

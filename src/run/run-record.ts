@@ -13,6 +13,8 @@ export interface RunMaking {
   started: string
   workers: number
   estimator: Estimator
+  /** Without pictures and plots. */
+  dataOnly?: boolean
 }
 
 /** Content of `run.json`. */

@@ -23,6 +23,8 @@ export interface RunOptions {
   tables?: GrainTables
   /** Most memory it may take, bytes; default: what the machine has. */
   memory?: number
+  /** Leave out pictures and plots. */
+  dataOnly?: boolean
 }
 
 /** A model and the workers that are to run it. */

@@ -1,0 +1,51 @@
+import type { Value } from '../plan/value.js'
+import type { Outcomes } from '../results/sweep-table.js'
+import type { Sweep } from '../types.js'
+import { type Fit, rankedFits } from './likelihood.js'
+import { type Marginal, marginalOf } from './marginal.js'
+import { type Profile, pairProfile, profileOf } from './profile.js'
+import { summaryWarnings } from './summary-warnings.js'
+
+/** What the data say about the parameters of a sweep. */
+export interface Summary {
+  title: string
+  /** Models that could be compared with the data, and measured fluxes. */
+  compared: number
+  points: number
+  /** The best models, with their values in the order of `parameters`. */
+  best: (Fit & { values: Value[] })[]
+  /** Parameters that vary, not those tied to them. */
+  parameters: { name: string; unit: string; profile: Profile; marginal?: Marginal }[]
+  pairs: { names: [string, string]; points: ReturnType<typeof pairProfile> }[]
+  warnings: string[]
+}
+
+/** Models told of in full. */
+const BEST = 5
+
+/** Sums up a sweep with data; undefined without data, or without a model that can be compared. */
+export function summarize(sweep: Sweep, outcomes: Outcomes): Summary | undefined {
+  const fits = rankedFits(sweep, outcomes)
+  if (sweep.data.length === 0 || fits.length === 0) return undefined
+  const varied = sweep.parameters.flatMap(({ role }, p) => (role === 'varied' ? [p] : []))
+  const parameters = varied.map((p) => {
+    const { name, unit } = sweep.parameters[p]
+    const marginal = marginalOf(sweep, fits, p)
+    return { name, unit, profile: profileOf(sweep, fits, p), ...(marginal && { marginal }) }
+  })
+  const points = sweep.data.reduce((sum, { wavelengths }) => sum + wavelengths.length, 0)
+  return {
+    title: sweep.title,
+    compared: fits.length,
+    points,
+    best: fits.slice(0, BEST).map((fit) => ({ ...fit, values: sweep.models[fit.model - 1] })),
+    parameters,
+    pairs: varied.flatMap((one, i) =>
+      varied.slice(i + 1).map((other) => ({
+        names: [sweep.parameters[one].name, sweep.parameters[other].name] as [string, string],
+        points: pairProfile(sweep, fits, one, other)
+      }))
+    ),
+    warnings: summaryWarnings(sweep, fits, parameters, points)
+  }
+}
