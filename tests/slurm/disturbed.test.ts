@@ -14,11 +14,11 @@ async function found<Thing>(what: string, look: () => Thing | undefined): Promis
 }
 
 /*
- * One sweep meets all that may happen to jobs: a task killed, the controller killed and started again, a node lost and back, a task
+ * One sweep meets all that may happen to jobs: the controller killed and started again, a task killed, a node lost and back, a task
  * over its time (it is stopped, and Slurm counts on), then what is left submitted again, cancelled, and submitted once more.
  */
 itWith(slurmTool, 'a sweep that everything happens to has the table of an undisturbed one', async () => {
-  const packets = 300_000
+  const packets = 60_000
   const here = sweepFolder(planText, packets)
   const folder = sweepFolder(planText, packets)
   const cluster = await Cluster.start({ nodes: 2, cpus: 2 })
@@ -28,12 +28,15 @@ itWith(slurmTool, 'a sweep that everything happens to has the table of an undist
     const task = (kind: string, node = '') => found(`a task of ${kind}`, () => tasksOf(folder, kind, node)[0])
     await motelight('--on', 'slurm', '--slurm', 'time=1')
 
-    process.kill(await task('dust'), 'SIGKILL')
-    await found('the end of the killed task', () => states().find((state) => state === 'FAILED'))
+    const first = await task('dust')
+    process.kill(first, 'SIGSTOP')
     // What a controller was told within its last seconds it may forget when it dies; it saves its state every few.
     await setTimeout(8000)
     await cluster.kill('slurmctld')
     cluster.launch('slurmctld')
+    await found('the controller', () => (cluster.call('sinfo').status === 0 ? true : undefined))
+    process.kill(first, 'SIGKILL')
+    await found('the end of the killed task', () => states().find((state) => state === 'FAILED'))
 
     process.kill(await task('models', 'n2'), 'SIGSTOP')
     // The process on the lost node waits until Slurm has given its task away, and goes on beside the other.

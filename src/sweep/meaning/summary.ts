@@ -14,7 +14,7 @@ export interface Summary {
   points: number
   /** The best models, with their values in the order of `parameters`. */
   best: (Fit & { values: Value[] })[]
-  /** Parameters that vary, not those tied to them. */
+  /** Parameters that vary, neither those tied to them nor those of a single value. */
   parameters: { name: string; unit: string; profile: Profile; marginal?: Marginal }[]
   pairs: { names: [string, string]; points: ReturnType<typeof pairProfile> }[]
   warnings: string[]
@@ -27,7 +27,9 @@ const BEST = 5
 export function summarize(sweep: Sweep, outcomes: Outcomes): Summary | undefined {
   const fits = rankedFits(sweep, outcomes)
   if (sweep.data.length === 0 || fits.length === 0) return undefined
-  const varied = sweep.parameters.flatMap(({ role }, p) => (role === 'varied' ? [p] : []))
+  const isVaried = (p: number) =>
+    sweep.parameters[p].role === 'varied' && sweep.models.some((values) => values[p] !== sweep.models[0][p])
+  const varied = [...sweep.parameters.keys()].filter(isVaried)
   const parameters = varied.map((p) => {
     const { name, unit } = sweep.parameters[p]
     const marginal = marginalOf(sweep, fits, p)

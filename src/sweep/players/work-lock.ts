@@ -40,8 +40,8 @@ export class WorkLock {
           )
         await setTimeout(50)
       }
-      rmSync(file, { force: true })
     }
+    rmSync(file, { force: true })
     lock.write('wx')
     return lock
   }

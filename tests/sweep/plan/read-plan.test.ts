@@ -1,5 +1,7 @@
+import { fileURLToPath } from 'node:url'
 import { describe, expect, it } from 'vitest'
 import { modelScene } from '../../../src/sweep/plan/model-scene.js'
+import { readPlan } from '../../../src/sweep/plan/read-plan.js'
 import { AU, PARSEC } from '../../../src/units/constants.js'
 import { planned } from '../example.js'
 
@@ -110,4 +112,10 @@ design: {${kind}: 64}
     ])
     expect(modelScene(sweep, 2).sources[0]).toMatchObject({ temperature: 3100 })
   })
+})
+
+it('the plan that comes with the program is sound', () => {
+  const sweep = readPlan(fileURLToPath(new URL('../../../scenes/plans/giant-wind.yaml', import.meta.url)))
+  expect(sweep.models).toHaveLength(45)
+  expect(sweep.data[0].wavelengths).toHaveLength(7)
 })
