@@ -2,8 +2,10 @@ import type { Shape } from '../shapes/shape.js'
 
 /** Points along each side of a cell; where the density varies by more than the contrast allowed, more. */
 const COARSE = 3
-const FINE = 6
-const CONTRAST = 0.3
+const FINE = 5
+const CONTRAST = 0.8
+/** Cells with less than this share of the mass need no more points. */
+const LITTLE = 1e-6
 
 /** A cell between two radii (cm), two cosines of the polar angle and two azimuths. */
 export interface SphericalCell {
@@ -13,7 +15,7 @@ export interface SphericalCell {
 }
 
 /** Mean relative density of any shape in a cell, from the middles of equal parts of its volume. */
-export function sampledMean({ relativeDensity }: Shape, cell: SphericalCell): number {
+export function sampledMean({ relativeDensity, totalMass }: Shape, cell: SphericalCell): number {
   let [sum, least, most] = [0, Number.POSITIVE_INFINITY, 0]
   const sample = (points: number) => {
     sum = 0
@@ -36,5 +38,7 @@ export function sampledMean({ relativeDensity }: Shape, cell: SphericalCell): nu
     return sum / points ** 3
   }
   const coarse = sample(COARSE)
-  return most - least <= CONTRAST * coarse ? coarse : sample(FINE)
+  const { r, cosTheta, phi } = cell
+  const volume = ((r[1] ** 3 - r[0] ** 3) / 3) * (cosTheta[1] - cosTheta[0]) * (phi[1] - phi[0])
+  return most - least <= CONTRAST * coarse || (coarse > 0 && coarse * volume < LITTLE * totalMass) ? coarse : sample(FINE)
 }
