@@ -40,7 +40,7 @@ sources:
   - {name: star, kind: star, temperature: 4000 K, radius: 2 Rsun, extent: sphere, limb-darkening: 0.6}
 opacities:
   mixed: {law: table, file: mixed.csv, phase: isotropic}
-  grey: {law: power, reference: {wavelength: 1 um, absorption: 100 cm2/g}, slope: 0, scattering: {albedo: 0.9, asymmetry: -0.2, slope: 4}}
+  grey: {law: power, reference: {wavelength: 1 um, absorption: 100 cm2/g}, slope: 0, scattering: {albedo: 0.9, asymmetry: -0.2, slope: 4}, phase: {two-term: {first: 0.8, second: -0.3, share: 80 %}}}
 dust:
   - name: disk
     opacity: mixed
@@ -62,7 +62,7 @@ spectra:
 sources:
   - {name: lamp, luminosity: 10 Lsun, spectrum: {table: lamp.csv}}
 opacities:
-  dark: {law: power, reference: {wavelength: 1 um, absorption: 100 cm2/g}, slope: 1.5}
+  dark: {law: power, reference: {wavelength: 1 um, absorption: 100 cm2/g}, slope: 1.5, scattering: {albedo: 0.2}, phase: rayleigh}
 dust:
   - {name: cloud, opacity: dark, shape: {kind: shell, inner: 1 pc, outer: {times-inner: 10}}, amount: {optical-depth: 0.1, at: 1 um}, temperature: none}
 effort: {equilibrium: 1000, cameras: 300, precision: none}
@@ -73,7 +73,7 @@ spectra:
 sources:
   - {name: star, temperature: 6000 K, luminosity: 3 Lsun}
 opacities:
-  grey: {law: power, reference: {wavelength: 1 um, absorption: 100 cm2/g}, slope: 1, scattering: {albedo: 0.5, asymmetry: 0.2}}
+  grey: {law: power, reference: {wavelength: 1 um, absorption: 100 cm2/g}, slope: 1, scattering: {albedo: 0.5, asymmetry: 0.2}, phase: {table: law.csv}}
 dust:
   - name: ring
     opacity: grey
@@ -141,5 +141,6 @@ wavelength [um],absorption [cm2/g],scattering [cm2/g],asymmetry
   'nk.csv': 'wavelength [um],n,k\n0.1,1.6,0.5\n1,1.7,0.03\n10,1.5,0.8\n1000,3,0.1\n',
   'radii.csv': 'radius [nm],number\n100,5\n200,1\n',
   'points.csv': 'x [au],y [au],z [au],smoothing-length [au],mass\n10,20,30,20,1\n-50,0,0,30,2\n0,-60,10,30,2\n',
+  'law.csv': 'angle [deg],s11,s12,s33,s34\n0,2,0,2,0\n90,1,-0.9,0.1,0.2\n180,2,0,-2,0\n',
   'lamp.csv': 'wavelength [um],flux-nu [Jy]\n0.3,1\n1,30\n3,20\n30,0.2\n'
 }
