@@ -15,7 +15,7 @@ const MOST_KILLS = 3
 const shell = '{kind: shell, inner: 10 au, outer: 1000 au, slope: -2}'
 const disk = '{kind: disk, inner: 10 au, outer: 1000 au, scale-height: {value: 10 au, at: 100 au, flaring: 1.1}}'
 const scenes: [string, string][] = [
-  ['shell', sceneWith(['equilibrium: 8000, cameras: 2000', 'equilibrium: 1e5, cameras: 3e4'])],
+  ['shell', sceneWith(['equilibrium: 8000, cameras: 2000', 'equilibrium: 2e5, cameras: 1e5'])],
   [
     'disk',
     sceneWith(
