@@ -8,12 +8,13 @@ export class MemoryError extends Error {
 
 /** Refuses a run that is expected to need more than `limit` bytes; by default what the machine, or its container, has. */
 export function requireMemory(sizes: Sizes, workers: number, limit = machineMemory()): void {
-  const estimate = memoryEstimate(sizes, workers)
-  const needed = totalMemory(estimate, workers)
+  const neededBy = (count: number) => totalMemory(memoryEstimate(sizes, count), count)
+  const needed = neededBy(workers)
   if (needed <= limit) return
-  const { worker, cells, images } = estimate
+  const { worker, cells, images } = memoryEstimate(sizes, workers)
   const rest = needed - limit
-  const fewer = Math.floor(workers - rest / worker)
+  let fewer = workers - 1
+  while (fewer >= 1 && neededBy(fewer) > limit) fewer--
   const advice = [
     ...(fewer >= 1 ? [`${fewer === 1 ? '1 worker' : `${fewer} workers`} instead of ${workers} (--workers)`] : []),
     ...(images > rest ? [`images with ${share(1 - rest / images)} of their pixels or wavelengths`] : []),
