@@ -17,11 +17,6 @@ const extinctions = new Float64Array(MOST_CELLS)
 const albedos = new Float64Array(MOST_CELLS)
 const flights = new Float64Array(MOST_CELLS * FLIGHT_BINS)
 
-/** Bin of a flight by its cosine with the radius. */
-export function flightBin(cosine: number): number {
-  return lookup[((1 + cosine * Math.abs(cosine)) * (FLIGHT_STEPS / 2)) | 0]
-}
-
 /**
  * Light in flight in cells of one dimension: sum of weight x path (erg/s/Hz cm) by radial cell and by the angle between the
  * flight and the radius; cells x FLIGHT_BINS. The point of a segment that decides its bin is drawn along it, so that long

@@ -1,9 +1,11 @@
 import { SphericalWalk } from '../grid/walk.js'
+import { exponential } from '../math/exponential.js'
 import { ROULETTE_BELOW, SURVIVAL } from './flight.js'
-import { flightBin } from './flights.js'
 import { drawLaw, Launcher, scatteringOf } from './scatter-launch.js'
-import { FLIGHT_BINS, type ScatterMedium } from './scatter-medium.js'
+import { FLIGHT_BINS, FLIGHT_STEPS, flightLookup, type ScatterMedium } from './scatter-medium.js'
 import { Stokes } from './stokes.js'
+
+const { lookup } = flightLookup()
 
 /**
  * As `tallyFlights` for laws in tables: two numbers a bin, I and Q. The plane of flight and radius stays the same along a flight, and
@@ -12,12 +14,15 @@ import { Stokes } from './stokes.js'
 export function tallyStokesFlights(medium: ScatterMedium, packets: number, uniform: () => number): Float64Array {
   const { cells } = medium
   const tables = medium.tables!
+  const bin = lookup
+  const half = FLIGHT_STEPS / 2
   const extinction = Float64Array.from(medium.extinction)
   const squares = medium.walls.r.map((r) => r * r)
   const albedo = extinction.map((value, cell) => (value > 0 ? scatteringOf(medium, cell) / value : 0))
   const tally = new Float64Array(2 * cells * FLIGHT_BINS)
   const starRadius2 = medium.starRadius ** 2
-  const golden = 0.6180339887498949
+  const unit = 2.3283064365386963e-10
+  const golden = 0x9e3779b9
   const walk = new SphericalWalk(medium.walls)
   const launcher = new Launcher(medium, packets, true)
   const stokes = new Stokes()
@@ -29,56 +34,57 @@ export function tallyStokesFlights(medium: ScatterMedium, packets: number, unifo
     let { cell, s, b2 } = walk
     let weight = launcher.weight
     const least = ROULETTE_BELOW * weight
-    let along = uniform()
-    let remaining = launcher.atScattering ? 0 : -Math.log(uniform())
+    let place = (uniform() * 4294967296) | 0
     let scatters = launcher.atScattering
-    while (weight > 0) {
+    packet: while (weight > 0) {
       if (scatters) {
         stokes.scatter(tables, drawLaw(medium, cell, uniform), uniform)
+        const { mu: turn, cos, sin } = stokes
         const r2 = b2 + s * s
-        const r = Math.sqrt(r2)
-        const before = Math.min(1, Math.max(-1, s / r))
-        const off = Math.sqrt(1 - before * before)
-        const turn = stokes.mu
+        const b = Math.sqrt(b2)
         const bend = Math.sqrt(Math.max(0, 1 - turn * turn))
-        const mu = Math.min(1, Math.max(-1, before * turn + off * bend * stokes.cos))
-        // The radius in the frame of the scattered light.
-        stokes.refer(off * turn * stokes.cos - before * bend, -off * stokes.sin)
-        s = r * mu
-        b2 = r2 * (1 - mu * mu)
-        remaining = -Math.log(uniform())
-        scatters = false
+        // The radius in the frame of the scattered light, times its length.
+        stokes.refer(b * turn * cos - s * bend, -b * sin)
+        s = s * turn + b * bend * cos
+        b2 = Math.max(0, r2 - s * s)
       }
-      const below = squares[cell] - b2
-      const inwards = s < 0 && below > 0
-      const wall = inwards ? -Math.sqrt(below) : Math.sqrt(Math.max(0, squares[cell + 1] - b2))
-      let step = Math.max(0, wall - s)
-      let ends = false
-      if (s < 0 && b2 < starRadius2) {
-        const toStar = Math.max(0, -Math.sqrt(starRadius2 - b2) - s)
-        if (toStar < step) {
-          step = toStar
-          ends = true
+      scatters = true
+      let remaining = exponential(uniform())
+      const weightQ = weight * stokes.q
+      for (;;) {
+        const below = squares[cell] - b2
+        const inwards = s < 0 && below > 0
+        let next = inwards ? -Math.sqrt(below) : Math.sqrt(squares[cell + 1] - b2)
+        if (!(next > s)) next = s
+        let ends = false
+        if (s < 0 && b2 < starRadius2) {
+          const star = -Math.sqrt(starRadius2 - b2)
+          if (star < next) {
+            next = Math.max(star, s)
+            ends = true
+          }
         }
+        let step = next - s
+        const depth = step * extinction[cell]
+        const collides = depth >= remaining
+        if (collides) step = remaining / extinction[cell]
+        place = (place + golden) | 0
+        const at = s + (place >>> 0) * unit * step
+        const slot = ((cell << 7) + 2 * bin[((half * at * Math.abs(at)) / (b2 + at * at) + half) | 0]) | 0
+        tally[slot] += weight * step
+        tally[slot + 1] += weightQ * step
+        if (collides) {
+          s += step
+          break
+        }
+        if (ends) break packet
+        remaining -= depth
+        s = next
+        cell = inwards ? (cell - 1) | 0 : (cell + 1) | 0
+        if (cell === cells) break packet
       }
-      const depth = step * extinction[cell]
-      scatters = depth >= remaining
-      if (scatters) step = remaining / extinction[cell]
-      along += golden
-      along -= along | 0
-      const at = s + along * step
-      const slot = 2 * (cell * FLIGHT_BINS + flightBin(at / Math.sqrt(b2 + at * at)))
-      tally[slot] += weight * step
-      tally[slot + 1] += weight * step * stokes.q
-      s += step
-      if (scatters) {
-        weight *= albedo[cell]
-        if (weight < least) weight = uniform() < SURVIVAL ? weight / SURVIVAL : 0
-        continue
-      }
-      remaining -= depth
-      cell += inwards ? -1 : 1
-      if (ends || cell === cells) break
+      weight *= albedo[cell]
+      if (weight < least) weight = uniform() < SURVIVAL ? weight / SURVIVAL : 0
     }
   }
   return tally
