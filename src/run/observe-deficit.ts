@@ -1,4 +1,6 @@
+import { starsOnSky } from '../camera/stars-on-sky.js'
 import type { Model } from '../model/model.js'
+import type { Scene } from '../scene/types.js'
 import type { DustLight } from '../solve/dust-light.js'
 import { ambientIntensity } from '../solve/scatter-medium.js'
 import { noLedger } from '../workers/ledger.js'
@@ -27,13 +29,13 @@ export async function observeDeficit(model: Model, light: DustLight, wanted: Wan
     const grey = { ...spectrum, luminosityNu: () => luminosity, intensityNu: () => intensity }
     return [{ spec: { ...spec, limbDarkening: 0 }, spectrum: grey }]
   })
-  const scratch = wanted.map(intoDeficit)
+  const scratch = wanted.map((want) => intoDeficit(model.scene, want))
   const { indices } = observersOf(model, wanted)
   return observeWavelength({ ...model, stars }, dark, [], scratch, indices, { ...studio, ledger: noLedger })
 }
 
 /** The same product with its deficit in place of the total, and nothing else kept. */
-function intoDeficit(want: Wanted): Wanted {
+function intoDeficit(scene: Scene, want: Wanted): Wanted {
   const planes = (deficit: Float64Array, from: number, length: number) => ({
     total: deficit.subarray(from, from + length),
     sigma: new Float64Array(length),
@@ -46,6 +48,7 @@ function intoDeficit(want: Wanted): Wanted {
   })
   if (want.kind === 'spectrum') return { ...want, k: 0, result: { ...want.result, ...planes(want.result.deficit!, want.k, 1) } }
   const pixels = want.images.width * want.images.height
-  const stars = want.images.stars.map((star) => ({ ...star, flux: new Float64Array(1) }))
+  // Exit bins know no stars, but their deficit does.
+  const stars = starsOnSky(scene, want.spec)
   return { ...want, k: 0, images: { ...want.images, ...planes(want.images.deficit!, want.k * pixels, pixels), stars } }
 }
