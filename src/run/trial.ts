@@ -1,6 +1,6 @@
-import { Worker } from 'node:worker_threads'
 import type { Scene } from '../scene/types.js'
 import { FIRST_ROUND } from '../solve/rounds.js'
+import { startThread } from '../workers/start-thread.js'
 import type { GrainTables } from './grain-tables.js'
 
 /** How long parts of a run took on one worker, and how noisy they came out. */
@@ -37,7 +37,7 @@ export const TRIAL_PRECISION = 0.05
  */
 export function runTrial({ locate, ...scene }: Scene, tables: GrainTables, mostSeconds: number): Promise<Trial> {
   return new Promise((resolve, reject) => {
-    const thread = new Worker(new URL('./trial-thread.js', import.meta.url), { workerData: { scene, tables } })
+    const thread = startThread(new URL('./trial-thread.js', import.meta.url), { workerData: { scene, tables } })
     let latest: Trial = {
       dust: { packets: 0, seconds: 0, noise: 0 },
       light: { packets: 0, seconds: 0, noise: 0 },

@@ -1,5 +1,6 @@
-import { Worker } from 'node:worker_threads'
+import type { Worker } from 'node:worker_threads'
 import type { FromWorker, ToWorker } from './messages.js'
+import { startThread } from './start-thread.js'
 
 /** A task for a worker: the name of its handler, the scope of what it may share with others, and what to hand it. */
 export interface Task {
@@ -39,7 +40,7 @@ export class WorkerPool {
     script: URL
   ) {
     for (let i = 0; i < size; i++) {
-      const worker = new Worker(script)
+      const worker = startThread(script)
       worker.on('message', (message: FromWorker) => this.receive(worker, message))
       worker.on('error', (error) => this.fail(new WorkerFailure(`a worker thread died: ${error.message}`, { cause: error })))
       worker.on('exit', (code) => {
