@@ -20,7 +20,10 @@ export function listText(sweep: Sweep, { secondsAModel, seconds, cores, tried, c
   ]
   const numbers = models.map((_, i) => i + 1)
   const long = models.length > FIRST + LAST + 1
-  const about = complete ? 'about' : 'more than'
+  const from = `from models ${tried.join(', ')}, tried in small`
+  const time = complete
+    ? `about ${duration(secondsAModel)} a model on one core, about ${duration(seconds)} for all on ${cores} ${cores === 1 ? 'core' : 'cores'} (${from})`
+    : `how long they take is unknown: models ${tried.join(', ')}, tried in small, did not come to their end`
   return [
     `${title}: ${models.length} ${models.length === 1 ? 'model' : 'models'}, design ${design}`,
     ...table([
@@ -28,7 +31,7 @@ export function listText(sweep: Sweep, { secondsAModel, seconds, cores, tried, c
       ...(long ? numbers.slice(0, FIRST) : numbers).map(row),
       ...(long ? [['...'], ...numbers.slice(-LAST).map(row)] : [])
     ]),
-    `${about} ${duration(secondsAModel)} a model on one core, ${about} ${duration(seconds)} for all on ${cores} ${cores === 1 ? 'core' : 'cores'} (from models ${tried.join(', ')}, tried in small)`,
+    time,
     ''
   ].join('\n')
 }

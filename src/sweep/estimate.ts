@@ -15,11 +15,11 @@ export interface Estimate {
   cores: number
   /** Models tried. */
   tried: number[]
-  /** False when a trial was cut short: it will take longer. */
+  /** False when every trial was cut short: the times mean nothing then. */
   complete: boolean
 }
 
-const TRIAL_SECONDS = 4
+const TRIAL_SECONDS = 8
 
 /** Tries the first, the middle and the last model in small; `onTry` is told which is at hand. Throws SceneError. */
 export async function estimateSweep(sweep: Sweep, cores: number, onTry: (model: number) => void = () => {}): Promise<Estimate> {
@@ -32,8 +32,10 @@ export async function estimateSweep(sweep: Sweep, cores: number, onTry: (model: 
     const tables = await grainTables(scene, cores)
     forecasts.push(forecast(buildModel(scene, planCells(scene, tables)), await runTrial(scene, tables, TRIAL_SECONDS), 1))
   }
+  const whole = forecasts.filter(({ complete }) => complete)
+  const used = whole.length > 0 ? whole : forecasts
   const mean = (of: (seconds: Forecast['seconds']) => number) =>
-    forecasts.reduce((sum, { seconds }) => sum + of(seconds), 0) / forecasts.length
+    used.reduce((sum, { seconds }) => sum + of(seconds), 0) / used.length
   const leads = new Set(dustLeads(sweep)).size
   const all = leads * mean(({ dust }) => dust) + count * mean(({ light, pictures }) => light + pictures)
   return {
@@ -41,6 +43,6 @@ export async function estimateSweep(sweep: Sweep, cores: number, onTry: (model: 
     seconds: all / Math.min(cores, count),
     cores,
     tried,
-    complete: forecasts.every(({ complete }) => complete)
+    complete: whole.length > 0
   }
 }
