@@ -8,6 +8,7 @@ import { failureOf, reportFailure, UsageError } from './failure.js'
 import { join } from './join.js'
 import { observe } from './observe.js'
 import { opacity } from './opacity.js'
+import { report } from './report.js'
 import { run } from './run.js'
 import { schema } from './schema.js'
 import { sweep } from './sweep.js'
@@ -22,10 +23,11 @@ process.stdout.on('error', (error: NodeJS.ErrnoException) => {
 function missingWords(command: string): string {
   if (command === 'convert') return 'The value to convert is'
   if (command === 'sweep') return 'The plan file is'
+  if (command === 'report') return 'The folder is'
   return command === 'observe' ? 'The run or the instrument file is' : 'The scene file is'
 }
 
-const commands = [check, run, join, opacity, convert, observe, sweep, schema] as CommandModule[]
+const commands = [check, run, join, opacity, convert, observe, report, sweep, schema] as CommandModule[]
 const names = commands.map(({ command }) => String(command).split(' ')[0])
 
 const words = hideBin(process.argv)

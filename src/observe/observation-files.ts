@@ -1,6 +1,7 @@
 import type { RunFolder } from '../run/run-folder.js'
 import { type Product, writeFolder } from '../run/write-folder.js'
 import { type ObservationRecord, observationRecord, observationRecordName } from './observation-record.js'
+import { observationReport } from './observation-report.js'
 import type { Observed } from './observe-run.js'
 import { photometryEcsv, photometryPlot } from './photometry-files.js'
 import { pictureFits, picturePng } from './picture-files.js'
@@ -8,7 +9,8 @@ import { closureEcsv, curveEcsv, visibilityEcsv, visibilityPlot } from './visibi
 
 /** Writes all files of an observation, the record last. Throws OutputError. */
 export function writeObservation(observed: Observed, folder: RunFolder): Promise<ObservationRecord> {
-  return writeFolder(folder, observationRecordName, productsOf(observed), (files) => observationRecord(observed, files))
+  const report = (record: ObservationRecord) => observationReport(folder.path, record)
+  return writeFolder(folder, observationRecordName, productsOf(observed), (files) => observationRecord(observed, files), report)
 }
 
 function productsOf(observed: Observed): Product[] {

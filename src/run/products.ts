@@ -13,6 +13,7 @@ import { LIGHT_SPEED } from '../units/constants.js'
 import { cellColumns, dustStructure } from './dust-cells.js'
 import { type RunFolder, recordName } from './run-folder.js'
 import { type RunMaking, type RunRecord, runRecord } from './run-record.js'
+import { runReport } from './run-report.js'
 import type { RunResult } from './run-scene.js'
 import { stopwatch } from './stopwatch.js'
 import { warningsOf } from './warnings-of.js'
@@ -24,7 +25,8 @@ export async function writeProducts(result: RunResult, folder: RunFolder, making
   const warnings = warningsOf(result)
   const products = productsOf(result).filter(({ file }) => !(making.dataOnly && /\.(png|svg|html)$/.test(file)))
   const record = (files: string[]) => runRecord(result, making, warnings, { files, time: time() })
-  return writeFolder(folder, recordName, products, record)
+  const report = (finished: RunRecord) => runReport(folder.path, finished)
+  return writeFolder(folder, recordName, products, record, making.dataOnly ? undefined : report)
 }
 
 function productsOf({ model, dust, images, spectra }: RunResult): Product[] {

@@ -1,0 +1,120 @@
+import { readFileSync } from 'node:fs'
+import { join } from 'node:path'
+import { shellWord } from '../report/html.js'
+import { readPhotometryChart, readVisibilityChart } from '../report/read-charts.js'
+import { readPicture, ValueBudget } from '../report/read-picture.js'
+import { reportPage } from '../report/report-page.js'
+import type { ChartSection, PictureData, TableSection } from '../report/types.js'
+import type { ObservationFinding, ObservationRecord } from './observation-record.js'
+
+/** The page of an observation, from its record and the files in its folder. Throws a DataError for a file that cannot be used. */
+export function observationReport(path: string, record: ObservationRecord): string {
+  const at = (file: string) => join(path, file)
+  const budget = new ValueBudget()
+  const leftOut: string[] = []
+  const pictures: PictureData[] = []
+  const curves: ChartSection['charts'] = []
+  for (const { kind, name } of record.observations) {
+    if (kind === 'picture') {
+      const file = `pictures/${name}.fits`
+      const picture = readPicture(at(file), file, `Picture ${name}`, budget)
+      if (picture) pictures.push(picture)
+      else leftOut.push(`Not on this page, to keep it small: ${file}.`)
+    } else if (kind === 'visibilities') {
+      const file = `visibilities/${name}-curve.ecsv`
+      curves.push(readVisibilityChart(at(file), file, `${name}: mean over all directions`))
+    }
+  }
+  const photometry = 'photometry.ecsv'
+  const section = (heading: string, charts: ChartSection['charts']): ChartSection => ({
+    heading,
+    charts,
+    pictures: [],
+    tables: []
+  })
+  return reportPage({
+    kind: 'observation',
+    title: record.title,
+    summary: `Observation of the run “${record.run.title}”: ${record.observations.map(({ name }) => name).join(', ')}.`,
+    warnings: [...record.warnings, ...leftOut],
+    pictures,
+    charts: [
+      section('Fluxes', record.files.includes(photometry) ? [readPhotometryChart(at(photometry), photometry)] : []),
+      section('Visibilities', curves)
+    ],
+    tables: [pictureTable(record.observations), fluxTable(record.observations), visibilityTable(record.observations)],
+    texts: [{ heading: 'Instrument', name: 'instrument.yaml', text: readFileSync(at('instrument.yaml'), 'utf8') }],
+    reproduce: {
+      commands: [['motelight', 'observe', record.run.folder, record.instrument, '--seed', record.seed].map(shellWord).join(' ')],
+      remarks: [`Made with motelight ${record.version} of a run made with ${record.run.version}, seed ${record.run.seed}.`],
+      inputs: [...record.inputs, ...record.run.inputs]
+    }
+  })
+}
+
+type Finding<Kind> = Extract<ObservationFinding, { kind: Kind }>
+
+const ofKind = <Kind extends ObservationFinding['kind']>(all: ObservationFinding[], kind: Kind) =>
+  all.filter((finding): finding is Finding<Kind> & ObservationFinding => finding.kind === kind)
+
+const digits = (value: number, count = 5) => String(Number(value.toPrecision(count)))
+
+function pictureTable(all: ObservationFinding[]): TableSection {
+  return {
+    heading: 'Brightest pixels',
+    columns: [
+      '',
+      'µm',
+      'peak',
+      'noise',
+      '1 sigma of the run',
+      'unit',
+      'flux in the field (Jy)',
+      'in the picture (Jy)',
+      'masked pixels'
+    ],
+    rows: ofKind(all, 'picture').map(
+      ({ name, wavelengthUm, peak, peakNoise, peakSigma, unit, fieldJy, pictureJy, maskedPixels }) => [
+        name,
+        digits(wavelengthUm),
+        digits(peak),
+        digits(peakNoise, 2),
+        digits(peakSigma, 2),
+        unit,
+        digits(fieldJy),
+        digits(pictureJy),
+        String(maskedPixels)
+      ]
+    )
+  }
+}
+
+function fluxTable(all: ObservationFinding[]): TableSection {
+  return {
+    heading: 'Measured fluxes',
+    columns: ['', 'µm', 'value', 'noise', '1 sigma of the run', 'unit'],
+    rows: ofKind(all, 'photometry').map(({ name, wavelengthUm, value, valueNoise, valueSigma, unit }) => [
+      name,
+      digits(wavelengthUm),
+      digits(value),
+      digits(valueNoise, 2),
+      digits(valueSigma, 2),
+      unit
+    ])
+  }
+}
+
+function visibilityTable(all: ObservationFinding[]): TableSection {
+  return {
+    heading: 'Interferometry',
+    columns: ['', 'µm', 'baselines', 'closure phases', 'flux (Jy)', 'noise (Jy)'],
+    rows: ofKind(all, 'visibilities').map(({ name, wavelengthUm, baselines, closurePhases, fluxJy, noiseJy }) => [
+      name,
+      digits(wavelengthUm),
+      String(baselines),
+      String(closurePhases),
+      digits(fluxJy),
+      digits(noiseJy, 2)
+    ])
+  }
+}

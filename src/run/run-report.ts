@@ -1,0 +1,165 @@
+import { existsSync, readFileSync } from 'node:fs'
+import { join } from 'node:path'
+import { shellWord } from '../report/html.js'
+import { readSpectrumChart, readStructureCharts } from '../report/read-charts.js'
+import { readPicture, ValueBudget } from '../report/read-picture.js'
+import { reportPage } from '../report/report-page.js'
+import type { ChartSection, PictureData, TableSection } from '../report/types.js'
+import type { DustFinding } from './findings.js'
+import { percent } from './percent.js'
+import type { RunRecord } from './run-record.js'
+import type { PhaseTime } from './stopwatch.js'
+
+/** The page of a run, from its record and the files in its folder. Throws a DataError for a file that cannot be used. */
+export function runReport(path: string, record: RunRecord): string {
+  const at = (file: string) => join(path, file)
+  const named = (folder: string, ending: string) =>
+    record.files.filter((file) => file.startsWith(folder) && file.endsWith(ending))
+  const nameOf = (file: string) => file.replace(/^[^/]*\//, '').replace(/\.[a-z]+$/, '')
+  const budget = new ValueBudget()
+  const leftOut: string[] = []
+  const pictures: PictureData[] = []
+  for (const file of named('images/', '.fits')) {
+    const picture = readPicture(at(file), file, `Camera ${nameOf(file)}`, budget)
+    if (picture) pictures.push(picture)
+    else leftOut.push(`Not on this page, to keep it small: the images of ${file}.`)
+  }
+  const spectra = named('spectra/', '.ecsv').map((file) => readSpectrumChart(at(file), file, `Spectrum ${nameOf(file)}`))
+  const charts: ChartSection[] = [{ heading: 'Spectra', charts: spectra, pictures: [], tables: [] }, dustSection(record, at)]
+  return reportPage({
+    kind: 'run',
+    title: record.title,
+    summary: summaryOf(record),
+    warnings: [...record.warnings, ...leftOut],
+    pictures,
+    charts,
+    tables: [energyTable(record), precisionTable(record), packetsTable(record)],
+    texts: existsSync(at('scene.yaml'))
+      ? [{ heading: 'Scene', name: 'scene.yaml, as run: every default filled in', text: readFileSync(at('scene.yaml'), 'utf8') }]
+      : [],
+    reproduce: {
+      commands: [runCommand(record)],
+      remarks: [
+        `Made with motelight ${record.version} and ${record.workers} workers, begun ${record.started}. The same version, files and seed give the same bits with any number of workers.`
+      ],
+      inputs: record.inputs
+    }
+  })
+}
+
+function runCommand({ scene, seed, estimator }: RunRecord): string {
+  const estimate = estimator === 'emissivity' ? [] : ['--estimator', estimator]
+  return ['motelight', 'run', scene, '--seed', seed, ...estimate].map(shellWord).join(' ')
+}
+
+function summaryOf({ precision, cells, warnings }: RunRecord): string {
+  const noise = precision.observers.flatMap(({ wavelengths }) => wavelengths.map(({ photonNoise }) => photonNoise))
+  const worst = noise.length > 0 ? `largest 1 sigma ${percent(Math.max(...noise))}` : 'nothing observed'
+  const asked =
+    precision.asked === null
+      ? 'packets fixed'
+      : `asked for ${percent(precision.asked)}, ${precision.reached ? 'reached' : 'not reached'}`
+  const doubt = warnings.length === 0 ? 'no warnings' : `${warnings.length} ${warnings.length === 1 ? 'warning' : 'warnings'}`
+  return `Model run: ${worst} (${asked}); ${cells.count} cells, ${cells.dimensions === 1 ? 'one dimension' : `${cells.dimensions} dimensions`}; ${doubt}.`
+}
+
+function dustSection({ found, files }: RunRecord, at: (file: string) => string): ChartSection {
+  const cells = 'dust/cells.fits'
+  const charts = files.includes(cells) ? readStructureCharts(at(cells), cells) : []
+  const drawn = 'dust/structure.png'
+  const picture = charts.length === 0 && existsSync(at(drawn))
+  return {
+    heading: 'Dust',
+    charts,
+    pictures: picture
+      ? [
+          {
+            alt: 'Maps of temperature and density of the dust, distance from the axis against height',
+            base64: readFileSync(at(drawn)).toString('base64')
+          }
+        ]
+      : [],
+    tables: [
+      {
+        heading: 'Components',
+        columns: ['', 'mass (Msun)', 'inner edge (K)', 'hottest (K)', 'at (au)', 'coldest (K)', 'at (au)'],
+        rows: found.dust.map(dustRow)
+      }
+    ]
+  }
+}
+
+function dustRow({ name, massMsun, temperatures }: DustFinding): string[] {
+  const kelvin = (cell: { kelvin: number; sigmaKelvin: number }) => `${digits(cell.kelvin)} ± ${digits(cell.sigmaKelvin, 2)}`
+  const mass = digits(massMsun, 4)
+  if (!temperatures) return [name, mass, 'does not emit', '', '', '', '']
+  const { innerEdge, hottest, coldest } = temperatures
+  return [
+    name,
+    mass,
+    kelvin(innerEdge),
+    kelvin(hottest),
+    digits(hottest.radiusAu, 4),
+    kelvin(coldest),
+    digits(coldest.radiusAu, 4)
+  ]
+}
+
+function energyTable({ energy }: RunRecord): TableSection {
+  const rows = energy
+    ? (['emitted', 'ambient', 'escaped', 'returned', 'kept'] as const)
+        .filter((part) => part === 'emitted' || energy[part] !== 0)
+        .map((part) => [meanings[part], digits(energy[part]), percent(energy[part] / energy.emitted)])
+    : []
+  return {
+    heading: 'Energy',
+    columns: ['last round of the temperatures', 'erg/s', 'of emitted'],
+    rows,
+    note: energy && `Balance, (emitted − escaped − returned − kept) / emitted: ${digits(energy.balance, 2)}.`
+  }
+}
+
+const meanings = {
+  emitted: 'emitted by all sources',
+  ambient: 'of it, sent in by ambient light',
+  escaped: 'escaped',
+  returned: 'back to stars',
+  kept: 'kept by dust of fixed temperature'
+}
+
+function precisionTable({ precision }: RunRecord): TableSection {
+  const worst = (values: number[]) => percent(Math.max(...values))
+  return {
+    heading: 'Precision',
+    columns: ['', 'wavelengths', 'largest 1 sigma', 'largest error of placing rays'],
+    rows: precision.observers.map(({ kind, name, wavelengths }) => [
+      `${kind} ${name}`,
+      String(wavelengths.length),
+      worst(wavelengths.map(({ photonNoise }) => photonNoise)),
+      worst(wavelengths.map(({ samplingError }) => samplingError))
+    ])
+  }
+}
+
+function packetsTable({ packets, times }: RunRecord): TableSection {
+  const light = packets.light.reduce((sum, { packets: count }) => sum + count, 0)
+  const row = (what: string, count: number, { wallSeconds, cpuSeconds }: PhaseTime) => [
+    what,
+    count === 0 ? '' : digits(count, 7),
+    wallSeconds.toFixed(1),
+    cpuSeconds.toFixed(1)
+  ]
+  return {
+    heading: 'Packets and times',
+    columns: ['', 'packets', 'seconds', 'processor seconds'],
+    rows: [
+      row('model', 0, times.model),
+      row('temperatures', packets.equilibrium, times.dust),
+      row('images and spectra', light, times.light)
+    ]
+  }
+}
+
+function digits(value: number, count = 5): string {
+  return value === 0 ? '0' : String(Number(value.toPrecision(count)))
+}
