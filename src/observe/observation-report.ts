@@ -2,29 +2,23 @@ import { readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { shellWord } from '../report/html.js'
 import { readPhotometryChart, readVisibilityChart } from '../report/read-charts.js'
-import { readPicture, ValueBudget } from '../report/read-picture.js'
+import { readPictures } from '../report/read-picture.js'
 import { reportPage } from '../report/report-page.js'
-import type { ChartSection, PictureData, TableSection } from '../report/types.js'
+import type { ChartSection, TableSection } from '../report/types.js'
 import type { ObservationFinding, ObservationRecord } from './observation-record.js'
 
 /** The page of an observation, from its record and the files in its folder. Throws a DataError for a file that cannot be used. */
 export function observationReport(path: string, record: ObservationRecord): string {
   const at = (file: string) => join(path, file)
-  const budget = new ValueBudget()
-  const leftOut: string[] = []
-  const pictures: PictureData[] = []
-  const curves: ChartSection['charts'] = []
-  for (const { kind, name } of record.observations) {
-    if (kind === 'picture') {
-      const file = `pictures/${name}.fits`
-      const picture = readPicture(at(file), file, `Picture ${name}`, budget)
-      if (picture) pictures.push(picture)
-      else leftOut.push(`Not on this page, to keep it small: ${file}.`)
-    } else if (kind === 'visibilities') {
-      const file = `visibilities/${name}-curve.ecsv`
-      curves.push(readVisibilityChart(at(file), file, `${name}: mean over all directions`))
-    }
-  }
+  const files = ofKind(record.observations, 'picture').map(({ name }) => {
+    const file = `pictures/${name}.fits`
+    return { path: at(file), file, heading: `Picture ${name}` }
+  })
+  const { pictures, leftOut } = readPictures(files)
+  const curves = ofKind(record.observations, 'visibilities').map(({ name }) => {
+    const file = `visibilities/${name}-curve.ecsv`
+    return readVisibilityChart(at(file), file, `${name}: mean over all directions`)
+  })
   const photometry = 'photometry.ecsv'
   const section = (heading: string, charts: ChartSection['charts']): ChartSection => ({
     heading,

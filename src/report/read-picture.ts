@@ -8,18 +8,34 @@ import { intensityUnit, intensityUnits } from '../units/intensity.js'
 import { reportUnits } from './report-units.js'
 import type { PictureData } from './types.js'
 
-const MOST_VALUES = 2.5e6
+/** Numbers that the pictures of one page hold at most, 5.4 bytes each. */
+const MOST_VALUES = 3e6
 
-/** Numbers that the pictures of one page hold at most, 5.4 bytes each; what does not fit is left out, and the page says so. */
-export class ValueBudget {
-  left = MOST_VALUES
+/** A FITS file of images: where it is, its name on the page, and what to call it there. */
+export interface PictureFile {
+  path: string
+  file: string
+  heading: string
+}
 
-  /** Takes so many numbers if they are there. */
-  take(count: number): boolean {
-    if (count > this.left) return false
-    this.left -= count
-    return true
-  }
+/**
+ * The pictures of a page, each with its share of the numbers that a page may hold; `leftOut` are remarks on those of which not even
+ * one image with its error fits. Throws a DataError.
+ */
+export function readPictures(files: PictureFile[]): { pictures: PictureData[]; leftOut: string[] } {
+  const pictures: PictureData[] = []
+  const leftOut: string[] = []
+  let left = MOST_VALUES
+  files.forEach((from, i) => {
+    const picture = readPicture(from, Math.floor(left / (files.length - i)))
+    if (!picture) {
+      leftOut.push(`Not on this page, to keep it small: the images of ${from.file}.`)
+      return
+    }
+    left -= picture.planes.length * picture.wavelengths.length * picture.width * picture.height
+    pictures.push(picture)
+  })
+  return { pictures, leftOut }
 }
 
 const meanings: Record<string, string> = {
@@ -41,11 +57,10 @@ const meanings: Record<string, string> = {
 }
 
 /**
- * The images of a FITS file that this program wrote, `path`; `file` is its name on the page. The first plane and its SIGMA come
- * first at as many wavelengths as the budget allows, evenly spread, then the others at the same ones. Undefined when not even one
- * image fits. Throws a DataError.
+ * The images of a FITS file that this program wrote, at most `most` numbers. The first plane and its SIGMA come first, at as many
+ * wavelengths as fit, evenly spread, then the others at the same ones. Undefined when not even one image fits.
  */
-export function readPicture(path: string, file: string, heading: string, budget: ValueBudget): PictureData | undefined {
+function readPicture({ path, file, heading }: PictureFile, most: number): PictureData | undefined {
   const units = readFits(path)
   const first = units[0]
   const number = (keyword: string) => {
@@ -56,7 +71,7 @@ export function readPicture(path: string, file: string, heading: string, budget:
   const [width, height] = first.axes
   const pixels = width * height
   const all = Array.from(tableColumn(unitNamed(units, 'WAVELENGTH'), 'WAVELENGTH').values, (metres) => 100 * metres)
-  const fits = Math.min(all.length, Math.floor(budget.left / (2 * pixels)))
+  const fits = Math.min(all.length, Math.floor(most / (2 * pixels)))
   if (fits === 0) return undefined
   const kept = spread(all.length, fits)
   const images = units.filter(({ kind, axes }) => kind === 'image' && axes[0] === width && axes[1] === height)
@@ -68,8 +83,8 @@ export function readPicture(path: string, file: string, heading: string, budget:
     ...images.filter(({ name }) => name === 'SIGMA'),
     ...images.slice(1).filter(({ name }) => name !== 'SIGMA')
   ]
-  const shown = ordered.filter(({ axes }) => budget.take(pixels * Math.min(kept.length, axes[2] ?? 1)))
-  const missing = ordered.filter((image) => !shown.includes(image))
+  const shown = ordered.slice(0, Math.floor(most / (kept.length * pixels)))
+  const missing = ordered.slice(shown.length)
   if (missing.length > 0)
     notes.push(`Not on this page, to keep it small: ${missing.map(({ name }) => name).join(', ')}; they are in ${file}.`)
   const wavelengths = kept.map((k) => all[k])
@@ -100,7 +115,12 @@ export function readPicture(path: string, file: string, heading: string, budget:
       const sigma = errorOf(name, names)
       return { name, meaning: meanings[name] ?? name, ...(sigma && { sigma }) }
     }),
-    values: Object.fromEntries(shown.map((image) => [image.name, kept.map((k) => base64Of(imageValues(image), pixels, k))])),
+    values: Object.fromEntries(
+      shown.map((image) => {
+        const values = imageValues(image)
+        return [image.name, kept.map((k) => base64Of(values.subarray(k * pixels, (k + 1) * pixels)))]
+      })
+    ),
     units: reportUnits(first.header.text('BUNIT') ?? '', candidates, contexts),
     ...(beam && { beam }),
     notes
@@ -119,9 +139,9 @@ function spread(count: number, kept: number): number[] {
   return Array.from({ length: kept }, (_, i) => Math.round((i * (count - 1)) / (kept - 1)))
 }
 
-function base64Of(values: Float64Array, pixels: number, k: number): string {
-  const bytes = Buffer.alloc(4 * pixels)
-  for (let i = 0; i < pixels; i++) bytes.writeFloatLE(values[k * pixels + i], 4 * i)
+function base64Of(values: Float64Array): string {
+  const bytes = Buffer.alloc(4 * values.length)
+  for (let i = 0; i < values.length; i++) bytes.writeFloatLE(values[i], 4 * i)
   return bytes.toString('base64')
 }
 

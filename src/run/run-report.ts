@@ -2,9 +2,9 @@ import { existsSync, readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { shellWord } from '../report/html.js'
 import { readSpectrumChart, readStructureCharts } from '../report/read-charts.js'
-import { readPicture, ValueBudget } from '../report/read-picture.js'
+import { readPictures } from '../report/read-picture.js'
 import { reportPage } from '../report/report-page.js'
-import type { ChartSection, PictureData, TableSection } from '../report/types.js'
+import type { ChartSection, TableSection } from '../report/types.js'
 import type { DustFinding } from './findings.js'
 import { percent } from './percent.js'
 import type { RunRecord } from './run-record.js'
@@ -16,14 +16,8 @@ export function runReport(path: string, record: RunRecord): string {
   const named = (folder: string, ending: string) =>
     record.files.filter((file) => file.startsWith(folder) && file.endsWith(ending))
   const nameOf = (file: string) => file.replace(/^[^/]*\//, '').replace(/\.[a-z]+$/, '')
-  const budget = new ValueBudget()
-  const leftOut: string[] = []
-  const pictures: PictureData[] = []
-  for (const file of named('images/', '.fits')) {
-    const picture = readPicture(at(file), file, `Camera ${nameOf(file)}`, budget)
-    if (picture) pictures.push(picture)
-    else leftOut.push(`Not on this page, to keep it small: the images of ${file}.`)
-  }
+  const images = named('images/', '.fits').map((file) => ({ path: at(file), file, heading: `Camera ${nameOf(file)}` }))
+  const { pictures, leftOut } = readPictures(images)
   const spectra = named('spectra/', '.ecsv').map((file) => readSpectrumChart(at(file), file, `Spectrum ${nameOf(file)}`))
   const charts: ChartSection[] = [{ heading: 'Spectra', charts: spectra, pictures: [], tables: [] }, dustSection(record, at)]
   return reportPage({

@@ -26,10 +26,10 @@ it('a run is observed: files, summary, JSON; the same seed gives the same bytes'
   expect(first.exitCode, first.stderr).toBe(0)
   expect(first.stdout).toContain('A small mirror: Small wind')
   expect(first.stdout).toContain('Results are in run-night')
-  expect(filesIn(join(folder, 'run-night'))).toHaveLength(9)
+  expect(filesIn(join(folder, 'run-night'))).toHaveLength(10)
   const second = await motelight(folder, 'observe', 'run', 'night.yaml', '--out', 'again', '--json', '--quiet')
   const { observations, files, state } = JSON.parse(second.stdout)
-  expect([observations.length, files.length, state]).toEqual([3, 9, 'done'])
+  expect([observations.length, files.length, state]).toEqual([3, 10, 'done'])
   const map = (out: string) => imageValues(readFits(join(folder, out, 'pictures', 'map.fits'))[0])
   expect(map('again')).toEqual(map('run-night'))
   // The point star of the run, at the place and with the flux of its pixels.

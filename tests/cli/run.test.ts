@@ -11,6 +11,7 @@ const products = [
   'images/face-2.2um.png',
   'images/face-60um.png',
   'images/face.fits',
+  'report.html',
   'run.json',
   'scene.yaml',
   'spectra/sed.ecsv',
@@ -139,7 +140,7 @@ describe('run', () => {
     expect(filesIn(out)).toEqual(products.filter((file) => !file.startsWith('dust/')))
     const warm = await finishedRun(sceneText.replace(/cameras:\n[\s\S]*/, ''))
     expect(warm.result.exitCode).toBe(0)
-    expect(filesIn(warm.out)).toEqual(['dust/cells.fits', 'dust/structure.png', 'run.json', 'scene.yaml'])
+    expect(filesIn(warm.out)).toEqual(['dust/cells.fits', 'dust/structure.png', 'report.html', 'run.json', 'scene.yaml'])
   })
 
   it('runs a disk with its maps', async () => {

@@ -81,6 +81,7 @@ function roundTicks(low: number, high: number, count: number): number[] {
 
 /** Marks of a logarithmic axis, at most about `count` of them: powers of ten, with their multiples where there is room. */
 function decadeTicks(low: number, high: number, count: number): number[] {
+  if (high < 10 * low) return roundTicks(low, high, count)
   const [first, last] = [Math.floor(Math.log10(low)), Math.ceil(Math.log10(high))]
   const decades = Math.max(1, Math.log10(high / low))
   const every = Math.ceil(decades / count)

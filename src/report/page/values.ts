@@ -35,6 +35,11 @@ function numberText(value: number, digits = 6): string {
   return mantissa === '1' ? `10${power}` : `${mantissa.replace('-', '−')}×10${power}`
 }
 
+/** Two digits without a power of ten. */
+function plainText(value: number): string {
+  return value > 0 ? value.toFixed(Math.max(0, Math.min(20, 1 - Math.floor(Math.log10(value))))) : '0'
+}
+
 /** A value with its error and unit; an error of NaN is left out. */
 function measuredText(value: number, sigma: number, unit: string): string {
   if (!Number.isFinite(value)) return 'no value'
@@ -43,7 +48,7 @@ function measuredText(value: number, sigma: number, unit: string): string {
   const power = /10[⁻⁰¹²³⁴⁵⁶⁷⁸⁹]+$/.exec(text)?.[0]
   if (power && Number.isFinite(sigma)) {
     const size = 10 ** Math.floor(Math.log10(Math.abs(Number(value.toPrecision(6)))))
-    return `(${numberText(value / size)} ± ${numberText(sigma / size, 2)})×${power} ${unitWords(unit)}`
+    return `(${numberText(value / size)} ± ${plainText(sigma / size)})×${power} ${unitWords(unit)}`
   }
   return `${text}${Number.isFinite(sigma) ? ` ± ${numberText(sigma, 2)}` : ''} ${unitWords(unit)}`
 }
