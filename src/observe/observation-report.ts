@@ -27,7 +27,6 @@ export function observationReport(path: string, record: ObservationRecord): stri
     tables: []
   })
   return reportPage({
-    kind: 'observation',
     title: record.title,
     summary: `Observation of the run “${record.run.title}”: ${record.observations.map(({ name }) => name).join(', ')}.`,
     warnings: [...record.warnings, ...leftOut],

@@ -1,7 +1,5 @@
 /** What a report tells, whatever it is about; sections without content are left out of the page. */
 export interface ReportContent {
-  /** `run`, `observation`. */
-  kind: string
   title: string
   /** One sentence below the title. */
   summary: string

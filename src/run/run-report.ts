@@ -21,7 +21,6 @@ export function runReport(path: string, record: RunRecord): string {
   const spectra = named('spectra/', '.ecsv').map((file) => readSpectrumChart(at(file), file, `Spectrum ${nameOf(file)}`))
   const charts: ChartSection[] = [{ heading: 'Spectra', charts: spectra, pictures: [], tables: [] }, dustSection(record, at)]
   return reportPage({
-    kind: 'run',
     title: record.title,
     summary: summaryOf(record),
     warnings: [...record.warnings, ...leftOut],
