@@ -23,12 +23,13 @@ it('tells how many packets would have reached the precision, apart for temperatu
     /scattered light: 1000 packets were too few for 1 %; it would take about \d(\.\d)?e\d+ .*: effort\.cameras/
   )
 
-  // An error from 16 groups is itself known to 18 %, so the number is known to 36 %; rounds grow in steps of their own.
-  const enough = await run(3 * needed.equilibrium!, 3 * needed.cameras!)
+  // An error from 16 groups is itself known to 18 %, the number of packets to 36 %, and so is that at which the second run finds its
+  // precision reached: together 51 %. Allowed are 3.5 sigma of the logarithm, a factor of 6, exceeded by chance once in 2000 times.
+  const enough = await run(6 * needed.equilibrium!, 6 * needed.cameras!)
   expect(packetsNeeded(enough)).toEqual({})
   expect(enough.equilibrium!.reached).toBe(true)
   const spent = Math.max(...enough.lightPackets.map(({ packets }) => packets))
-  expect(spent).toBeGreaterThan(needed.cameras! / 3)
+  expect(spent).toBeGreaterThan(needed.cameras! / 6)
   // Exactly the packets given: nothing is missing then.
   expect(
     packetsNeeded(await runScene(smallScene('shell'), { workers: 1, estimator: 'emissivity', onProgress: () => {} }))
