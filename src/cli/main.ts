@@ -3,6 +3,7 @@ import yargs, { type CommandModule } from 'yargs'
 import { hideBin } from 'yargs/helpers'
 import { version } from '../output/version.js'
 import { check } from './check.js'
+import { compare } from './compare.js'
 import { convert } from './convert.js'
 import { failureOf, reportFailure, UsageError } from './failure.js'
 import { join } from './join.js'
@@ -24,10 +25,11 @@ function missingWords(command: string): string {
   if (command === 'convert') return 'The value to convert is'
   if (command === 'sweep') return 'The plan file is'
   if (command === 'report') return 'The folder is'
+  if (command === 'compare') return 'The run or the file of data is'
   return command === 'observe' ? 'The run or the instrument file is' : 'The scene file is'
 }
 
-const commands = [check, run, join, opacity, convert, observe, report, sweep, schema] as CommandModule[]
+const commands = [check, run, join, opacity, convert, observe, compare, report, sweep, schema] as CommandModule[]
 const names = commands.map(({ command }) => String(command).split(' ')[0])
 
 const words = hideBin(process.argv)

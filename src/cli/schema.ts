@@ -1,17 +1,18 @@
 import type { Argv, CommandModule } from 'yargs'
+import { dataJsonSchema } from '../compare/read-data.js'
 import { instrumentJsonSchema } from '../observe/read-instrument.js'
 import { sceneJsonSchema } from '../scene/json-schema.js'
 
-const schemas = { scene: sceneJsonSchema, instrument: instrumentJsonSchema }
+const schemas = { scene: sceneJsonSchema, instrument: instrumentJsonSchema, data: dataJsonSchema }
 
 interface Arguments {
   file: keyof typeof schemas
 }
 
-/** `motelight schema [FILE]`: prints the JSON Schema of scene or instrument files. */
+/** `motelight schema [FILE]`: prints the JSON Schema of scene files, instrument files or files of data. */
 export const schema: CommandModule<object, Arguments> = {
   command: 'schema [file]',
-  describe: 'Print the JSON Schema of scene files or instrument files, for completion in editors',
+  describe: 'Print the JSON Schema of scene files, instrument files or files of data, for completion in editors',
   builder: (yargs: Argv) =>
     yargs.positional('file', {
       describe: 'What kind of file',

@@ -17,7 +17,12 @@ interface EcsvHeader {
 
 /** Reads an ECSV 1.0 file (Astropy Proposal for Enhancement 6). Throws a DataError. */
 export function readEcsv(file: string): EcsvTable {
-  const lines = new TextDecoder().decode(bytesOf(file)).split(/\r?\n/)
+  return parseEcsv(new TextDecoder().decode(bytesOf(file)), file)
+}
+
+/** The table in the text of an ECSV 1.0 file; `file` names it in errors. Throws a DataError. */
+export function parseEcsv(text: string, file: string): EcsvTable {
+  const lines = text.split(/\r?\n/)
   const comments = lines.filter((line) => line.startsWith('#')).map((line) => line.replace(/^# ?/, ''))
   if (!/^%ECSV 1\./.test(comments[0] ?? '')) throw new DataError(file, 'is no ECSV 1.0 file (it does not begin with # %ECSV 1.0)')
   const header = headerOf(comments.slice(1).join('\n'), file)

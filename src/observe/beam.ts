@@ -26,6 +26,18 @@ export function makeBeam(spec: BeamSpec, wavelength: number): Beam {
   }
 }
 
+/** The beam turned by an angle, rad, from north towards east. */
+export function turned(beam: Beam, angle: number): Beam {
+  if (angle === 0) return beam
+  const { at, ellipse } = beam
+  const [sin, cos] = [Math.sin(angle), Math.cos(angle)]
+  return {
+    ...beam,
+    at: (east, north) => at(east * cos - north * sin, north * cos + east * sin),
+    ...(ellipse && { ellipse: { ...ellipse, positionAngle: ellipse.positionAngle + angle } })
+  }
+}
+
 /** Whether a beam is another at every wavelength. */
 export function isChromatic(spec: BeamSpec | undefined): boolean {
   return spec?.kind === 'airy'

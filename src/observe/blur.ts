@@ -31,7 +31,7 @@ export function pixelsAcross(beam: Beam, { pixel }: PixelGrid): number {
 export function beamKernel(beam: Beam, grid: PixelGrid): (dx: number, dy: number) => number {
   const [across, up] = grid.pixel
   const pixelSr = pixelSrOf(grid)
-  const mean = pixelsAcross(beam, grid) < FINE ? pixelMean(beam, grid) : beam.at
+  const mean = pixelsAcross(beam, grid) < FINE ? pixelMean(beam, [across, 0], [0, up]) : beam.at
   const kernel = (dx: number, dy: number) => pixelSr * mean(-dx * across, dy * up)
   if (beam.ellipse) return kernel
   let sum = 0
@@ -41,16 +41,26 @@ export function beamKernel(beam: Beam, grid: PixelGrid): (dx: number, dy: number
   return (dx, dy) => kernel(dx, dy) / sum
 }
 
-/** The mean of a beam over the pixel centred at an offset, by a Gauss-Legendre sum with POINTS points across the beam. */
-export function pixelMean(beam: Beam, { pixel: [across, up] }: PixelGrid): (east: number, north: number) => number {
-  const [columns, rows] = [across, up].map((side) => gaussLegendre(2 + Math.ceil((POINTS * side) / beam.width)))
+/** A vector on the sky towards east and north, rad. */
+export type SkyVector = [east: number, north: number]
+
+/**
+ * The mean of a beam over the pixel centred at an offset, by a Gauss-Legendre sum with POINTS points across the beam; `across` and `up`
+ * are the sides of the pixel.
+ */
+export function pixelMean(beam: Beam, across: SkyVector, up: SkyVector): (east: number, north: number) => number {
+  const [columns, rows] = [across, up].map((side) =>
+    gaussLegendre(2 + Math.ceil((POINTS * Math.hypot(side[0], side[1])) / beam.width))
+  )
   return (east, north) => {
     let sum = 0
     for (let j = 0; j < rows.nodes.length; j++) {
-      const y = north + 0.5 * up * rows.nodes[j]
+      const [x, y] = [east + 0.5 * up[0] * rows.nodes[j], north + 0.5 * up[1] * rows.nodes[j]]
       let row = 0
-      for (let i = 0; i < columns.nodes.length; i++)
-        row += columns.weights[i] * beam.at(east + 0.5 * across * columns.nodes[i], y)
+      for (let i = 0; i < columns.nodes.length; i++) {
+        const half = 0.5 * columns.nodes[i]
+        row += columns.weights[i] * beam.at(x + half * across[0], y + half * across[1])
+      }
       sum += rows.weights[j] * row
     }
     return sum / 4

@@ -6,7 +6,7 @@ import { pixelsAcross } from './blur.js'
 import { measureFlux, type Photometry } from './photometry.js'
 import { type Picture, takePicture } from './picture.js'
 import { type CameraSource, openRun, type RunSource, readCamera, readSpectrum, type SpectrumSource } from './run-source.js'
-import type { Instrument, ObservationSpec, PictureSpec, VisibilitiesSpec } from './types.js'
+import type { Instrument, LightSpec, PictureSpec, VisibilitiesSpec } from './types.js'
 import { measureVisibilities, type Visibilities } from './visibilities.js'
 
 /** What came of pointing an instrument at a run. */
@@ -22,7 +22,7 @@ export interface Observed {
 const NARROWEST = 0.1
 
 /** Longest baseline in wavelengths times the side of a pixel where the pixels of a camera begin to hide structure entirely. */
-const NYQUIST = 0.5
+export const NYQUIST = 0.5
 
 /**
  * Observes a run (its folder) with an instrument. Throws a DataError for a run that cannot be used, a SceneError for what the
@@ -66,7 +66,8 @@ export function observeRun(
   return observed
 }
 
-type Refuse = (key: string, message: string) => never
+/** Refuses what is asked for in vain, at a key of its entry. */
+export type Refuse = (key: string, message: string) => never
 
 function cameraOf(
   spec: PictureSpec | VisibilitiesSpec,
@@ -80,11 +81,13 @@ function cameraOf(
   return source
 }
 
-function absent(kind: string, there: string[]): string {
+/** Tells what there is, where something is not. */
+export function absent(kind: string, there: string[]): string {
   return there.length > 0 ? `the run has no such ${kind}; there are ${there.join(', ')}` : `the run has no ${kind}`
 }
 
-function weightsFor({ light }: ObservationSpec, wavelengths: number[], refuse: Refuse): LightWeights {
+/** Weights of the wavelengths of a run for the light that is asked for. */
+export function weightsFor({ light }: { light: LightSpec }, wavelengths: number[], refuse: Refuse): LightWeights {
   try {
     return lightWeights(light, wavelengths, (wavelength) => wavelengthLabel(wavelength, 6))
   } catch (error) {

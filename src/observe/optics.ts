@@ -1,5 +1,6 @@
+import type { StarOnSky } from '../camera/types.js'
 import type { LightWeights } from './band.js'
-import { type Beam, isChromatic, makeBeam } from './beam.js'
+import { type Beam, isChromatic, makeBeam, turned } from './beam.js'
 import { blurred, type PixelGrid, pixelMean, pixelSrOf } from './blur.js'
 import { regridded } from './regrid.js'
 import type { CameraSource } from './run-source.js'
@@ -20,44 +21,81 @@ interface SeenLight {
   bandError: number
 }
 
+/** Light behind a beam in the pixels of the run, cgs; stars that are points stand apart, where they are. */
+export interface BlurredLight {
+  image: Float64Array
+  sigma: Float64Array
+  points: PointLight[]
+}
+
+/** A star seen with a beam: flux density, erg/s/cm2/Hz, at an offset towards east and north, rad. */
+export interface PointLight {
+  beam: Beam
+  east: number
+  north: number
+  flux: number
+}
+
+type Optics = Pick<PictureSpec, 'beam' | 'core'>
+
 /**
  * Light of dust and stars through beam and band into the pixels of `grid`. Stars that are points in the run's pixels are put where
- * they are, as the beam itself averaged over each pixel; everything else is convolved. A beam that changes with wavelength does so
- * at each wavelength of the run.
+ * they are, as the beam itself averaged over each pixel; everything else is convolved.
  */
-export function throughOptics(
-  { beam: spec, core }: PictureSpec,
+export function throughOptics(optics: Optics, source: CameraSource, light: LightWeights, grid: PixelGrid): SeenLight {
+  const seen = throughBeam(optics, source, light)
+  const [image, sigma] = [seen.image, seen.sigma].map((values) => Float64Array.from(regridded(values, source, grid)))
+  for (const point of seen.points) addPoint(image, grid, point)
+  const fluxes = source.wavelengths.map((_, k) => fluxAt(source, k, optics))
+  const inBand = (parts: Float64Array) => fluxes.reduce((sum, flux, k) => sum + parts[k] * flux, 0)
+  const flux = inBand(light.weights)
+  return { image, sigma, flux, bandError: flux > 0 ? Math.abs(inBand(light.coarse) - flux) / 3 / flux : 0 }
+}
+
+/**
+ * Light of dust and stars through beam and band in the pixels of the run. A beam that changes with wavelength does so at each
+ * wavelength of the run. The beam is turned by `turn` (rad, from north towards east) against the run.
+ */
+export function throughBeam(
+  { beam: spec, core }: Optics,
   source: CameraSource,
-  { weights, coarse, wavelength }: LightWeights,
-  grid: PixelGrid
-): SeenLight {
+  { weights, wavelength }: LightWeights,
+  turn = 0
+): BlurredLight {
   const starlight = core?.starlight ?? 1
-  const limit = UNRESOLVED * Math.max(...source.pixel)
-  const points = spec && source.stars.every(({ radius }) => radius < limit) ? source.stars : []
+  const points = spec ? pointsOf(source) : []
   const lit = Array.from(weights.keys()).filter((k) => weights[k] !== 0)
   const layers = isChromatic(spec) ? lit.map((k) => ({ at: source.wavelengths[k], of: [k] })) : [{ at: wavelength, of: lit }]
-  const image = new Float64Array(grid.width * grid.height)
-  const sigma = new Float64Array(image.length)
+  const all: BlurredLight = {
+    image: new Float64Array(source.width * source.height),
+    sigma: new Float64Array(source.width * source.height),
+    points: []
+  }
   for (const { at, of } of layers) {
     const layer = weightedSum(source, of, weights, starlight, points.length > 0)
-    const beam = spec && makeBeam(spec, at)
+    const beam = spec && turned(makeBeam(spec, at), turn)
     const seen = beam ? blurred(layer.image, layer.sigma, source, beam) : layer
-    regridded(seen.image, source, grid).forEach((value, i) => {
-      image[i] += value
-    })
-    regridded(seen.sigma, source, grid).forEach((value, i) => {
-      sigma[i] += value
-    })
+    for (let i = 0; i < all.image.length; i++) {
+      all.image[i] += seen.image[i]
+      all.sigma[i] += seen.sigma[i]
+    }
     for (const { east, north, flux } of points)
-      addPoint(image, grid, beam!, east, north, starlight * of.reduce((sum, k) => sum + weights[k] * flux[k], 0))
+      all.points.push({ beam: beam!, east, north, flux: starlight * of.reduce((sum, k) => sum + weights[k] * flux[k], 0) })
   }
-  const fluxes = source.wavelengths.map((_, k) => {
-    const { image: all } = weightedSum(source, [k], new Float64Array(weights.length).fill(1), starlight, points.length > 0)
-    return sumOf(all) * pixelSrOf(source) + points.reduce((sum, star) => sum + starlight * star.flux[k], 0)
-  })
-  const inBand = (parts: Float64Array) => fluxes.reduce((sum, flux, k) => sum + parts[k] * flux, 0)
-  const flux = inBand(weights)
-  return { image, sigma, flux, bandError: flux > 0 ? Math.abs(inBand(coarse) - flux) / 3 / flux : 0 }
+  return all
+}
+
+/** Stars, when all are points in the pixels of the run. */
+function pointsOf({ stars, pixel }: CameraSource): StarOnSky[] {
+  const limit = UNRESOLVED * Math.max(...pixel)
+  return stars.every(({ radius }) => radius < limit) ? stars : []
+}
+
+function fluxAt(source: CameraSource, k: number, { beam, core }: Optics): number {
+  const starlight = core?.starlight ?? 1
+  const points = beam ? pointsOf(source) : []
+  const { image } = weightedSum(source, [k], new Float64Array(source.wavelengths.length).fill(1), starlight, points.length > 0)
+  return sumOf(image) * pixelSrOf(source) + points.reduce((sum, star) => sum + starlight * star.flux[k], 0)
 }
 
 /** The sum of some planes of a run, without the direct light of stars that are points. */
@@ -81,12 +119,15 @@ function weightedSum(
   return { image, sigma: noise }
 }
 
-function addPoint(image: Float64Array, grid: PixelGrid, beam: Beam, east: number, north: number, flux: number): void {
+function addPoint(
+  image: Float64Array,
+  { width, height, pixel: [across, up] }: PixelGrid,
+  { beam, east, north, flux }: PointLight
+) {
   if (flux === 0) return
-  const { width, height, pixel } = grid
-  const mean = pixelMean(beam, grid)
+  const mean = pixelMean(beam, [across, 0], [0, up])
   for (let y = 0; y < height; y++) {
-    const offNorth = (y + 0.5 - height / 2) * pixel[1] - north
-    for (let x = 0; x < width; x++) image[y * width + x] += flux * mean((width / 2 - x - 0.5) * pixel[0] - east, offNorth)
+    const offNorth = (y + 0.5 - height / 2) * up - north
+    for (let x = 0; x < width; x++) image[y * width + x] += flux * mean((width / 2 - x - 0.5) * across - east, offNorth)
   }
 }

@@ -87,7 +87,12 @@ function resolved(entry: ObservationEntry, path: Path, files: DataFiles): Observ
   }
 }
 
-function lightOf({ wavelength, band }: ObservationEntry, path: Path, files: DataFiles): LightSpec | undefined {
+/** The light that an entry names, with the response of its band read. */
+export function lightOf(
+  { wavelength, band }: Pick<ObservationEntry, 'wavelength' | 'band'>,
+  path: Path,
+  files: DataFiles
+): LightSpec | undefined {
   if (wavelength !== undefined) return { kind: 'line', wavelength }
   if (!band) return undefined
   const { weighting } = band
@@ -99,7 +104,8 @@ function lightOf({ wavelength, band }: ObservationEntry, path: Path, files: Data
 
 type PictureEntry = Extract<ObservationEntry, { kind: 'picture' }>
 
-function beamOf(beam: NonNullable<PictureEntry['beam']>, path: Path, files: DataFiles): BeamSpec | undefined {
+/** The beam that an entry names, with its kernel read. */
+export function beamOf(beam: NonNullable<PictureEntry['beam']>, path: Path, files: DataFiles): BeamSpec | undefined {
   switch (beam.kind) {
     case 'gaussian':
       return { kind: beam.kind, major: beam.major, minor: beam.minor ?? beam.major, positionAngle: beam['position-angle'] }

@@ -35,27 +35,11 @@ export function measureVisibilities(
   { weights, wavelength }: LightWeights,
   seed: string
 ): Visibilities {
-  const count = spec.baselines.length
-  const expected = { re: new Float64Array(count), im: new Float64Array(count) }
-  const variance = new Float64Array(count)
-  weights.forEach((weight, k) => {
-    if (weight === 0) return
-    const plane = planeOf(source, k)
-    spec.baselines.forEach(([east, north], i) => {
-      const [u, v] = [east / source.wavelengths[k], north / source.wavelengths[k]]
-      const dust = transformed(plane.dust, source, u, v)
-      const stars = starsAt(source, k, u, v)
-      expected.re[i] += weight * (dust.re + stars.re)
-      expected.im[i] += weight * (dust.im + stars.im)
-      const noise = transformed(plane.sigma, source, u, v)
-      variance[i] += weight ** 2 * (plane.scatter + noise.re ** 2 + noise.im ** 2)
-    })
-  })
+  const { expected, sigma } = modelVisibilities(spec.baselines, source, weights)
   const noise = spec.noise ? fluxOf(spec.noise.level, LIGHT_SPEED / wavelength) : 0
   const random = stream(`${seed}/${spec.name}`)
   const noisy = (values: Float64Array) => (noise > 0 ? values.map((value) => value + noise * drawNormal(random)) : values)
   const observed = { re: noisy(expected.re), im: noisy(expected.im) }
-  const sigma = variance.map(Math.sqrt)
   const longest = Math.max(...spec.baselines.map(([east, north]) => Math.hypot(east, north)))
   const shortestWave = Math.min(...source.wavelengths.filter((_, k) => weights[k] !== 0))
   const curve = visibilityCurve(source, weights, longest)
@@ -71,6 +55,30 @@ export function measureVisibilities(
     flux: curve.visibility[0],
     coarseness: (longest / shortestWave) * Math.max(...source.pixel)
   }
+}
+
+/** Visibilities of a camera without noise, and the 1 sigma of their real and imaginary parts; baselines towards east and north, cm. */
+export function modelVisibilities(
+  baselines: [number, number][],
+  source: CameraSource,
+  weights: Float64Array
+): { expected: ComplexValues; sigma: Float64Array } {
+  const expected = { re: new Float64Array(baselines.length), im: new Float64Array(baselines.length) }
+  const variance = new Float64Array(baselines.length)
+  weights.forEach((weight, k) => {
+    if (weight === 0) return
+    const plane = planeOf(source, k)
+    baselines.forEach(([east, north], i) => {
+      const [u, v] = [east / source.wavelengths[k], north / source.wavelengths[k]]
+      const dust = transformed(plane.dust, source, u, v)
+      const stars = starsAt(source, k, u, v)
+      expected.re[i] += weight * (dust.re + stars.re)
+      expected.im[i] += weight * (dust.im + stars.im)
+      const noise = transformed(plane.sigma, source, u, v)
+      variance[i] += weight ** 2 * (plane.scatter + noise.re ** 2 + noise.im ** 2)
+    })
+  })
+  return { expected, sigma: variance.map(Math.sqrt) }
 }
 
 /** Stars as the disks or points they are. */

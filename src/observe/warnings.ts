@@ -16,7 +16,7 @@ export function observationWarnings({ pictures, fluxes, visibilities }: Observed
         ...blankWarning(spec.name, source),
         ...when(
           fineness !== undefined && fineness < FEWEST,
-          `${spec.name}: the beam is only ${short(fineness!)} pixels of the camera ${source.name} wide; with fewer than ${FEWEST} the picture is as blurred by the pixels as by the beam`
+          `${spec.name}: the beam is only ${short(fineness ?? 0)} pixels of the camera ${source.name} wide; with fewer than ${FEWEST} the picture is as blurred by the pixels as by the beam`
         ),
         ...when(
           Math.max(...grid.pixel) < 0.999 * Math.max(...source.pixel),

@@ -6,11 +6,11 @@ import { intensityUnits } from '../../units/intensity.js'
 import { COUNTS } from '../unit.js'
 import { positiveAmount } from './amount-field.js'
 
-const linear = (units: string[]) => units.filter((unit) => !unit.startsWith('mag'))
+export const linear = (units: string[]) => units.filter((unit) => !unit.startsWith('mag'))
 const perHertz = linear(fluxUnits).filter((unit) => unit.endsWith('Jy') || unit.endsWith('/Hz'))
 const orderedEnds = { path: ['to'], error: () => 'must be greater than `from`' }
 
-const band = z
+export const band = z
   .union(
     [
       section({
@@ -28,8 +28,8 @@ const band = z
     'A top hat {from, to}, or {response: FILE} with columns wavelength and response; weighting: photon (default) or energy'
   )
 
-const common = {
-  name: name.describe('Name of the observation, used for its files'),
+/** Keys that say in which light something is seen. */
+export const lightKeys = {
   wavelength: quantity('wavelength').optional().describe('One of the wavelengths of the camera or spectrum; or a `band`'),
   band: band.optional(),
   'zero-magnitude': positiveAmount(perHertz, '640 Jy')
@@ -37,8 +37,10 @@ const common = {
     .describe('Flux density of magnitude 0 in this observation; AB when absent')
 }
 
+const common = { name: name.describe('Name of the observation, used for its files'), ...lightKeys }
+
 const axis = quantity('angle')
-const beam = z
+export const beam = z
   .discriminatedUnion('kind', [
     section({
       kind: z.literal('gaussian'),
@@ -56,6 +58,13 @@ const beam = z
     section({ kind: z.literal('kernel'), file: dataFile.describe('FITS image of the beam with its pixel scale in the header') })
   ])
   .describe('gaussian, airy (pattern of a round mirror at each wavelength) or kernel (a FITS image)')
+
+export const core = section({
+  radius: axis.describe('Pixels nearer to the centre are masked'),
+  starlight: real({ from: 0, to: 1 })
+    .prefault(1)
+    .describe('Part of the direct starlight that a coronagraph lets through; default 1')
+}).describe('A coronagraph or a saturated core')
 
 const pictureNoise = z
   .discriminatedUnion('kind', [
@@ -84,14 +93,7 @@ const picture = section({
     .union([axis, z.tuple([axis, axis])], { error: () => 'an angle such as `50 mas`, or [width, height], is expected' })
     .optional()
     .describe('Side of a pixel, or [width, height]; default: those of the camera'),
-  core: section({
-    radius: axis.describe('Pixels nearer to the centre are masked'),
-    starlight: real({ from: 0, to: 1 })
-      .prefault(1)
-      .describe('Part of the direct starlight that a coronagraph lets through; default 1')
-  })
-    .optional()
-    .describe('A coronagraph or a saturated core'),
+  core: core.optional(),
   background: section({
     level: positiveAmount(intensityUnits, '21.5 mag/arcsec2', true),
     subtracted: z.boolean().prefault(false).describe('Only its noise is left')
@@ -146,10 +148,13 @@ const visibilities = section({
   unit: unitName(linear(fluxUnits)).prefault('Jy').describe('Unit of the amplitudes, default Jy')
 })
 
+export const oneLight = 'exactly one of `wavelength` and `band` is expected'
+export const hasOneLight = ({ wavelength, band }: { wavelength?: unknown; band?: unknown }) =>
+  (wavelength === undefined) !== (band === undefined)
+
 const observation = z.discriminatedUnion('kind', [picture, photometry, visibilities]).superRefine((entry, context) => {
   const refuse = (path: string[], message: string) => context.addIssue({ code: 'custom', path, message })
-  if ((entry.wavelength === undefined) === (entry.band === undefined))
-    refuse([], 'exactly one of `wavelength` and `band` is expected')
+  if (!hasOneLight(entry)) refuse([], oneLight)
   if (entry.kind !== 'picture') return
   const { beam, background, noise, unit } = entry
   const needsBeam = (name: string, path: string[]) => {
