@@ -30,7 +30,11 @@ export function compareRun(path: string, data: Measurements, onProgress: (step: 
       throw new SceneError([data.problemAt(['data', i, key], message)])
     }
     try {
-      return setOf(spec, run, refuse)
+      const set = setOf(spec, run, refuse)
+      for (const scaling of spec.free ?? [])
+        if (!set.scalings.includes(scaling))
+          refuse('free', `${scaling} cannot be fitted to these data; what can be is ${set.scalings.join(', ')}`)
+      return set
     } catch (error) {
       if (error instanceof DataError && 'table' in spec && error.file === spec.table.file) refuse('file', error.message)
       throw error

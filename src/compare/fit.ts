@@ -19,8 +19,8 @@ export interface Fitted {
   models: Values[]
 }
 
-const ROUNDS = 12
-const STEPS_IN_ROUND = 4
+const ROUNDS = 24
+const STEPS_IN_ROUND = 2
 const SETTLED = 1e-3
 const TURN_STEP = 0.005
 const FLUX_STEP = 0.01

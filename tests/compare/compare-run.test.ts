@@ -95,7 +95,16 @@ describe('pictures', () => {
       fits(layout, even(1), [unit, card('CTYPE1', 'GLON-TAN'), card('CTYPE2', 'GLAT-TAN')]),
       /axes are GLON-TAN/
     ],
-    ['flux a beam without beam', fits(layout, even(1), [card('BUNIT', 'Jy/beam'), ...wcs(layout)]), /map.fits|beam/],
+    [
+      'flux a beam without beam',
+      fits(layout, even(1), [card('BUNIT', 'Jy/beam'), ...wcs(layout)]),
+      /neither its header \(BMAJ, BMIN, BPA\) nor this entry/
+    ],
+    [
+      'an old equinox',
+      fits(layout, even(1), [unit, ...wcs(layout), card('RADESYS', 'FK4')]),
+      /coordinates are FK4 of 2000; ICRS or FK5 of 2000/
+    ],
     ['only blanks', fits(layout, even(Number.NaN), [unit, ...wcs(layout)]), /no pixel can be compared: 192 blank/],
     [
       'another place',
@@ -137,6 +146,7 @@ describe('visibilities', () => {
       const rows = [10, 30, 60].map((east) => `${east}, 20, 0.5, 0.1${phase && ', 12'}`)
       return `east [m], north [m], amplitude [Jy], sigma [Jy]${phase}\n${rows.join('\n')}\n`
     })
+    expect(refusal(entry, { 'v.csv': without })).toMatch(/centre cannot be fitted to these data; what can be is flux, rotation/)
     expect(compared(entry, { 'v.csv': whole }).sets[0]).toMatchObject({ values: 6, degreesOfFreedom: 4 })
     expect(compared(entry.replace(', free: [centre]', ''), { 'v.csv': without }).sets[0]).toMatchObject({ values: 3 })
   })

@@ -44,7 +44,8 @@ export function visibilitySet(spec: VisibilityData, source: CameraSource, light:
     },
     independent: 1,
     step: longest > 0 ? (0.01 * light.wavelength) / longest : Math.max(...source.pixel),
-    scalings: withPhase ? ['flux', 'centre', 'rotation'] : ['flux', 'rotation'],
+    // In a band, an offset would turn the phase by another angle at each wavelength.
+    scalings: withPhase && spec.light.kind === 'line' ? ['flux', 'centre', 'rotation'] : ['flux', 'rotation'],
     leftOut: { blank: amplitude.length - rows.length },
     warnings: [],
     wavelength: light.wavelength,

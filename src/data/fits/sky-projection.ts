@@ -51,6 +51,11 @@ export function skyProjection(unit: FitsUnit): SkyProjection {
     if (written !== undefined && !/^deg/.test(written)) refuse(`${keyword} is ${written}; deg is expected`)
   }
   if ((header.number('LONPOLE') ?? 180) !== 180) refuse('LONPOLE other than 180 is not known here')
+  // FK5 of 2000 is taken as ICRS: they differ by some 20 mas (IAU resolution B2, 1997).
+  const equinox = header.number('EQUINOX') ?? 2000
+  const system = header.text('RADESYS') ?? 'ICRS'
+  if (equinox !== 2000 || !['ICRS', 'FK5'].includes(system))
+    refuse(`coordinates are ${system} of ${equinox}; ICRS or FK5 of 2000 are expected`)
   const matrix = pixelMatrix(unit) ?? refuse('has no scale (CDELTi or CDi_j)')
   const [crpix1, crpix2, raDeg, decDeg] = ['CRPIX1', 'CRPIX2', 'CRVAL1', 'CRVAL2'].map(
     (keyword) => header.number(keyword) ?? refuse(`has no ${keyword}`)
