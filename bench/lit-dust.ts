@@ -1,3 +1,4 @@
+import { sphericalOf } from '../src/grid/cells.js'
 import { buildModel } from '../src/model/build-model.js'
 import type { Model } from '../src/model/model.js'
 import { observedWavelengths } from '../src/model/wavelengths.js'
@@ -23,7 +24,8 @@ export function lightDust(text: string): LitDust {
 
 /** Writes it as doubles for the yardsticks, in the order of native/medium.h: one scattering law, one sector in azimuth. */
 export function writeMedium(path: string, { model, light, medium }: LitDust): void {
-  const { walls, cells, extinction, asymmetry, scattering, launch } = medium
+  const { cells, extinction, asymmetry, scattering, launch } = medium
+  const walls = sphericalOf(medium.walls)
   if (asymmetry.length > 1 || walls.phi.length > 2) throw new Error('the yardsticks know one scattering law and no azimuth')
   const star = launch.find((source) => source.kind === 'point-star')
   const emitted = light.emission.map((value, cell) => 4 * Math.PI * value * model.volume[cell])

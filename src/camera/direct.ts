@@ -1,8 +1,12 @@
 import type { StarSpec } from '../scene/types.js'
 import type { StarSpectrum } from '../sources/star.js'
+import type { ViewBasis } from './view.js'
 
-/** A star at the centre of the picture, at one frequency. */
+/** A star in the picture, at one frequency. */
 export interface StarImage {
+  /** Where it is seen, to the right and up, cm. */
+  x: number
+  y: number
   /** Radius of a star that is a sphere, cm; 0 for a point. */
   radius: number
   /** Spectral luminosity, erg/s/Hz. */
@@ -12,9 +16,12 @@ export interface StarImage {
   limbDarkening: number
 }
 
-export function starImage(spec: StarSpec, spectrum: StarSpectrum, nu: number): StarImage {
+export function starImage(spec: StarSpec, spectrum: StarSpectrum, nu: number, { right, up }: ViewBasis): StarImage {
   const sphere = spec.extent === 'sphere'
+  const along = (axis: number[]) => axis[0] * spec.at[0] + axis[1] * spec.at[1] + axis[2] * spec.at[2]
   return {
+    x: along(right),
+    y: along(up),
     radius: sphere ? spec.radius! : 0,
     luminosity: spectrum.luminosityNu(nu),
     central: sphere ? spectrum.intensityNu(nu, 1) : 0,
@@ -22,7 +29,7 @@ export function starImage(spec: StarSpec, spectrum: StarSpectrum, nu: number): S
   }
 }
 
-/** Optical depth from the observer down to the star (or past the origin) along the ray at (x, y) cm. */
+/** Optical depth from the observer down to the star (or past its centre) along the ray at (x, y) cm. */
 export type DepthAt = (x: number, y: number) => number
 
 /** Points across a stellar disk, in each direction, at which the optical depth in front is found. */
@@ -30,10 +37,12 @@ const DEPTH_GRID = 24
 /** Samples across a pixel or across a disk smaller than two pixels. */
 const SAMPLES = 16
 
-/** Spectral luminosity per sr towards the observer (erg/s/Hz/sr) of a star seen through the dust, within `radius` cm. */
+/** Spectral luminosity per sr towards the observer (erg/s/Hz/sr) of a star seen through the dust, within `radius` cm of the centre of the picture. */
 export function directLight(star: StarImage, depthAt: DepthAt, radius: number): number {
-  if (star.radius === 0) return (star.luminosity / (4 * Math.PI)) * Math.exp(-depthAt(0, 0))
-  const seen = Math.min(radius, star.radius)
+  const { x, y } = star
+  const off = Math.hypot(x, y)
+  if (star.radius === 0) return off > radius ? 0 : (star.luminosity / (4 * Math.PI)) * Math.exp(-depthAt(x, y))
+  const seen = off === 0 ? Math.min(radius, star.radius) : star.radius
   const step = seen / DEPTH_GRID
   // Rings of equal width, in each the exact light of the annulus, dimmed at points around it.
   let sum = 0
@@ -42,7 +51,9 @@ export function directLight(star: StarImage, depthAt: DepthAt, radius: number): 
     let dimming = 0
     for (let k = 0; k < DEPTH_GRID; k++) {
       const angle = (2 * Math.PI * (k + 0.5)) / DEPTH_GRID
-      dimming += Math.exp(-depthAt((i + 0.5) * step * Math.cos(angle), (i + 0.5) * step * Math.sin(angle)))
+      const px = x + (i + 0.5) * step * Math.cos(angle)
+      const py = y + (i + 0.5) * step * Math.sin(angle)
+      if (Math.hypot(px, py) <= radius) dimming += Math.exp(-depthAt(px, py))
     }
     sum += (ring * dimming) / DEPTH_GRID
   }
@@ -73,11 +84,12 @@ export function addDirectLight(star: StarImage, depthAt: DepthAt, frame: PixelFr
   const { width, height, pixelWidth, pixelHeight } = frame
   const area = pixelWidth * pixelHeight
   if (star.radius < Math.max(pixelWidth, pixelHeight) / 4) {
-    // Unresolved: all of it in the pixel at the centre, or shared by those that meet there.
-    const columns = width % 2 === 0 ? [width / 2 - 1, width / 2] : [(width - 1) / 2]
-    const rows = height % 2 === 0 ? [height / 2 - 1, height / 2] : [(height - 1) / 2]
-    const light = directLight(star, depthAt, star.radius) / (area * columns.length * rows.length)
-    for (const row of rows) for (const column of columns) out[row * width + column] += light
+    // Unresolved: all of it in the pixel where it is, or shared by those that meet there.
+    const columns = pixelsAt(star.x / pixelWidth + width / 2)
+    const rows = pixelsAt(star.y / pixelHeight + height / 2)
+    const light = directLight(star, depthAt, Number.POSITIVE_INFINITY) / (area * columns.length * rows.length)
+    for (const row of rows.filter((k) => k >= 0 && k < height))
+      for (const column of columns.filter((k) => k >= 0 && k < width)) out[row * width + column] += light
     return
   }
   const { radius, central, limbDarkening: u } = star
@@ -87,19 +99,24 @@ export function addDirectLight(star: StarImage, depthAt: DepthAt, frame: PixelFr
     for (let i = 0; i < DEPTH_GRID; i++) {
       const outside = Math.hypot(at(i), at(j)) / radius
       const pull = outside > 0.98 ? 0.98 / outside : 1
-      dimming[j * DEPTH_GRID + i] = Math.exp(-depthAt(at(i) * pull, at(j) * pull))
+      dimming[j * DEPTH_GRID + i] = Math.exp(-depthAt(star.x + at(i) * pull, star.y + at(j) * pull))
     }
   }
   const nearest = (v: number) => Math.min(DEPTH_GRID - 1, Math.max(0, Math.floor(((v / radius + 1) / 2) * DEPTH_GRID)))
   const samples = Math.max(SAMPLES, Math.ceil((SAMPLES * 4 * Math.max(pixelWidth, pixelHeight)) / radius))
-  const first = (count: number, size: number) => Math.max(0, Math.floor(count / 2 - radius / size) - 1)
-  for (let row = first(height, pixelHeight); row < height - first(height, pixelHeight); row++) {
-    for (let column = first(width, pixelWidth); column < width - first(width, pixelWidth); column++) {
+  const covered = (count: number, size: number, at: number) => [
+    Math.max(0, Math.floor(count / 2 + (at - radius) / size) - 1),
+    Math.min(count, Math.ceil(count / 2 + (at + radius) / size) + 1)
+  ]
+  const [firstRow, lastRow] = covered(height, pixelHeight, star.y)
+  const [firstColumn, lastColumn] = covered(width, pixelWidth, star.x)
+  for (let row = firstRow; row < lastRow; row++) {
+    for (let column = firstColumn; column < lastColumn; column++) {
       let sum = 0
       for (let j = 0; j < samples; j++) {
-        const y = (row + (j + 0.5) / samples - height / 2) * pixelHeight
+        const y = (row + (j + 0.5) / samples - height / 2) * pixelHeight - star.y
         for (let i = 0; i < samples; i++) {
-          const x = (column + (i + 0.5) / samples - width / 2) * pixelWidth
+          const x = (column + (i + 0.5) / samples - width / 2) * pixelWidth - star.x
           const m = 1 - (x * x + y * y) / (radius * radius)
           if (m > 0) sum += (1 - u + u * Math.sqrt(m)) * dimming[nearest(y) * DEPTH_GRID + nearest(x)]
         }
@@ -107,4 +124,10 @@ export function addDirectLight(star: StarImage, depthAt: DepthAt, frame: PixelFr
       out[row * width + column] += (central * sum) / (samples * samples)
     }
   }
+}
+
+/** The pixels of a row or column that meet at a place, in units of pixels: one, or two at their border. */
+function pixelsAt(place: number): number[] {
+  const border = Math.round(place)
+  return Math.abs(place - border) < 1e-9 ? [border - 1, border] : [Math.floor(place)]
 }

@@ -1,15 +1,18 @@
 import { henyeyGreenstein } from '../dust/phase-function.js'
 import { peakOf, type ScatteringTables } from '../dust/scattering-tables.js'
+import { type Cells, isOctree } from '../grid/cells.js'
 import type { SphericalWalls } from '../grid/geometry.js'
+import { cellCube, type Octree } from '../grid/octree/octree.js'
 import { allocateShared } from '../math/allocate.js'
 import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
-import { largestStar } from '../solve/scatter-medium.js'
+import { sphereStars } from '../solve/scatter-medium.js'
 import type { PolarisedPart, ScatteredLight } from '../solve/scattered-light.js'
+import type { StarBeam } from '../solve/star-beams.js'
 
 /** What the intensity along rays to one observer at one wavelength follows from, as flat arrays that all threads share. */
 export interface RayMedium {
-  walls: SphericalWalls
+  walls: Cells
   cells: number
   /** Extinction coefficient, cm-1, by cell. */
   extinction: Float64Array
@@ -27,17 +30,19 @@ export interface RayMedium {
   polarised?: PolarisedPart
   /** Some law polarises: rays have POLARISED_VALUES numbers. */
   polarising: boolean
-  /** First scatterings of the point stars at the origin, calculated exactly; absent without them. */
+  /** First scatterings of the point stars, calculated exactly; absent without them. */
   starlight?: Starlight
-  /** Radius of the largest star that is a sphere, cm; it hides what lies behind. */
-  starRadius: number
+  /** The stars that are spheres, which hide what lies behind: see `spheresOf`. */
+  spheres: Float64Array
 }
 
 export interface Starlight {
-  /** All point stars together, erg/s/Hz. */
+  /** All point stars at the centre of spherical cells together, erg/s/Hz; 0 among cubes. */
   luminosity: number
   /** columns x (nr + 1): optical depth from the origin to each radial wall; columns it * np + ip. */
   opticalDepth: Float64Array
+  /** Point stars among cubes, one by one. */
+  beams: StarBeam[]
   asymmetry: Float64Array
   /** laws x cells, cm-1. */
   scattering: Float64Array
@@ -66,34 +71,67 @@ export function rayMedium(model: Model, light: DustLight, scattered: ScatteredLi
     polarising: light.tables?.polarising ?? false,
     ...(luminosity > 0 && {
       starlight: {
-        luminosity,
+        luminosity: isOctree(model.walls) ? 0 : luminosity,
         opticalDepth: light.opticalDepth,
+        beams: light.beams(),
         asymmetry: light.asymmetry,
         scattering: light.scattering,
         ...(light.tables && { tables: light.tables }),
-        brightest: brightestScattering(model, light, luminosity)
+        brightest: isOctree(model.walls)
+          ? brightestAmongCubes(model.walls, light)
+          : brightestScattering(model.walls, model.cells, light, luminosity)
       }
     }),
-    starRadius: largestStar(model)
+    spheres: sphereStars(model)
   }
 }
 
 /** The star's light at the inner wall of each cell, scattered in the direction that the law favours most. */
-function brightestScattering({ walls, cells }: Model, light: DustLight, luminosity: number): Float64Array {
-  const { asymmetry, scattering, opticalDepth, tables } = light
+function brightestScattering(walls: SphericalWalls, cells: number, light: DustLight, luminosity: number): Float64Array {
+  const { opticalDepth } = light
   const nr = walls.r.length - 1
   const columns = (walls.cosTheta.length - 1) * (walls.phi.length - 1)
   const brightest = new Float64Array(allocateShared(8 * cells))
-  const peaks = Array.from(asymmetry, (g, law) => (tables ? peakOf(tables, law) : henyeyGreenstein(g, Math.sign(g))))
+  const favoured = favouredScattering(light, cells)
   for (let cell = 0; cell < cells; cell++) {
     const column = cell === 0 ? 0 : (cell - 1) % columns
     const ir = cell === 0 ? 0 : 1 + Math.floor((cell - 1) / columns)
-    let most = 0
-    peaks.forEach((peak, law) => {
-      most += peak * scattering[law * cells + cell]
-    })
+    const most = favoured[cell]
     const dimming = Math.exp(-opticalDepth[column * (nr + 1) + ir])
     if (most > 0) brightest[cell] = (most * luminosity * dimming) / (4 * Math.PI * walls.r[ir] ** 2)
   }
   return brightest
+}
+
+/** The light of all stars where a cube is nearest to each, dimmed as at its brightest point, scattered as the law favours most. */
+function brightestAmongCubes(octree: Octree, light: DustLight): Float64Array {
+  const { cells } = octree
+  const brightest = new Float64Array(allocateShared(8 * cells))
+  const favoured = favouredScattering(light, cells)
+  const cube = new Float64Array(4)
+  for (let cell = 0; cell < cells; cell++) {
+    if (favoured[cell] === 0) continue
+    const [x, y, z, length] = cellCube(octree, cell, cube)
+    for (const { at, luminosity, depths } of light.beams()) {
+      const distance = Math.hypot(x - at[0], y - at[1], z - at[2]) - length * Math.sqrt(0.75)
+      let least = depths[8 * cell]
+      for (let k = 1; k < 8; k++) least = Math.min(least, depths[8 * cell + k])
+      // Within the cell of the star nothing may be left out.
+      brightest[cell] +=
+        distance > 0
+          ? (favoured[cell] * luminosity * Math.exp(-least)) / (4 * Math.PI * distance * distance)
+          : Number.POSITIVE_INFINITY
+    }
+  }
+  return brightest
+}
+
+/** Scattering coefficient per sr of every cell in the direction that its laws favour most, cm-1. */
+function favouredScattering({ asymmetry, scattering, tables }: DustLight, cells: number): Float64Array {
+  const favoured = new Float64Array(cells)
+  asymmetry.forEach((g, law) => {
+    const peak = tables ? peakOf(tables, law) : henyeyGreenstein(g, Math.sign(g))
+    for (let cell = 0; cell < cells; cell++) favoured[cell] += peak * scattering[law * cells + cell]
+  })
+  return favoured
 }

@@ -1,3 +1,4 @@
+import { dimensionsOf } from '../grid/cells.js'
 import { GROUPS } from '../solve/groups.js'
 import { observerFrames } from '../transport/scatter-towards.js'
 import type { RayMedium } from './ray-medium.js'
@@ -24,7 +25,7 @@ export class StokesRay {
     { observer, up, right }: ViewBasis
   ) {
     const { slots, walls } = medium
-    this.spherical = walls.cosTheta.length === 2 && walls.phi.length === 2
+    this.spherical = dimensionsOf(walls) === 1
     const [, , , x, y, z] = observerFrames(Float64Array.from(observer))
     const [cos, sin] = doubled(x * up[0] + y * up[1] + z * up[2], -(x * right[0] + y * right[1] + z * right[2]))
     this.cos = cos
@@ -65,6 +66,11 @@ export class StokesRay {
       return
     }
     turnStokes(out, this.cos, this.sin, withGroups)
+    this.addRadial(x, y, radial, out)
+  }
+
+  /** Adds light polarised along the direction from a star, which is seen (x, y) away, to one that refers to the picture's north. */
+  addRadial(x: number, y: number, radial: number, out: Float64Array): void {
     const [cos, sin] = doubled(y, -x)
     out[Q] += radial * cos
     out[Q + 1] += radial * sin

@@ -90,8 +90,12 @@ function depths(wavelengths: { wavelengthUm: number; opticalDepth: number }[]): 
   return some(wavelengths, FEW).map(({ wavelengthUm, opticalDepth }) => `${wavelengthText(wavelengthUm)}: ${shown(opticalDepth)}`)
 }
 
-function cells({ cells: { count, radial, polar, azimuthal, reason } }: SceneCheck): string[] {
-  return [`  ${count}: ${radial} in radius, ${polar} in polar angle, ${azimuthal} in azimuth`, `  ${reason}`]
+function cells({ cells }: SceneCheck): string[] {
+  const layout =
+    'radial' in cells
+      ? `${cells.radial} in radius, ${cells.polar} in polar angle, ${cells.azimuthal} in azimuth`
+      : `cubes of ${shown(cells.finestAu)} au and more, in one of ${shown(cells.widthAu)} au`
+  return [`  ${cells.count}: ${layout}`, `  ${cells.reason}`]
 }
 
 function cost({ memoryBytes, workers, precision, forecast: { seconds, complete } }: SceneCheck): string[] {

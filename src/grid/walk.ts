@@ -88,18 +88,14 @@ export class SphericalWalk {
     this.locateAngles()
   }
 
-  /** Starts a ray at the origin, in the core. */
-  startAtOrigin(ux: number, uy: number, uz: number): void {
-    this.x0 = 0
-    this.y0 = 0
-    this.z0 = 0
-    this.ux = ux
-    this.uy = uy
-    this.uz = uz
-    this.s = 0
-    this.b2 = 0
-    this.ir = 0
-    this.cell = 0
+  /** Starts a ray at a point of a cell. */
+  startIn(x: number, y: number, z: number, ux: number, uy: number, uz: number, cell: number): void {
+    const { np, nt } = this
+    const whole = cell === 0
+    const ip = whole ? 0 : (cell - 1) % np
+    const it = whole ? 0 : ((cell - 1 - ip) / np) % nt
+    const ir = whole ? 0 : 1 + Math.floor((cell - 1) / (np * nt))
+    this.start(x, y, z, ux, uy, uz, ir, it, ip)
   }
 
   /** Gives the ray a new direction at a point of the cell it is in. */

@@ -1,7 +1,8 @@
 import type { GrainOptics } from '../dust/grains/grain-optics.js'
 import { makeOpacityLaw, type OpacityLaw } from '../dust/opacity-law.js'
+import { isOctree, volumesOf } from '../grid/cells.js'
 import type { DustLayer } from '../grid/dust-layer.js'
-import { cellCount, cellVolumes, type SphericalWalls } from '../grid/geometry.js'
+import { cellCount, type SphericalWalls } from '../grid/geometry.js'
 import { placeWalls } from '../grid/place-walls.js'
 import { allocateShared } from '../math/allocate.js'
 import { SceneError } from '../scene/error.js'
@@ -13,7 +14,9 @@ import { ambientField } from '../sources/ambient.js'
 import { starSpectrum } from '../sources/star.js'
 import { cellDensities } from './density.js'
 import { hollowed, withFirstRadii } from './inner-radii.js'
+import { layCubes, offCentre, reasonForCubes } from './lay-cubes.js'
 import type { DustComponent, Model } from './model.js'
+import { octreeDensities } from './octree-density.js'
 import { mattering } from './wavelengths.js'
 
 /** Cells laid about the dust of a scene, before anything as large as their number is allocated. */
@@ -59,8 +62,14 @@ function layCells(asked: Scene, laws: OpacityLaw[]): CellPlan {
     scale,
     extinction: Math.max(...wavelengths.map((wavelength) => law.absorption(wavelength) + law.scattering(wavelength)))
   }))
+  const common = { scene, stars, fields, parts }
+  const why = layers.length > 0 ? reasonForCubes(scene, dimensions) : undefined
+  if (why) {
+    const walls = layCubes(scene, layers)
+    return { ...common, dimensions: 3, reason: `cubes of an octree, because ${why}`, walls, cells: walls.cells }
+  }
   const walls = shareWalls(layers.length > 0 ? placeWalls({ ...scene.grid, layers, dimensions }) : emptyWalls(scene))
-  return { scene, dimensions, reason: reasonFor(scene, dimensions), walls, cells: cellCount(walls), stars, fields, parts }
+  return { ...common, dimensions, reason: reasonFor(scene, dimensions), walls, cells: cellCount(walls) }
 }
 
 /** Turns a scene into cells filled with dust. Throws SceneError where the scene asks for what cannot be. */
@@ -68,7 +77,7 @@ export function buildModel(asked: Scene, plan = planCells(asked)): Model {
   const { scene, dimensions, reason, walls, cells, stars, fields, parts } = plan
   const warnings: string[] = []
   const components: DustComponent[] = parts.map(({ spec, law, shape, scale }) => {
-    const { density, massRatio } = cellDensities(walls, shape, scale)
+    const { density, massRatio } = isOctree(walls) ? octreeDensities(walls, shape, scale) : cellDensities(walls, shape, scale)
     if (Math.abs(massRatio - 1) >= 0.005) {
       warnings.push(
         `dust ${spec.name}: the cells do not resolve its shape (their mass is ${massRatio.toFixed(3)} of what it should be); ask for more cells under grid`
@@ -78,7 +87,7 @@ export function buildModel(asked: Scene, plan = planCells(asked)): Model {
     const massBefore = spec.hollow === undefined ? mass : scale * makeShape(spec.shape, spec).totalMass
     return { spec, law, shape, mass, massBefore, density }
   })
-  const volume = cellVolumes(walls, new Float64Array(allocateShared(8 * cells)))
+  const volume = volumesOf(walls, new Float64Array(allocateShared(8 * cells)))
   return { scene, dimensions, reason, walls, cells, volume, components, stars, fields, warnings }
 }
 
@@ -119,7 +128,7 @@ function chooseDimensions(scene: Scene, shapes: Shape[]): 1 | 2 | 3 {
     }
     return 3
   }
-  if (scene.grid.azimuthal > 1) return 3
+  if (scene.grid.azimuthal > 1 || offCentre(scene).length > 0) return 3
   return shapes.every(({ symmetry }) => symmetry === 'spherical') && scene.grid.polar <= 1 ? 1 : 2
 }
 

@@ -1,5 +1,5 @@
 import type { OpacityLaw } from '../dust/opacity-law.js'
-import type { SphericalWalls } from '../grid/geometry.js'
+import type { Cells } from '../grid/cells.js'
 import type { AmbientSpec, DustSpec, Scene, StarSpec } from '../scene/types.js'
 import type { Shape } from '../shapes/shape.js'
 import type { AmbientField } from '../sources/ambient.js'
@@ -11,7 +11,7 @@ export interface Model {
   dimensions: 1 | 2 | 3
   /** Why these cells, in a sentence. */
   reason: string
-  walls: SphericalWalls
+  walls: Cells
   cells: number
   /** cm3 */
   volume: Float64Array

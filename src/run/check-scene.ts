@@ -1,3 +1,5 @@
+import { isOctree, reachOf } from '../grid/cells.js'
+import { smallestSide } from '../grid/octree/octree.js'
 import { buildModel, planCells } from '../model/build-model.js'
 import type { Model } from '../model/model.js'
 import type { AmbientSpec, Scene } from '../scene/types.js'
@@ -48,7 +50,11 @@ export interface SceneCheck {
     massMsun: number
   }[]
   opticalDepths: OpticalDepths
-  cells: { count: number; radial: number; polar: number; azimuthal: number; reason: string }
+  cells: { count: number; reason: string } & (
+    | { radial: number; polar: number; azimuthal: number }
+    /** Sides of the whole cube and of its smallest cells. */
+    | { widthAu: number; finestAu: number }
+  )
   memoryBytes: number
   workers: number
   precision: number | null
@@ -86,7 +92,7 @@ export async function checkScene(
       name: spec.name,
       spectrum: ambientSpectrum(spec),
       intensity: 4 * Math.PI * spectrum.intensity,
-      inflowLsun: inflow(spectrum, walls.r[walls.r.length - 1]).luminosity / SOLAR_LUMINOSITY
+      inflowLsun: inflow(spectrum, reachOf(walls)).luminosity / SOLAR_LUMINOSITY
     })),
     dust: model.components.map(({ spec, shape, mass }) => ({
       name: spec.name,
@@ -102,9 +108,9 @@ export async function checkScene(
     opticalDepths: opticalDepths(model),
     cells: {
       count: cells,
-      radial: walls.r.length - 1,
-      polar: walls.cosTheta.length - 1,
-      azimuthal: walls.phi.length - 1,
+      ...(isOctree(walls)
+        ? { widthAu: walls.side / AU, finestAu: smallestSide(walls) / AU }
+        : { radial: walls.r.length - 1, polar: walls.cosTheta.length - 1, azimuthal: walls.phi.length - 1 }),
       reason
     },
     memoryBytes: totalMemory(memoryEstimate(model, workers), workers),

@@ -1,15 +1,16 @@
+import { isOctree } from '../grid/cells.js'
+import type { SphericalWalls } from '../grid/geometry.js'
+import { cellCube, type Octree } from '../grid/octree/octree.js'
+import { OctreeWalk } from '../grid/octree/octree-walk.js'
 import type { Model } from '../model/model.js'
 import type { DustStructure, RadialComponent } from '../output/plot/structure.js'
 import type { DustTemperatures } from '../solve/temperatures.js'
 import { AU } from '../units/constants.js'
 
 /** Columns of the table of cells, in FITS units: centre, volume, and for each component density, temperature, 1 sigma. */
-export function cellColumns(model: Model, dust: DustTemperatures): { name: string; unit: string; values: Float64Array }[] {
-  const { r, theta, phi } = cellCentres(model)
+export function cellColumns(model: Model, dust: DustTemperatures): Column[] {
   return [
-    { name: 'r', unit: 'AU', values: r.map((value) => value / AU) },
-    { name: 'theta', unit: 'rad', values: theta },
-    { name: 'phi', unit: 'rad', values: phi },
+    ...placeColumns(model),
     { name: 'volume', unit: 'cm3', values: model.volume },
     ...model.components.flatMap(({ spec: { name }, density }, c) => [
       { name: `density_${name}`, unit: 'g cm-3', values: density },
@@ -19,8 +20,46 @@ export function cellColumns(model: Model, dust: DustTemperatures): { name: strin
   ]
 }
 
+interface Column {
+  name: string
+  unit: string
+  values: Float64Array
+}
+
+function placeColumns(model: Model): Column[] {
+  const inAu = (values: Float64Array) => values.map((value) => value / AU)
+  if (isOctree(model.walls)) {
+    const middles = cubeMiddles(model.walls)
+    return middles.map((values, a) => ({ name: 'xyz'[a], unit: 'AU', values: inAu(values) }))
+  }
+  const { r, theta, phi } = cellCentres(model.walls, model.cells)
+  return [
+    { name: 'r', unit: 'AU', values: inAu(r) },
+    { name: 'theta', unit: 'rad', values: theta },
+    { name: 'phi', unit: 'rad', values: phi }
+  ]
+}
+
+/** x, y and z (cm) of the middles of all cubes. */
+function cubeMiddles(octree: Octree): Float64Array[] {
+  const cube = new Float64Array(4)
+  const middles = [0, 1, 2].map(() => new Float64Array(octree.cells))
+  for (let cell = 0; cell < octree.cells; cell++) {
+    cellCube(octree, cell, cube)
+    for (let a = 0; a < 3; a++) middles[a][cell] = cube[a]
+  }
+  return middles
+}
+
+/** Distances of the middles of all cells from the origin, cm. */
+export function cellRadii({ walls, cells }: Model): Float64Array {
+  if (!isOctree(walls)) return cellCentres(walls, cells).r
+  const [x, y, z] = cubeMiddles(walls)
+  return x.map((value, i) => Math.hypot(value, y[i], z[i]))
+}
+
 /** Middles of all cells between their walls: cm and rad. */
-export function cellCentres({ walls, cells }: Model): Record<'r' | 'theta' | 'phi', Float64Array> {
+export function cellCentres(walls: SphericalWalls, cells: number): Record<'r' | 'theta' | 'phi', Float64Array> {
   const nt = walls.cosTheta.length - 1
   const np = walls.phi.length - 1
   const radii = middles(walls.r)
@@ -36,7 +75,7 @@ export function cellCentres({ walls, cells }: Model): Record<'r' | 'theta' | 'ph
   return centres
 }
 
-/** What the picture of the dust shows: all radii of spherical shells, otherwise the mean over azimuth outside the core. */
+/** What the picture of the dust shows: all radii of spherical shells, the mean over azimuth outside the core, or cubes in two planes. */
 export function dustStructure(model: Model, dust: DustTemperatures): DustStructure {
   const { walls, components, dimensions } = model
   const parts = components.map(({ spec, density }, c): RadialComponent => {
@@ -45,6 +84,7 @@ export function dustStructure(model: Model, dust: DustTemperatures): DustStructu
     const sigma = ofComponent(model, dust.sigma, c)
     return { name: spec.name, density, ...(emits && { temperature }), ...(spec.temperature === 'solve' && { sigma }) }
   })
+  if (isOctree(walls)) return { kind: 'planes', half: 0.5 * walls.side, ...cutCubes(walls), components: parts }
   if (dimensions === 1) {
     const first = components.some(({ density }) => density[0] > 0) ? 0 : 1
     const outer = (values: Float64Array) => values.subarray(first)
@@ -78,6 +118,32 @@ export function dustStructure(model: Model, dust: DustTemperatures): DustStructu
         })
       }
     })
+  }
+}
+
+/** Pixels along each side of a plane. */
+const PLANE_PIXELS = 360
+
+/** The cubes in the planes x-z and x-y through the origin; row by row from the top. */
+function cutCubes(octree: Octree): { pixels: number; planes: { axes: [string, string]; cells: Int32Array }[] } {
+  const walk = new OctreeWalk(octree)
+  const at = (k: number) => octree.side * ((k + 0.5) / PLANE_PIXELS - 0.5)
+  const plane = (cellAt: (a: number, b: number) => void) => {
+    const cells = new Int32Array(PLANE_PIXELS * PLANE_PIXELS)
+    for (let row = 0; row < PLANE_PIXELS; row++) {
+      for (let column = 0; column < PLANE_PIXELS; column++) {
+        cellAt(at(column), -at(row))
+        cells[row * PLANE_PIXELS + column] = walk.cell
+      }
+    }
+    return cells
+  }
+  return {
+    pixels: PLANE_PIXELS,
+    planes: [
+      { axes: ['x', 'z'], cells: plane((x, z) => walk.startAt(x, 0, z, 0, 0, 1)) },
+      { axes: ['x', 'y'], cells: plane((x, y) => walk.startAt(x, y, 0, 0, 0, 1)) }
+    ]
   }
 }
 

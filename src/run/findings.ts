@@ -5,7 +5,7 @@ import { spectrumInUnit } from '../output/spectrum-in-unit.js'
 import type { DustTemperatures } from '../solve/temperatures.js'
 import { AU, JANSKY, SOLAR_MASS } from '../units/constants.js'
 import { intensityUnit } from '../units/intensity.js'
-import { cellCentres } from './dust-cells.js'
+import { cellRadii } from './dust-cells.js'
 import type { RunResult } from './run-scene.js'
 
 /** What a run found, in the units of the scene. */
@@ -71,7 +71,7 @@ const KNOWN = 0.1
 function temperaturesOf(model: Model, { temperature, sigma }: DustTemperatures, c: number): DustFinding['temperatures'] {
   const { components, cells } = model
   const { density } = components[c]
-  const { r } = cellCentres(model)
+  const r = cellRadii(model)
   const at = (cell: number) => c * cells + cell
   const known = Array.from(density.keys()).filter((cell) => density[cell] > 0 && sigma[at(cell)] < KNOWN * temperature[at(cell)])
   if (known.length === 0) return undefined

@@ -21,7 +21,8 @@ export async function observeDeficit(model: Model, light: DustLight, wanted: Wan
     ...unpolarised,
     scattering: new Float64Array(light.scattering.length),
     emission: light.extinction.map((value) => value * intensity),
-    emissionGroups: new Float32Array()
+    emissionGroups: new Float32Array(),
+    beams: () => []
   }
   const stars = model.stars.flatMap(({ spec, spectrum }) => {
     if (spec.extent === 'point') return []

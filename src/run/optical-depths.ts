@@ -2,10 +2,11 @@ import { seenFrom } from '../camera/frame.js'
 import { rayMedium } from '../camera/ray-medium.js'
 import type { DustComponent, Model } from '../model/model.js'
 import { observedWavelengths } from '../model/wavelengths.js'
+import type { Vector } from '../scene/types.js'
 import { dustLight } from '../solve/dust-light.js'
 import { givenTemperatures } from '../solve/temperatures.js'
 import { micrometres } from './findings.js'
-import { depthTo } from './stars-seen.js'
+import { depthsTo } from './stars-seen.js'
 
 /** Optical depths for extinction. */
 export interface OpticalDepths {
@@ -26,6 +27,8 @@ export interface ComponentDepth {
   absorption: number
   scattering: number
 }
+
+const CENTRE = { at: [0, 0, 0] as Vector, extent: 'point' as const }
 
 const lines = {
   shell: 'radius',
@@ -52,10 +55,10 @@ export function opticalDepths(model: Model): OpticalDepths {
     wavelengths: [] as { wavelengthUm: number; opticalDepth: number }[]
   }))
   for (const wavelength of wavelengths) {
-    const medium = rayMedium(model, dustLight(model, dust, wavelength), undefined)
+    const medium = rayMedium({ ...model, stars: [] }, dustLight(model, dust, wavelength), undefined)
     specs.forEach(({ spec }, i) => {
       if (!spec.wavelengths.includes(wavelength)) return
-      const opticalDepth = depthTo({ ...medium, starRadius: 0 }, seenFrom(model, spec.view))(0, 0)
+      const opticalDepth = depthsTo(medium, seenFrom(model, spec.view))(CENTRE)(0, 0)
       observers[i].wavelengths.push({ wavelengthUm: micrometres(wavelength), opticalDepth })
     })
   }

@@ -1,4 +1,3 @@
-import { directLight, starImage } from '../camera/direct.js'
 import { apertureDetector, cameraDetector, pixelSolidAngle, seenFrom } from '../camera/frame.js'
 import { rayMedium } from '../camera/ray-medium.js'
 import { STOKES, STOKES_PAIRS, type StokesPlanes, stokesPlanes } from '../camera/stokes-planes.js'
@@ -11,7 +10,7 @@ import { GROUPS } from '../solve/groups.js'
 import { scatterMedium } from '../solve/scatter-medium.js'
 import { type Detector, detectorPixels } from '../transport/detector.js'
 import type { LightJob } from './light-job.js'
-import { depthTo, paintStars } from './stars-seen.js'
+import { directFlux, paintStars } from './stars-seen.js'
 import type { Wanted } from './wanted.js'
 
 /** Values of all detectors: luminosity per sr (erg/s/Hz/sr). */
@@ -103,15 +102,11 @@ function caughtBy(pixels: number, { sums, packets }: GroupSums): Caught {
 function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted, caught: Caught, offset: number): number {
   const { distance } = model.scene
   const view = seenFrom(model, want.spec.view)
-  const depthAt = depthTo(rayMedium(model, light, undefined), view)
+  const medium = rayMedium(model, { ...light, beams: () => [] }, undefined)
   if (want.kind === 'spectrum') {
     const { result, k, spec } = want
     const area = distance * distance
-    const stars = addStars ? model.stars : []
-    const direct = stars.reduce(
-      (sum, star) => sum + directLight(starImage(star.spec, star.spectrum, light.nu), depthAt, spec.aperture * distance),
-      0
-    )
+    const direct = addStars ? directFlux(model, light, medium, view, spec.aperture * distance) : 0
     result.direct[k] = (caught.direct[offset] + direct) / area
     result.emitted[k] = caught.emitted[offset] / area
     result.scattered[k] = caught.scattered[offset] / area
@@ -125,7 +120,7 @@ function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted
   const at = k * pixels
   // Luminosity per sr divided by the squared distance is flux; by the solid angle of a pixel, intensity.
   const scale = 1 / (distance * distance * pixelSolidAngle(spec))
-  const direct = addStars ? paintStars(model, light, depthAt, want) : images.direct.subarray(at, at + pixels)
+  const direct = addStars ? paintStars(model, light, medium, view, want) : images.direct.subarray(at, at + pixels)
   if (images.stokes && caught.stokes) {
     for (const plane of STOKES)
       images.stokes[plane].set(

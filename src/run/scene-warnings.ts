@@ -1,3 +1,4 @@
+import { isOctree } from '../grid/cells.js'
 import { integrate } from '../math/quadrature.js'
 import type { DustComponent, Model } from '../model/model.js'
 import { mattering, observedWavelengths } from '../model/wavelengths.js'
@@ -28,6 +29,7 @@ export function sceneWarnings(model: Model): string[] {
 function unresolvedEdge(model: Model): string[] {
   const { walls, components, stars, scene } = model
   if (stars.length === 0) return []
+  if (isOctree(walls)) return model.cells + 7 > scene.grid.cellsAtMost ? [crowded(model)] : []
   const columns = (walls.cosTheta.length - 1) * (walls.phi.length - 1)
   let [most, at] = [0, 0]
   for (const wavelength of mattering(scene, stars, [])) {
@@ -46,6 +48,10 @@ function unresolvedEdge(model: Model): string[] {
         `grid: the first cell with dust has optical depth ${most.toPrecision(2)} at ${wavelengthLabel(at)}, where a star shines; the temperature at the inner edge is a mean over it; ask for more radial cells`
       ]
     : []
+}
+
+function crowded({ cells }: Model): string {
+  return `grid: ${cells} cells do not resolve the dust everywhere as far as the program would; ask for more by grid.cells-at-most of an octree`
 }
 
 function extinction(components: DustComponent[], cell: number, wavelength: number): number {

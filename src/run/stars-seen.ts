@@ -1,25 +1,28 @@
-import { addDirectLight, directLight, starImage } from '../camera/direct.js'
+import { addDirectLight, type DepthAt, directLight, starImage } from '../camera/direct.js'
 import { pixelFrame } from '../camera/frame.js'
 import { RayIntegrator } from '../camera/ray.js'
 import type { RayMedium } from '../camera/ray-medium.js'
 import type { ViewBasis } from '../camera/view.js'
 import type { Model } from '../model/model.js'
+import type { StarSpec } from '../scene/types.js'
 import type { DustLight } from '../solve/dust-light.js'
 import type { Wanted } from './wanted.js'
 
 /** Direct light of all stars within a radius, luminosity per sr (erg/s/Hz/sr). */
 export function directFlux(model: Model, light: DustLight, medium: RayMedium, view: ViewBasis, radius: number): number {
-  const depthAt = depthTo(medium, view)
+  const depthTo = depthsTo(medium, view)
   return model.stars.reduce(
-    (sum, { spec, spectrum }) => sum + directLight(starImage(spec, spectrum, light.nu), depthAt, radius),
+    (sum, { spec, spectrum }) => sum + directLight(starImage(spec, spectrum, light.nu, view), depthTo(spec), radius),
     0
   )
 }
 
-/** Optical depth from the observer to the star at the centre. */
-export function depthTo(medium: RayMedium, view: ViewBasis): (x: number, y: number) => number {
+/** Optical depths from the observer to stars. */
+export function depthsTo(medium: RayMedium, view: ViewBasis): (star: Pick<StarSpec, 'at' | 'extent' | 'radius'>) => DepthAt {
   const integrator = new RayIntegrator({ ...medium, slots: 0, starlight: undefined }, view)
-  return (x, y) => integrator.depthToOrigin(x, y)
+  return ({ at, extent, radius }) =>
+    (x, y) =>
+      integrator.depthTo(x, y, at, extent === 'sphere' ? radius! : 0)
 }
 
 /** Adds the direct light of the stars to a picture of the dust, and the sum of all light. */
@@ -32,7 +35,7 @@ export function addStars(
   placing: number
 ): void {
   const { images, k } = want
-  const direct = paintStars(model, light, depthTo(medium, view), want)
+  const direct = paintStars(model, light, medium, view, want)
   const from = k * direct.length
   let sum = 0
   for (let i = 0; i < direct.length; i++) {
@@ -47,15 +50,18 @@ export function addStars(
 export function paintStars(
   model: Model,
   light: DustLight,
-  depthAt: (x: number, y: number) => number,
+  medium: RayMedium,
+  view: ViewBasis,
   { spec, images, k }: Extract<Wanted, { kind: 'camera' }>
 ): Float64Array {
   const { distance } = model.scene
   const frame = pixelFrame(spec, distance)
   const pixels = frame.width * frame.height
   const direct = images.direct.subarray(k * pixels, (k + 1) * pixels)
+  const depthTo = depthsTo(medium, view)
   for (const { spec: star, spectrum } of model.stars) {
-    const image = starImage(star, spectrum, light.nu)
+    const image = starImage(star, spectrum, light.nu, view)
+    const depthAt = depthTo(star)
     addDirectLight(image, depthAt, frame, direct)
     const seen = images.stars.find(({ name }) => name === star.name)!
     seen.flux[k] = directLight(image, depthAt, Number.POSITIVE_INFINITY) / (distance * distance)

@@ -300,12 +300,17 @@ export type AmountSpec =
   | { kind: 'optical-depth'; opticalDepth: number; at: number }
   | { kind: 'density'; density: number; at: number }
 
-/** Numbers of cells that the user fixed; 0 where the program chooses. */
 export interface GridSpec {
-  kind: 'auto' | 'spherical'
+  kind: 'auto' | 'spherical' | 'octree'
+  /** Numbers of spherical cells that the user fixed; 0 where the program chooses. */
   radial: number
   polar: number
   azimuthal: number
+  /** Side of the whole cube of an octree about the origin, cm; 0 where the program chooses. */
+  width: number
+  /** Deepest level of an octree. */
+  finest: number
+  cellsAtMost: number
 }
 
 export interface EffortSpec {

@@ -8,6 +8,7 @@ import type {
   CameraSpec,
   CarveSpec,
   DustSpec,
+  GridSpec,
   Scene,
   ShapeSpec,
   SoughtInner,
@@ -30,8 +31,6 @@ const temperature = (value: number) => formatQuantity(value, 'temperature')
  */
 export function sceneYaml(scene: Scene): string {
   const { precision, equilibrium, cameras, equilibriumAsked } = scene.effort
-  const { radial, polar, azimuthal } = scene.grid
-  const counts = Object.entries({ radial, polar, azimuthal }).filter(([, count]) => count > 0)
   const document = new Document(
     {
       title: scene.title,
@@ -41,7 +40,7 @@ export function sceneYaml(scene: Scene): string {
       sources: scene.sources.map((source) => (source.kind === 'star' ? starYaml(source) : ambientYaml(source))),
       opacities: Object.fromEntries(Object.entries(scene.opacities).map(([name, spec]) => [name, opacityYaml(spec)])),
       dust: scene.dust.map(dustYaml),
-      grid: { kind: scene.grid.kind, ...Object.fromEntries(counts) },
+      grid: gridYaml(scene.grid),
       // Without `equilibrium` the same number of packets is the default, but nothing asks for temperatures by themselves.
       effort: { precision: precision ?? 'none', ...(equilibriumAsked && { equilibrium }), cameras },
       cameras: scene.cameras.map(cameraYaml),
@@ -202,4 +201,9 @@ function wavelengthsYaml(wavelengths: number[]): unknown {
   const [from, to, count] = [wavelengths[0], wavelengths[wavelengths.length - 1], wavelengths.length]
   const even = count > 2 && logRange(from, to, count).every((value, i) => value === wavelengths[i])
   return even ? { from: wavelength(from), to: wavelength(to), count } : wavelengths.map(wavelength)
+}
+
+function gridYaml({ kind, radial, polar, azimuthal, width, finest, cellsAtMost }: GridSpec) {
+  if (kind === 'octree') return { kind, ...(width > 0 && { width: length(width) }), finest, 'cells-at-most': cellsAtMost }
+  return { kind, ...Object.fromEntries(Object.entries({ radial, polar, azimuthal }).filter(([, count]) => count > 0)) }
 }

@@ -1,4 +1,6 @@
+import { type Cells, isOctree } from '../grid/cells.js'
 import type { SphericalWalls } from '../grid/geometry.js'
+import { forEachCubeWall } from '../grid/octree/octree-neighbours.js'
 import type { Model } from '../model/model.js'
 
 /** Walls of the unknown cells through which radiation diffuses; those of unknown cell k are `first[k]` up to `first[k + 1]`. */
@@ -47,6 +49,15 @@ export function conductances(
  * two cells to the wall. Paths along the radius are such that shells conduct exactly: area x int dr / (area at r).
  */
 export function forEachWall(
+  cells: Cells,
+  cell: number,
+  visit: (beyond: number, area: number, path: number, pathBeyond: number) => void
+): void {
+  if (isOctree(cells)) forEachCubeWall(cells, cell, visit)
+  else forEachSphericalWall(cells, cell, visit)
+}
+
+function forEachSphericalWall(
   { r, cosTheta, phi }: SphericalWalls,
   cell: number,
   visit: (beyond: number, area: number, path: number, pathBeyond: number) => void

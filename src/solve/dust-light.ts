@@ -1,10 +1,13 @@
 import { planckNu, planckNuDerivative } from '../dust/planck.js'
 import type { ScatteringTables } from '../dust/scattering-tables.js'
+import { isOctree } from '../grid/cells.js'
+import type { SphericalWalls } from '../grid/geometry.js'
 import { allocateShared } from '../math/allocate.js'
 import type { Model } from '../model/model.js'
 import { LIGHT_SPEED } from '../units/constants.js'
 import { GROUPS } from './groups.js'
 import { lawsAt } from './laws.js'
+import { type StarBeam, starBeams } from './star-beams.js'
 import type { DustTemperatures } from './temperatures.js'
 
 /** The dust of a model at one wavelength, as flat arrays that all threads share. */
@@ -25,8 +28,10 @@ export interface DustLight {
   emission: Float64Array
   /** cells x GROUPS: deviation of each group's emission coefficient, from its temperatures; empty when all are given. */
   emissionGroups: Float32Array
-  /** (nt np) x (nr + 1): optical depth from the origin to each radial wall, by column of cells. */
+  /** (nt np) x (nr + 1): optical depth from the origin to each radial wall, by column of spherical cells; empty among cubes. */
   opticalDepth: Float64Array
+  /** The light of point stars on its way through cubes, found when first asked for; none in spherical cells. */
+  beams: () => StarBeam[]
 }
 
 const shared64 = (length: number) => new Float64Array(allocateShared(8 * length))
@@ -70,12 +75,21 @@ export function dustLight(model: Model, dust: DustTemperatures, wavelength: numb
     scattering,
     emission,
     emissionGroups,
-    opticalDepth: radialDepths(model, extinction)
+    opticalDepth: isOctree(model.walls) ? new Float64Array() : radialDepths(model.walls, extinction),
+    beams: once(() => (isOctree(model.walls) ? starBeams(model, model.walls, extinction, nu) : []))
+  }
+}
+
+function once<Value>(make: () => Value): () => Value {
+  let made: Value | undefined
+  return () => {
+    made ??= make()
+    return made
   }
 }
 
 /** Optical depths from the origin outwards, by column. */
-function radialDepths({ walls }: Model, extinction: Float64Array): Float64Array {
+function radialDepths(walls: SphericalWalls, extinction: Float64Array): Float64Array {
   const { r } = walls
   const nr = r.length - 1
   const columns = (walls.cosTheta.length - 1) * (walls.phi.length - 1)

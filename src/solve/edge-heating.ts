@@ -1,4 +1,5 @@
 import { coolingOf, type EmissionTable } from '../dust/emission.js'
+import { sphericalOf } from '../grid/cells.js'
 import type { Model } from '../model/model.js'
 import { GROUPS } from './groups.js'
 import type { DustTemperatures } from './temperatures.js'
@@ -19,7 +20,8 @@ export interface EdgeHeating {
  * the edge. NaN where too few layers have a temperature.
  */
 export function edgeHeating(model: Model, dust: DustTemperatures, table: EmissionTable, c: number, inner: number): EdgeHeating {
-  const { walls, cells, components } = model
+  const { cells, components } = model
+  const walls = sphericalOf(model.walls)
   const { density } = components[c]
   const angular = (walls.cosTheta.length - 1) * (walls.phi.length - 1)
   const x: number[] = []

@@ -1,6 +1,7 @@
 import { binOpacity } from '../dust/binned-opacity.js'
 import { coolingOf, type EmissionTable, makeEmissionTable, rowOf } from '../dust/emission.js'
 import { transportWavelengths, type WavelengthGrid } from '../dust/wavelength-grid.js'
+import { reachOf } from '../grid/cells.js'
 import { allocateShared } from '../math/allocate.js'
 import { makeSamplingTable } from '../math/cdf.js'
 import type { Model } from '../model/model.js'
@@ -60,9 +61,9 @@ export function equilibriumSetup(model: Model): EquilibriumSetup {
     })
     powers.push(spectrum.luminosity)
     const radius = spec.extent === 'sphere' ? spec.radius! : 0
-    sources.push({ kind: 'star', radius, bins: makeSamplingTable(light, 1, bins, allocateShared) })
+    sources.push({ kind: 'star', at: spec.at, radius, bins: makeSamplingTable(light, 1, bins, allocateShared) })
   }
-  const outer = walls.r[walls.r.length - 1]
+  const outer = reachOf(walls)
   const ambient = new Float64Array(bins)
   for (const { spectrum } of fields) {
     powerBins(inflow(spectrum, outer), grid).forEach((value, k) => {

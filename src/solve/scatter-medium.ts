@@ -1,7 +1,10 @@
+import { isOctree, reachOf } from '../grid/cells.js'
+import type { SphericalWalls } from '../grid/geometry.js'
 import { allocateShared } from '../math/allocate.js'
 import { makeSamplingTable } from '../math/cdf.js'
 import type { Model } from '../model/model.js'
 import type { ScatterLaunch, ScatterMedium } from '../transport/scatter-medium.js'
+import { spheresOf } from '../transport/star-spheres.js'
 import type { DustLight } from './dust-light.js'
 
 /** Least share of the packets that each kind of source gets. */
@@ -15,33 +18,28 @@ export function scatterMedium(model: Model, light: DustLight): ScatterMedium {
   let points = 0
   for (const { spec, spectrum } of stars) {
     const luminosity = spectrum.luminosityNu(light.nu)
-    if (spec.extent === 'point') points += luminosity
-    else if (luminosity > 0) {
-      launch.push({ kind: 'sphere-star', luminosity, radius: spec.radius! })
-      powers.push(luminosity)
+    if (!(luminosity > 0)) continue
+    if (spec.extent === 'sphere') launch.push({ kind: 'sphere-star', luminosity, at: spec.at, radius: spec.radius! })
+    else if (isOctree(walls)) launch.push({ kind: 'free-star', luminosity, at: spec.at })
+    else {
+      points += luminosity
+      continue
     }
+    powers.push(luminosity)
   }
-  const nr = walls.r.length - 1
-  const np = walls.phi.length - 1
-  const columns = (walls.cosTheta.length - 1) * np
-  const caught = new Float64Array(columns)
-  for (let column = 0; column < columns; column++) {
-    const it = Math.floor(column / np)
-    const solidAngle = (walls.cosTheta[it] - walls.cosTheta[it + 1]) * (walls.phi[(column % np) + 1] - walls.phi[column % np])
-    caught[column] = (-Math.expm1(-light.opticalDepth[column * (nr + 1) + nr]) * solidAngle) / (4 * Math.PI)
-  }
+  const caught = isOctree(walls) ? new Float64Array() : caughtInColumns(walls, light.opticalDepth)
   const removed = points * caught.reduce((sum, share) => sum + share, 0)
   if (removed > 0) {
     launch.push({
       kind: 'point-star',
       luminosity: points,
       removed,
-      columns: makeSamplingTable(caught, 1, columns, allocateShared),
+      columns: makeSamplingTable(caught, 1, caught.length, allocateShared),
       opticalDepth: light.opticalDepth
     })
     powers.push(removed)
   }
-  const inwards = 4 * Math.PI ** 2 * walls.r[nr] ** 2 * ambientIntensity(model, light.nu)
+  const inwards = 4 * Math.PI ** 2 * reachOf(walls) ** 2 * ambientIntensity(model, light.nu)
   if (inwards > 0) {
     launch.push({ kind: 'ambient', luminosity: inwards })
     powers.push(inwards)
@@ -66,13 +64,24 @@ export function scatterMedium(model: Model, light: DustLight): ScatterMedium {
       1,
       powers.length
     ),
-    starRadius: largestStar(model)
+    spheres: sphereStars(model)
   }
 }
 
-/** Radius of the largest star that is a sphere, cm; 0 for none. */
-export function largestStar(model: Model): number {
-  return model.stars.reduce((most, { spec }) => (spec.extent === 'sphere' ? Math.max(most, spec.radius!) : most), 0)
+/** The stars that are spheres, as transport and rays meet them. */
+export function sphereStars({ stars }: Pick<Model, 'stars'>): Float64Array {
+  return spheresOf(stars.map(({ spec: { at, extent, radius } }) => ({ at, radius: extent === 'sphere' ? radius! : 0 })))
+}
+
+/** Share of the light of a star at the centre that the dust of each column of cells takes out of the direct beam. */
+function caughtInColumns({ r, cosTheta, phi }: SphericalWalls, opticalDepth: Float64Array): Float64Array {
+  const nr = r.length - 1
+  const np = phi.length - 1
+  return Float64Array.from({ length: (cosTheta.length - 1) * np }, (_, column) => {
+    const it = Math.floor(column / np)
+    const solidAngle = (cosTheta[it] - cosTheta[it + 1]) * (phi[(column % np) + 1] - phi[column % np])
+    return (-Math.expm1(-opticalDepth[column * (nr + 1) + nr]) * solidAngle) / (4 * Math.PI)
+  })
 }
 
 /** Specific intensity of all ambient fields together, erg/s/cm2/Hz/sr. */

@@ -1,5 +1,8 @@
 import { coolingOf, type EmissionTable, temperatureOf } from '../dust/emission.js'
+import { isOctree, reachOf, sphericalOf } from '../grid/cells.js'
+import { cellCube } from '../grid/octree/octree.js'
 import type { Model } from '../model/model.js'
+import { forEachWall } from './conduction.js'
 import type { EquilibriumSetup } from './equilibrium-medium.js'
 import { fillThick } from './fill-thick.js'
 import { GROUPS } from './groups.js'
@@ -33,9 +36,9 @@ export function givenTemperatures(model: Model): DustTemperatures {
 export function firstGuess(model: Model, setup: EquilibriumSetup): Float64Array {
   const { components, cells, walls } = model
   const { starlight, ambient, medium } = setup
-  const outer = walls.r[walls.r.length - 1]
+  const outer = reachOf(walls)
   const temperature = givenTemperatures(model).temperature
-  const angular = (walls.cosTheta.length - 1) * (walls.phi.length - 1)
+  const dilution = dilutions(model)
   components.forEach(({ spec, density }, c) => {
     if (spec.temperature !== 'solve') return
     let heating = 0
@@ -46,14 +49,33 @@ export function firstGuess(model: Model, setup: EquilibriumSetup): Float64Array 
       outside += (medium.absorption[c * medium.bins + k] * ambient[k]) / (Math.PI * outer * outer)
     }
     for (let i = 0; i < cells; i++) {
-      const ir = i === 0 ? 0 : 1 + Math.floor((i - 1) / angular)
-      const r = 0.5 * (walls.r[ir] + walls.r[ir + 1])
-      const guess = temperatureOf(setup.tables[c], heating / (4 * Math.PI * r * r) + outside)
+      const guess = temperatureOf(setup.tables[c], heating * dilution[i] + outside)
       // Stars may be absent: dust of fixed temperature then does the heating, and the first round finds how much.
       if (density[i] > 0) temperature[c * cells + i] = Math.min(Math.max(guess, COOLEST), HOTTEST)
     }
   })
   return temperature
+}
+
+/** What makes flux of luminosity in the middle of every cell, cm-2: 1 / (4 pi r^2), over the stars in proportion to what they shine. */
+function dilutions({ walls, cells, stars }: Model): Float64Array {
+  if (!isOctree(walls)) {
+    const { r, cosTheta, phi } = walls
+    const angular = (cosTheta.length - 1) * (phi.length - 1)
+    return Float64Array.from({ length: cells }, (_, i) => {
+      const ir = i === 0 ? 0 : 1 + Math.floor((i - 1) / angular)
+      return 1 / (Math.PI * (r[ir] + r[ir + 1]) ** 2)
+    })
+  }
+  const all = stars.reduce((sum, { spectrum }) => sum + spectrum.luminosity, 0)
+  const cube = new Float64Array(4)
+  return Float64Array.from({ length: cells }, (_, i) => {
+    const [x, y, z, length] = cellCube(walls, i, cube)
+    return stars.reduce((sum, { spec: { at }, spectrum }) => {
+      const distance = Math.max(0.5 * length, Math.hypot(x - at[0], y - at[1], z - at[2]))
+      return sum + spectrum.luminosity / all / (4 * Math.PI * distance * distance)
+    }, 0)
+  })
 }
 
 const COOLEST = 3
@@ -75,7 +97,7 @@ export function temperaturesFrom(
   const { temperature, sigma, slope } = result
   const deviation = new Float32Array(temperature.length * GROUPS)
   const perPacket = setup.luminosity / packets
-  const symmetric = components.every(({ shape }) => shape.symmetry !== 'none')
+  const symmetric = !isOctree(model.walls) && components.every(({ shape }) => shape.symmetry !== 'none')
   components.forEach(({ spec, density }, c) => {
     if (spec.temperature !== 'solve') return
     const table = setup.tables[c]
@@ -117,8 +139,9 @@ function coolingSlope(table: EmissionTable, temperature: number): number {
 /** The cell on the other side of the midplane. */
 function mirrorCell({ walls }: Model, cell: number): number {
   if (cell === 0) return 0
-  const np = walls.phi.length - 1
-  const nt = walls.cosTheta.length - 1
+  const { phi, cosTheta } = sphericalOf(walls)
+  const np = phi.length - 1
+  const nt = cosTheta.length - 1
   const it = Math.floor((cell - 1) / np) % nt
   return cell + (nt - 1 - 2 * it) * np
 }
@@ -126,9 +149,6 @@ function mirrorCell({ walls }: Model, cell: number): number {
 /** Cells that no packet reached take the mean of T^4 of neighbours that have one, spreading until all have. */
 function fillEmpty(model: Model, temperature: Float64Array, sigma: Float64Array, density: Float64Array, c: number): void {
   const { cells, walls } = model
-  const np = walls.phi.length - 1
-  const nt = walls.cosTheta.length - 1
-  const row = nt * np
   const start = c * cells
   let empty: number[] = []
   for (let i = 0; i < cells; i++)
@@ -137,15 +157,7 @@ function fillEmpty(model: Model, temperature: Float64Array, sigma: Float64Array,
     const found: [number, number][] = []
     for (const i of empty) {
       const near: number[] = []
-      if (i > 0) {
-        const it = Math.floor(((i - 1) % row) / np)
-        near.push(i - row >= 1 ? i - row : 0)
-        if (i + row < cells) near.push(i + row)
-        if (it > 0) near.push(i - np)
-        if (it < nt - 1) near.push(i + np)
-        const ip = (i - 1) % np
-        if (np > 1) near.push(i - ip + ((ip + 1) % np), i - ip + ((ip + np - 1) % np))
-      } else for (let k = 1; k <= row && k < cells; k++) near.push(k)
+      forEachWall(walls, i, (beyond) => near.push(beyond))
       const known = near.map((k) => temperature[start + k]).filter((value) => value > 0)
       if (known.length > 0) found.push([i, (known.reduce((sum, value) => sum + value ** 4, 0) / known.length) ** 0.25])
     }

@@ -1,5 +1,7 @@
 import { coolingOf } from '../dust/emission.js'
 import { planckNuDerivative } from '../dust/planck.js'
+import { isOctree } from '../grid/cells.js'
+import { cubeVolumes } from '../grid/octree/octree.js'
 import type { Model } from '../model/model.js'
 import { LEAST_DEPTH } from '../transport/random-walk.js'
 import { LIGHT_SPEED, STEFAN_BOLTZMANN } from '../units/constants.js'
@@ -101,6 +103,7 @@ function temperatureAt(row: number): number {
 
 /** Half the smallest extent of every cell, cm: no point of a cell is farther from all of its walls. */
 function halfExtents({ walls, cells }: Model): Float64Array {
+  if (isOctree(walls)) return cubeVolumes(walls, new Float64Array(cells)).map((volume) => 0.5 * Math.cbrt(volume))
   const { r, cosTheta, phi } = walls
   const nt = cosTheta.length - 1
   const np = phi.length - 1

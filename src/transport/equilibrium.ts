@@ -1,15 +1,16 @@
 import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
 import { cosineAt, drawPlace, type ScatteringTables } from '../dust/scattering-tables.js'
-import type { SphericalWalls } from '../grid/geometry.js'
-import { SphericalWalk } from '../grid/walk.js'
+import { type Cells, openWalk } from '../grid/cells.js'
 import { type SamplingTable, sampleBin } from '../math/cdf.js'
+import type { Vector } from '../scene/types.js'
 import { deflect, isotropicDirection } from './direction.js'
 import { emittingCell, GOLDEN, launchFromCell, launchFromSurface, launchInwards } from './launch.js'
 import { diffuse, emittedBin } from './random-walk.js'
+import { pathToStar, spheresOf } from './star-spheres.js'
 
 /** What the temperature phase needs to know, as flat arrays that all threads share. Component c, cell i, bin k. */
 export interface EquilibriumMedium {
-  walls: SphericalWalls
+  walls: Cells
   cells: number
   components: number
   bins: number
@@ -38,7 +39,7 @@ export interface EquilibriumMedium {
 }
 
 export type EquilibriumSource =
-  | { kind: 'star'; radius: number; bins: SamplingTable }
+  | { kind: 'star'; at: Vector; radius: number; bins: SamplingTable }
   /** Isotropic light from outside. */
   | { kind: 'ambient'; bins: SamplingTable }
   /** Dust of fixed temperature: cells in proportion to luminosity, bins from the row of `emission` of its component. */
@@ -81,9 +82,9 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
     sourceEnergy
   } = medium
   const absorbed = new Float64Array(components * cells)
-  const walk = new SphericalWalk(walls)
+  const walk = openWalk(walls)
   const direction = new Float64Array(3)
-  const starRadius2 = sources.reduce((most, source) => Math.max(most, source.kind === 'star' ? source.radius ** 2 : 0), 0)
+  const spheres = spheresOf(sources.flatMap((source) => (source.kind === 'star' ? [source] : [])))
   let emitted = 0
   let escaped = 0
   let returned = 0
@@ -107,10 +108,11 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
       energy *= launchInwards(walk, walls, (lattice + n * GOLDEN) % 1, uniform, direction)
     } else if (source.kind === 'star') {
       bin = sampleBin(source.bins, 0, choice)
-      if (source.radius > 0) launchFromSurface(walk, source.radius, uniform, direction)
+      const [x, y, z] = source.at
+      if (source.radius > 0) launchFromSurface(walk, x, y, z, source.radius, uniform, direction)
       else {
         isotropicDirection(direction, uniform(), uniform())
-        walk.startAtOrigin(direction[0], direction[1], direction[2])
+        walk.startAt(x, y, z, direction[0], direction[1], direction[2])
       }
     } else {
       const row = Math.floor(source.row) + (uniform() < source.row - Math.floor(source.row) ? 1 : 0)
@@ -120,7 +122,8 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
 
     emitted += energy
     let remaining = -Math.log(uniform())
-    let alive = true
+    let alive = walk.cell >= 0
+    if (!alive) escaped += energy
     while (alive) {
       const cell = walk.cell
       let step = walk.toWall()
@@ -128,10 +131,10 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
       for (let c = 0; c < components; c++) opacity += density[c * cells + cell] * extinction[c * bins + bin]
       // A star in the way ends the flight.
       let hitsStar = false
-      if (walk.s < 0 && walk.b2 < starRadius2) {
-        const toStar = -Math.sqrt(starRadius2 - walk.b2) - walk.s
+      if (spheres.length > 0) {
+        const toStar = pathToStar(walk, spheres)
         if (toStar < step) {
-          step = Math.max(toStar, 0)
+          step = toStar
           hitsStar = true
         }
       }

@@ -1,10 +1,11 @@
-import { SphericalWalk } from '../grid/walk.js'
+import { dimensionsOf, openWalk, type Walk } from '../grid/cells.js'
 import { type Detector, detectorPixels, pixelOf } from './detector.js'
-import { collide, pathToStar, ROULETTE_BELOW, SURVIVAL } from './flight.js'
+import { collide, ROULETTE_BELOW, SURVIVAL } from './flight.js'
 import type { PixelTally } from './peel.js'
 import { Polarisation } from './polarisation.js'
 import { Launcher } from './scatter-launch.js'
 import type { ScatterMedium } from './scatter-medium.js'
+import { pathToStar } from './star-spheres.js'
 
 /** Half width, in the cosine of the inclination, of the directions that count as the observer's. */
 const HALF_WIDTH = 0.04
@@ -20,18 +21,17 @@ export function tallyExits(
   packets: number,
   uniform: () => number
 ): PixelTally & { direct: Float64Array } {
-  const { extinction, walls } = medium
+  const { extinction, walls, spheres } = medium
   const pixels = detectorPixels(detectors)
   const direct = new Float64Array(pixels)
   const emitted = new Float64Array(pixels)
   const scattered = new Float64Array(pixels)
   const unseen = new Float64Array(pixels)
-  const walk = new SphericalWalk(walls)
+  const walk = openWalk(walls)
   const launcher = new Launcher(medium, packets, false)
   const polarisation = medium.tables && new Polarisation()
   const out = new Float64Array(3)
-  const starRadius2 = medium.starRadius ** 2
-  const dimension = walls.phi.length > 2 ? 3 : walls.cosTheta.length > 2 ? 2 : 1
+  const dimension = dimensionsOf(walls)
 
   for (let n = 0; n < packets; n++) {
     launcher.next(walk, n, uniform, out)
@@ -44,7 +44,7 @@ export function tallyExits(
     while (weight > 0) {
       const cell = walk.cell
       const toWall = walk.toWall()
-      const toStar = starRadius2 > 0 ? pathToStar(walk, starRadius2) : Number.POSITIVE_INFINITY
+      const toStar = spheres.length > 0 ? pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
       const free = Math.min(toStar, toWall)
       const depth = free * extinction[cell]
       if (depth >= remaining) {
@@ -77,7 +77,7 @@ export function tallyExits(
 }
 
 /** By symmetry the packet leaves towards any observer, at its impact parameter, anywhere around it. */
-function catchSpherical(walk: SphericalWalk, detectors: Detector[], weight: number, tally: Float64Array, uniform: () => number) {
+function catchSpherical(walk: Walk, detectors: Detector[], weight: number, tally: Float64Array, uniform: () => number) {
   const angle = 2 * Math.PI * uniform()
   const b = Math.sqrt(walk.b2)
   const a = b * Math.cos(angle)
@@ -91,7 +91,7 @@ function catchSpherical(walk: SphericalWalk, detectors: Detector[], weight: numb
   }
 }
 
-function catchAxial(walk: SphericalWalk, detectors: Detector[], weight: number, tally: Float64Array) {
+function catchAxial(walk: Walk, detectors: Detector[], weight: number, tally: Float64Array) {
   let offset = 0
   for (const detector of detectors) {
     const [nx, ny, nz] = detector.observer
@@ -118,7 +118,7 @@ function catchAxial(walk: SphericalWalk, detectors: Detector[], weight: number, 
   }
 }
 
-function catchAny(walk: SphericalWalk, detectors: Detector[], weight: number, tally: Float64Array) {
+function catchAny(walk: Walk, detectors: Detector[], weight: number, tally: Float64Array) {
   let offset = 0
   for (const detector of detectors) {
     const [nx, ny, nz] = detector.observer

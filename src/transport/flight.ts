@@ -1,4 +1,4 @@
-import type { SphericalWalk } from '../grid/walk.js'
+import type { Walk } from '../grid/cells.js'
 import type { Polarisation } from './polarisation.js'
 import { scatterHere, scatteringOf } from './scatter-launch.js'
 import type { ScatterMedium } from './scatter-medium.js'
@@ -13,19 +13,13 @@ export const SURVIVAL = 0.1
 export const EARLY_BELOW = 0.3
 export const EARLY_SURVIVAL = 0.4
 
-/** Path to the surface of the star in the way, cm; infinite when there is none. */
-export function pathToStar(walk: SphericalWalk, starRadius2: number): number {
-  if (!(walk.s < 0 && walk.b2 < starRadius2)) return Number.POSITIVE_INFINITY
-  return Math.max(0, -Math.sqrt(starRadius2 - walk.b2) - walk.s)
-}
-
 /**
  * What happens at the end of a flight inside a cell, `s` along the path: the weight loses what is absorbed, and the packet
  * goes on in a new direction. Below the `least` weight it plays roulette with that chance of `survival`. Returns the new weight, 0 when
  * the roulette ends the packet.
  */
 export function collide(
-  walk: SphericalWalk,
+  walk: Walk,
   medium: ScatterMedium,
   s: number,
   weight: number,

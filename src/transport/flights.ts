@@ -1,9 +1,10 @@
 import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
+import { sphericalOf } from '../grid/cells.js'
 import { exponential } from '../math/exponential.js'
 import { cosAzimuth } from './direction.js'
 import { ROULETTE_BELOW, SURVIVAL } from './flight.js'
 import { drawLaw, scatteringOf } from './scatter-launch.js'
-import { FLIGHT_BINS, FLIGHT_STEPS, flightLookup, type ScatterMedium } from './scatter-medium.js'
+import { centralRadius2, FLIGHT_BINS, FLIGHT_STEPS, flightLookup, type ScatterMedium } from './scatter-medium.js'
 import { ShellLauncher } from './shell-launch.js'
 
 const { lookup } = flightLookup()
@@ -37,8 +38,8 @@ export function tallyFlights(medium: ScatterMedium, packets: number, uniform: ()
   const unit = 2.3283064365386963e-10
   const golden = 0x9e3779b9
   const single = asymmetry.length === 1
-  const starRadius2 = medium.starRadius ** 2
-  squares.set(medium.walls.r.map((r) => r * r))
+  const starRadius2 = centralRadius2(medium)
+  squares.set(sphericalOf(medium.walls).r.map((r) => r * r))
   extinction.set(medium.extinction)
   albedo.set(medium.extinction.map((value, i) => (value > 0 ? scatteringOf(medium, i) / value : 0)))
   tally.fill(0, 0, cells * FLIGHT_BINS)

@@ -1,49 +1,29 @@
-import type { SphericalWalls } from '../grid/geometry.js'
-import type { SphericalWalk } from '../grid/walk.js'
+import { type Cells, drawInCell, isOctree, reachOf, type Walk } from '../grid/cells.js'
 import { type SamplingTable, sampleBin } from '../math/cdf.js'
 import { deflect, isotropicDirection } from './direction.js'
 
-/** Starts a packet on the surface of a star of radius R at the origin, by the cosine law. */
-export function launchFromSurface(walk: SphericalWalk, radius: number, uniform: () => number, out: Float64Array): void {
-  isotropicDirection(out, uniform(), uniform())
-  const [nx, ny, nz] = out
-  deflect(out, nx, ny, nz, Math.sqrt(uniform()), uniform())
-  walk.startAt(nx * radius, ny * radius, nz * radius, out[0], out[1], out[2])
-}
-
-/** Starts a packet isotropically, at a point drawn evenly in the volume of a cell. */
-export function launchFromCell(
-  walk: SphericalWalk,
-  walls: SphericalWalls,
-  cell: number,
+/** Starts a packet on the surface of a star of radius R about (x, y, z), by the cosine law. */
+export function launchFromSurface(
+  walk: Walk,
+  x: number,
+  y: number,
+  z: number,
+  radius: number,
   uniform: () => number,
   out: Float64Array
 ): void {
-  const { r, cosTheta, phi } = walls
-  const np = phi.length - 1
-  const nt = cosTheta.length - 1
-  let ir = 0
-  let it = 0
-  let ip = 0
-  if (cell > 0) {
-    ip = (cell - 1) % np
-    const rest = (cell - 1 - ip) / np
-    it = rest % nt
-    ir = 1 + (rest - it) / nt
-  }
-  const a = r[ir]
-  const b = r[ir + 1]
-  const radius = Math.cbrt(a * a * a + uniform() * (b * b * b - a * a * a))
-  const whole = ir === 0
-  const cosLow = whole ? -1 : cosTheta[it + 1]
-  const cosHigh = whole ? 1 : cosTheta[it]
-  const phiLow = whole ? 0 : phi[ip]
-  const phiHigh = whole ? 2 * Math.PI : phi[ip + 1]
-  const mu = cosLow + uniform() * (cosHigh - cosLow)
-  const azimuth = phiLow + uniform() * (phiHigh - phiLow)
-  const sin = Math.sqrt(Math.max(0, 1 - mu * mu)) * radius
   isotropicDirection(out, uniform(), uniform())
-  walk.start(sin * Math.cos(azimuth), sin * Math.sin(azimuth), mu * radius, out[0], out[1], out[2], ir, it, ip)
+  const [nx, ny, nz] = out
+  deflect(out, nx, ny, nz, Math.sqrt(uniform()), uniform())
+  walk.startAt(x + nx * radius, y + ny * radius, z + nz * radius, out[0], out[1], out[2])
+}
+
+/** Starts a packet isotropically, at a point drawn evenly in the volume of a cell. */
+export function launchFromCell(walk: Walk, cells: Cells, cell: number, uniform: () => number, out: Float64Array): void {
+  drawInCell(cells, cell, uniform, out)
+  const [x, y, z] = out
+  isotropicDirection(out, uniform(), uniform())
+  walk.startIn(x, y, z, out[0], out[1], out[2], cell)
 }
 
 /** Steps of an even sequence modulo 1: the golden section (common practice). */
@@ -64,20 +44,21 @@ export function impactParameter(out: Float64Array, outer: number, closest: numbe
   out[1] = 2 / (1 + (outer / Math.max(b, closest)) ** 2 / parts)
 }
 
-/** Starts a packet of isotropic light on its way in through the outer wall; u chooses the impact parameter. Returns its weight. */
-export function launchInwards(
-  walk: SphericalWalk,
-  { r }: SphericalWalls,
-  u: number,
-  uniform: () => number,
-  out: Float64Array
-): number {
-  impactParameter(out, r[r.length - 1], r[1], u)
+/** Cubes know no inner radius: half of the light from outside is drawn towards this share of their reach. */
+const INNER = 0.1
+
+/**
+ * Starts a packet of isotropic light on its way into the sphere about all cells; u chooses the impact parameter. Returns its weight.
+ * About cubes some miss all of them: the walk is in no cell then.
+ */
+export function launchInwards(walk: Walk, cells: Cells, u: number, uniform: () => number, out: Float64Array): number {
+  const reach = reachOf(cells)
+  impactParameter(out, reach, isOctree(cells) ? INNER * reach : cells.r[1], u)
   const [b, weight] = out
   isotropicDirection(out, uniform(), uniform())
   const [ux, uy, uz] = out
   deflect(out, ux, uy, uz, 0, uniform())
-  walk.enter(b * out[0], b * out[1], b * out[2], ux, uy, uz)
+  if (!walk.enter(b * out[0], b * out[1], b * out[2], ux, uy, uz)) walk.cell = -1
   out[0] = ux
   out[1] = uy
   out[2] = uz

@@ -1,11 +1,12 @@
 import { henyeyGreenstein } from '../dust/phase-function.js'
-import { SphericalWalk } from '../grid/walk.js'
+import { openWalk, type Walk } from '../grid/cells.js'
 import { type Detector, detectorPixels, pixelOf } from './detector.js'
-import { collide, pathToStar, ROULETTE_BELOW, SURVIVAL } from './flight.js'
+import { collide, ROULETTE_BELOW, SURVIVAL } from './flight.js'
 import { Polarisation } from './polarisation.js'
 import { Launcher, scatterHere, scatteringOf } from './scatter-launch.js'
 import type { ScatterMedium } from './scatter-medium.js'
 import { scatterTowards } from './scatter-towards.js'
+import { pathToStar } from './star-spheres.js'
 
 /** Two values a pixel: light emitted by dust and never scattered, and scattered light; all detectors one after another. */
 export interface PixelTally {
@@ -21,15 +22,14 @@ export interface PixelTally {
  * by the squared distance they are fluxes. Starlight that is not scattered is left out.
  */
 export function tallyPeeled(medium: ScatterMedium, detectors: Detector[], packets: number, uniform: () => number): PixelTally {
-  const { extinction } = medium
+  const { extinction, spheres } = medium
   const pixels = detectorPixels(detectors)
   const emitted = new Float64Array(pixels)
   const scattered = new Float64Array(pixels)
-  const walk = new SphericalWalk(medium.walls)
-  const sight = new SphericalWalk(medium.walls)
+  const walk = openWalk(medium.walls)
+  const sight = openWalk(medium.walls)
   const launcher = new Launcher(medium, packets, true)
   const out = new Float64Array(3)
-  const starRadius2 = medium.starRadius ** 2
   const polarisation = medium.tables && new Polarisation()
   const stokes = medium.tables?.polarising
     ? ([new Float64Array(pixels), new Float64Array(pixels), new Float64Array(pixels)] satisfies PixelTally['stokes'])
@@ -47,8 +47,8 @@ export function tallyPeeled(medium: ScatterMedium, detectors: Detector[], packet
       const pixel = pixelOf(detector, x, y, z)
       if (pixel >= 0) {
         const [nx, ny, nz] = detector.observer
-        sight.start(x, y, z, nx, ny, nz, walk.ir, walk.it, walk.ip)
-        const depth = depthToObserver(sight, extinction, starRadius2)
+        sight.startIn(x, y, z, nx, ny, nz, walk.cell)
+        const depth = depthToObserver(sight, extinction, spheres)
         if (depth < 80 && scatters && polarisation) {
           towardsDetector(medium, walk.cell, polarisation, frames[index], seen)
           tally[offset + pixel] += weight * seen[0] * Math.exp(-depth)
@@ -77,7 +77,7 @@ export function tallyPeeled(medium: ScatterMedium, detectors: Detector[], packet
     while (weight > 0) {
       const cell = walk.cell
       const toWall = walk.toWall()
-      const toStar = starRadius2 > 0 ? pathToStar(walk, starRadius2) : Number.POSITIVE_INFINITY
+      const toStar = spheres.length > 0 ? pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
       const free = Math.min(toStar, toWall)
       const depth = free * extinction[cell]
       if (depth >= remaining) {
@@ -95,10 +95,10 @@ export function tallyPeeled(medium: ScatterMedium, detectors: Detector[], packet
 }
 
 /** Optical depth along the rest of the walk; infinite behind a star. */
-function depthToObserver(sight: SphericalWalk, extinction: Float64Array, starRadius2: number): number {
+function depthToObserver(sight: Walk, extinction: Float64Array, spheres: Float64Array): number {
   let depth = 0
   do {
-    if (pathToStar(sight, starRadius2) < Number.POSITIVE_INFINITY) return Number.POSITIVE_INFINITY
+    if (pathToStar(sight, spheres) < Number.POSITIVE_INFINITY) return Number.POSITIVE_INFINITY
     depth += sight.toWall() * extinction[sight.cell]
   } while (depth < 80 && sight.cross() >= 0)
   return depth

@@ -1,5 +1,5 @@
 import type { ScatteringTables } from '../dust/scattering-tables.js'
-import type { SphericalWalk } from '../grid/walk.js'
+import type { Walk } from '../grid/cells.js'
 import { Stokes } from './stokes.js'
 
 /** The polarisation of a packet in space. */
@@ -17,7 +17,7 @@ export class Polarisation {
   }
 
   /** Scatters the packet at path s of the walk; the new direction goes to the walk and into `out`. */
-  scatter(tables: ScatteringTables, law: number, walk: SphericalWalk, s: number, uniform: () => number, out: Float64Array): void {
+  scatter(tables: ScatteringTables, law: number, walk: Walk, s: number, uniform: () => number, out: Float64Array): void {
     const { stokes, frame } = this
     stokes.scatter(tables, law, uniform)
     const { mu, cos, sin } = stokes

@@ -1,4 +1,4 @@
-import type { SphericalWalk } from '../grid/walk.js'
+import type { Walk } from '../grid/cells.js'
 import { sampleBin } from '../math/cdf.js'
 import { deflect, isotropicDirection } from './direction.js'
 import type { EquilibriumMedium } from './equilibrium.js'
@@ -18,7 +18,7 @@ export const LEAST_DEPTH = 6
  */
 export function diffuse(
   medium: EquilibriumMedium,
-  walk: SphericalWalk,
+  walk: Walk,
   energy: number,
   absorbed: Float64Array,
   uniform: () => number,

@@ -1,10 +1,12 @@
 import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
+import { sphericalOf, type Walk } from '../grid/cells.js'
 import type { SphericalWalk } from '../grid/walk.js'
 import { sampleBin } from '../math/cdf.js'
 import { deflect, isotropicDirection } from './direction.js'
 import { emittingCell, GOLDEN, launchFromCell, launchFromSurface, launchInwards } from './launch.js'
 import type { Polarisation } from './polarisation.js'
 import type { ScatterLaunch, ScatterMedium } from './scatter-medium.js'
+import { pathToStar } from './star-spheres.js'
 
 /** Draws the scattering law of a cell: the index into `asymmetry`. */
 export function drawLaw(medium: ScatterMedium, cell: number, uniform: () => number): number {
@@ -35,7 +37,7 @@ function firstScattering(
   u: number,
   uniform: () => number
 ): number {
-  const { r, cosTheta, phi } = medium.walls
+  const { r, cosTheta, phi } = sphericalOf(medium.walls)
   const nr = r.length - 1
   const np = phi.length - 1
   const column = sampleBin(launch.columns, 0, u)
@@ -62,9 +64,46 @@ function firstScattering(
   return scatteringOf(medium, walk.cell) / medium.extinction[walk.cell]
 }
 
+/** Takes the walk to the first scattering on its way; returns the chance of one, with the albedo: 0 where nothing is on the way. */
+function scatterOnTheWay(walk: Walk, medium: ScatterMedium, uniform: () => number): number {
+  const { extinction, spheres } = medium
+  const { x, y, z, ux, uy, uz, cell } = walk
+  let total = 0
+  let ends = false
+  do {
+    const toStar = spheres.length > 0 ? pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
+    const toWall = walk.toWall()
+    ends = toStar < toWall
+    total += Math.min(toStar, toWall) * extinction[walk.cell]
+  } while (!ends && walk.cross() >= 0)
+  if (!(total > 0)) return 0
+  let remaining = -Math.log1p(uniform() * Math.expm1(-total))
+  walk.startIn(x, y, z, ux, uy, uz, cell)
+  let last = cell
+  let lastWall = walk.s
+  for (;;) {
+    const depth = walk.toWall() * extinction[walk.cell]
+    if (depth > 0) {
+      last = walk.cell
+      lastWall = walk.sWall
+    }
+    if (depth > remaining) break
+    remaining -= depth
+    // What rounding leaves of the last depth lies in the last dust.
+    if (walk.cross() < 0) {
+      walk.startIn(x, y, z, ux, uy, uz, last)
+      walk.s = lastWall
+      remaining = 0
+      break
+    }
+  }
+  if (remaining > 0) walk.s += remaining / extinction[walk.cell]
+  return (-Math.expm1(-total) * scatteringOf(medium, walk.cell)) / extinction[walk.cell]
+}
+
 /** Scatters the packet where the walk stands: a new direction, and a new polarisation where there is one, by the law of the dust there. */
 export function scatterHere(
-  walk: SphericalWalk,
+  walk: Walk,
   medium: ScatterMedium,
   s: number,
   uniform: () => number,
@@ -101,7 +140,7 @@ export class Launcher {
   ) {}
 
   /** Starts packet n; n chooses the source evenly among the packets of the batch. */
-  next(walk: SphericalWalk, n: number, uniform: () => number, out: Float64Array): void {
+  next(walk: Walk, n: number, uniform: () => number, out: Float64Array): void {
     const { launch, launchTable, walls } = this.medium
     const choice = (n + uniform()) / this.packets
     const index = sampleBin(launchTable, 0, choice)
@@ -110,22 +149,30 @@ export class Launcher {
     const chosen = launch[index]
     const scale = 1 / (chance * this.packets)
     this.from = chosen.kind === 'dust' || chosen.kind === 'ambient' ? chosen.kind : 'star'
-    this.atScattering = this.forced && chosen.kind === 'point-star'
+    this.atScattering = this.forced && (chosen.kind === 'point-star' || chosen.kind === 'free-star')
     if (chosen.kind === 'dust') {
       launchFromCell(walk, walls, emittingCell(chosen.cells, uniform), uniform, out)
       this.weight = chosen.luminosity * scale
     } else if (chosen.kind === 'ambient') {
       if (this.lattice < 0) this.lattice = uniform()
-      this.weight = chosen.luminosity * scale * launchInwards(walk, walls, (this.lattice + n * GOLDEN) % 1, uniform, out)
+      const share = launchInwards(walk, walls, (this.lattice + n * GOLDEN) % 1, uniform, out)
+      this.weight = walk.cell < 0 ? 0 : chosen.luminosity * scale * share
     } else if (chosen.kind === 'sphere-star') {
-      launchFromSurface(walk, chosen.radius, uniform, out)
+      const [x, y, z] = chosen.at
+      launchFromSurface(walk, x, y, z, chosen.radius, uniform, out)
       this.weight = chosen.luminosity * scale
+    } else if (chosen.kind === 'free-star') {
+      const [x, y, z] = chosen.at
+      isotropicDirection(out, uniform(), uniform())
+      walk.startAt(x, y, z, out[0], out[1], out[2])
+      this.weight = chosen.luminosity * scale
+      if (this.forced) this.weight *= scatterOnTheWay(walk, this.medium, uniform)
     } else if (this.forced) {
       const column = Math.min((choice - below) / chance, 1 - 1e-12)
-      this.weight = chosen.removed * scale * firstScattering(walk, this.medium, chosen, column, uniform)
+      this.weight = chosen.removed * scale * firstScattering(walk as SphericalWalk, this.medium, chosen, column, uniform)
     } else {
       isotropicDirection(out, uniform(), uniform())
-      walk.startAtOrigin(out[0], out[1], out[2])
+      walk.startAt(0, 0, 0, out[0], out[1], out[2])
       this.weight = chosen.luminosity * scale
     }
   }

@@ -1,10 +1,11 @@
 import type { ScatteringTables } from '../dust/scattering-tables.js'
-import type { SphericalWalls } from '../grid/geometry.js'
+import type { Cells } from '../grid/cells.js'
 import type { SamplingTable } from '../math/cdf.js'
+import type { Vector } from '../scene/types.js'
 
 /** The dust at one wavelength, as flat arrays that all threads share. */
 export interface ScatterMedium {
-  walls: SphericalWalls
+  walls: Cells
   cells: number
   /** Extinction coefficient, cm-1, by cell. */
   extinction: Float64Array
@@ -17,12 +18,20 @@ export interface ScatterMedium {
   launch: ScatterLaunch[]
   /** One row: chooses the launch. */
   launchTable: SamplingTable
-  /** Radius of the largest star that is a sphere, cm; 0 for none. */
-  starRadius: number
+  /** The stars that are spheres: see `spheresOf`. */
+  spheres: Float64Array
+}
+
+/** Square of the radius of the largest sphere at the centre of cells of one dimension, cm2; 0 for none. */
+export function centralRadius2({ spheres }: ScatterMedium): number {
+  let most = 0
+  for (let i = 3; i < spheres.length; i += 4) most = Math.max(most, spheres[i])
+  return most
 }
 
 /** A kind of packet. Luminosities in erg/s/Hz. */
 export type ScatterLaunch =
+  /** Point stars at the centre of spherical cells. */
   | {
       kind: 'point-star'
       luminosity: number
@@ -33,7 +42,9 @@ export type ScatterLaunch =
       /** columns x (nr + 1): optical depth from the origin to each radial wall. */
       opticalDepth: Float64Array
     }
-  | { kind: 'sphere-star'; luminosity: number; radius: number }
+  /** A point star among cubes. */
+  | { kind: 'free-star'; luminosity: number; at: Vector }
+  | { kind: 'sphere-star'; luminosity: number; at: Vector; radius: number }
   /** Isotropic light from outside: what enters the outer sphere. */
   | { kind: 'ambient'; luminosity: number }
   /** Cells in proportion to what they emit. */

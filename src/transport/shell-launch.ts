@@ -1,4 +1,5 @@
 import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
+import { sphericalOf } from '../grid/cells.js'
 import { sampleBin } from '../math/cdf.js'
 import { GOLDEN, impactParameter } from './launch.js'
 import { drawLaw, scatteringOf } from './scatter-launch.js'
@@ -23,7 +24,7 @@ export class ShellLauncher {
   /** Starts packet n; n chooses the source evenly among the packets of the batch. */
   next(n: number, uniform: () => number): void {
     const { launch, launchTable, cells } = this.medium
-    const { r } = this.medium.walls
+    const { r } = sphericalOf(this.medium.walls)
     const index = sampleBin(launchTable, 0, (n + uniform()) / this.packets)
     const chance = launchTable.cumulative[index] - (index === 0 ? 0 : launchTable.cumulative[index - 1])
     const chosen = launch[index]
@@ -37,7 +38,8 @@ export class ShellLauncher {
       this.radius = r[cells]
       this.mu = -Math.sqrt(1 - (impact[0] / r[cells]) ** 2)
       this.weight = chosen.luminosity * scale * impact[1]
-    } else if (chosen.kind === 'sphere-star') {
+    } else if (chosen.kind === 'free-star') throw new TypeError('a star off the centre of shells')
+    else if (chosen.kind === 'sphere-star') {
       this.radius = chosen.radius
       this.cell = 0
       while (r[this.cell + 1] <= chosen.radius && this.cell < cells - 1) this.cell++
@@ -57,7 +59,7 @@ export class ShellLauncher {
   private scatter(star: Extract<ScatterLaunch, { kind: 'point-star' }>, scale: number, uniform: () => number): void {
     const { medium } = this
     const { cells, extinction, asymmetry } = medium
-    const { r } = medium.walls
+    const { r } = sphericalOf(medium.walls)
     const depths = star.opticalDepth
     const depth = -Math.log1p(uniform() * Math.expm1(-depths[cells]))
     let cell = 0

@@ -1,8 +1,9 @@
+import { sphericalOf } from '../grid/cells.js'
 import { SphericalWalk } from '../grid/walk.js'
 import { exponential } from '../math/exponential.js'
 import { ROULETTE_BELOW, SURVIVAL } from './flight.js'
 import { drawLaw, Launcher, scatteringOf } from './scatter-launch.js'
-import { FLIGHT_BINS, FLIGHT_STEPS, flightLookup, type ScatterMedium } from './scatter-medium.js'
+import { centralRadius2, FLIGHT_BINS, FLIGHT_STEPS, flightLookup, type ScatterMedium } from './scatter-medium.js'
 import { Stokes } from './stokes.js'
 
 const { lookup } = flightLookup()
@@ -17,13 +18,13 @@ export function tallyStokesFlights(medium: ScatterMedium, packets: number, unifo
   const bin = lookup
   const half = FLIGHT_STEPS / 2
   const extinction = Float64Array.from(medium.extinction)
-  const squares = medium.walls.r.map((r) => r * r)
+  const squares = sphericalOf(medium.walls).r.map((r) => r * r)
   const albedo = extinction.map((value, cell) => (value > 0 ? scatteringOf(medium, cell) / value : 0))
   const tally = new Float64Array(2 * cells * FLIGHT_BINS)
-  const starRadius2 = medium.starRadius ** 2
+  const starRadius2 = centralRadius2(medium)
   const unit = 2.3283064365386963e-10
   const golden = 0x9e3779b9
-  const walk = new SphericalWalk(medium.walls)
+  const walk = new SphericalWalk(sphericalOf(medium.walls))
   const launcher = new Launcher(medium, packets, true)
   const stokes = new Stokes()
   const out = new Float64Array(3)

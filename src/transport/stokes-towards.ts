@@ -1,9 +1,11 @@
-import { SphericalWalk } from '../grid/walk.js'
-import { collide, EARLY_BELOW, EARLY_SURVIVAL, pathToStar } from './flight.js'
+import { dimensionsOf, isOctree, openWalk } from '../grid/cells.js'
+import type { SphericalWalk } from '../grid/walk.js'
+import { collide, EARLY_BELOW, EARLY_SURVIVAL } from './flight.js'
 import { Polarisation } from './polarisation.js'
 import { Launcher, scatterHere } from './scatter-launch.js'
 import { AZIMUTH_BINS, azimuthLookup, type ScatterMedium } from './scatter-medium.js'
 import { FRAME, observerFrames, scatterTowards } from './scatter-towards.js'
+import { pathToStar } from './star-spheres.js'
 import { COPIES } from './towards.js'
 
 /**
@@ -17,15 +19,15 @@ export function tallyStokesTowards(
   packets: number,
   uniform: () => number
 ): Float64Array {
-  const { walls, cells, extinction, scattering, asymmetry } = medium
+  const { walls, cells, extinction, scattering, asymmetry, spheres } = medium
   const tables = medium.tables!
   const parts = stokesCount(medium)
   const count = observers.length / 3
   const laws = asymmetry.length
-  const axial = walls.phi.length === 2
+  const axial = dimensionsOf(walls) < 3
   const azimuths = axial ? AZIMUTH_BINS : 1
   const copies = axial ? COPIES : 1
-  const nt = walls.cosTheta.length - 1
+  const nt = isOctree(walls) ? 1 : walls.cosTheta.length - 1
   const { lookup, scale } = azimuthLookup()
   const tally = new Float64Array(cells * azimuths * count * parts)
   const towards = new Float64Array(copies * laws * count * 4)
@@ -33,12 +35,12 @@ export function tallyStokesTowards(
   const turnedFrame = new Float64Array(FRAME)
   const cosTurn = new Float64Array(copies)
   const sinTurn = new Float64Array(copies)
-  const walk = new SphericalWalk(walls)
+  const walk = openWalk(walls)
+  const polar = walk as SphericalWalk
   const launcher = new Launcher(medium, packets, true)
   const polarisation = new Polarisation()
   const { stokes, frame } = polarisation
   const out = new Float64Array(3)
-  const starRadius2 = medium.starRadius ** 2
   const golden = 0.6180339887498949
 
   for (let n = 0; n < packets; n++) {
@@ -91,7 +93,7 @@ export function tallyStokesTowards(
       }
       const cell = walk.cell
       const toWall = walk.toWall()
-      const toStar = starRadius2 > 0 ? pathToStar(walk, starRadius2) : Number.POSITIVE_INFINITY
+      const toStar = spheres.length > 0 ? pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
       const free = Math.min(toStar, toWall)
       const depth = free * extinction[cell]
       const collides = depth >= remaining
@@ -110,7 +112,7 @@ export function tallyStokesTowards(
           x /= rho
           y /= rho
         }
-        if (cell > 0) mirrored = cell + nt - 1 - 2 * walk.it
+        if (cell > 0) mirrored = cell + nt - 1 - 2 * polar.it
       }
       for (let k = 0; k < copies; k++) {
         const bin = axial ? lookup[((cosTurn[k] * x - sinTurn[k] * y + 1) * scale) | 0] : 0

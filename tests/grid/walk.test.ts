@@ -120,7 +120,7 @@ describe('SphericalWalk', () => {
     let outside = 0
     for (let n = 0; n < 200_000; n++) {
       const [ux, uy, uz] = direction(uniform)
-      walk.startAtOrigin(ux, uy, uz)
+      walk.startAt(0, 0, 0, ux, uy, uz)
       for (let event = 0; event < 20; event++) {
         const step = walk.toWall()
         // One turn in three happens exactly at a wall, where rounding puts the point on either side.

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { cellCentres } from '../../src/run/dust-cells.js'
+import { cellRadii } from '../../src/run/dust-cells.js'
 import { SOLAR_LUMINOSITY, STEFAN_BOLTZMANN } from '../../src/units/constants.js'
 import { askPython, itWith } from '../support/python.js'
 import { scipy } from '../support/scipy.js'
@@ -9,13 +9,15 @@ import { runText } from './run-text.js'
 const DEPTH = 0.5
 const ALBEDO = 0.005
 
-const scene = (at: string) => `
+const spherical = '{kind: spherical, radial: 70, polar: 60, azimuthal: 60}'
+const lengths = (place: number[]) => `[${place.map((value) => `${value} au`).join(', ')}]`
+const scene = (at: string, star = '[0 au, 0 au, 0 au]', grid = spherical) => `
 distance: 100 pc
-sources: [{name: star, temperature: 5000 K, luminosity: 1 Lsun}]
+sources: [{name: star, temperature: 5000 K, luminosity: 1 Lsun, at: ${star}}]
 opacities: {dark: {law: power, reference: {wavelength: 1 um, absorption: ${1000 * (1 - ALBEDO)} cm2/g}, slope: 0, scattering: {albedo: ${ALBEDO}, asymmetry: 0}}}
 dust:
   - {name: ball, opacity: dark, shape: {kind: ball, radius: 10 au, at: ${at}}, amount: {optical-depth: ${DEPTH}, at: 1 um}, temperature: none}
-grid: {kind: spherical, radial: 70, polar: 60, azimuthal: 60}
+grid: ${grid}
 effort: {precision: 1 %, cameras: 4000}
 spectra:
   - {name: side, view: {inclination: 70 deg, azimuth: 40 deg}, wavelengths: [1 um]}
@@ -75,14 +77,19 @@ answer = [[shares(c, view(i, a)) for i, a in [(70, 40), (130, 200)]] for c in da
 `
     const expected = askPython<[number, number][][]>(script, { centres, depth: DEPTH, albedo: ALBEDO })
     for (const [k, centre] of centres.entries()) {
-      const { spectra } = await runText(scene(`[${centre.map((value) => `${value} au`).join(', ')}]`))
-      spectra.forEach(({ direct, scattered }, i) => {
-        const [scatteredShare, directShare] = expected[k][i]
-        // The surface of the ball cuts cells: 1.0 % at most was seen, with 4000 packets and no noise to speak of.
-        expect(Math.abs(scattered[0] / direct[0] / (scatteredShare / directShare) - 1)).toBeLessThan(0.02)
-      })
-      const [side, back] = spectra.map(({ direct }) => direct[0])
-      expect(Math.abs(side / back / (expected[k][0][1] / expected[k][1][1]) - 1)).toBeLessThan(0.02)
+      // About the star, and with the ball at the origin: all moves by the same vector, and nothing else changes.
+      const origin = '[0 au, 0 au, 0 au]'
+      const away = lengths(centre.map((value) => -value))
+      for (const text of [scene(lengths(centre)), scene(origin, away, '{kind: octree, cells-at-most: 4e4}')]) {
+        const { spectra } = await runText(text)
+        spectra.forEach(({ direct, scattered }, i) => {
+          const [scatteredShare, directShare] = expected[k][i]
+          // The surface of the ball cuts cells: 1.0 % at most was seen, with 4000 packets and no noise to speak of.
+          expect(Math.abs(scattered[0] / direct[0] / (scatteredShare / directShare) - 1)).toBeLessThan(0.02)
+        })
+        const [side, back] = spectra.map(({ direct }) => direct[0])
+        expect(Math.abs(side / back / (expected[k][0][1] / expected[k][1][1]) - 1)).toBeLessThan(0.02)
+      }
     }
   })
 
@@ -97,7 +104,7 @@ grid: {kind: spherical, radial: 12, polar: 16, azimuthal: 12}
 effort: {precision: none, equilibrium: 2e5}
 `)
     const { model, dust } = run
-    const { r } = cellCentres(model)
+    const r = cellRadii(model)
     const starRadius = Math.sqrt(SOLAR_LUMINOSITY / (4 * Math.PI * STEFAN_BOLTZMANN * 5000 ** 4))
     let [sum, weights, count] = [0, 0, 0]
     for (let cell = 0; cell < model.cells; cell++) {

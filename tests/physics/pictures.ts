@@ -1,4 +1,5 @@
 import type { CameraImages } from '../../src/camera/types.js'
+import { sphericalOf } from '../../src/grid/cells.js'
 import type { RunResult } from '../../src/run/run-scene.js'
 import { LIGHT_SPEED } from '../../src/units/constants.js'
 
@@ -33,7 +34,7 @@ export function radialTemperatures(
   { model, dust }: RunResult,
   component = 0
 ): { r: number; temperature: number; sigma: number }[] {
-  const { r } = model.walls
+  const { r } = sphericalOf(model.walls)
   const rows = []
   for (let i = 1; i < r.length - 1; i++) {
     const at = component * model.cells + i

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest'
+import { sphericalOf } from '../../src/grid/cells.js'
 import { findings } from '../../src/run/findings.js'
 import { resultWarnings } from '../../src/run/result-warnings.js'
 import { AU, SOLAR_RADIUS } from '../../src/units/constants.js'
@@ -62,7 +63,8 @@ describe('dust that sublimates', () => {
     const result = await runText(scene)
     // Thin grey dust has T = T* (R* / 2 r)^1/2 (as in `inner-radius.test.ts`): 800 K at this radius, at most a cell away.
     const front = 50 * SOLAR_RADIUS * (2500 / 800) ** 2
-    const { walls, components } = result.model
+    const { components } = result.model
+    const walls = sphericalOf(result.model.walls)
     const first = components[0].density.findIndex((value) => value > 0)
     expect(walls.r[first]).toBeGreaterThan(front * (walls.r[first] / walls.r[first + 1]))
     expect(walls.r[first]).toBeLessThan(front * (walls.r[first + 1] / walls.r[first]))

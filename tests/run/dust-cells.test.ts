@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest'
+import { sphericalOf } from '../../src/grid/cells.js'
 import { buildModel } from '../../src/model/build-model.js'
 import { cellCentres, cellColumns, dustStructure } from '../../src/run/dust-cells.js'
 import { parseScene } from '../../src/scene/read.js'
@@ -16,8 +17,9 @@ const inThree: [string, string][] = [
 describe('dust cells', () => {
   it('every centre lies in its cell, by the volume that it and the cell before it bound', () => {
     const model = modelOf(sceneWith(...inThree))
-    const { r, theta, phi } = cellCentres(model)
-    const { walls, volume, cells } = model
+    const { volume, cells } = model
+    const walls = sphericalOf(model.walls)
+    const { r, theta, phi } = cellCentres(walls, cells)
     const interval = (edges: Float64Array, value: number) => edges.findLastIndex((edge) => edge <= value)
     expect([r[0], theta[0], phi[0]]).toEqual([walls.r[1] / 2, Math.PI / 2, Math.PI])
     const seen = new Set<string>()

@@ -33,7 +33,7 @@ describe('parseScene', () => {
           phase: 'henyey-greenstein'
         }
       },
-      grid: { kind: 'auto', radial: 0, polar: 0, azimuthal: 0 },
+      grid: { kind: 'auto', radial: 0, polar: 0, azimuthal: 0, width: 0, finest: 12, cellsAtMost: 100_000 },
       effort: { precision: 0.01, equilibrium: 4e6, cameras: 1e6, equilibriumAsked: false }
     })
     expect(sources[0]).toMatchObject({ kind: 'star', at: [0, 0, 0], extent: 'point', limbDarkening: 0 })
@@ -110,7 +110,7 @@ spectra: [{name: f, wavelengths: [1 um]}]`,
     )
     expect(scene.seed).toBe('17')
     expect(scene.effort).toEqual({ precision: null, equilibrium: 2e5, cameras: 1e3, equilibriumAsked: true })
-    expect(scene.grid).toEqual({ kind: 'spherical', radial: 50, polar: 0, azimuthal: 0 })
+    expect(scene.grid).toMatchObject({ kind: 'spherical', radial: 50, polar: 0, azimuthal: 0 })
     expect(scene.dust[0]).toMatchObject({ temperature: 40, shape: { outer: 60 * AU, slope: -2.5 } })
     expect(scene.opacities.soot).toMatchObject({ scattering: { albedo: 0.5 } })
     expect(scene.cameras[0].wavelengths).toEqual([0.55e-4, 870e-4, 2.99792458e10 / 230e9].map((w) => expect.closeTo(w, 14)))

@@ -96,7 +96,7 @@ describe('light scattered towards an observer', () => {
     for (let n = 0; n < packets; n++) {
       packet.reset(1, 0, 0)
       Object.assign(packet.stokes, start)
-      walk.startAtOrigin(1, 0, 0)
+      walk.startAt(0, 0, 0, 1, 0, 0)
       packet.scatter(tables, 0, walk, 0, uniform, out)
       const [x, y, z] = out
       const cell =

@@ -27,6 +27,8 @@ const TYPICAL = 1 / 50_000
 const DETAIL = 1000
 /** Samples along each side of a cube, at the middles of equal parts. */
 const SAMPLES = 3
+/** Corners, just inside. */
+const INSIDE = 0.9999
 /** Points that must lie in a cube before they count against its samples. */
 const FEW = 4
 
@@ -121,19 +123,23 @@ class Judge {
     const length = side / 2 ** level[node]
     const [x, y, z] = [0, 1, 2].map((a) => origin[a] + corner[3 * node + a] * unit)
     let [sum, least, most] = [0, Number.POSITIVE_INFINITY, 0]
-    for (let k = 0; k < SAMPLES ** 3; k++) {
-      const at = (digit: number) => ((digit % SAMPLES) + 0.5) * (length / SAMPLES)
-      const px = x + at(k)
-      const py = y + at(Math.floor(k / SAMPLES))
-      const pz = z + at(Math.floor(k / SAMPLES ** 2))
+    const sample = (fx: number, fy: number, fz: number): number => {
       let chi = 0
-      for (const { shape, scale, extinction } of request.layers) chi += scale * extinction * shape.relativeDensity(px, py, pz)
-      sum += chi
+      for (const { shape, scale, extinction } of request.layers)
+        chi += scale * extinction * shape.relativeDensity(x + fx * length, y + fy * length, z + fz * length)
       least = Math.min(least, chi)
       most = Math.max(most, chi)
+      return chi
     }
+    for (let k = 0; k < SAMPLES ** 3; k++) {
+      const at = (digit: number) => ((digit % SAMPLES) + 0.5) / SAMPLES
+      sum += sample(at(k), at(Math.floor(k / SAMPLES)), at(Math.floor(k / SAMPLES ** 2)))
+    }
+    for (let k = 0; k < 8; k++)
+      sample(...([0, 1, 2].map((a) => ((k >> a) & 1 ? INSIDE : 1 - INSIDE)) as [number, number, number]))
     const volume = length ** 3
-    const known = (sum / SAMPLES ** 3) * volume
+    // Dust that shows in a corner alone fills a part of it.
+    const known = Math.max(sum / SAMPLES ** 3, most / (2 * SAMPLES) ** 3) * volume
     const counted = points.count(node) >= FEW ? points.crossSection(node) : 0
     const dust = Math.max(known, counted)
     const hidden = detail < length ? (DETAIL * length) / detail : 0

@@ -167,6 +167,16 @@ export class OctreeWalk {
     return Math.min(dx, length - dx, dy, length - dy, dz, length - dz)
   }
 
+  /** Where a point lies in the present cell, in half sides from its middle, three numbers into `out`; returns the side, cm. */
+  within(x: number, y: number, z: number, out: Float64Array): number {
+    const { records, record, unit } = this
+    const half = 0.5 * records[record + SIZE] * unit
+    out[0] = (x - this.ox - records[record + CORNER] * unit) / half - 1
+    out[1] = (y - this.oy - records[record + CORNER + 1] * unit) / half - 1
+    out[2] = (z - this.oz - records[record + CORNER + 2] * unit) / half - 1
+    return 2 * half
+  }
+
   private aim(x0: number, y0: number, z0: number, ux: number, uy: number, uz: number): void {
     this.x0 = x0
     this.y0 = y0

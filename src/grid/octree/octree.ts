@@ -37,6 +37,11 @@ export function cellCube({ origin, side, records, nodeOf }: Octree, cell: number
   return out
 }
 
+/** Side of the smallest cells, cm: the last ones, which are the deepest. */
+export function smallestSide({ side, records, nodeOf, cells }: Octree): number {
+  return (records[RECORD * nodeOf[cells - 1] + SIZE] * side) / 2 ** LEVELS
+}
+
 /** Volume of every cell, cm3, into `out`. */
 export function cubeVolumes({ side, records, nodeOf, cells }: Octree, out: Float64Array): Float64Array {
   const unit = side / 2 ** LEVELS

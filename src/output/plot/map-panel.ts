@@ -18,29 +18,39 @@ export interface MapContent {
   title: string
 }
 
-/** Paints one map with its upper left corner at (left, top), colours logarithmic, and returns its axes and bar. */
+/** Paints one map of the meridional plane with its upper left corner at (left, top), and returns its axes and bar. */
 export function mapPanel(
   canvas: Canvas,
   structure: MeridionalStructure,
   view: MeridianView,
-  { values, map, title }: MapContent,
+  content: MapContent,
   [left, top]: [number, number]
 ): string[] {
   const { width, height } = panel
-  const axes = [outline(left, top, width, height), ...meridianAxes(view, left, top)]
+  const cells = meridianCells(structure, view, width, height)
+  return [...paintMap(canvas, cells, content, { left, top, width, height }), ...meridianAxes(view, left, top)]
+}
+
+/** Paints the cells (-1: none) of a map, row by row from the top, colours logarithmic, and returns its outline and bar. */
+export function paintMap(
+  canvas: Canvas,
+  cells: Int32Array,
+  { values, map, title }: MapContent,
+  { left, top, width, height }: { left: number; top: number; width: number; height: number }
+): string[] {
+  const frame = outline(left, top, width, height)
   const [low, high] = positiveRange(values)
-  if (!(high > 0)) return [...axes, text(left + width / 2, top + height / 2, 'does not emit', { fill: '#777' })]
+  if (!(high > 0)) return [frame, text(left + width / 2, top + height / 2, 'does not emit', { fill: '#777' })]
   // Values that differ by rounding alone are one value.
   const floor = low < high * (1 - 1e-6) ? low : high / 2
   const fraction = (value: number): number => Math.log(value / floor) / Math.log(high / floor)
-  const cells = meridianCells(structure, view, width, height)
   canvas.paint(
     { left, top, width },
     Float64Array.from(cells, (cell) => (cell < 0 ? Number.NaN : fraction(values[cell]))),
     map
   )
   return [
-    ...axes,
+    frame,
     ...colourBar(canvas, { left: left + width + 14, top, height, map, ticks: logTicks(floor, high, 6), title, fraction })
   ]
 }

@@ -34,15 +34,20 @@ export function mapPlot(structure: MeridionalStructure, title: string): Uint8Arr
   return canvas.encode()
 }
 
-function column(canvas: Canvas, structure: MeridionalStructure, component: MeridionalComponent, left: number): string[] {
-  const { name, density, temperature } = component
+/** What is shown of a component, by cell: NaN where there is no dust, or hardly any, and for the temperature of what does not emit. */
+export function shownDust({ density, temperature }: MeridionalComponent): { density: Float64Array; temperature: Float64Array } {
   const least = density.reduce((a, b) => Math.max(a, b), 0) / 10 ** decadesOfDensity
-  const dusty = (cell: number): boolean => density[cell] > least
-  const view = meridianView(structure, dusty)
   const kept = (values: Float64Array | undefined): Float64Array =>
-    density.map((_, cell) => (values && dusty(cell) ? values[cell] : Number.NaN))
-  const densities = { values: kept(density), map: viridis, title: 'density (g/cm³)' }
-  const temperatures = { values: kept(temperature), map: inferno, title: 'temperature (K)' }
+    density.map((here, cell) => (values && here > least ? values[cell] : Number.NaN))
+  return { density: kept(density), temperature: kept(temperature) }
+}
+
+function column(canvas: Canvas, structure: MeridionalStructure, component: MeridionalComponent, left: number): string[] {
+  const { name } = component
+  const { density, temperature } = shownDust(component)
+  const view = meridianView(structure, (cell) => density[cell] > 0)
+  const densities = { values: density, map: viridis, title: 'density (g/cm³)' }
+  const temperatures = { values: temperature, map: inferno, title: 'temperature (K)' }
   return [
     text(left + panel.width / 2, headHeight - 12, fitted(name, panel.width, nameStyle), nameStyle),
     ...mapPanel(canvas, structure, view, densities, [left, headHeight]),

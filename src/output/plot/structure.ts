@@ -1,5 +1,5 @@
-/** Dust in spherical cells with symmetry: what `structurePlot` draws. Lengths cm, densities g/cm3, temperatures K. */
-export type DustStructure = RadialStructure | MeridionalStructure
+/** Dust in cells: what `structurePlot` draws. Lengths cm, densities g/cm3, temperatures K. */
+export type DustStructure = RadialStructure | MeridionalStructure | PlaneStructure
 
 /** Cells that depend on the radius only. */
 export interface RadialStructure {
@@ -24,6 +24,18 @@ export interface MeridionalStructure {
   rWalls: Float64Array
   /** Walls in the cosine of the polar angle, either from 1 to -1 or from -1 to 1. */
   cosThetaWalls: Float64Array
+  components: MeridionalComponent[]
+}
+
+/** Cells of any kind, cut by planes through the origin. */
+export interface PlaneStructure {
+  kind: 'planes'
+  /** The planes reach from -half to half, cm. */
+  half: number
+  /** Pixels along each side. */
+  pixels: number
+  /** Names of the axes to the right and up; the cell in every pixel, row by row from the top. */
+  planes: { axes: [string, string]; cells: Int32Array }[]
   components: MeridionalComponent[]
 }
 

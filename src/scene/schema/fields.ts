@@ -75,12 +75,3 @@ export function unitName(accepted: readonly string[], refused: Record<string, st
     })
     .meta({ enum: accepted.filter((candidate) => !refused[candidate]) })
 }
-
-/** Part of the vocabulary that cannot be run yet: checked like any other, then refused where it stands. */
-export function notYet<Schema extends z.ZodType>(schema: Schema, what: string, key?: string) {
-  return schema.transform((value, context): never => {
-    const path = key === undefined ? [] : [key]
-    context.issues.push({ code: 'custom', message: `${what}: not available yet`, path, input: value })
-    return z.NEVER
-  })
-}

@@ -3,17 +3,13 @@ import { completeStar } from '../complete-star.js'
 import { dataFile, name, real, section } from './fields.js'
 import { quantity, vector } from './quantity-field.js'
 
-const origin = vector().refine((at) => at.every((component) => component === 0), {
-  error: () => 'a star away from the origin: not available yet'
-})
-
 const star = section({
   name: name.describe('Name of the source'),
   kind: z.literal('star').prefault('star').describe('A star (default) or an ambient field'),
   temperature: quantity('temperature').optional().describe('Effective temperature, such as `2800 K`'),
   luminosity: quantity('luminosity').optional().describe('Luminosity, such as `6000 Lsun`'),
   radius: quantity('length').optional().describe('Radius, such as `320 Rsun`'),
-  at: origin.prefault(['0 au', '0 au', '0 au']).describe('Place; default the origin'),
+  at: vector().prefault(['0 au', '0 au', '0 au']).describe('Place; default the origin'),
   extent: z
     .enum(['point', 'sphere'])
     .prefault('point')

@@ -1,0 +1,64 @@
+import type { DustLayer } from '../grid/dust-layer.js'
+import { growOctree } from '../grid/octree/grow-octree.js'
+import type { Octree } from '../grid/octree/octree.js'
+import { allocateShared } from '../math/allocate.js'
+import { SceneError } from '../scene/error.js'
+import type { Scene, ScenePath, StarSpec } from '../scene/types.js'
+import { soughtRadii } from './inner-radii.js'
+
+/** The stars away from the origin, with where they stand in the scene file. */
+export function offCentre({ sources }: Scene): { star: StarSpec; path: ScenePath }[] {
+  return sources.flatMap((star, i) =>
+    star.kind === 'star' && star.at.some((component) => component !== 0) ? [{ star, path: ['sources', i, 'at'] }] : []
+  )
+}
+
+/** Why a scene of such symmetry is laid out in cubes; undefined where spherical cells do. Throws SceneError where neither do. */
+export function reasonForCubes(scene: Scene, dimensions: 1 | 2 | 3): string | undefined {
+  const { kind } = scene.grid
+  const [away] = offCentre(scene)
+  const [sought] = soughtRadii(scene)
+  const cubes = kind === 'octree' || (kind === 'auto' && (away || (dimensions === 3 && !sought)))
+  if (kind === 'spherical' && away)
+    throw refusal(scene, away.path, 'spherical cells need every star at the origin; ask for `grid: {kind: octree}`')
+  if (cubes && sought) {
+    const { dust } = scene
+    const path = [
+      'dust',
+      sought.component,
+      ...(dust[sought.component].sublimation === undefined ? ['shape', 'inner'] : ['sublimation'])
+    ]
+    throw refusal(scene, path, 'an inner radius that follows from a temperature, in an octree: not available yet')
+  }
+  if (!cubes) return undefined
+  if (kind === 'octree') return 'grid.kind asks for it'
+  return away ? `source ${away.star.name} is away from the origin` : 'the scene is not symmetric about z'
+}
+
+/** Cubes about the dust and all stars. Throws SceneError for a star outside the width asked for. */
+export function layCubes(scene: Scene, layers: DustLayer[]): Octree {
+  const { width, finest, cellsAtMost } = scene.grid
+  const stars = scene.sources.filter((source): source is StarSpec => source.kind === 'star')
+  const needed = (star: StarSpec) => {
+    const surface = star.extent === 'sphere' ? star.radius! : 0
+    return Math.max(...star.at.map((component) => (component === 0 ? 0 : MARGIN * Math.abs(component)))) + surface
+  }
+  for (const star of stars) {
+    if (width === 0 || needed(star) < 0.5 * width) continue
+    throw refusal(
+      scene,
+      ['sources', scene.sources.indexOf(star), 'at'],
+      'the star lies outside the cube; ask for a larger `grid.width`'
+    )
+  }
+  const half = Math.max(...layers.map(({ shape }) => shape.outerRadius), ...stars.map(needed))
+  const side = width > 0 ? width : 2 * half
+  return growOctree({ layers, stars: stars.map(({ at }) => at), width: side, finest, cellsAtMost }, allocateShared)
+}
+
+/** The cube reaches farther than a star by this factor. */
+const MARGIN = 1.01
+
+function refusal(scene: Scene, path: ScenePath, message: string): SceneError {
+  return new SceneError([{ location: scene.locate(path), key: path.join('.'), message }])
+}
