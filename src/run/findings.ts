@@ -75,6 +75,7 @@ function temperaturesOf(model: Model, { temperature, sigma }: DustTemperatures, 
   const at = (cell: number) => c * cells + cell
   const known = Array.from(density.keys()).filter((cell) => density[cell] > 0 && sigma[at(cell)] < KNOWN * temperature[at(cell)])
   if (known.length === 0) return undefined
+  const nearest = known.reduce((least, cell) => Math.min(least, r[cell]), Number.POSITIVE_INFINITY)
   const best = (from: number[], score: (cell: number) => number) => {
     const cell = from.reduce((a, b) => (score(b) > score(a) ? b : a))
     return { kelvin: temperature[at(cell)], sigmaKelvin: sigma[at(cell)], radiusAu: r[cell] / AU }
@@ -82,7 +83,7 @@ function temperaturesOf(model: Model, { temperature, sigma }: DustTemperatures, 
   return {
     hottest: best(known, (cell) => temperature[at(cell)]),
     innerEdge: best(
-      known.filter((cell) => r[cell] === r[known[0]]),
+      known.filter((cell) => r[cell] === nearest),
       (cell) => density[cell]
     ),
     coldest: best(known, (cell) => -temperature[at(cell)])
