@@ -34,6 +34,8 @@ export type DepthAt = (x: number, y: number) => number
 
 /** Points across a stellar disk, in each direction, at which the optical depth in front is found. */
 const DEPTH_GRID = 24
+/** The same where another star covers a part of it. */
+const LIMB_GRID = 128
 /** Samples across a pixel or across a disk smaller than two pixels. */
 const SAMPLES = 16
 
@@ -43,21 +45,34 @@ export function directLight(star: StarImage, depthAt: DepthAt, radius: number): 
   const off = Math.hypot(x, y)
   if (star.radius === 0) return off > radius ? 0 : (star.luminosity / (4 * Math.PI)) * Math.exp(-depthAt(x, y))
   const seen = off === 0 ? Math.min(radius, star.radius) : star.radius
-  const step = seen / DEPTH_GRID
-  // Rings of equal width, in each the exact light of the annulus, dimmed at points around it.
-  let sum = 0
-  for (let i = 0; i < DEPTH_GRID; i++) {
+  const all = disk(star, depthAt, radius, seen, DEPTH_GRID)
+  // The limb of another star is sharper than any dust.
+  return all.cut ? disk(star, depthAt, radius, seen, LIMB_GRID).light : all.light
+}
+
+/**
+ * Light of a disk out to `seen` from its own centre, in rings of equal width: in each the exact light of the annulus, dimmed at points
+ * around it. `cut`: another star hides some of the points, and not all.
+ */
+function disk(star: StarImage, depthAt: DepthAt, radius: number, seen: number, points: number): { light: number; cut: boolean } {
+  const step = seen / points
+  let light = 0
+  let hidden = 0
+  for (let i = 0; i < points; i++) {
     const ring = annulus(star, i * step, (i + 1) * step)
     let dimming = 0
-    for (let k = 0; k < DEPTH_GRID; k++) {
-      const angle = (2 * Math.PI * (k + 0.5)) / DEPTH_GRID
-      const px = x + (i + 0.5) * step * Math.cos(angle)
-      const py = y + (i + 0.5) * step * Math.sin(angle)
-      if (Math.hypot(px, py) <= radius) dimming += Math.exp(-depthAt(px, py))
+    for (let k = 0; k < points; k++) {
+      const angle = (2 * Math.PI * (k + 0.5)) / points
+      const px = star.x + (i + 0.5) * step * Math.cos(angle)
+      const py = star.y + (i + 0.5) * step * Math.sin(angle)
+      if (Math.hypot(px, py) > radius) continue
+      const depth = depthAt(px, py)
+      if (depth === Number.POSITIVE_INFINITY) hidden++
+      dimming += Math.exp(-depth)
     }
-    sum += (ring * dimming) / DEPTH_GRID
+    light += (ring * dimming) / points
   }
-  return sum
+  return { light, cut: hidden > 0 && hidden < points * points }
 }
 
 /** Integral of a bare star's intensity between two radii on its disk, erg/s/Hz/sr: with m = mu^2 = 1 - (rho / R)^2. */
