@@ -75,9 +75,11 @@ export function readVisibilityChart(path: string, file: string, title: string): 
 export function readStructureCharts(path: string, file: string): ChartData[] {
   const table = unitNamed(readFits(path), 'CELLS')
   const column = (name: string) => tableColumn(table, name).values
+  const names = Array.from({ length: table.header.number('TFIELDS') ?? 0 }, (_, i) => table.header.text(`TTYPE${i + 1}`) ?? '')
+  // Cubes of an octree have no radius of their own.
+  if (!names.includes('r')) return []
   const r = column('r')
   const theta = column('theta')
-  const names = Array.from({ length: table.header.number('TFIELDS') ?? 0 }, (_, i) => table.header.text(`TTYPE${i + 1}`) ?? '')
   const components = names.filter((name) => name.startsWith('density_')).map((name) => name.slice('density_'.length))
   const densities = components.map((name) => column(`density_${name}`))
   const rows = Array.from(r.keys()).filter((i) => densities.some((density) => density[i] > 0))

@@ -58,7 +58,8 @@ describe('observing a run', () => {
       'visibilities/array.ecsv',
       'visibilities/array-closure.ecsv',
       'visibilities/array-curve.ecsv',
-      'visibilities/array.png'
+      'visibilities/array.png',
+      'report.html'
     ])
     expect(execFileSync(fitsverify.command, [join(out, 'pictures/map.fits')], { encoding: 'utf8' })).toContain(
       'found 0 warning(s) and 0 error(s)'
