@@ -37,9 +37,11 @@ export function cellCube({ origin, side, records, nodeOf }: Octree, cell: number
   return out
 }
 
-/** Side of the smallest cells, cm: the last ones, which are the deepest. */
+/** Side of the smallest cells, cm. */
 export function smallestSide({ side, records, nodeOf, cells }: Octree): number {
-  return (records[RECORD * nodeOf[cells - 1] + SIZE] * side) / 2 ** LEVELS
+  let smallest = 2 ** LEVELS
+  for (let cell = 0; cell < cells; cell++) smallest = Math.min(smallest, records[RECORD * nodeOf[cell] + SIZE])
+  return (smallest * side) / 2 ** LEVELS
 }
 
 /** Volume of every cell, cm3, into `out`. */
