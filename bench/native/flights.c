@@ -12,7 +12,8 @@ static inline double larger(double a, double b) { return a > b ? a : b; }
 static inline double smaller(double a, double b) { return a < b ? a : b; }
 
 enum { FLIGHT_BINS = 64, STEPS = 4096 };
-static const double ROULETTE_BELOW = 1e-3, SURVIVAL = 0.1;
+static const double ROULETTE_BELOW = 0.1, SPLIT_ABOVE = 4, MOST_PARTS = 32;
+enum { MOST_WAITING = 1024 };
 
 // Alea, the generator of Johannes Baagoe, seeded by a hash of a text, as the package seedrandom has it.
 static double s0, s1, s2, carry, hash;
@@ -95,6 +96,40 @@ static inline double sampleHenyeyGreenstein(double g, double u) {
   return smaller(1, larger(-1, cosine));
 }
 
+// See src/transport/importance.ts.
+static void importanceOf(const Medium *m, double *importance) {
+  double above = 0;
+  for (int cell = m->cells - 1; cell >= 0; cell--) {
+    double h[4], law = 1;
+    for (int order = 0; order < 4; order++, law *= m->asymmetry[0])
+      h[order] = (2 * order + 1) * (m->extinction[cell] - m->scattering[cell] * law);
+    double fades = 0;
+    if (h[3] > 0) {
+      const double b = h[2] + 9 * h[0] * h[1] / h[3] + 4 * h[0], c = larger(0, h[0] * h[1] * h[2]);
+      fades = sqrt(2 * c / (b + sqrt(larger(0, b * b - 36 * c / h[3]))));
+    }
+    const double depth = smaller(m->extinction[cell], fades) * (m->r[cell + 1] - m->r[cell]);
+    importance[cell] = larger(1e-200, exp(-above - 0.5 * depth));
+    above += depth;
+  }
+}
+
+static double meanImportance(const Medium *m, const double *importance) {
+  double sum = 0, before = 0;
+  for (int cell = 0; cell < m->cells; cell++) {
+    const double cumulative = -expm1(-m->opticalDepth[cell + 1]);
+    sum += (cumulative - before) * importance[cell];
+    before = cumulative;
+  }
+  return sum / before;
+}
+
+// Parts of split packets that wait for their turn.
+static struct {
+  double s, b2, weight;
+  int cell, parts;
+} waiting[MOST_WAITING];
+
 // Adds a segment to the tally, at a point drawn along it.
 #define TALLY(step)                                                                                                            \
   do {                                                                                                                         \
@@ -111,10 +146,17 @@ static void tallyFlights(const Medium *m, int packets, double *tally) {
   double *squares = malloc((cells + 1) * sizeof(double)), *albedo = malloc(cells * sizeof(double));
   for (int i = 0; i <= cells; i++) squares[i] = radii[i] * radii[i];
   for (int i = 0; i < cells; i++) albedo[i] = extinction[i] > 0 ? m->scattering[i] / extinction[i] : 0;
+  double *importance = malloc(cells * sizeof(double));
+  importanceOf(m, importance);
+  const double worth = m->removed * scale * meanImportance(m, importance);
+  const double least = ROULETTE_BELOW * worth, most = SPLIT_ABOVE * worth;
+  const double all = depths[cells], caught = -expm1(-all);
   memset(tally, 0, (size_t)cells * FLIGHT_BINS * sizeof(double));
   for (int n = 0; n < packets; n++) {
     uniform(); // chooses the source, of which there is one
-    const double first = -log1p(uniform() * expm1(-depths[cells]));
+    const double u = 2 * uniform();
+    const double first = u < 1 ? -log1p(-u * caught) : (u - 1) * all;
+    const double favour = 2 / (1 + caught * exp(first) / all);
     int cell = 0, high = cells;
     while (high - cell > 1) {
       const int middle = (cell + high) >> 1;
@@ -123,13 +165,13 @@ static void tallyFlights(const Medium *m, int packets, double *tally) {
     }
     const double share = smaller(1, (first - depths[cell]) / (depths[cell + 1] - depths[cell]));
     const double radius = radii[cell] + share * (radii[cell + 1] - radii[cell]);
-    double weight = m->removed * scale * albedo[cell];
+    double weight = m->removed * scale * favour * albedo[cell];
     const double mu = sampleHenyeyGreenstein(g, uniform());
-    const double least = ROULETTE_BELOW * weight;
     double s = radius * mu;
     double b2 = radius * radius * (1 - mu * mu);
     uint32_t place = uniform() * 0x1p32;
-    while (weight > 0) {
+    int held = 0;
+    for (;;) {
       double remaining = exponential(uniform());
       double opacity = 0;
       bool collides = false;
@@ -147,7 +189,7 @@ static void tallyFlights(const Medium *m, int packets, double *tally) {
         remaining -= depth;
         s = next;
         cell += inwards ? -1 : 1;
-        if (cell == cells) goto left;
+        if (cell == cells) goto gone;
       }
 #undef SIGNED
 #define SIGNED(at) at2
@@ -162,23 +204,39 @@ static void tallyFlights(const Medium *m, int packets, double *tally) {
         remaining -= depth;
         s = next;
         cell++;
-        if (cell == cells) goto left;
+        if (cell == cells) goto gone;
       }
 #undef SIGNED
 #define SIGNED(at) at * fabs(at)
       const double step = remaining / opacity;
       TALLY(step);
-      weight *= albedo[cell];
-      if (weight < least) weight = uniform() < SURVIVAL ? weight / SURVIVAL : 0;
       s += step;
+      weight *= albedo[cell];
+      const double here = weight * importance[cell];
+      if (here < least) {
+        if (uniform() * worth >= here) goto gone;
+        weight *= worth / here;
+      } else if (here > most && held < MOST_WAITING) {
+        const double parts = smaller(MOST_PARTS, floor(here / worth + 0.5));
+        weight /= parts;
+        waiting[held].s = s, waiting[held].b2 = b2, waiting[held].weight = weight;
+        waiting[held].cell = cell, waiting[held].parts = parts - 1;
+        held++;
+      }
+      goto scatter;
+    gone:
+      if (held == 0) break;
+      s = waiting[held - 1].s, b2 = waiting[held - 1].b2, weight = waiting[held - 1].weight, cell = waiting[held - 1].cell;
+      if (--waiting[held - 1].parts == 0) held--;
+    scatter:;
       const double r2 = b2 + s * s;
       const double turn = sampleHenyeyGreenstein(g, uniform());
       s = s * turn + sqrt(b2 * (1 - turn * turn)) * cosAzimuth(uniform());
       b2 = larger(0, r2 - s * s);
     }
-  left:;
   }
   free(squares);
+  free(importance);
   free(albedo);
 }
 
