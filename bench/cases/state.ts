@@ -30,7 +30,7 @@ async function compareState({ folder }: Tools): Promise<Measure[]> {
     return (user + system) / 1e6
   }
   const [without, with_] = await interleaved(
-    REPETITIONS,
+    2,
     () => run(false),
     () => run(true)
   )

@@ -7,7 +7,7 @@ import { type CommandRun, runCommand } from '../command.js'
 import { diskScene, envelopeScene } from '../scenes.js'
 import { openYardstick } from '../yardstick.js'
 
-const REPETITIONS = 2
+const REPETITIONS = 1
 
 interface WholeRun {
   name: string
@@ -21,21 +21,23 @@ interface WholeRun {
 
 const lastRound = ({ record }: CommandRun) => record.equilibrium!.rounds.at(-1)!
 
-const temperatures = (runs: CommandRun[]): Measure[] => [
-  { quantity: 'temperature phase, processor time', unit: 's', values: runs.map(({ record }) => record.times.dust.cpuSeconds) },
-  { quantity: 'packets', unit: '', values: runs.map(({ record }) => record.packets.equilibrium) },
-  {
-    quantity: 'relative error of temperatures',
-    unit: '',
-    values: runs.map((run) => lastRound(run).relativeError),
-    target: { atMost: 0.01 }
-  },
-  {
-    quantity: 'interactions a packet',
-    unit: '',
-    values: runs.map((run) => lastRound(run).interactions / lastRound(run).packets)
-  }
-]
+const temperatures =
+  (precision: number) =>
+  (runs: CommandRun[]): Measure[] => [
+    { quantity: 'temperature phase, processor time', unit: 's', values: runs.map(({ record }) => record.times.dust.cpuSeconds) },
+    { quantity: 'packets', unit: '', values: runs.map(({ record }) => record.packets.equilibrium) },
+    {
+      quantity: 'relative error of temperatures',
+      unit: '',
+      values: runs.map((run) => lastRound(run).relativeError),
+      target: { atMost: precision }
+    },
+    {
+      quantity: 'interactions a packet',
+      unit: '',
+      values: runs.map((run) => lastRound(run).interactions / lastRound(run).packets)
+    }
+  ]
 
 const files = (name: string) => fileURLToPath(new URL(`../../../scenes/${name}`, import.meta.url))
 
@@ -54,13 +56,14 @@ const wholeRuns: WholeRun[] = [
     name: `temperature-${depth}`,
     about: `temperatures of the spherical benchmark, optical depth ${depth} at 1 um, to 1 %`,
     scene: { text: envelopeScene(depth, '1 %') },
-    measures: temperatures
+    measures: temperatures(0.01)
   })),
   ...[1e2, 1e4, 1e6].map((depth) => ({
     name: `temperature-disk-${depth.toExponential(0).replace('+', '')}`,
-    about: `temperatures of a disk of midplane optical depth ${depth.toExponential(0)}, to 1 %`,
-    scene: { text: diskScene({ depth, temperature: 'solve', wavelengths: 1, precision: '1 %' }) },
-    measures: temperatures
+    // To 1 %, midplane optical depth 1e6 would take over five minutes of processor time.
+    about: `temperatures of a disk of midplane optical depth ${depth.toExponential(0)}, to 5 %`,
+    scene: { text: diskScene({ depth, temperature: 'solve', wavelengths: 1, precision: '5 %' }) },
+    measures: temperatures(0.05)
   })),
   {
     name: 'spectrum-90',
