@@ -2,13 +2,15 @@ import type { RunFolder } from '../run/run-folder.js'
 import { type Product, writeFolder } from '../run/write-folder.js'
 import type { Compared } from './compare-run.js'
 import { type ComparisonRecord, comparisonRecord, comparisonRecordName } from './comparison-record.js'
+import { comparisonReport } from './comparison-report.js'
 import { factorOf, placementOf } from './fit.js'
 import { comparedFits, profilePlot, residualPng } from './picture-files.js'
 import { rowsEcsv, rowsPlot } from './rows-files.js'
 
 /** Writes all files of a comparison, the record last. Throws OutputError. */
 export function writeComparison(compared: Compared, folder: RunFolder): Promise<ComparisonRecord> {
-  return writeFolder(folder, comparisonRecordName, productsOf(compared), (files) => comparisonRecord(compared, files))
+  const report = (record: ComparisonRecord) => comparisonReport(folder.path, record)
+  return writeFolder(folder, comparisonRecordName, productsOf(compared), (files) => comparisonRecord(compared, files), report)
 }
 
 function productsOf({ run, data, sets, models, parameters, values }: Compared): Product[] {

@@ -3,9 +3,10 @@ import { linearTicks } from '../output/draw/ticks.js'
 import { card, commentCard, realCard } from '../output/fits/card.js'
 import { joined } from '../output/fits/hdu.js'
 import { imageHdu } from '../output/fits/image.js'
+import { originCards } from '../output/fits/origin-cards.js'
+import { wavelengthTableHdu } from '../output/fits/wcs.js'
 import { panelSize } from '../output/png/panel-size.js'
 import { skyPicture } from '../output/png/sky-picture.js'
-import { version } from '../output/version.js'
 import { spacedWavelength, wavelengthLabel } from '../output/wavelength-label.js'
 import { ARCSECOND, DEGREE } from '../units/angles.js'
 import { residual, type Values } from './goodness.js'
@@ -28,7 +29,7 @@ function residualsOf({ data }: ComparedSet, model: Values): Float64Array {
 
 /**
  * The FITS file of a compared picture, pixels and coordinates as in the data: residuals over sigma (primary HDU), and DATA, MODEL,
- * SIGMA (data) and MODELSIG (Monte Carlo) in the unit of the data. NaN where nothing is compared.
+ * SIGMA (data) and MODELSIG (Monte Carlo) in the unit of the data, then the wavelength. NaN where nothing is compared.
  */
 export function comparedFits(set: ComparedSet, shown: ShownPicture, model: Values, title: string): Uint8Array {
   const { width, height, pixels, inUnit, unit } = shown
@@ -55,17 +56,18 @@ export function comparedFits(set: ComparedSet, shown: ShownPicture, model: Value
     ['SIGMA', errors(set.data.sigma, set.data.values), picture.unit.fits, '1 sigma of the data'],
     ['MODELSIG', errors(model.sigma, model.values), picture.unit.fits, '1 sigma of the Monte Carlo part of the run']
   ]
-  return joined(
-    parts.map(([name, values, bunit, meaning], i) =>
-      imageHdu(i === 0 ? 'primary' : 'extension', [width, height], plane(values), [
-        card('EXTNAME', name),
-        commentCard(`This image: ${meaning}.`),
-        ...(bunit ? [card('BUNIT', bunit)] : []),
-        ...place,
-        ...(i === 0 ? [card('ORIGIN', `motelight ${version}`), card('OBJECT', title.slice(0, 60))] : [])
-      ])
-    )
+  const images = parts.map(([name, values, bunit, meaning], i) =>
+    imageHdu(i === 0 ? 'primary' : 'extension', [width, height], plane(values), [
+      card('EXTNAME', name),
+      commentCard(`This image: ${meaning}.`),
+      ...(bunit ? [card('BUNIT', bunit)] : []),
+      ...place,
+      ...(i === 0
+        ? [...originCards({ title, distance: shown.distance }), card('COMPARED', set.spec.name, 'name of the data set')]
+        : [])
+    ])
   )
+  return joined([...images, wavelengthTableHdu([set.wavelength!])])
 }
 
 /** The picture (PNG) of residuals over sigma, north up, about where the source is. */

@@ -1,5 +1,6 @@
 import { readFileSync } from 'node:fs'
 import { join } from 'node:path'
+import { digits } from '../report/digits.js'
 import { shellWord } from '../report/html.js'
 import { readPhotometryChart, readVisibilityChart } from '../report/read-charts.js'
 import { readPictures } from '../report/read-picture.js'
@@ -49,8 +50,6 @@ type Finding<Kind> = Extract<ObservationFinding, { kind: Kind }>
 
 const ofKind = <Kind extends ObservationFinding['kind']>(all: ObservationFinding[], kind: Kind) =>
   all.filter((finding): finding is Finding<Kind> & ObservationFinding => finding.kind === kind)
-
-const digits = (value: number, count = 5) => String(Number(value.toPrecision(count)))
 
 function pictureTable(all: ObservationFinding[]): TableSection {
   return {

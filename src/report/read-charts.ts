@@ -34,8 +34,7 @@ export function readPhotometryChart(path: string, file: string): ChartData {
   const [wavelength, flux, sigma, noise, expected] = ['wavelength', 'flux', 'sigma', 'noise', 'expected'].map((name) =>
     ecsvNumbers(table, name)
   )
-  const order = Array.from(wavelength.keys()).sort((a, b) => wavelength[a] - wavelength[b])
-  const sorted = (values: ArrayLike<number>) => order.map((i) => values[i])
+  const sorted = sorterBy(wavelength)
   const x = sorted(wavelength)
   return {
     title: 'Fluxes',
@@ -52,6 +51,49 @@ export function readPhotometryChart(path: string, file: string): ChartData {
       { name: 'expected', values: gaps(sorted(expected)), look: 'points' }
     ],
     log: { x: true, y: true }
+  }
+}
+
+/** Data with their model, against wavelength, baseline or the axis of a profile, from the table of a comparison. Throws a DataError. */
+export function readModelChart(path: string, file: string, title: string): ChartData {
+  const table = readEcsv(path)
+  const names = [...table.columns.keys()]
+  const column = (name: string) => ecsvNumbers(table, name)
+  const [axis] = names.filter((name) => name !== 'name')
+  const baselines = axis === 'east'
+  const spectral = axis === 'wavelength'
+  const along = baselines ? column('east').map((east, i) => Math.hypot(east, column('north')[i])) : column(axis)
+  const sorted = sorterBy(along)
+  const x = sorted(along)
+  const limit = names.includes('limit') ? sorted(column('limit')) : x.map(() => 0)
+  const parts = names.includes('data') ? [''] : ['_re', '_im']
+  const unit = table.columns.get(`data${parts[0]}`)?.unit ?? ''
+  const series = parts.flatMap((end): ChartData['series'] => {
+    const of = end === '' ? '' : end === '_re' ? ', real part' : ', imaginary part'
+    const [data, sigma, model, modelSigma] = ['data', 'sigma', 'model', 'model_sigma'].map((name) =>
+      gaps(sorted(column(`${name}${end}`)))
+    )
+    return [
+      { name: `data${of}`, values: data.map((value, i) => (limit[i] ? null : value)), sigma, look: 'points' },
+      ...(limit.includes(1)
+        ? [{ name: 'upper limits', values: data.map((value, i) => (limit[i] ? value : null)), sigma, look: 'points' as const }]
+        : []),
+      { name: `model${of}`, values: model, sigma: modelSigma, look: 'points' }
+    ]
+  })
+  return {
+    title,
+    file,
+    x: spectral
+      ? wavelengthAxis(x)
+      : { label: baselines ? 'projected baseline' : axis, unit: table.columns.get(axis)?.unit ?? '', values: x },
+    // Magnitudes may count from a zero point of their own: they are not converted.
+    y: {
+      label: table.columns.has('data') ? 'value' : 'visibility',
+      units: spectral && !unit.startsWith('mag') ? unitsAt(unit, x) : reportUnits(unit, [], x)
+    },
+    series,
+    log: { x: spectral, y: spectral }
   }
 }
 
@@ -107,6 +149,12 @@ export function readStructureCharts(path: string, file: string): ChartData[] {
   }))
   const density = components.map((name) => ({ name, values: positive(`density_${name}`), look: 'line' as const }))
   return [...(warm.length > 0 ? [chart('temperature', 'K', temperature)] : []), chart('density', 'g/cm3', density)]
+}
+
+/** Puts values in the order of growing others. */
+function sorterBy(others: ArrayLike<number>): (values: ArrayLike<number>) => number[] {
+  const order = Array.from({ length: others.length }, (_, i) => i).sort((a, b) => others[a] - others[b])
+  return (values) => order.map((i) => values[i])
 }
 
 function wavelengthAxis(values: number[]): ChartData['x'] {

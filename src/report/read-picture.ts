@@ -1,8 +1,10 @@
 import { DataError } from '../data/error.js'
 import { imageValues } from '../data/fits/image.js'
+import { pixelMatrix } from '../data/fits/pixel-matrix.js'
 import { type FitsUnit, readFits, unitNamed } from '../data/fits/read.js'
 import { tableColumn } from '../data/fits/table.js'
 import { spacedWavelength, wavelengthLabels } from '../output/wavelength-label.js'
+import { ARCSECOND } from '../units/angles.js'
 import { AU, LIGHT_SPEED, PARSEC } from '../units/constants.js'
 import { intensityUnit, intensityUnits } from '../units/intensity.js'
 import { reportUnits } from './report-units.js'
@@ -11,11 +13,12 @@ import type { PictureData } from './types.js'
 /** Numbers that the pictures of one page hold at most, 5.4 bytes each. */
 const MOST_VALUES = 3e6
 
-/** A FITS file of images: where it is, its name on the page, and what to call it there. */
+/** A FITS file of images: where it is, its name on the page, what to call it there, and which of its planes to show if not all. */
 export interface PictureFile {
   path: string
   file: string
   heading: string
+  planes?: PictureData['planes']
 }
 
 /**
@@ -60,21 +63,21 @@ const meanings: Record<string, string> = {
  * The images of a FITS file that this program wrote, at most `most` numbers. The first plane and its SIGMA come first, at as many
  * wavelengths as fit, evenly spread, then the others at the same ones. Undefined when not even one image fits.
  */
-function readPicture({ path, file, heading }: PictureFile, most: number): PictureData | undefined {
+function readPicture({ path, file, heading, planes }: PictureFile, most: number): PictureData | undefined {
   const units = readFits(path)
-  const first = units[0]
-  const number = (keyword: string) => {
-    const value = first.header.number(keyword)
-    if (value === undefined) throw new DataError(path, `has no ${keyword}`)
-    return value
-  }
+  const first = planes ? unitNamed(units, planes[0].name) : units[0]
+  const distance = units[0].header.number('DIST_PC')
+  if (distance === undefined) throw new DataError(path, 'has no DIST_PC')
   const [width, height] = first.axes
   const pixels = width * height
   const all = Array.from(tableColumn(unitNamed(units, 'WAVELENGTH'), 'WAVELENGTH').values, (metres) => 100 * metres)
   const fits = Math.min(all.length, Math.floor(most / (2 * pixels)))
   if (fits === 0) return undefined
   const kept = spread(all.length, fits)
-  const images = units.filter(({ kind, axes }) => kind === 'image' && axes[0] === width && axes[1] === height)
+  const images = units.filter(
+    ({ kind, axes, name }) =>
+      kind === 'image' && axes[0] === width && axes[1] === height && (!planes || planes.some((plane) => plane.name === name))
+  )
   const notes: string[] = []
   if (fits < all.length)
     notes.push(`${fits} of ${all.length} wavelengths, evenly spread, to keep this page small; all are in ${file}.`)
@@ -88,8 +91,10 @@ function readPicture({ path, file, heading }: PictureFile, most: number): Pictur
   if (missing.length > 0)
     notes.push(`Not on this page, to keep it small: ${missing.map(({ name }) => name).join(', ')}; they are in ${file}.`)
   const wavelengths = kept.map((k) => all[k])
-  const pixel: [number, number] = [Math.abs(number('CDELT1')), Math.abs(number('CDELT2'))]
-  const pixelSr = pixel[0] * pixel[1] * (Math.PI / 180) ** 2
+  const matrix = pixelMatrix(first)
+  if (!matrix) throw new DataError(path, 'has no scale of its pixels')
+  const { perEast, perNorth, pixelSr } = matrix
+  const side = ([x, y]: [number, number]) => 1 / Math.hypot(x, y) / ARCSECOND
   const beamSr = first.header.number('BEAMSR')
   const contexts = wavelengths.map((wavelength) => ({
     frequencyHz: LIGHT_SPEED / wavelength,
@@ -97,8 +102,8 @@ function readPicture({ path, file, heading }: PictureFile, most: number): Pictur
     ...(beamSr && { beamSr })
   }))
   const names = new Set(shown.map(({ name }) => name))
-  // Magnitudes of an observation may count from a zero point of their own, which the file does not hold: they are not converted.
-  const observed = first.header.has('OBSERVED')
+  // Magnitudes of observations and data may count from a zero point of their own, which the file does not hold: they are not converted.
+  const observed = ['OBSERVED', 'COMPARED'].some((keyword) => units[0].header.has(keyword))
   const candidates = intensityUnits
     .filter((name) => (beamSr || !name.endsWith('/beam')) && !(observed && name.startsWith('mag')))
     .map(intensityUnit)
@@ -108,10 +113,12 @@ function readPicture({ path, file, heading }: PictureFile, most: number): Pictur
     file,
     width,
     height,
-    pixel: [pixel[0] * 3600, pixel[1] * 3600],
-    auPerArcsec: (number('DIST_PC') * PARSEC * Math.PI) / 180 / 3600 / AU,
+    pixel: [side(perEast), side(perNorth)],
+    auPerArcsec: (distance * PARSEC * ARCSECOND) / AU,
     wavelengths: wavelengthLabels(wavelengths).map(spacedWavelength),
     planes: shown.map(({ name }) => {
+      const given = planes?.find((plane) => plane.name === name)
+      if (given) return given
       const sigma = errorOf(name, names)
       return { name, meaning: meanings[name] ?? name, ...(sigma && { sigma }) }
     }),

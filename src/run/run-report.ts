@@ -1,5 +1,6 @@
 import { existsSync, readFileSync } from 'node:fs'
 import { join } from 'node:path'
+import { digits } from '../report/digits.js'
 import { shellWord } from '../report/html.js'
 import { readSpectrumChart, readStructureCharts } from '../report/read-charts.js'
 import { readPictures } from '../report/read-picture.js'
@@ -151,8 +152,4 @@ function packetsTable({ packets, times }: RunRecord): TableSection {
       row('images and spectra', light, times.light)
     ]
   }
-}
-
-function digits(value: number, count = 5): string {
-  return value === 0 ? '0' : String(Number(value.toPrecision(count)))
 }

@@ -15,6 +15,12 @@ observations:
   - {name: sed-10, kind: photometry, spectrum: sed, wavelength: 10 um, noise: {kind: relative, level: 5 %}}
   - {name: pair, kind: visibilities, camera: face, wavelength: 60 um, baselines: [[1 m, 0 m], [0 m, 2 m]]}
 `
+const data = `title: What was seen
+data:
+  - {name: map, kind: picture, file: night/pictures/map.fits, camera: face, wavelength: 60 um, errors: {extension: NOISE}, free: [flux]}
+  - {name: fluxes, kind: photometry, file: fluxes.csv, spectrum: sed}
+`
+const fluxes = 'wavelength [um], flux [Jy], sigma [Jy], limit\n60, 90, 20, 0\n10, 100, 20, 1\n'
 const attack = '</script><script>document.title="taken"</script><img src=x onerror=alert(1)>'
 
 let folder: string
@@ -23,11 +29,13 @@ let browser: Browser
 beforeAll(async () => {
   if (!chromium.present) return
   const scene = sceneWith(['title: Small wind', `title: '${attack}'`], ['pixels: 8', 'pixels: 9'])
-  folder = folderWith({ 'scene.yaml': scene, 'night.yaml': night })
+  folder = folderWith({ 'scene.yaml': scene, 'night.yaml': night, 'data.yaml': data, 'fluxes.csv': fluxes })
   const run = await motelight(folder, 'run', 'scene.yaml', '--out', 'run')
   expect(run.exitCode, run.stderr).toBe(0)
   const observe = await motelight(folder, 'observe', 'run', 'night.yaml', '--out', 'night')
   expect(observe.exitCode, observe.stderr).toBe(0)
+  const compare = await motelight(folder, 'compare', 'run', 'data.yaml', '--out', 'compared')
+  expect(compare.exitCode, compare.stderr).toBe(0)
   browser = await startChromium()
 })
 
@@ -95,7 +103,7 @@ describe('the page of a run', () => {
   itWith(chromium, 'opens from the disk without complaints or requests, light and dark, on a laptop and a phone', async () => {
     for (const width of [1280, 390]) {
       for (const scheme of ['light', 'dark'] as const) {
-        for (const report of ['run', 'night']) {
+        for (const report of ['run', 'night', 'compared']) {
           const { page, complaints } = await open(report, { width, scheme })
           expect(complaints).toEqual([])
           expect(await page.evaluate('document.documentElement.scrollWidth')).toBe(width)
@@ -271,9 +279,50 @@ describe('the page of an observation', () => {
   })
 })
 
+describe('the page of a comparison', () => {
+  itWith(chromium, 'shows chi-squared and what was fitted as in its record, residuals, data and model', async () => {
+    const { page, complaints } = await open('compared')
+    const { sets, all, scalings } = JSON.parse(readFileSync(join(folder, 'compared/comparison.json'), 'utf8'))
+    const cells = (heading: string) =>
+      page
+        .locator('section', { has: page.locator('h2', { hasText: heading }) })
+        .locator('tbody td')
+        .allInnerTexts()
+    const agreement = await cells('Agreement')
+    const [, value] = await cells('Fitted')
+    for (const [i, { chiSquared, degreesOfFreedom }] of [...sets, all].entries()) {
+      expect(agreement[4 * i + 1]).toBe(String(Number(chiSquared.toPrecision(5))))
+      expect(agreement[4 * i + 2]).toBe(String(Number(degreesOfFreedom.toPrecision(5))))
+    }
+    expect(value).toBe(String(Number(scalings[0].value.toPrecision(5))))
+
+    const units = readFits(join(folder, 'compared/sets/map.fits'))
+    const middle = (name: string) => imageValues(unitNamed(units, name))[4 * 9 + 4]
+    const residual = imageValues(units[0])[4 * 9 + 4]
+    expect(Math.abs(numberAt(await readout(page)) - residual)).toBeLessThanOrEqual(asShown(residual))
+    const second = page.locator('[data-picture="1"]')
+    for (const [label, plane, sigma] of [
+      ['data', 'DATA', 'SIGMA'],
+      ['model', 'MODEL', 'MODELSIG']
+    ]) {
+      await second.locator('select').first().selectOption({ label })
+      const text = await textOf(second.locator('.readout'))
+      expect(Math.abs(numberAt(text) - middle(plane))).toBeLessThanOrEqual(asShown(middle(plane)))
+      expect(Math.abs(errorAt(text) - middle(sigma))).toBeLessThanOrEqual(errorAsShown(middle(sigma)))
+    }
+    const table = readEcsv(join(folder, 'compared/sets/fluxes.ecsv'))
+    const model = ecsvNumbers(table, 'model')[ecsvNumbers(table, 'wavelength').indexOf(10)]
+    const entries = (await page.locator('[data-chart="0"] .legend li').allInnerTexts()).map((text) => text.trim())
+    expect(entries[2]).toContain('upper limits 100 ')
+    expect(Math.abs(numberAt(entries[3].slice('model '.length)) - model)).toBeLessThanOrEqual(asShown(model))
+    expect(complaints).toEqual([])
+    await page.close()
+  })
+})
+
 describe('motelight report', () => {
   itWith(chromium, 'makes the same page again, lists it, and refuses what is neither', async () => {
-    for (const report of ['run', 'night']) {
+    for (const report of ['run', 'night', 'compared']) {
       const file = join(folder, report, 'report.html')
       const before = readFileSync(file)
       const { exitCode, stdout } = await motelight(folder, 'report', report)

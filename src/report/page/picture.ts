@@ -31,7 +31,9 @@ function makePicture(host: HTMLElement, data: PictureData, maps: PageData['colou
   )
   const readout = element('output', { class: 'readout', 'aria-live': 'polite' })
   const below = element('div')
-  const isSigma = () => /^(SIGMA|NOISE)/.test(state.plane.name)
+  const isSigma = () => /^(SIGMA|NOISE|MODELSIG)/.test(state.plane.name)
+  /** About 0, with colours to match. */
+  const isSigned = () => /^([QUV]|RESIDUAL)$/.test(state.plane.name)
   const isStokes = () => /^(SIGMA_)?[QUV]$/.test(state.plane.name)
   const measured = (index: number) => {
     const sigma = sigmas ? sigmas[index] : Number.NaN
@@ -105,7 +107,7 @@ function makePicture(host: HTMLElement, data: PictureData, maps: PageData['colou
       stretch.select.selectedIndex = 0
     }
     range = usualRange(values, reach)
-    if (/^[QUV]$/.test(state.plane.name)) {
+    if (isSigned()) {
       const most = Math.max(-reach.low, reach.high)
       reach = { low: -most, high: most, even: true }
       range = { low: -most, high: most }
@@ -124,10 +126,7 @@ function makePicture(host: HTMLElement, data: PictureData, maps: PageData['colou
     data.planes.map(({ meaning }) => meaning),
     (i) => {
       state.plane = data.planes[i]
-      if (/^[QUV]$/.test(state.plane.name)) {
-        state.map = names.at(-1)!
-        map.select.selectedIndex = names.length - 1
-      }
+      useSignedColours()
       load()
     }
   )
@@ -147,6 +146,11 @@ function makePicture(host: HTMLElement, data: PictureData, maps: PageData['colou
     state.map = names[i]
     show()
   })
+  const useSignedColours = () => {
+    if (!isSigned()) return
+    state.map = names.at(-1)!
+    map.select.selectedIndex = names.length - 1
+  }
   const low = slider('from', RANGE_STEPS, (step) => {
     range.low =
       step === 0 && !reach.even && state.stretch !== 'logarithmic'
@@ -222,6 +226,7 @@ function makePicture(host: HTMLElement, data: PictureData, maps: PageData['colou
   )
   host.replaceChildren(controls, element('figure', { class: 'sky' }, canvas), readout, hint, below)
   wavelength.show(0, data.wavelengths[0])
+  useSignedColours()
   // Most pictures span many decades.
   raw = planeOf(state.plane.name)
   const first = reachOf(Float64Array.from(raw), own.kind === 'magnitude')
