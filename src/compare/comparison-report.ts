@@ -20,7 +20,7 @@ export function comparisonReport(path: string, record: ComparisonRecord): string
   const { pictures, leftOut } = readPictures(upright.flatMap(({ name }) => pictureFiles(name, at)))
   return reportPage({
     title: record.title,
-    summary: `Comparison of the run “${record.run.title}” with data: ${record.sets.map(({ name }) => name).join(', ')}.`,
+    summary: `Comparison of the run “${record.run.title}” with data: ${record.sets.map(({ name }) => name).join(', ')}. Chi-squared ${digits(record.all.chiSquared)} for ${digits(record.all.degreesOfFreedom)} degrees of freedom.`,
     warnings: [...record.warnings, ...leftOut],
     pictures: pictures.map((picture) => ({ ...picture, notes: [...picture.notes, offsetNote] })),
     charts: record.sets.map((set) => setSection(set, at, upright.includes(set))),

@@ -89,7 +89,7 @@ export function readModelChart(path: string, file: string, title: string): Chart
       : { label: baselines ? 'projected baseline' : axis, unit: table.columns.get(axis)?.unit ?? '', values: x },
     // Magnitudes may count from a zero point of their own: they are not converted.
     y: {
-      label: table.columns.has('data') ? 'value' : 'visibility',
+      label: spectral ? 'flux' : !baselines ? 'intensity' : parts.length > 1 ? 'visibility' : 'amplitude',
       units: spectral && !unit.startsWith('mag') ? unitsAt(unit, x) : reportUnits(unit, [], x)
     },
     series,

@@ -218,7 +218,9 @@ function makePicture(host: HTMLElement, data: PictureData, maps: PageData['colou
 
   const controls = element('div', { class: 'controls' })
   if (data.wavelengths.length > 1) controls.append(wavelength.box)
-  controls.append(plane.box, unit.box, stretch.box, map.box, low.box, high.box)
+  controls.append(plane.box)
+  if (data.units.length > 1) controls.append(unit.box)
+  controls.append(stretch.box, map.box, low.box, high.box)
   const hint = element(
     'p',
     { class: 'quiet' },
