@@ -4,13 +4,13 @@ import { itWith } from '../support/python.js'
 import { Cluster, slurmTool } from './cluster.js'
 import { planText, sweep, sweepFolder, tablesOf, tasksOf } from './sweeps.js'
 
-/** Resolves to the first thing found. */
-async function found<Thing>(what: string, look: () => Thing | undefined): Promise<Thing> {
+/** Resolves to the first thing found; `seen` tells what there was instead. */
+async function found<Thing>(what: string, look: () => Thing | undefined, seen: () => string = () => ''): Promise<Thing> {
   for (const start = Date.now(); Date.now() - start < 120_000; await setTimeout(100)) {
     const thing = look()
     if (thing !== undefined) return thing
   }
-  throw new Error(`not found in time: ${what}`)
+  throw new Error(`not found in time: ${what} ${seen()}`)
 }
 
 /*
@@ -43,10 +43,12 @@ itWith(slurmTool, 'a sweep that everything happens to has the table of an undist
     const orphan = await task('models', 'n1')
     process.kill(orphan, 'SIGSTOP')
     await cluster.kill('n1')
-    await found('the node is lost', () => {
-      const { stdout } = cluster.call('sinfo', '--noheader', '--Node', '--nodes=n1', '--format=%T')
-      return stdout.startsWith('down') ? stdout : undefined
-    })
+    const node = () => cluster.call('sinfo', '--noheader', '--Node', '--nodes=n1', '--format=%T').stdout
+    await found(
+      'the node is lost',
+      () => (node().startsWith('down') ? true : undefined),
+      () => `${node()} ${states().join(' ')}\n${cluster.log('slurmctld')}`
+    )
     process.kill(orphan, 'SIGCONT')
     cluster.launch('n1')
 
