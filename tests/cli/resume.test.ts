@@ -1,5 +1,6 @@
 import { existsSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
+import { setTimeout } from 'node:timers/promises'
 import { execa } from 'execa'
 import { describe, expect, it } from 'vitest'
 import { filesIn, folderWith, motelight, program, sceneText, sceneWith } from './motelight.js'
@@ -25,7 +26,8 @@ describe('--resume', () => {
     const folder = folderWith({ 'scene.yaml': text, 'whole.yaml': text })
     const words = ['run', 'scene.yaml', '--out', 'an out', '--workers', '1', '--force']
     const run = execa('node', [program, ...words], { cwd: folder, reject: false })
-    run.stderr.once('data', () => run.kill('SIGTERM'))
+    while (!existsSync(join(folder, 'an out/state/dust-rounds.bin'))) await setTimeout(5)
+    run.kill('SIGTERM')
     const stopped = await run
     expect(stopped.exitCode).toBe(3)
     const command = stopped.stderr.split('\n').at(-1)!.trim()
