@@ -1,3 +1,4 @@
+import { GOLDEN } from '../math/golden.js'
 import { GROUPS } from '../solve/groups.js'
 import type { IntensityField } from './field.js'
 import { integratePatch, type PatchIntegral, type Sector } from './patch.js'
@@ -9,7 +10,6 @@ import { unflattened } from './unflattened.js'
 const PARTS = 8
 /** Rings are of like width within this factor. */
 const ALIKE = 3
-const GOLDEN = 0.6180339887498949
 /** Rings beyond the outermost wall, where a flattened picture has none: as many for each doubling. */
 const RINGS_A_DOUBLING = 2
 

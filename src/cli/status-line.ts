@@ -1,5 +1,5 @@
 /** Nothing is shown before this, s. */
-const QUIET_START = 2
+export const QUIET_START = 2
 /** Time between two showings, s: of a line that is rewritten, and of lines that stay. */
 const REWRITTEN = 0.2
 const STAYING = 5

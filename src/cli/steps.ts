@@ -1,5 +1,4 @@
-/** Nothing is shown before this, s. */
-const QUIET_START = 2
+import { QUIET_START } from './status-line.js'
 
 /** Shows one line for each step of a command that takes long; nothing in its first seconds, or when `quiet`. */
 export function startSteps(sink: Pick<NodeJS.WriteStream, 'write'>, quiet: boolean): { show: (text: string) => void } {

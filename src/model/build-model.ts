@@ -5,7 +5,7 @@ import type { DustLayer } from '../grid/dust-layer.js'
 import { cellCount, type SphericalWalls } from '../grid/geometry.js'
 import { placeWalls } from '../grid/place-walls.js'
 import { allocateShared } from '../math/allocate.js'
-import { SceneError } from '../scene/error.js'
+import { errorAt } from '../scene/error.js'
 import type { DustSpec, Scene } from '../scene/types.js'
 import { AmountError, amountScale } from '../shapes/amount-scale.js'
 import { makeShape, plainShape } from '../shapes/make-shape.js'
@@ -104,7 +104,7 @@ function scaleOf(
   } catch (error) {
     if (!(error instanceof AmountError)) throw error
     const path = ['dust', index, 'amount', error.key]
-    throw new SceneError([{ location: scene.locate(path), key: path.join('.'), message: error.message }])
+    throw errorAt(scene, path, error.message)
   }
 }
 
@@ -116,15 +116,14 @@ function shapeOf(scene: Scene, spec: DustSpec, index: number): Shape {
     ? ['carve', 'nothing is left of the shape']
     : ['shape', 'the field has no dust within its width']
   const path = ['dust', index, key]
-  throw new SceneError([{ location: scene.locate(path), key: path.join('.'), message }])
+  throw errorAt(scene, path, message)
 }
 
 function chooseDimensions(scene: Scene, shapes: Shape[]): 1 | 2 | 3 {
   if (shapes.some(({ symmetry }) => symmetry === 'none')) {
     if (scene.grid.azimuthal === 1) {
-      const key = 'grid.azimuthal'
       const message = 'the scene is not symmetric about z: more than one cell in azimuth is needed'
-      throw new SceneError([{ location: scene.locate(key.split('.')), key, given: '1', message }])
+      throw errorAt(scene, ['grid', 'azimuthal'], message, '1')
     }
     return 3
   }

@@ -2,7 +2,7 @@ import type { OpacityLaw } from '../dust/opacity-law.js'
 import { planckNu } from '../dust/planck.js'
 import { blackbodyRange } from '../dust/wavelength-grid.js'
 import { integrate } from '../math/quadrature.js'
-import { SceneError } from '../scene/error.js'
+import { errorAt, type SceneError } from '../scene/error.js'
 import type { DustSpec, Scene, ShapeSpec } from '../scene/types.js'
 import { starSpectrum } from '../sources/star.js'
 import { AU, LIGHT_SPEED } from '../units/constants.js'
@@ -76,7 +76,7 @@ export function withInnerRadii(scene: Scene, radii: Pick<SoughtRadius, 'componen
 /** An error at the temperature that an inner radius follows from. */
 export function refusal(scene: Scene, component: number, message: string): SceneError {
   const path = ['dust', component, ...(scene.dust[component].sublimation === undefined ? ['shape', 'inner'] : ['sublimation'])]
-  return new SceneError([{ location: scene.locate(path), key: path.join('.'), message }])
+  return errorAt(scene, path, message)
 }
 
 /** Where dust has its temperature in nothing but the light of the stars: 4 pi int kappa B d(nu) = int kappa L d(nu) / (4 pi r^2). */

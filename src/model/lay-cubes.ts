@@ -2,9 +2,9 @@ import type { DustLayer } from '../grid/dust-layer.js'
 import { growOctree } from '../grid/octree/grow-octree.js'
 import type { Octree } from '../grid/octree/octree.js'
 import { allocateShared } from '../math/allocate.js'
-import { SceneError } from '../scene/error.js'
+import { errorAt } from '../scene/error.js'
 import type { Scene, ScenePath, StarSpec } from '../scene/types.js'
-import { soughtRadii } from './inner-radii.js'
+import { refusal, soughtRadii } from './inner-radii.js'
 
 /** The stars away from the origin, with where they stand in the scene file. */
 export function offCentre({ sources }: Scene): { star: StarSpec; path: ScenePath }[] {
@@ -20,16 +20,9 @@ export function reasonForCubes(scene: Scene, dimensions: 1 | 2 | 3): string | un
   const [sought] = soughtRadii(scene)
   const cubes = kind === 'octree' || (kind === 'auto' && (away || (dimensions === 3 && !sought)))
   if (kind === 'spherical' && away)
-    throw refusal(scene, away.path, 'spherical cells need every star at the origin; ask for `grid: {kind: octree}`')
-  if (cubes && sought) {
-    const { dust } = scene
-    const path = [
-      'dust',
-      sought.component,
-      ...(dust[sought.component].sublimation === undefined ? ['shape', 'inner'] : ['sublimation'])
-    ]
-    throw refusal(scene, path, 'an inner radius that follows from a temperature, in an octree: not available yet')
-  }
+    throw errorAt(scene, away.path, 'spherical cells need every star at the origin; ask for `grid: {kind: octree}`')
+  if (cubes && sought)
+    throw refusal(scene, sought.component, 'an inner radius that follows from a temperature, in an octree: not available yet')
   if (!cubes) return undefined
   if (kind === 'octree') return 'grid.kind asks for it'
   return away ? `source ${away.star.name} is away from the origin` : 'the scene is not symmetric about z'
@@ -45,7 +38,7 @@ export function layCubes(scene: Scene, layers: DustLayer[]): Octree {
   }
   for (const star of stars) {
     if (width === 0 || needed(star) < 0.5 * width) continue
-    throw refusal(
+    throw errorAt(
       scene,
       ['sources', scene.sources.indexOf(star), 'at'],
       'the star lies outside the cube; ask for a larger `grid.width`'
@@ -58,7 +51,3 @@ export function layCubes(scene: Scene, layers: DustLayer[]): Octree {
 
 /** The cube reaches farther than a star by this factor. */
 const MARGIN = 1.01
-
-function refusal(scene: Scene, path: ScenePath, message: string): SceneError {
-  return new SceneError([{ location: scene.locate(path), key: path.join('.'), message }])
-}

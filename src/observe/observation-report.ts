@@ -1,7 +1,7 @@
 import { readFileSync } from 'node:fs'
 import { join } from 'node:path'
+import { shellWord } from '../output/shell-word.js'
 import { digits } from '../report/digits.js'
-import { shellWord } from '../report/html.js'
 import { readPhotometryChart, readVisibilityChart } from '../report/read-charts.js'
 import { readPictures } from '../report/read-picture.js'
 import { reportPage } from '../report/report-page.js'

@@ -16,8 +16,3 @@ export function tableHtml(caption: string, columns: string[], rows: string[][]):
 export function jsonInScript(value: unknown): string {
   return JSON.stringify(value).replaceAll('<', '\\u003c')
 }
-
-/** A word as a shell takes it. */
-export function shellWord(word: string): string {
-  return /^[\w./:=@%+,-]+$/.test(word) ? word : `'${word.replaceAll("'", "'\\''")}'`
-}

@@ -1,5 +1,6 @@
 import type { Model } from '../model/model.js'
 import { observedWavelengths } from '../model/wavelengths.js'
+import { hasAmbient } from '../scene/has-ambient.js'
 import { isPolarised } from '../scene/is-polarised.js'
 import { GROUPS } from '../solve/groups.js'
 import { ANGLE_NODES } from '../solve/scattered-light.js'
@@ -39,7 +40,7 @@ export function memoryEstimate(sizes: Sizes, workers: number): MemoryEstimate {
   const sizesOf = scene.cameras.map(({ pixels, wavelengths }) => [pixels[0] * pixels[1], wavelengths.length])
   const values = sizesOf.reduce((sum, [pixels, count]) => sum + pixels * count, 0)
   const largest = Math.max(0, ...sizesOf.map(([pixels, count]) => pixels * count))
-  const planes = (parts > 1 ? 11 : 5) + (scene.sources.some(({ kind }) => kind === 'ambient') ? 1 : 0)
+  const planes = (parts > 1 ? 11 : 5) + (hasAmbient(scene) ? 1 : 0)
   return {
     program: PROGRAM_BYTES,
     worker: WORKER_BYTES + WAITING * tally,

@@ -1,5 +1,5 @@
 import { observedWavelengths } from '../model/wavelengths.js'
-import { SceneError } from '../scene/error.js'
+import { errorAt } from '../scene/error.js'
 import type { Scene } from '../scene/types.js'
 import { divide } from '../solve/batches.js'
 import { dustLight } from '../solve/dust-light.js'
@@ -31,9 +31,8 @@ export function partFolder({ index, of }: Part): string {
 export function requireParts(scene: Scene, of: number): void {
   const { precision, cameras } = scene.effort
   if (precision !== null) {
-    const key = 'effort.precision'
     const message = 'parts need `precision: none`: how many packets a precision takes is known only from all parts together'
-    throw new SceneError([{ location: scene.locate(['effort', 'precision']), key, message }])
+    throw errorAt(scene, ['effort', 'precision'], message)
   }
   const { count } = divide(cameras)
   if (of > count)

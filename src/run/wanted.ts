@@ -1,6 +1,7 @@
 import { starsOnSky } from '../camera/stars-on-sky.js'
 import { STOKES, stokesPlanes } from '../camera/stokes-planes.js'
 import type { ApertureSpectrum, CameraImages } from '../camera/types.js'
+import { hasAmbient } from '../scene/has-ambient.js'
 import { isPolarised } from '../scene/is-polarised.js'
 import type { CameraSpec, Scene, SpectrumSpec } from '../scene/types.js'
 import type { Estimator } from './estimator.js'
@@ -95,8 +96,4 @@ function placeOf(want: Wanted) {
 
 function indicesOf(values: number[], value: number): number[] {
   return values.flatMap((other, k) => (other === value ? [k] : []))
-}
-
-function hasAmbient({ sources }: Scene): boolean {
-  return sources.some(({ kind }) => kind === 'ambient')
 }

@@ -1,4 +1,4 @@
-import type { SourceLocation } from './types.js'
+import type { Scene, ScenePath, SourceLocation } from './types.js'
 
 /** Something the user can mend in a file: where it is, which key, what was given, what is accepted. */
 export interface SceneProblem {
@@ -25,6 +25,11 @@ export class SceneError extends Error {
     super([...told, ...(more > 0 ? [`and ${more} more problems`] : [])].join('\n'))
     this.name = 'SceneError'
   }
+}
+
+/** The error of one key of a scene that stands otherwise. */
+export function errorAt({ locate }: Pick<Scene, 'locate'>, path: ScenePath, message: string, given?: string): SceneError {
+  return new SceneError([{ location: locate(path), key: path.join('.'), ...(given !== undefined && { given }), message }])
 }
 
 function describeProblem({ location, key, given, message }: SceneProblem): string {

@@ -18,8 +18,8 @@ export type TurningMatrices = Float64Array[]
 
 /** The scattering matrix between the planes of the radius, averaged over azimuth and over a bin of flight directions. */
 export function turningMatrices(tables: ScatteringTables): TurningMatrices {
+  const { edges } = flightLookup()
   return Array.from({ length: tables.laws }, (_, law) => {
-    const { edges } = flightLookup()
     const matrix = new Float64Array(ANGLE_NODES * FLIGHT_BINS * 4)
     for (let node = 0; node < ANGLE_NODES; node++) {
       const towards = 1 - 2 * (node / (ANGLE_NODES - 1)) ** 2

@@ -1,6 +1,7 @@
 import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
 import { sphericalOf } from '../grid/cells.js'
 import { exponential } from '../math/exponential.js'
+import { GOLDEN_STEP, SHARE_OF_STEP } from '../math/golden.js'
 import { cosAzimuth } from './direction.js'
 import { importanceOf } from './importance.js'
 import { drawLaw, scatteringOf } from './scatter-launch.js'
@@ -51,8 +52,8 @@ export function tallyFlights(medium: ScatterMedium, packets: number, uniform: ()
   const tally = flights
   const bin = lookup
   const half = FLIGHT_STEPS / 2
-  const unit = 2.3283064365386963e-10
-  const golden = 0x9e3779b9
+  const unit = SHARE_OF_STEP
+  const golden = GOLDEN_STEP
   const single = asymmetry.length === 1
   const starRadius2 = centralRadius2(medium)
   squares.set(sphericalOf(medium.walls).r.map((r) => r * r))

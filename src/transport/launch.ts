@@ -26,9 +26,6 @@ export function launchFromCell(walk: Walk, cells: Cells, cell: number, uniform: 
   walk.startIn(x, y, z, out[0], out[1], out[2], cell)
 }
 
-/** Steps of an even sequence modulo 1: the golden section (common practice). */
-export const GOLDEN = 0.6180339887498949
-
 /**
  * Impact parameter (cm) of isotropic light that enters a sphere of radius `outer`, and its weight, into `out`. Half of the packets
  * (u < 0.5) are spread evenly over the area, as the light is; half as 1 / b^2, evenly within `closest`, so that dust far inside is

@@ -1,8 +1,9 @@
 import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
 import { sphericalOf } from '../grid/cells.js'
 import { sampleBin } from '../math/cdf.js'
+import { GOLDEN } from '../math/golden.js'
 import { meanImportance } from './importance.js'
-import { GOLDEN, impactParameter } from './launch.js'
+import { impactParameter } from './launch.js'
 import { drawLaw, scatteringOf } from './scatter-launch.js'
 import type { ScatterLaunch, ScatterMedium } from './scatter-medium.js'
 

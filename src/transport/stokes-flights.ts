@@ -1,6 +1,7 @@
 import { sphericalOf } from '../grid/cells.js'
 import { SphericalWalk } from '../grid/walk.js'
 import { exponential } from '../math/exponential.js'
+import { GOLDEN_STEP, SHARE_OF_STEP } from '../math/golden.js'
 import { ROULETTE_BELOW, SURVIVAL } from './flight.js'
 import { drawLaw, Launcher, scatteringOf } from './scatter-launch.js'
 import { centralRadius2, FLIGHT_BINS, FLIGHT_STEPS, flightLookup, type ScatterMedium } from './scatter-medium.js'
@@ -22,8 +23,8 @@ export function tallyStokesFlights(medium: ScatterMedium, packets: number, unifo
   const albedo = extinction.map((value, cell) => (value > 0 ? scatteringOf(medium, cell) / value : 0))
   const tally = new Float64Array(2 * cells * FLIGHT_BINS)
   const starRadius2 = centralRadius2(medium)
-  const unit = 2.3283064365386963e-10
-  const golden = 0x9e3779b9
+  const unit = SHARE_OF_STEP
+  const golden = GOLDEN_STEP
   const walk = new SphericalWalk(sphericalOf(medium.walls))
   const launcher = new Launcher(medium, packets, true)
   const stokes = new Stokes()

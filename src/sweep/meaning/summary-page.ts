@@ -1,3 +1,4 @@
+import { escaped } from '../../report/html.js'
 import { inScene } from '../plan/value.js'
 import type { Outcomes } from '../results/sweep-table.js'
 import type { Sweep } from '../types.js'
@@ -61,8 +62,4 @@ ${maps.length > 0 ? `<h2>Pairs</h2>\n${maps.join('\n')}` : ''}
 function table([header, ...rows]: string[][]): string {
   const line = (tag: string, cells: string[]) => `<tr>${cells.map((cell) => `<${tag}>${escaped(cell)}</${tag}>`).join('')}</tr>`
   return `<table>\n${[line('th', header), ...rows.map((row) => line('td', row))].join('\n')}\n</table>`
-}
-
-function escaped(text: string): string {
-  return text.replaceAll('&', '&amp;').replaceAll('<', '&lt;').replaceAll('>', '&gt;').replaceAll('"', '&quot;')
 }
