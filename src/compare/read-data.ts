@@ -1,19 +1,12 @@
-import { basename, extname } from 'node:path'
 import { z } from 'zod'
 import { firstImage, parseFits } from '../data/fits/read.js'
 import { parseTable } from '../data/table.js'
 import { beamOf, lightOf } from '../observe/read-instrument.js'
 import type { LightSpec } from '../observe/types.js'
 import { fluxOf } from '../observe/unit.js'
-import { byPlace } from '../scene/by-place.js'
-import { DataFiles } from '../scene/data-files.js'
-import { SceneError } from '../scene/error.js'
-import { issueProblems, locateProblem } from '../scene/issue-problems.js'
-import { largestSceneFile } from '../scene/limits.js'
-import { readText } from '../scene/read-text.js'
-import { sha256 } from '../scene/sha256.js'
-import { wording } from '../scene/wording.js'
-import { YamlDocument } from '../scene/yaml-document.js'
+import type { DataFiles } from '../scene/data-files.js'
+import { readListFile } from '../scene/read-list-file.js'
+import type { ScenePath } from '../scene/types.js'
 import { DEGREE } from '../units/angles.js'
 import { errorsIn, type MeasuredPicture, parsePicture, planeLike, soundErrors } from './measured-picture.js'
 import { type DataEntry, dataSchema } from './schema/data-schema.js'
@@ -21,32 +14,8 @@ import type { MeasuredSpec, Measurements } from './types.js'
 
 /** Reads a file of data. Throws a SceneError that lists every problem found in it and in the files it names. */
 export function readData(file: string): Measurements {
-  const content = readText(file, largestSceneFile)
-  if ('reason' in content)
-    throw new SceneError([{ location: { file, line: 1, column: 1 }, key: '', message: `the file of data ${content.reason}` }])
-  const document = new YamlDocument(content.text, file)
-  const result = dataSchema.safeParse(document.value, { error: wording, reportInput: true })
-  const files = new DataFiles(file, document)
-  const problems = issueProblems(result.error?.issues ?? [], document)
-  const entries = result.data?.data ?? []
-  entries.forEach(({ name }, i) => {
-    if (entries.findIndex((other) => other.name.toLowerCase() === name.toLowerCase()) < i)
-      problems.push(
-        locateProblem(document, ['data', i, 'name'], 'the name is used twice; names must differ in more than capitals')
-      )
-  })
-  const sets = entries.map((entry, i) => resolved(entry, ['data', i], files))
-  problems.push(...files.problems)
-  if (!result.success || problems.length > 0) throw new SceneError(problems.sort(byPlace(file)))
-  return {
-    file,
-    text: content.text,
-    title: result.data.title ?? basename(file, extname(file)),
-    free: result.data.free,
-    sets: sets.filter((spec) => spec !== undefined),
-    inputs: [{ file, sha256: sha256(content.text) }, ...files.inputs],
-    problemAt: (path, message) => locateProblem(document, path, message)
-  }
+  const { content, specs, ...list } = readListFile(file, 'file of data', dataSchema, 'data', resolved)
+  return { ...list, free: content.free, sets: specs }
 }
 
 /** JSON Schema (draft 2020-12) of a file of data. */
@@ -54,10 +23,8 @@ export function dataJsonSchema(): Record<string, unknown> {
   return { ...z.toJSONSchema(dataSchema, { io: 'input', target: 'draft-2020-12' }), title: 'Motelight data' }
 }
 
-type Path = (string | number)[]
-
 /** An entry with its files read; undefined where one cannot be used. */
-function resolved(entry: DataEntry, path: Path, files: DataFiles): MeasuredSpec | undefined {
+function resolved(entry: DataEntry, path: ScenePath, files: DataFiles): MeasuredSpec | undefined {
   const zero = entry.kind === 'photometry' || 'zero-magnitude' in entry ? entry['zero-magnitude'] : undefined
   const common = { name: entry.name, ...(entry.free && { free: entry.free }), ...(zero && { zeroMagnitude: fluxOf(zero, 1) }) }
   if (entry.kind === 'picture') return pictureOf(entry, common, path, files)
@@ -91,14 +58,14 @@ function resolved(entry: DataEntry, path: Path, files: DataFiles): MeasuredSpec 
 
 type PictureEntry = Extract<DataEntry, { kind: 'picture' }>
 
-function pictureOf(entry: PictureEntry, common: { name: string }, path: Path, files: DataFiles): MeasuredSpec | undefined {
+function pictureOf(entry: PictureEntry, common: { name: string }, path: ScenePath, files: DataFiles): MeasuredSpec | undefined {
   const { errors, centre } = entry
   const picture = files.readField(entry.file, [...path, 'file'], (bytes, file) => {
     const measured = parsePicture(bytes, file)
     return 'extension' in errors ? { ...measured, errors: errorsIn(measured, errors.extension) } : measured
   })
   if (!picture) return undefined
-  const alike = (name: string, key: Path) =>
+  const alike = (name: string, key: ScenePath) =>
     files.readField(name, [...path, ...key], (bytes, file) => planeLike(firstImage(parseFits(bytes, file)), picture))
   const sigma =
     'file' in errors

@@ -1,14 +1,7 @@
-import { basename, extname } from 'node:path'
 import { z } from 'zod'
-import { byPlace } from '../scene/by-place.js'
-import { DataFiles } from '../scene/data-files.js'
-import { SceneError } from '../scene/error.js'
-import { issueProblems, locateProblem } from '../scene/issue-problems.js'
-import { largestSceneFile } from '../scene/limits.js'
-import { readText } from '../scene/read-text.js'
-import { sha256 } from '../scene/sha256.js'
-import { wording } from '../scene/wording.js'
-import { YamlDocument } from '../scene/yaml-document.js'
+import type { DataFiles } from '../scene/data-files.js'
+import { readListFile } from '../scene/read-list-file.js'
+import type { ScenePath } from '../scene/types.js'
 import { parseKernel } from './kernel.js'
 import { instrumentSchema, type ObservationEntry } from './schema/instrument-schema.js'
 import { parseBaselines, parseResponse } from './tables.js'
@@ -17,32 +10,8 @@ import { fluxOf } from './unit.js'
 
 /** Reads an instrument file. Throws a SceneError that lists every problem found in it and in the data files it names. */
 export function readInstrument(file: string, overrides: { seed?: string } = {}): Instrument {
-  const content = readText(file, largestSceneFile)
-  if ('reason' in content)
-    throw new SceneError([{ location: { file, line: 1, column: 1 }, key: '', message: `the instrument file ${content.reason}` }])
-  const document = new YamlDocument(content.text, file)
-  const result = instrumentSchema.safeParse(document.value, { error: wording, reportInput: true })
-  const files = new DataFiles(file, document)
-  const problems = issueProblems(result.error?.issues ?? [], document)
-  const entries = result.data?.observations ?? []
-  entries.forEach(({ name }, i) => {
-    if (entries.findIndex((other) => other.name.toLowerCase() === name.toLowerCase()) < i)
-      problems.push(
-        locateProblem(document, ['observations', i, 'name'], 'the name is used twice; names must differ in more than capitals')
-      )
-  })
-  const observations = entries.map((entry, i) => resolved(entry, ['observations', i], files))
-  problems.push(...files.problems)
-  if (!result.success || problems.length > 0) throw new SceneError(problems.sort(byPlace(file)))
-  return {
-    file,
-    text: content.text,
-    title: result.data.title ?? basename(file, extname(file)),
-    seed: overrides.seed ?? result.data.seed,
-    observations: observations.filter((spec) => spec !== undefined),
-    inputs: [{ file, sha256: sha256(content.text) }, ...files.inputs],
-    problemAt: (path, message) => locateProblem(document, path, message)
-  }
+  const { content, specs, ...list } = readListFile(file, 'instrument file', instrumentSchema, 'observations', resolved)
+  return { ...list, seed: overrides.seed ?? content.seed, observations: specs }
 }
 
 /** JSON Schema (draft 2020-12) of an instrument file. */
@@ -50,10 +19,8 @@ export function instrumentJsonSchema(): Record<string, unknown> {
   return { ...z.toJSONSchema(instrumentSchema, { io: 'input', target: 'draft-2020-12' }), title: 'Motelight instrument' }
 }
 
-type Path = (string | number)[]
-
 /** An entry with its files read; undefined where one cannot be used. */
-function resolved(entry: ObservationEntry, path: Path, files: DataFiles): ObservationSpec | undefined {
+function resolved(entry: ObservationEntry, path: ScenePath, files: DataFiles): ObservationSpec | undefined {
   const light = lightOf(entry, path, files)
   const zero = entry['zero-magnitude']
   const base = { name: entry.name, unit: entry.unit, ...(zero && { zeroMagnitude: fluxOf(zero, 1) }) }
@@ -90,7 +57,7 @@ function resolved(entry: ObservationEntry, path: Path, files: DataFiles): Observ
 /** The light that an entry names, with the response of its band read. */
 export function lightOf(
   { wavelength, band }: Pick<ObservationEntry, 'wavelength' | 'band'>,
-  path: Path,
+  path: ScenePath,
   files: DataFiles
 ): LightSpec | undefined {
   if (wavelength !== undefined) return { kind: 'line', wavelength }
@@ -105,7 +72,7 @@ export function lightOf(
 type PictureEntry = Extract<ObservationEntry, { kind: 'picture' }>
 
 /** The beam that an entry names, with its kernel read. */
-export function beamOf(beam: NonNullable<PictureEntry['beam']>, path: Path, files: DataFiles): BeamSpec | undefined {
+export function beamOf(beam: NonNullable<PictureEntry['beam']>, path: ScenePath, files: DataFiles): BeamSpec | undefined {
   switch (beam.kind) {
     case 'gaussian':
       return { kind: beam.kind, major: beam.major, minor: beam.minor ?? beam.major, positionAngle: beam['position-angle'] }

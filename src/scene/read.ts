@@ -5,12 +5,11 @@ import { parseDensityPoints } from './density-points.js'
 import { SceneError, type SceneProblem } from './error.js'
 import { parseDensityCube } from './fits-cube.js'
 import { issueProblems, locateProblem } from './issue-problems.js'
-import { largestSceneFile } from './limits.js'
 import { linkProblems } from './link-problems.js'
 import { resolveCamera, resolveSpectrum } from './observers.js'
 import { opacitySpec } from './opacities.js'
 import { type SoundParts, soundParts } from './parts.js'
-import { readText } from './read-text.js'
+import { readUserFile } from './read-list-file.js'
 import { sceneSchema } from './schema/scene-schema.js'
 import { sha256 } from './sha256.js'
 import { parseIntensityTable, parseSpectrumTable } from './tables.js'
@@ -20,10 +19,8 @@ import { YamlDocument } from './yaml-document.js'
 
 /** Reads a scene file. Throws a SceneError that lists every problem found in it and in the data files it names. */
 export function readScene(file: string, overrides: { seed?: string } = {}): Scene {
-  const content = readText(file, largestSceneFile)
-  if ('reason' in content)
-    throw new SceneError([{ location: { file, line: 1, column: 1 }, key: '', message: `the scene file ${content.reason}` }])
-  const scene = parseScene(content.text, file)
+  const text = readUserFile(file, 'scene file')
+  const scene = parseScene(text, file)
   return { ...scene, seed: overrides.seed ?? scene.seed }
 }
 

@@ -6,6 +6,7 @@ import { isRecord } from '../../scene/is-record.js'
 import { issueProblems, locateProblem } from '../../scene/issue-problems.js'
 import { largestSceneFile } from '../../scene/limits.js'
 import { parseScene } from '../../scene/read.js'
+import { readUserFile } from '../../scene/read-list-file.js'
 import { readText } from '../../scene/read-text.js'
 import { wording } from '../../scene/wording.js'
 import { YamlDocument } from '../../scene/yaml-document.js'
@@ -17,10 +18,8 @@ import { planSchema } from './plan-schema.js'
 
 /** Reads a plan and all it names. Throws a SceneError that lists what is wrong, in the plan, the scene or their data files. */
 export function readPlan(file: string): Sweep {
-  const content = readText(file, largestSceneFile)
-  if ('reason' in content)
-    throw new SceneError([{ location: { file, line: 1, column: 1 }, key: '', message: `the plan file ${content.reason}` }])
-  const document = new YamlDocument(content.text, file)
+  const text = readUserFile(file, 'plan file')
+  const document = new YamlDocument(text, file)
   const result = planSchema.safeParse(document.value, { error: wording, reportInput: true })
   if (!result.success) throw new SceneError(issueProblems(result.error.issues, document))
   const written = result.data
