@@ -1,12 +1,11 @@
-import { dimensionsOf, isOctree, openWalk } from '../grid/cells.js'
-import type { SphericalWalk } from '../grid/walk.js'
+import { openWalk } from '../grid/cells.js'
 import { collide, EARLY_BELOW, EARLY_SURVIVAL } from './flight.js'
 import { Polarisation } from './polarisation.js'
 import { Launcher, scatterHere } from './scatter-launch.js'
-import { AZIMUTH_BINS, azimuthLookup, type ScatterMedium } from './scatter-medium.js'
+import type { ScatterMedium } from './scatter-medium.js'
 import { FRAME, observerFrames, scatterTowards } from './scatter-towards.js'
 import { pathToStar } from './star-spheres.js'
-import { COPIES } from './towards.js'
+import { TurnedCopies } from './turned-copies.js'
 
 /**
  * As `tallyTowards` for laws in tables: `stokesCount` numbers (I, Q, U, V; I alone where no law polarises) where that has one.
@@ -24,24 +23,17 @@ export function tallyStokesTowards(
   const parts = stokesCount(medium)
   const count = observers.length / 3
   const laws = asymmetry.length
-  const axial = dimensionsOf(walls) < 3
-  const azimuths = axial ? AZIMUTH_BINS : 1
-  const copies = axial ? COPIES : 1
-  const nt = isOctree(walls) ? 1 : walls.cosTheta.length - 1
-  const { lookup, scale } = azimuthLookup()
-  const tally = new Float64Array(cells * azimuths * count * parts)
-  const towards = new Float64Array(copies * laws * count * 4)
+  const copies = new TurnedCopies(walls)
+  const { count: turns, cos: cosTurn, sin: sinTurn, places } = copies
+  const tally = new Float64Array(cells * copies.azimuths * count * parts)
+  const towards = new Float64Array(turns * laws * count * 4)
   const frames = observerFrames(observers)
   const turnedFrame = new Float64Array(FRAME)
-  const cosTurn = new Float64Array(copies)
-  const sinTurn = new Float64Array(copies)
   const walk = openWalk(walls)
-  const polar = walk as SphericalWalk
   const launcher = new Launcher(medium, packets, true)
   const polarisation = new Polarisation()
   const { stokes, frame } = polarisation
   const out = new Float64Array(3)
-  const golden = 0.6180339887498949
 
   for (let n = 0; n < packets; n++) {
     launcher.next(walk, n, uniform, out)
@@ -51,16 +43,13 @@ export function tallyStokesTowards(
     let weight = first
     let turned = true
     let remaining = -Math.log(uniform())
-    let along = uniform()
+    copies.begin(uniform)
     while (weight > 0) {
       if (turned) {
-        const start = axial ? uniform() : 0
-        for (let k = 0; k < copies; k++) {
-          const turn = (2 * Math.PI * (start + k)) / copies
-          const cos = Math.cos(turn)
-          const sin = Math.sin(turn)
-          cosTurn[k] = cos
-          sinTurn[k] = sin
+        copies.turn(uniform)
+        for (let k = 0; k < turns; k++) {
+          const cos = cosTurn[k]
+          const sin = sinTurn[k]
           const mirror = k % 2 === 0 ? 1 : -1
           for (let i = 0; i < FRAME; i += 3) {
             // e is a cross product: a mirror turns it round.
@@ -85,7 +74,7 @@ export function tallyStokesTowards(
                 towards,
                 to
               )
-              for (let part = 0; part < parts; part++) towards[to + part] /= copies
+              for (let part = 0; part < parts; part++) towards[to + part] /= turns
             }
           }
         }
@@ -98,26 +87,11 @@ export function tallyStokesTowards(
       const depth = free * extinction[cell]
       const collides = depth >= remaining
       const step = collides ? remaining / extinction[cell] : free
-      let x = 0
-      let y = 0
-      let mirrored = cell
-      if (axial) {
-        along += golden
-        along -= along | 0
-        const s = walk.s + along * step
-        x = walk.x0 + s * walk.ux
-        y = walk.y0 + s * walk.uy
-        const rho = Math.sqrt(x * x + y * y)
-        if (rho > 0) {
-          x /= rho
-          y /= rho
-        }
-        if (cell > 0) mirrored = cell + nt - 1 - 2 * polar.it
-      }
-      for (let k = 0; k < copies; k++) {
-        const bin = axial ? lookup[((cosTurn[k] * x - sinTurn[k] * y + 1) * scale) | 0] : 0
+      copies.place(walk, step)
+      const { x, y } = copies
+      for (let k = 0; k < turns; k++) {
         const fold = sinTurn[k] * x + cosTurn[k] * y < 0 ? -1 : 1
-        const base = ((k % 2 === 0 ? cell : mirrored) * azimuths + bin) * count * parts
+        const base = places[k] * count * parts
         for (let law = 0; law < laws; law++) {
           const amount = weight * step * scattering[law * cells + cell]
           if (amount === 0) continue
