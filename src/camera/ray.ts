@@ -42,6 +42,8 @@ export class RayIntegrator {
   private readonly walk: Walk
   private readonly dimensions: 1 | 2 | 3
   private readonly reach: number
+  /** Beyond all cells and stars, cm. */
+  private readonly far: number
   private readonly azimuthPosition: Float32Array
   /** Where rays start from and run to, turned into the half-plane of azimuth 0 in two dimensions. */
   private readonly view: ViewBasis
@@ -66,6 +68,7 @@ export class RayIntegrator {
     this.walk = openWalk(medium.walls)
     this.dimensions = dimensionsOf(medium.walls)
     this.reach = reachOf(medium.walls)
+    this.far = medium.spheres.reduce((sum, value, i) => sum + (i % 4 < 3 ? Math.abs(value) : Math.sqrt(value)), this.reach)
     this.shadow = isOctree(medium.walls) ? new OctreeWalk(medium.walls) : undefined
     this.radials = new Float64Array(medium.starlight?.beams.length ?? 0)
     this.azimuthPosition = Float32Array.from({ length: AZIMUTH_LOOKUP + 1 }, (_, i) => {
@@ -188,7 +191,7 @@ export class RayIntegrator {
     const end = middle - (depth2 > 0 ? Math.sqrt(depth2) : 0)
     if (spheres.length > 0) {
       const [ux, uy, uz] = observer.map((component) => -component)
-      const far = this.reach + spheres.reduce((sum, value, i) => (i % 4 < 3 ? sum + Math.abs(value) : sum + Math.sqrt(value)), 0)
+      const { far } = this
       walk.turn(px - far * ux, py - far * uy, pz - far * uz, ux, uy, uz)
       if (walk.s + pathToStar(walk, spheres) < end - HIDES * far) return Number.POSITIVE_INFINITY
     }

@@ -3,6 +3,7 @@ import { soughtRadii, withInnerRadii } from '../model/inner-radii.js'
 import type { Model } from '../model/model.js'
 import { dustLight } from '../solve/dust-light.js'
 import { type EquilibriumResult, needsEquilibrium, solveEquilibrium } from '../solve/equilibrium.js'
+import { equilibriumSetup } from '../solve/equilibrium-medium.js'
 import { type EquilibriumProgress, equilibriumPiece } from '../solve/equilibrium-round.js'
 import { type InnerRadii, radiiPiece, solveInnerRadii } from '../solve/inner-radius.js'
 import { type Sublimation, sublimate, sublimationPiece, withoutDust } from '../solve/sublimation.js'
@@ -57,7 +58,15 @@ export async function dustStage(
   if (model.scene.dust.some(({ sublimation }) => sublimation !== undefined))
     fit.sublimation = unlessStopped(await sublimate(fitted(model, fit), pool, ledger, show, stop))
   const last = fitted(model, fit)
-  const found = await solveEquilibrium(last, pool, ledger, (dust) => errorOfEmission(last, dust), show, stop)
+  const found = await solveEquilibrium(
+    last,
+    equilibriumSetup(last),
+    pool,
+    ledger,
+    (dust) => errorOfEmission(last, dust),
+    show,
+    stop
+  )
   const { dust, ...equilibrium } = unlessStopped(found)
   const stage = { dust, equilibrium, ...fit, time: clock() }
   ledger.keep(dustPiece, stage)

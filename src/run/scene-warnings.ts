@@ -18,6 +18,7 @@ export function sceneWarnings(model: Model): string[] {
   return [
     ...model.warnings,
     ...unresolvedEdge(model),
+    ...crowded(model),
     ...starInDust(model),
     ...fields(model),
     ...extrapolated(model),
@@ -29,7 +30,7 @@ export function sceneWarnings(model: Model): string[] {
 function unresolvedEdge(model: Model): string[] {
   const { walls, components, stars, scene } = model
   if (stars.length === 0) return []
-  if (isOctree(walls)) return model.cells + 7 > scene.grid.cellsAtMost ? [crowded(model)] : []
+  if (isOctree(walls)) return []
   const columns = (walls.cosTheta.length - 1) * (walls.phi.length - 1)
   let [most, at] = [0, 0]
   for (const wavelength of mattering(scene, stars, [])) {
@@ -50,8 +51,12 @@ function unresolvedEdge(model: Model): string[] {
     : []
 }
 
-function crowded({ cells }: Model): string {
-  return `grid: ${cells} cells do not resolve the dust everywhere as far as the program would; ask for more by grid.cells-at-most of an octree`
+/** An octree that stopped growing because its cells were used up. */
+function crowded({ walls, cells, scene }: Model): string[] {
+  if (!isOctree(walls) || cells + 7 <= scene.grid.cellsAtMost) return []
+  return [
+    `grid: ${cells} cells do not resolve the dust everywhere as far as the program would; ask for more by grid.cells-at-most of an octree`
+  ]
 }
 
 function extinction(components: DustComponent[], cell: number, wavelength: number): number {

@@ -5,7 +5,7 @@ import type { Scene } from '../scene/types.js'
 import type { Ledger } from '../workers/ledger.js'
 import type { WorkerPool } from '../workers/pool.js'
 import { divide } from './batches.js'
-import { type EquilibriumSetup, equilibriumSetup } from './equilibrium-medium.js'
+import type { EquilibriumSetup } from './equilibrium-medium.js'
 import {
   type EquilibriumProgress,
   type EquilibriumRound,
@@ -53,10 +53,11 @@ export interface EquilibriumResult {
  * Radiative equilibrium of all dust with `temperature: solve`: rounds of packets, each at least twice the one before, each
  * emitting with the temperatures of the one before, until the median error and the change are below the precision, and so is
  * `seenError`, the relative error that the noise of these temperatures makes in what will be observed. Goes on from what the
- * ledger holds, and keeps it there.
+ * ledger holds, and keeps it there. `setup`: the model laid out for this phase, which changes while it is used.
  */
 export async function solveEquilibrium(
   model: Model,
+  setup: EquilibriumSetup,
   pool: WorkerPool,
   ledger: Ledger,
   seenError: (dust: DustTemperatures) => number,
@@ -64,7 +65,6 @@ export async function solveEquilibrium(
   stop?: AbortSignal
 ): Promise<EquilibriumResult | 'stopped'> {
   const { precision, equilibrium: most } = model.scene.effort
-  const setup = equilibriumSetup(model)
   const thick = new ThickCells(model, setup)
   pool.share('equilibrium', setup.medium)
   const sizes = precision === null ? fixedSizes(most) : undefined

@@ -93,12 +93,12 @@ export async function solveInnerRadii(
     const moved = withInnerRadii(scene, sought)
     const effort = { ...scene.effort, precision: null, equilibrium: state.size }
     const model = rebuildModel(start, { ...moved, effort, seed: `${scene.seed}/radii/${state.step}` })
-    const solved = await solveEquilibrium(model, pool, sectionOf(ledger, `${state.step}`), () => 0, onProgress, stop)
+    const setup = equilibriumSetup(model)
+    const solved = await solveEquilibrium(model, setup, pool, sectionOf(ledger, `${state.step}`), () => 0, onProgress, stop)
     if (solved === 'stopped') return solved
     state.spent += solved.packets
     state.step++
-    const { tables } = equilibriumSetup(model)
-    const changes = sought.map((each, k) => stepOf(model, tables[each.component], each, k, solved.dust, state))
+    const changes = sought.map((each, k) => stepOf(model, setup.tables[each.component], each, k, solved.dust, state))
     const furthest = Math.max(...changes.map(({ change }) => Math.abs(change)))
     const sigma = Math.max(...changes.map((each) => each.sigma))
     const known = furthest <= SETTLED && sigma <= SIGMA

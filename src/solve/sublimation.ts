@@ -2,6 +2,7 @@ import type { Model } from '../model/model.js'
 import { type Ledger, sectionOf } from '../workers/ledger.js'
 import type { WorkerPool } from '../workers/pool.js'
 import { solveEquilibrium } from './equilibrium.js'
+import { equilibriumSetup } from './equilibrium-medium.js'
 import { type EquilibriumProgress, equilibriumPiece } from './equilibrium-round.js'
 
 /** Packets of the first steps, and of those that decide. */
@@ -56,7 +57,7 @@ export async function sublimate(
     sweep()
     const effort = { ...scene.effort, precision: null, equilibrium: state.size }
     const left = withoutDust({ ...model, scene: { ...scene, effort, seed: `${scene.seed}/gone/${state.steps}` } }, state.gone)
-    const solved = await solveEquilibrium(left, pool, section(state.steps), () => 0, onProgress, stop)
+    const solved = await solveEquilibrium(left, equilibriumSetup(left), pool, section(state.steps), () => 0, onProgress, stop)
     if (solved === 'stopped') return solved
     const { temperature, sigma } = solved.dust
     let hot = 0
