@@ -63,7 +63,7 @@ export async function dustStage(
     equilibriumSetup(last),
     pool,
     ledger,
-    (dust) => errorOfEmission(last, dust),
+    (dust) => errorOfEmission(last, dust, pool),
     show,
     stop
   )
@@ -92,16 +92,16 @@ function fitted(model: Model, { innerRadii, sublimation }: DustFit): Model {
 const LOOKS = 8
 
 /** Largest relative error that the noise of the temperatures makes in what will be seen. */
-function errorOfEmission(model: Model, dust: DustTemperatures): number {
+async function errorOfEmission(model: Model, dust: DustTemperatures, pool: WorkerPool): Promise<number> {
   const { wantedAt } = emptyProducts(model.scene, 'emissivity')
   const { cameras, spectra } = model.scene
   const wavelengths = new Set([...spread(cameras), ...spread(spectra)])
   const errors = Array.from(wavelengths, (wavelength) => {
     const wanted = wantedAt(wavelength)
     const indices = wanted.map(() => 0)
-    return quickError(model, dustLight(model, dust, wavelength), [], wanted, indices, 'all')
+    return quickError(model, dustLight(model, dust, wavelength), [], wanted, indices, 'all', pool)
   })
-  return Math.max(0, ...errors) / SHARE
+  return Math.max(0, ...(await Promise.all(errors))) / SHARE
 }
 
 /** At most LOOKS of all wavelengths, spread evenly over the list. */

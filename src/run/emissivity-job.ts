@@ -1,6 +1,7 @@
 import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
 import { scattering } from '../solve/scattering.js'
+import type { WorkerPool } from '../workers/pool.js'
 import type { LightJob } from './light-job.js'
 import { observeWavelength } from './observe-wavelength.js'
 import { observersOf } from './observers-of.js'
@@ -9,17 +10,18 @@ import { SHARE } from './share.js'
 import type { Wanted } from './wanted.js'
 
 /** Images and fluxes by the formal solution through the emissivity that packets find. */
-export function emissivityJob(model: Model, light: DustLight, wanted: Wanted[]): LightJob {
+export function emissivityJob(model: Model, light: DustLight, wanted: Wanted[], pool: WorkerPool): LightJob {
   const { observers, indices } = observersOf(model, wanted)
   const scattered = scattering(
     model,
     light,
     observers,
-    (found) => quickError(model, light, found, wanted, indices, 'scattered') / SHARE
+    pool,
+    async (found) => (await quickError(model, light, found, wanted, indices, 'scattered', pool)) / SHARE
   )
   return {
     ...(scattered && { request: scattered.request }),
-    develop: (sums, studio) =>
-      observeWavelength(model, light, scattered && sums ? scattered.lightOf(sums) : [], wanted, indices, studio)
+    develop: async (sums, studio) =>
+      observeWavelength(model, light, scattered && sums ? await scattered.lightOf(sums) : [], wanted, indices, studio)
   }
 }

@@ -2,6 +2,7 @@ import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
 import type { GroupSums } from '../solve/group-sums.js'
 import type { RoundsRequest } from '../solve/rounds.js'
+import type { WorkerPool } from '../workers/pool.js'
 import { emissivityJob } from './emissivity-job.js'
 import type { Estimator } from './estimator.js'
 import type { Studio } from './observe-wavelength.js'
@@ -16,6 +17,6 @@ export interface LightJob {
   develop: (sums: GroupSums | undefined, studio: Studio) => Promise<boolean>
 }
 
-export function lightJob(model: Model, light: DustLight, estimator: Estimator, wanted: Wanted[]): LightJob {
-  return estimator === 'emissivity' ? emissivityJob(model, light, wanted) : packetJob(model, light, estimator, wanted)
+export function lightJob(model: Model, light: DustLight, estimator: Estimator, wanted: Wanted[], pool: WorkerPool): LightJob {
+  return estimator === 'emissivity' ? emissivityJob(model, light, wanted, pool) : packetJob(model, light, estimator, wanted)
 }

@@ -89,7 +89,7 @@ export async function lightStage(
       if (index === front) onProgress({ wavelength, index, count: wavelengths.length, ...progress })
     }
     const light = dustLight(model, dust, wavelength)
-    const job = lightJob(model, light, estimator, wanted)
+    const job = lightJob(model, light, estimator, wanted, pool)
     const found = job.request
       ? await packetsFrom(job.request, index, (round) => report({ stage: 'light', ...round, of: round.packets }))
       : { sums: undefined, packets: 0, error: 0 }

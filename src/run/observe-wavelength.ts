@@ -2,12 +2,11 @@ import { integrateAperture } from '../camera/aperture.js'
 import { pixelFrame, seenFrom } from '../camera/frame.js'
 import type { PatchIntegral } from '../camera/patch.js'
 import { RadialProfile } from '../camera/profile.js'
-import { type FieldData, fieldData, openField } from '../camera/ray-field.js'
+import { type FieldData, openField } from '../camera/ray-field.js'
 import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from '../camera/ray-values.js'
 import type { PictureRows } from '../camera/rows.js'
 import { putStokes, STOKES } from '../camera/stokes-planes.js'
 import { turnStokes } from '../camera/stokes-ray.js'
-import { survey } from '../camera/survey.js'
 import { standardError } from '../math/stats.js'
 import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
@@ -15,6 +14,7 @@ import type { ScatteredLight } from '../solve/scattered-light.js'
 import type { Ledger, Piece } from '../workers/ledger.js'
 import type { WorkerPool } from '../workers/pool.js'
 import { runKept } from '../workers/run-kept.js'
+import { fieldOn, surveyOn } from './look.js'
 import { mediumFor } from './observers-of.js'
 import { addStars, directFlux } from './stars-seen.js'
 import { putValues, valuesOf, type Wanted, type WantedValues } from './wanted.js'
@@ -67,7 +67,7 @@ export async function observeWavelength(
     const want = wanted[progress.want]
     const medium = mediumFor(model, light, scattered, indices[progress.want])
     const view = seenFrom(model, want.kind === 'spectrum' ? { ...want.spec.view, roll: 0 } : want.spec.view)
-    const data = fieldData(medium, view, tolerance)
+    const data = await fieldOn(studio.pool, medium, view, tolerance)
     const onDone = (done: number, of: number) => studio.onDone({ kind: want.kind, name: want.spec.name }, done, of)
     if (want.kind === 'camera') {
       const rows = { data, want, tolerance, progress, piece, onDone }
@@ -146,7 +146,7 @@ async function takePicture(model: Model, work: PictureWork, { pool, ledger, name
   const { spec, images, k } = want
   const frame = pixelFrame(spec, model.scene.distance)
   // Pixels a hundred times fainter than the mean need no finer rays.
-  const floor = 0.01 * survey(openField(data), frame).mean
+  const floor = 0.01 * (await surveyOn(pool, data, frame)).mean
   const tasks = []
   for (let from = 0; from < frame.height; from += ROWS_A_TASK) {
     const to = Math.min(frame.height, from + ROWS_A_TASK)

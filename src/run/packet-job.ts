@@ -42,7 +42,7 @@ export function packetJob(model: Model, light: DustLight, estimator: 'peel' | 'e
         seed: `${seed}/${estimator}/${light.wavelength}`,
         atMost: effort.cameras,
         precision: effort.precision,
-        errorOf: (sums) => largestError(detectors, caughtBy(pixels, sums))
+        errorOf: async (sums) => largestError(detectors, caughtBy(pixels, sums))
       }
     }),
     develop: async (sums) => {

@@ -1,38 +1,39 @@
 import { pixelFrame, seenFrom } from '../camera/frame.js'
-import { fieldData, openField } from '../camera/ray-field.js'
 import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from '../camera/ray-values.js'
-import { survey, surveyAperture } from '../camera/survey.js'
 import { standardError } from '../math/stats.js'
 import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
 import type { ScatteredLight } from '../solve/scattered-light.js'
+import type { WorkerPool } from '../workers/pool.js'
+import { fieldOn, surveyApertureOn, surveyOn } from './look.js'
 import { mediumFor } from './observers-of.js'
 import { directFlux } from './stars-seen.js'
 import type { Wanted } from './wanted.js'
 
+/** Relative accuracy of the rays of a quick look in one dimension. */
+const ACCURACY = 0.01
+
 /** Largest relative error among the wanted, of scattered light alone or of all light, by a quick look. */
-export function quickError(
+export async function quickError(
   model: Model,
   light: DustLight,
   scattered: ScatteredLight[],
   wanted: Wanted[],
   indices: number[],
-  part: 'scattered' | 'all'
-): number {
-  let worst = 0
-  wanted.forEach((want, i) => {
+  part: 'scattered' | 'all',
+  pool: WorkerPool
+): Promise<number> {
+  const errors = wanted.map(async (want, i) => {
     const medium = mediumFor(model, light, scattered, indices[i])
     if (part === 'scattered') medium.emissionGroups = new Float32Array()
     const view = seenFrom(model, want.spec.view)
-    const field = openField(fieldData(medium, view, 0.01))
+    const field = await fieldOn(pool, medium, view, ACCURACY)
     const { distance } = model.scene
-    if (want.kind === 'camera') worst = Math.max(worst, survey(field, pixelFrame(want.spec, distance)).error)
-    else {
-      const value = surveyAperture(field, want.spec.aperture * distance)
-      const direct = directFlux(model, light, medium, view, want.spec.aperture * distance)
-      const total = value[EMITTED] + value[SCATTERED] + direct
-      if (total > 0) worst = Math.max(worst, standardError(value.subarray(FIRST_GROUP, RAY_VALUES)) / total)
-    }
+    if (want.kind === 'camera') return (await surveyOn(pool, field, pixelFrame(want.spec, distance))).error
+    const radius = want.spec.aperture * distance
+    const value = await surveyApertureOn(pool, field, radius)
+    const total = value[EMITTED] + value[SCATTERED] + directFlux(model, light, medium, view, radius)
+    return total > 0 ? standardError(value.subarray(FIRST_GROUP, RAY_VALUES)) / total : 0
   })
-  return worst
+  return Math.max(0, ...(await Promise.all(errors)))
 }

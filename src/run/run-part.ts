@@ -51,7 +51,7 @@ export function runPart(scene: Scene, { index, of }: Part, options: RunOptions):
     for (const [k, wavelength] of wavelengths.entries()) {
       const names = lightPieces(k)
       if (ledger.take(names.done)) continue
-      const { request } = lightJob(model, dustLight(model, dust, wavelength), estimator, wantedAt(wavelength))
+      const { request } = lightJob(model, dustLight(model, dust, wavelength), estimator, wantedAt(wavelength), pool)
       const at = { stage: 'light', wavelength, index: k, count: wavelengths.length } as const
       const share: Share | 'stopped' = request
         ? await playShare(

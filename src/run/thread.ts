@@ -3,7 +3,10 @@ import type { PixelFrame } from '../camera/direct.js'
 import { type FieldData, openField } from '../camera/ray-field.js'
 import { pictureRows } from '../camera/rows.js'
 import { type GrainTableRequest, mixtureOptics } from '../dust/grains/tabulate-grains.js'
+import type { ScatteringTables } from '../dust/scattering-tables.js'
 import { stream } from '../math/random.js'
+import { type LightRequest, lightTowards } from '../solve/light-towards.js'
+import { turningMatrices } from '../solve/scattered-stokes.js'
 import type { Detector } from '../transport/detector.js'
 import { type EquilibriumMedium, propagateEnergy } from '../transport/equilibrium.js'
 import { tallyExits } from '../transport/exit.js'
@@ -14,6 +17,7 @@ import { tallyStokesFlights } from '../transport/stokes-flights.js'
 import { tallyStokesTowards } from '../transport/stokes-towards.js'
 import { tallyTowards } from '../transport/towards.js'
 import { type Shared, serve } from '../workers/serve.js'
+import { looks } from './look.js'
 
 /** What every batch of packets is told. */
 interface Batch {
@@ -51,6 +55,9 @@ serve({
     inOne(tallyPeeled(scattering(shared), detectors, packets, stream(seed))),
   exits: ({ packets, seed, detectors }: Batch & { detectors: Detector[] }, shared: Shared) =>
     inOne(tallyExits(scattering(shared), detectors, packets, stream(seed))),
+  scattered: (request: LightRequest) => lightTowards(request),
+  turning: (tables: ScatteringTables) => turningMatrices(tables),
+  ...looks,
   rows: ({ frame, from, to, tolerance, floor, mirrored }: RowsRequest, shared: Shared) =>
     pictureRows(field(shared), frame, from, to, tolerance, floor, mirrored),
   aperture: ({ radius, tolerance, mirrored }: { radius: number; tolerance: number; mirrored: boolean }, shared: Shared) =>

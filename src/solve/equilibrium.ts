@@ -60,7 +60,7 @@ export async function solveEquilibrium(
   setup: EquilibriumSetup,
   pool: WorkerPool,
   ledger: Ledger,
-  seenError: (dust: DustTemperatures) => number,
+  seenError: (dust: DustTemperatures) => Promise<number>,
   onProgress: (progress: EquilibriumProgress) => void,
   stop?: AbortSignal
 ): Promise<EquilibriumResult | 'stopped'> {
@@ -89,7 +89,7 @@ export async function solveEquilibrium(
     // The last round should hold about half of all packets: another one must fit twice over, or be the rest.
     const over = sizes ? state.rounds.length + 1 === sizes.length : most - state.spent < packets
     const look = precision !== null && (over || (steady && error <= precision))
-    const worst = look ? Math.max(error, seenError(dust)) : error
+    const worst = look ? Math.max(error, await seenError(dust)) : error
     const good = steady && precision !== null && worst <= precision
     state.rounds.push({ packets, error, change, worst, interactions: state.tally.interactions })
     if (good || over) {

@@ -1,6 +1,7 @@
+import { allocateShared } from '../math/allocate.js'
 import { GROUPS } from './groups.js'
 
-/** Sums of packets x tally over the batches of each group, and the packets behind them. */
+/** Sums of packets x tally over the batches of each group, on shared memory, and the packets behind them. */
 export interface GroupSums {
   /** GROUPS arrays as long as a tally; none before the first batch. */
   sums: Float64Array[]
@@ -13,7 +14,7 @@ export function emptySums(): GroupSums {
 
 /** Takes the tally of a batch of `packets` packets into a group. The order of calls decides the last bits. */
 export function addTally({ sums, packets }: GroupSums, group: number, tally: Float64Array, count: number): void {
-  sums[group] ??= new Float64Array(tally.length)
+  sums[group] ??= new Float64Array(allocateShared(8 * tally.length))
   addTo(sums[group], tally, count)
   packets[group] += count
 }

@@ -94,7 +94,7 @@ export async function solveInnerRadii(
     const effort = { ...scene.effort, precision: null, equilibrium: state.size }
     const model = rebuildModel(start, { ...moved, effort, seed: `${scene.seed}/radii/${state.step}` })
     const setup = equilibriumSetup(model)
-    const solved = await solveEquilibrium(model, setup, pool, sectionOf(ledger, `${state.step}`), () => 0, onProgress, stop)
+    const solved = await solveEquilibrium(model, setup, pool, sectionOf(ledger, `${state.step}`), async () => 0, onProgress, stop)
     if (solved === 'stopped') return solved
     state.spent += solved.packets
     state.step++

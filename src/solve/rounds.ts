@@ -32,7 +32,7 @@ export interface RoundsRequest {
   /** Relative error to reach; null: one round of `atMost` packets. */
   precision: number | null
   /** Relative error of all rounds so far. */
-  errorOf: (sums: GroupSums) => number
+  errorOf: (sums: GroupSums) => Promise<number>
 }
 
 export interface RoundsOutcome {
@@ -111,7 +111,7 @@ export async function playRounds(
     state.round++
     if (precision === null) state.finished = true
     else {
-      state.error = errorOf(state.sums)
+      state.error = await errorOf(state.sums)
       state.finished = state.error <= precision || atMost - state.packets < batches.count
       // What is missing to reach the precision, when the error falls with the root of the packets.
       const missing = state.packets * Math.min(FASTEST, Math.max(1, MARGIN * (state.error / precision) ** 2 - 1))

@@ -22,6 +22,12 @@ export interface ScatteredLight {
   polarised?: PolarisedPart
 }
 
+/** What of the cells scattered light is made with. */
+export type CellVolumes = Pick<Model, 'cells' | 'volume' | 'dimensions'>
+
+/** What of the dust scattered light is made with. */
+export type ScatteringLaws = Pick<DustLight, 'asymmetry' | 'scattering' | 'tables'>
+
 /** Stokes parameters beside I, as ScatteredLight with so many numbers where that has one. */
 export interface PolarisedPart {
   /** 1 in one dimension: Q, referred to the radius; else 3: Q, U, V, referred to the projected z axis. */
@@ -46,7 +52,7 @@ export function spread({ sums, packets }: GroupSums, i: number, scale: number, o
 }
 
 /** Scattered light of spherical shells: the light in flight, turned towards the observer by the scattering law. */
-export function fromFlights(model: Model, light: DustLight, flights: GroupSums): ScatteredLight {
+export function fromFlights(model: CellVolumes, light: ScatteringLaws, flights: GroupSums): ScatteredLight {
   const { cells, volume } = model
   const value = new Float64Array(allocateShared(8 * cells * ANGLE_NODES))
   const groups = new Float32Array(allocateShared(4 * cells * ANGLE_NODES * GROUPS))
@@ -100,7 +106,7 @@ function turningLaw(g: number): Float64Array {
 }
 
 /** Scattered light towards observer `index` of `observers` from tallies of two or three dimensions. */
-export function fromTallies(model: Model, tallies: GroupSums, index: number, observers: number): ScatteredLight {
+export function fromTallies(model: CellVolumes, tallies: GroupSums, index: number, observers: number): ScatteredLight {
   const { cells, volume, dimensions } = model
   const slots = dimensions === 2 ? AZIMUTH_BINS : 1
   const value = new Float64Array(allocateShared(8 * cells * slots))

@@ -1,13 +1,18 @@
 import type { ScatteringTables } from '../dust/scattering-tables.js'
 import { allocateShared } from '../math/allocate.js'
 import { gaussLegendre } from '../math/quadrature.js'
-import type { Model } from '../model/model.js'
 import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS, flightLookup } from '../transport/scatter-medium.js'
 import { FRAME, scatterTowards } from '../transport/scatter-towards.js'
-import type { DustLight } from './dust-light.js'
 import type { GroupSums } from './group-sums.js'
 import { GROUPS } from './groups.js'
-import { ANGLE_NODES, type PolarisedPart, type ScatteredLight, spread } from './scattered-light.js'
+import {
+  ANGLE_NODES,
+  type CellVolumes,
+  type PolarisedPart,
+  type ScatteredLight,
+  type ScatteringLaws,
+  spread
+} from './scattered-light.js'
 
 const WITHIN_BIN = gaussLegendre(2)
 /** Azimuths, denser towards the plane of the radius and the observer, where peaked laws peak. */
@@ -82,7 +87,12 @@ function meridianFrame(mu: number, cos: number, sin: number, out: Float64Array):
 }
 
 /** As `fromFlights`, with polarisation. */
-export function fromStokesFlights(model: Model, light: DustLight, turning: TurningMatrices, flights: GroupSums): ScatteredLight {
+export function fromStokesFlights(
+  model: CellVolumes,
+  light: ScatteringLaws,
+  turning: TurningMatrices,
+  flights: GroupSums
+): ScatteredLight {
   const { cells, volume } = model
   const total = emptyLight(cells * ANGLE_NODES, 1)
   const q = emptyLight(cells * ANGLE_NODES, 1)
@@ -132,8 +142,8 @@ function addTurned(
 
 /** As `fromTallies`, with polarisation. */
 export function fromStokesTallies(
-  model: Model,
-  light: DustLight,
+  model: CellVolumes,
+  light: ScatteringLaws,
   tallies: GroupSums,
   index: number,
   observers: number

@@ -1,16 +1,18 @@
 import type { Model } from '../model/model.js'
+import type { WorkerPool } from '../workers/pool.js'
 import type { DustLight } from './dust-light.js'
 import type { GroupSums } from './group-sums.js'
+import { lightTask } from './light-towards.js'
 import type { RoundsRequest } from './rounds.js'
 import { scatterMedium } from './scatter-medium.js'
-import { fromFlights, fromTallies, type ScatteredLight } from './scattered-light.js'
-import { fromStokesFlights, fromStokesTallies, turningMatrices } from './scattered-stokes.js'
+import type { ScatteredLight } from './scattered-light.js'
+import type { TurningMatrices } from './scattered-stokes.js'
 
 /** Packets that find the scattered light at one wavelength, and what their sums mean. */
 export interface Scattering {
   request: RoundsRequest
   /** One for each observer, one for all in one dimension. */
-  lightOf: (sums: GroupSums) => ScatteredLight[]
+  lightOf: (sums: GroupSums) => Promise<ScatteredLight[]>
 }
 
 /**
@@ -22,24 +24,26 @@ export function scattering(
   model: Model,
   light: DustLight,
   observers: Float64Array,
-  errorOf: (light: ScatteredLight[]) => number
+  pool: WorkerPool,
+  errorOf: (light: ScatteredLight[]) => Promise<number>
 ): Scattering | undefined {
   const medium = scatterMedium(model, light)
   if (medium.launch.length === 0 || light.scattering.every((value) => value === 0)) return undefined
   const { effort, seed } = model.scene
   const spherical = model.dimensions === 1
   const count = spherical ? 1 : observers.length / 3
-  const turning = spherical && light.tables ? turningMatrices(light.tables) : undefined
-  const towards = (sums: GroupSums, index: number) => {
-    if (turning) return fromStokesFlights(model, light, turning, sums)
-    if (spherical) return fromFlights(model, light, sums)
-    return light.tables ? fromStokesTallies(model, light, sums, index, count) : fromTallies(model, sums, index, count)
+  let turning: Promise<unknown> | undefined
+  const lightFrom = async (sums: GroupSums): Promise<ScatteredLight[]> => {
+    if (spherical && light.tables) turning ??= pool.ask({ name: 'turning', input: light.tables })
+    const matrices = (await turning) as TurningMatrices | undefined
+    const towards = Array.from({ length: count }, (_, index) => pool.ask(lightTask(model, light, sums, index, count, matrices)))
+    return (await Promise.all(towards)) as ScatteredLight[]
   }
   // What the last look at the error was made from is what pictures are made from.
-  let known: { packets: number; light: ScatteredLight[] } | undefined
+  let known: { packets: number; light: Promise<ScatteredLight[]> } | undefined
   const lightOf = (sums: GroupSums) => {
     const packets = sums.packets.reduce((sum, value) => sum + value, 0)
-    if (known?.packets !== packets) known = { packets, light: Array.from({ length: count }, (_, index) => towards(sums, index)) }
+    if (known?.packets !== packets) known = { packets, light: lightFrom(sums) }
     return known.light
   }
   return {
@@ -50,7 +54,7 @@ export function scattering(
       seed: `${seed}/light/${light.wavelength}`,
       atMost: effort.cameras,
       precision: effort.precision,
-      errorOf: (sums) => errorOf(lightOf(sums))
+      errorOf: async (sums) => errorOf(await lightOf(sums))
     },
     lightOf
   }

@@ -57,7 +57,15 @@ export async function sublimate(
     sweep()
     const effort = { ...scene.effort, precision: null, equilibrium: state.size }
     const left = withoutDust({ ...model, scene: { ...scene, effort, seed: `${scene.seed}/gone/${state.steps}` } }, state.gone)
-    const solved = await solveEquilibrium(left, equilibriumSetup(left), pool, section(state.steps), () => 0, onProgress, stop)
+    const solved = await solveEquilibrium(
+      left,
+      equilibriumSetup(left),
+      pool,
+      section(state.steps),
+      async () => 0,
+      onProgress,
+      stop
+    )
     if (solved === 'stopped') return solved
     const { temperature, sigma } = solved.dust
     let hot = 0

@@ -90,6 +90,15 @@ export class WorkerPool {
     })
   }
 
+  /** The result of one task, which takes its turn behind those begun before. */
+  async ask(task: Task): Promise<unknown> {
+    let answer: unknown
+    await this.run([task], (output) => {
+      answer = output
+    })
+    return answer
+  }
+
   /** Ends every worker. */
   async close(): Promise<void> {
     this.closing = true
