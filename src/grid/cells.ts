@@ -8,7 +8,7 @@ export type Cells = SphericalWalls | Octree
 export type Walk = SphericalWalk | OctreeWalk
 
 export function isOctree(cells: Cells): cells is Octree {
-  return 'nodeOf' in cells
+  return 'families' in cells
 }
 
 /** Cells that are known to be spherical. */

@@ -1,12 +1,12 @@
 import type { SphericalWalls } from './geometry.js'
+import { StraightWalk } from './straight-walk.js'
 
 /**
  * A straight walk through spherical cells of one, two or three dimensions.
  *
- * A ray is kept as its closest approach to the origin (x0, y0, z0) and the path `s` measured from there along the
- * unit vector (ux, uy, uz), so that r^2 = b2 + s^2 with b2 the squared impact parameter. The next wall is chosen
- * among the walls ahead of the ray by the cell it is in; a point is never located anew, except on leaving the core,
- * whose surface belongs to every direction. A step is never negative, so rounding can neither lose a ray nor trap it.
+ * With b2 the squared impact parameter r^2 = b2 + s^2 along a ray. The next wall is chosen among the walls ahead of the ray by
+ * the cell it is in; a point is never located anew, except on leaving the core, whose surface belongs to every direction. A step
+ * is never negative, so rounding can neither lose a ray nor trap it.
  *
  * Along a ray cos(theta) = (z0 + s uz) / sqrt(b2 + s^2) has one extremum, at s = uz b2 / z0: it tells which of a
  * cell's two cones comes first. A cone of cosine c is met where
@@ -14,23 +14,10 @@ import type { SphericalWalls } from './geometry.js'
  * and the root at which cos(theta) rises through c is (-z0 uz + c w) / (uz^2 - c^2), the one at which it falls
  * (-z0 uz - c w) / (uz^2 - c^2), with w = sqrt(z0^2 + b2 (uz^2 - c^2)): for either sign of c.
  */
-export class SphericalWalk {
-  x0 = 0
-  y0 = 0
-  z0 = 0
-  ux = 0
-  uy = 0
-  uz = 1
-  /** Path from the closest approach, cm. */
-  s = 0
-  b2 = 0
+export class SphericalWalk extends StraightWalk {
   ir = 0
   it = 0
   ip = 0
-  /** Index of the cell the ray is in; -1 when it has left the grid. */
-  cell = 0
-  /** Where the next wall stands on the path, set by `toWall`. */
-  sWall = 0
   private wall = 0
   private readonly r2: Float64Array
   private readonly cosTheta: Float64Array
@@ -42,6 +29,7 @@ export class SphericalWalk {
   readonly np: number
 
   constructor(walls: SphericalWalls) {
+    super()
     this.r2 = walls.r.map((value) => value * value)
     this.cosTheta = walls.cosTheta
     this.phi = walls.phi
@@ -50,18 +38,6 @@ export class SphericalWalk {
     this.nr = walls.r.length - 1
     this.nt = walls.cosTheta.length - 1
     this.np = walls.phi.length - 1
-  }
-
-  get x(): number {
-    return this.x0 + this.s * this.ux
-  }
-
-  get y(): number {
-    return this.y0 + this.s * this.uy
-  }
-
-  get z(): number {
-    return this.z0 + this.s * this.uz
   }
 
   /** Starts a ray at a point of the cell (ir, it, ip). */

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { growOctree, type OctreeRequest } from '../../src/grid/octree/grow-octree.js'
-import { CORNER, cellCube, cubeVolumes, LEVELS, type Octree, RECORD, SIZE } from '../../src/grid/octree/octree.js'
+import { CHILD, cellCube, cubeVolumes, LEVELS, type Octree, RECORD, SIZE } from '../../src/grid/octree/octree.js'
 import { OctreeWalk } from '../../src/grid/octree/octree-walk.js'
 import { octreeDensities } from '../../src/model/octree-density.js'
 import type { DustSpec, ShapeSpec } from '../../src/scene/types.js'
@@ -94,15 +94,15 @@ describe('growOctree and octreeDensities', () => {
 })
 
 /** Farthest that a cube whose children are cells lies from the ball about (20, 5, 3), in radii of the ball beyond its surface. */
-function farthestDivided({ origin, side, records, nodeOf, cells }: Octree): number {
+function farthestDivided({ origin, side, families, records, corners }: Octree): number {
   const unit = side / 2 ** LEVELS
   let farthest = 0
-  for (let cell = 0; cell < cells; cell++) {
-    const at = RECORD * nodeOf[cell]
-    const size = 2 * records[at + SIZE]
+  for (let family = 0; family < families; family++) {
+    if (records.subarray(RECORD * family + CHILD, RECORD * family + CHILD + 8).every((child) => child >= 0)) continue
+    const size = 2 * records[RECORD * family + SIZE]
     let distance2 = 0
     for (const [a, centre] of [20, 5, 3].entries()) {
-      const low = origin[a] + Math.floor(records[at + CORNER + a] / size) * size * unit
+      const low = origin[a] + corners[3 * family + a] * unit
       distance2 += Math.max(0, low - centre, centre - low - size * unit) ** 2
     }
     farthest = Math.max(farthest, Math.sqrt(distance2) / 10 - 1)

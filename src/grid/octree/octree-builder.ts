@@ -1,5 +1,5 @@
 import { type Allocate, allocatePrivate } from '../../math/allocate.js'
-import { CHILD, CORNER, LEVELS, NEIGHBOUR, type Octree, RECORD, SIZE } from './octree.js'
+import { CHILD, LEVELS, NEIGHBOUR, type Octree, OUTSIDE, RECORD, SIZE } from './octree.js'
 
 const FIRST_CAPACITY = 1024
 
@@ -34,16 +34,19 @@ export class OctreeBuilder {
     return first
   }
 
-  /** The octree in the order of depth, in memory of `allocate`. */
+  /** The octree in the order of depth, in memory of `allocate`; the whole cube is divided at least once. */
   finish(allocate: Allocate = allocatePrivate): Octree {
+    if (this.child[0] === 0) this.split(0)
     const { nodes, cells, origin, side } = this
+    const families = (nodes - 1) / 8
     const octree: Octree = {
       origin: new Float64Array(allocate(24)),
       side,
-      nodes,
+      families,
       cells,
-      records: new Int32Array(allocate(4 * RECORD * nodes)),
-      nodeOf: new Int32Array(allocate(4 * cells))
+      records: new Int32Array(allocate(4 * RECORD * families)),
+      corners: new Int32Array(allocate(12 * families)),
+      places: new Int32Array(allocate(4 * cells))
     }
     octree.origin.set(origin)
     this.putInOrder(octree)
@@ -51,30 +54,32 @@ export class OctreeBuilder {
     return octree
   }
 
-  private putInOrder(octree: Octree): void {
-    const { records, nodeOf } = octree
-    // Nodes of which the own and the new number are known and the children not yet placed: at most seven wait at each level.
+  private putInOrder({ records, corners, places }: Octree): void {
+    // Nodes that wait, each with its place: at most seven at each level.
     const stack = new Int32Array(2 * (7 * LEVELS + 8))
-    let depth = 2
-    let [next, cell] = [1, 0]
-    while (depth > 0) {
-      depth -= 2
-      const [own, at] = [stack[depth], stack[depth + 1]]
-      const record = RECORD * at
-      records[record + SIZE] = 2 ** (LEVELS - this.level[own])
-      for (let a = 0; a < 3; a++) records[record + CORNER + a] = this.corner[3 * own + a]
-      const first = this.child[own]
-      if (first === 0) {
-        records[record + CHILD] = -1 - cell
-        nodeOf[cell++] = at
-        continue
-      }
-      records[record + CHILD] = next
+    let depth = 0
+    let [families, cells] = [0, 0]
+    const found = (node: number) => {
+      const family = families++
+      const first = this.child[node]
+      records[RECORD * family + SIZE] = 2 ** (LEVELS - this.level[first])
+      for (let a = 0; a < 3; a++) corners[3 * family + a] = this.corner[3 * node + a]
       for (let k = 7; k >= 0; k--) {
         stack[depth++] = first + k
-        stack[depth++] = next + k
+        stack[depth++] = 8 * family + k
       }
-      next += 8
+      return family
+    }
+    found(0)
+    while (depth > 0) {
+      depth -= 2
+      const [node, place] = [stack[depth], stack[depth + 1]]
+      const entry = RECORD * (place >> 3) + CHILD + (place & 7)
+      if (this.child[node] > 0) records[entry] = found(node)
+      else {
+        records[entry] = -1 - cells
+        places[cells++] = place
+      }
     }
   }
 
@@ -91,25 +96,26 @@ export class OctreeBuilder {
   }
 }
 
-/** Parents stand before their children, so that theirs are known. */
-function findNeighbours({ nodes, records }: Octree): void {
-  records.fill(-1, NEIGHBOUR, NEIGHBOUR + 6)
-  for (let node = 0; node < nodes; node++) {
-    const first = records[RECORD * node + CHILD]
-    if (first < 0) continue
+/** Families stand behind those of their parents, whose neighbours are known then. */
+function findNeighbours({ families, records }: Octree): void {
+  const entryOf = (family: number, child: number) => {
+    const within = records[RECORD * family + CHILD + child]
+    return within >= 0 ? within : -2 - (8 * family + child)
+  }
+  records.fill(OUTSIDE, NEIGHBOUR, NEIGHBOUR + 6)
+  for (let family = 0; family < families; family++) {
     for (let k = 0; k < 8; k++) {
+      const own = records[RECORD * family + CHILD + k]
+      if (own < 0) continue
       for (let face = 0; face < 6; face++) {
         const bit = 1 << (face >> 1)
         const upper = (face & 1) === 1
-        const sibling = k ^ bit
-        // Within the parent, or across its own side into a child of its neighbour, or into that neighbour itself.
-        let found = first + sibling
-        if (((k & bit) !== 0) === upper) {
-          const beyond = records[RECORD * node + NEIGHBOUR + face]
-          const theirs = beyond >= 0 ? records[RECORD * beyond + CHILD] : -1
-          found = theirs >= 0 ? theirs + sibling : beyond
-        }
-        records[RECORD * (first + k) + NEIGHBOUR + face] = found
+        const beyond = records[RECORD * family + NEIGHBOUR + face]
+        // A sibling, or across the side of the family into a child of the next one, or into the cell there.
+        let found = beyond
+        if (((k & bit) !== 0) !== upper) found = entryOf(family, k ^ bit)
+        else if (beyond >= 0) found = entryOf(beyond, k ^ bit)
+        records[RECORD * own + NEIGHBOUR + face] = found
       }
     }
   }

@@ -1,32 +1,39 @@
-import { CHILD, LEVELS, NEIGHBOUR, type Octree, RECORD, SIZE } from './octree.js'
+import { CHILD, cellSide, NEIGHBOUR, type Octree, OUTSIDE, RECORD } from './octree.js'
 
 /**
  * Calls `visit` for every wall that a cell shares with another: that cell, the area (cm2), and the paths (cm) from the middles of the
  * two cells to the wall.
  */
 export function forEachCubeWall(
-  { side, records, nodeOf }: Octree,
+  octree: Octree,
   cell: number,
   visit: (beyond: number, area: number, path: number, pathBeyond: number) => void
 ): void {
-  const unit = side / 2 ** LEVELS
-  const at = RECORD * nodeOf[cell]
-  const own = records[at + SIZE] * unit
-  /** Visits the cells of a node that touch its side number `face`. */
-  const descend = (node: number, face: number): void => {
-    const record = RECORD * node
-    const first = records[record + CHILD]
-    if (first < 0) {
-      const length = records[record + SIZE] * unit
+  const { records, places } = octree
+  const place = places[cell]
+  const own = cellSide(octree, cell)
+  /** Visits the cells of a child of a family that touch its side number `face`. */
+  const descend = (family: number, child: number, face: number): void => {
+    const within = records[RECORD * family + CHILD + child]
+    if (within < 0) {
+      const beyond = -1 - within
+      const length = cellSide(octree, beyond)
       const shared = Math.min(own, length)
-      visit(-1 - first, shared * shared, 0.5 * own, 0.5 * length)
+      visit(beyond, shared * shared, 0.5 * own, 0.5 * length)
       return
     }
     const axis = face >> 1
-    for (let k = 0; k < 8; k++) if (((k >> axis) & 1) === (face & 1)) descend(first + k, face)
+    for (let k = 0; k < 8; k++) if (((k >> axis) & 1) === (face & 1)) descend(within, k, face)
   }
+  const family = place >> 3
   for (let face = 0; face < 6; face++) {
-    const beyond = records[at + NEIGHBOUR + face]
-    if (beyond >= 0) descend(beyond, face ^ 1)
+    const across = (place & 7) ^ (1 << (face >> 1))
+    if (((across >> (face >> 1)) & 1) === (face & 1)) {
+      descend(family, across, face ^ 1)
+      continue
+    }
+    const beyond = records[RECORD * family + NEIGHBOUR + face]
+    if (beyond >= 0) descend(beyond, across, face ^ 1)
+    else if (beyond !== OUTSIDE) descend((-2 - beyond) >> 3, (-2 - beyond) & 7, face ^ 1)
   }
 }

@@ -1,85 +1,106 @@
-import { CHILD, CORNER, LEVELS, NEIGHBOUR, type Octree, RECORD, SIZE } from './octree.js'
+import { StraightWalk } from '../straight-walk.js'
+import { CHILD, LEVELS, NEIGHBOUR, type Octree, OUTSIDE, RECORD, SIZE } from './octree.js'
 
 /**
- * A straight walk through the cells of an octree, kept as `SphericalWalk` keeps it: the closest approach to the origin of
- * coordinates (x0, y0, z0) and the path `s` from there along the unit vector (ux, uy, uz).
+ * A straight walk through the cells of an octree.
  *
- * Of each pair of walls only the one ahead is ever looked at, and a wall is known by the path at which the ray meets its plane.
- * On the other side the cell is found from the neighbour downwards, by comparing the path with those of the planes that divide
- * it; a point is never located anew. So no step is negative, and rounding can neither lose a ray nor trap it.
+ * Coordinates of walls are whole numbers of the smallest unit; a plane is known by the path at which the ray meets it, which
+ * depends on that number alone. Of each pair of walls only the one ahead is ever looked at. On the other side the cell is found from the
+ * neighbour downwards, by comparing the path with those of the planes that divide it; a point is never located anew. So no step is
+ * negative, and rounding can neither lose a ray nor trap it.
+ *
+ * A step reads one record, that of the family of the cell, and another where it leaves it: side and corner of a cell are kept in
+ * the walk and follow from the crossing.
  */
-export class OctreeWalk {
-  x0 = 0
-  y0 = 0
-  z0 = 0
-  ux = 0
-  uy = 0
-  uz = 1
-  /** Path from the closest approach, cm. */
-  s = 0
-  /** Square of the impact parameter about the origin of coordinates. */
-  b2 = 0
-  /** Index of the cell the ray is in; -1 when it has left the cube. */
-  cell = 0
-  /** Where the next wall stands on the path, set by `toWall`. */
-  sWall = 0
-  /** Where the record of the node begins. */
+export class OctreeWalk extends StraightWalk {
+  /** Where the record of the family begins, and which of its children the cell is. */
   private record = 0
-  private face = 0
-  /** 1 / ux and so on; infinite along a wall. */
-  private wx = 0
-  private wy = 0
-  private wz = 0
+  private child = 0
+  /** Side and least coordinates of the cell in units. */
+  private size = 0
+  private cx = 0
+  private cy = 0
+  private cz = 0
+  /** A plane across x is met at the path (x - fromX) perX: x0 and 1 / ux, or -Infinity and Infinity where it is never met. */
+  private fromX = 0
+  private fromY = 0
+  private fromZ = 0
+  private perX = 0
+  private perY = 0
+  private perZ = 0
+  /** -1 where the ray climbs in x, so that `size & upX` is what the wall ahead is beyond the corner; 0 where it falls. */
+  private upX = 0
+  private upY = 0
+  private upZ = 0
+  /** Axis of the next wall, set by `toWall`. */
+  private axis = 0
   private readonly records: Int32Array
-  private readonly nodeOf: Int32Array
+  private readonly corners: Int32Array
+  private readonly places: Int32Array
   /** Least coordinates of the whole cube. */
   private readonly ox: number
   private readonly oy: number
   private readonly oz: number
   private readonly unit: number
 
-  constructor({ origin, side, records, nodeOf }: Octree) {
+  constructor({ origin, side, records, corners, places }: Octree) {
+    super()
     this.records = records
-    this.nodeOf = nodeOf
+    this.corners = corners
+    this.places = places
     this.ox = origin[0]
     this.oy = origin[1]
     this.oz = origin[2]
     this.unit = side / 2 ** LEVELS
   }
 
-  get x(): number {
-    return this.x0 + this.s * this.ux
-  }
-
-  get y(): number {
-    return this.y0 + this.s * this.uy
-  }
-
-  get z(): number {
-    return this.z0 + this.s * this.uz
-  }
-
   /** Starts a ray at a point of a cell. */
   startIn(x: number, y: number, z: number, ux: number, uy: number, uz: number, cell: number): void {
+    const { records, corners } = this
+    const place = this.places[cell]
+    const family = place >> 3
+    const size = records[RECORD * family + SIZE]
     this.turn(x, y, z, ux, uy, uz)
-    this.record = RECORD * this.nodeOf[cell]
     this.cell = cell
+    this.record = RECORD * family
+    this.child = place & 7
+    this.size = size
+    this.cx = corners[3 * family] + (place & 1 ? size : 0)
+    this.cy = corners[3 * family + 1] + (place & 2 ? size : 0)
+    this.cz = corners[3 * family + 2] + (place & 4 ? size : 0)
   }
 
   /** Starts a ray at a point inside the cube whose cell is not known. */
   startAt(x: number, y: number, z: number, ux: number, uy: number, uz: number): void {
     const { records, unit } = this
     this.turn(x, y, z, ux, uy, uz)
-    let at = 0
-    while (records[at + CHILD] >= 0) {
-      const half = 0.5 * records[at + SIZE]
-      let k = x >= this.ox + (records[at + CORNER] + half) * unit ? 1 : 0
-      if (y >= this.oy + (records[at + CORNER + 1] + half) * unit) k |= 2
-      if (z >= this.oz + (records[at + CORNER + 2] + half) * unit) k |= 4
-      at = RECORD * (records[at + CHILD] + k)
-    }
-    this.record = at
-    this.cell = -1 - records[at + CHILD]
+    let [cx, cy, cz] = [0, 0, 0]
+    let family = 0
+    do {
+      const record = RECORD * family
+      const size = records[record + SIZE]
+      let child = 0
+      if (x >= this.ox + (cx + size) * unit) {
+        child = 1
+        cx += size
+      }
+      if (y >= this.oy + (cy + size) * unit) {
+        child |= 2
+        cy += size
+      }
+      if (z >= this.oz + (cz + size) * unit) {
+        child |= 4
+        cz += size
+      }
+      this.record = record
+      this.child = child
+      this.size = size
+      family = records[record + CHILD + child]
+    } while (family >= 0)
+    this.cx = cx
+    this.cy = cy
+    this.cz = cz
+    this.cell = -1 - family
   }
 
   /** Gives the ray a new direction at a point of the cell it is in. */
@@ -92,88 +113,101 @@ export class OctreeWalk {
   /** Starts a ray that comes from far away with closest approach (x0, y0, z0), where it meets the cube; false when it misses. */
   enter(x0: number, y0: number, z0: number, ux: number, uy: number, uz: number): boolean {
     this.aim(x0, y0, z0, ux, uy, uz)
-    const length = this.records[SIZE] * this.unit
+    const length = this.unit * 2 ** LEVELS
     let [first, last] = [Number.NEGATIVE_INFINITY, Number.POSITIVE_INFINITY]
     for (let a = 0; a < 3; a++) {
       const low = a === 0 ? this.ox : a === 1 ? this.oy : this.oz
       const p = a === 0 ? x0 : a === 1 ? y0 : z0
       const u = a === 0 ? ux : a === 1 ? uy : uz
-      const w = a === 0 ? this.wx : a === 1 ? this.wy : this.wz
       if (u === 0) {
         if (p < low || p >= low + length) return false
         continue
       }
-      first = Math.max(first, ((u > 0 ? low : low + length) - p) * w)
-      last = Math.min(last, ((u > 0 ? low + length : low) - p) * w)
+      const per = a === 0 ? this.perX : a === 1 ? this.perY : this.perZ
+      first = Math.max(first, ((u > 0 ? low : low + length) - p) * per)
+      last = Math.min(last, ((u > 0 ? low + length : low) - p) * per)
     }
     if (!(first < last)) return false
     this.s = first
+    this.cx = 0
+    this.cy = 0
+    this.cz = 0
     this.descend(0)
     return true
   }
 
   /** Path to the next wall of the cell, cm, never negative; remembers the wall for `cross`. */
   toWall(): number {
-    const { records, record, unit, ux, uy, uz } = this
-    const size = records[record + SIZE]
-    let next = Number.POSITIVE_INFINITY
-    let face = 0
-    if (ux !== 0) {
-      const corner = records[record + CORNER]
-      next = (this.ox + (ux > 0 ? corner + size : corner) * unit - this.x0) * this.wx
-      face = ux > 0 ? 1 : 0
+    const { size, unit, s } = this
+    let next = (this.ox + (this.cx + (size & this.upX)) * unit - this.fromX) * this.perX
+    let axis = 0
+    const y = (this.oy + (this.cy + (size & this.upY)) * unit - this.fromY) * this.perY
+    if (y < next) {
+      next = y
+      axis = 1
     }
-    if (uy !== 0) {
-      const corner = records[record + CORNER + 1]
-      const y = (this.oy + (uy > 0 ? corner + size : corner) * unit - this.y0) * this.wy
-      if (y < next) {
-        next = y
-        face = uy > 0 ? 3 : 2
-      }
+    const z = (this.oz + (this.cz + (size & this.upZ)) * unit - this.fromZ) * this.perZ
+    if (z < next) {
+      next = z
+      axis = 2
     }
-    if (uz !== 0) {
-      const corner = records[record + CORNER + 2]
-      const z = (this.oz + (uz > 0 ? corner + size : corner) * unit - this.z0) * this.wz
-      if (z < next) {
-        next = z
-        face = uz > 0 ? 5 : 4
-      }
-    }
-    if (next < this.s) next = this.s
+    if (next < s) next = s
     this.sWall = next
-    this.face = face
-    return next - this.s
+    this.axis = axis
+    return next - s
   }
 
   /** Steps over the wall found by `toWall`; returns the new cell, or -1 outside. */
   cross(): number {
+    const { records, axis } = this
+    const bit = 1 << axis
+    const up = axis === 0 ? this.upX : axis === 1 ? this.upY : this.upZ
+    let record = this.record
+    let child = this.child ^ bit
     this.s = this.sWall
-    const beyond = this.records[this.record + NEIGHBOUR + this.face]
-    if (beyond < 0) {
-      this.cell = -1
-      return -1
+    if ((child ^ up) & bit) {
+      const beyond = records[record + NEIGHBOUR + 2 * axis - up]
+      if (beyond >= 0) record = RECORD * beyond
+      else if (beyond === OUTSIDE) {
+        this.cell = -1
+        return -1
+      } else {
+        record = RECORD * ((-2 - beyond) >> 3)
+        child = (-2 - beyond) & 7
+      }
     }
-    this.descend(RECORD * beyond)
+    // The corner of the cube of this size that holds what is just beyond the wall.
+    const size = records[record + SIZE]
+    const step = up < 0 ? this.size : -1
+    this.cx = (axis === 0 ? this.cx + step : this.cx) & -size
+    this.cy = (axis === 1 ? this.cy + step : this.cy) & -size
+    this.cz = (axis === 2 ? this.cz + step : this.cz) & -size
+    this.record = record
+    this.child = child
+    this.size = size
+    const within = records[record + CHILD + child]
+    if (within >= 0) this.descend(within)
+    else this.cell = -1 - within
     return this.cell
   }
 
   /** Distance from a point of the present cell to its nearest wall, cm. */
   clearance(x: number, y: number, z: number): number {
-    const { records, record, unit } = this
-    const length = records[record + SIZE] * unit
-    const dx = x - this.ox - records[record + CORNER] * unit
-    const dy = y - this.oy - records[record + CORNER + 1] * unit
-    const dz = z - this.oz - records[record + CORNER + 2] * unit
+    const { unit } = this
+    const length = this.size * unit
+    const dx = x - this.ox - this.cx * unit
+    const dy = y - this.oy - this.cy * unit
+    const dz = z - this.oz - this.cz * unit
     return Math.min(dx, length - dx, dy, length - dy, dz, length - dz)
   }
 
   /** Where a point lies in the present cell, in half sides from its middle, three numbers into `out`; returns the side, cm. */
   within(x: number, y: number, z: number, out: Float64Array): number {
-    const { records, record, unit } = this
-    const half = 0.5 * records[record + SIZE] * unit
-    out[0] = (x - this.ox - records[record + CORNER] * unit) / half - 1
-    out[1] = (y - this.oy - records[record + CORNER + 1] * unit) / half - 1
-    out[2] = (z - this.oz - records[record + CORNER + 2] * unit) / half - 1
+    const { unit } = this
+    const half = 0.5 * this.size * unit
+    out[0] = (x - this.ox - this.cx * unit) / half - 1
+    out[1] = (y - this.oy - this.cy * unit) / half - 1
+    out[2] = (z - this.oz - this.cz * unit) / half - 1
     return 2 * half
   }
 
@@ -184,30 +218,57 @@ export class OctreeWalk {
     this.ux = ux
     this.uy = uy
     this.uz = uz
-    this.wx = 1 / ux
-    this.wy = 1 / uy
-    this.wz = 1 / uz
     this.b2 = x0 * x0 + y0 * y0 + z0 * z0
+    this.fromX = ux === 0 ? Number.NEGATIVE_INFINITY : x0
+    this.fromY = uy === 0 ? Number.NEGATIVE_INFINITY : y0
+    this.fromZ = uz === 0 ? Number.NEGATIVE_INFINITY : z0
+    this.perX = ux === 0 ? Number.POSITIVE_INFINITY : 1 / ux
+    this.perY = uy === 0 ? Number.POSITIVE_INFINITY : 1 / uy
+    this.perZ = uz === 0 ? Number.POSITIVE_INFINITY : 1 / uz
+    this.upX = ux > 0 ? -1 : 0
+    this.upY = uy > 0 ? -1 : 0
+    this.upZ = uz > 0 ? -1 : 0
   }
 
-  /** Down to the cell, below the node whose record is given, that the ray is in at `s`. */
-  private descend(from: number): void {
+  /** Down to the cell that the ray is in at `s`, from the family of a cube whose corner is set. */
+  private descend(family: number): void {
     const { records, unit, s, ux, uy, uz } = this
-    let at = from
-    let first = records[at + CHILD]
-    while (first >= 0) {
-      const half = 0.5 * records[at + SIZE]
-      const x = this.ox + (records[at + CORNER] + half) * unit - this.x0
-      const y = this.oy + (records[at + CORNER + 1] + half) * unit - this.y0
-      const z = this.oz + (records[at + CORNER + 2] + half) * unit - this.z0
-      let k = 0
-      if (ux > 0 ? s >= x * this.wx : ux < 0 ? s < x * this.wx : x <= 0) k = 1
-      if (uy > 0 ? s >= y * this.wy : uy < 0 ? s < y * this.wy : y <= 0) k |= 2
-      if (uz > 0 ? s >= z * this.wz : uz < 0 ? s < z * this.wz : z <= 0) k |= 4
-      at = RECORD * (first + k)
-      first = records[at + CHILD]
-    }
-    this.record = at
-    this.cell = -1 - first
+    let { cx, cy, cz } = this
+    let record = 0
+    let child = 0
+    let size = 0
+    let within = family
+    do {
+      record = RECORD * within
+      size = records[record + SIZE]
+      child = 0
+      const x = cx + size
+      const y = cy + size
+      const z = cz + size
+      // Beyond the plane in the middle, along the ray or, where it runs along the plane, by its place.
+      const planeX = this.ox + x * unit
+      if (ux === 0 ? planeX <= this.x0 : s >= (planeX - this.x0) * this.perX === ux > 0) {
+        child = 1
+        cx = x
+      }
+      const planeY = this.oy + y * unit
+      if (uy === 0 ? planeY <= this.y0 : s >= (planeY - this.y0) * this.perY === uy > 0) {
+        child |= 2
+        cy = y
+      }
+      const planeZ = this.oz + z * unit
+      if (uz === 0 ? planeZ <= this.z0 : s >= (planeZ - this.z0) * this.perZ === uz > 0) {
+        child |= 4
+        cz = z
+      }
+      within = records[record + CHILD + child]
+    } while (within >= 0)
+    this.record = record
+    this.child = child
+    this.size = size
+    this.cx = cx
+    this.cy = cy
+    this.cz = cz
+    this.cell = -1 - within
   }
 }

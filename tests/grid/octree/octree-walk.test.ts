@@ -1,12 +1,12 @@
 import { describe, expect, it } from 'vitest'
 import {
   CHILD,
-  CORNER,
   cellCube,
   cubeVolumes,
   LEVELS,
   NEIGHBOUR,
   type Octree,
+  OUTSIDE,
   RECORD,
   SIZE
 } from '../../../src/grid/octree/octree.js'
@@ -171,36 +171,55 @@ describe('OctreeWalk', () => {
 describe('Octree', () => {
   it('fills the cube, with neighbours that share a wall', () => {
     const octree = randomOctree(8, 'neighbours')
-    const { nodes, records, cells, nodeOf, side } = octree
-    const of = (node: number, item: number) => records[RECORD * node + item]
+    const { families, records, corners, cells, places, side } = octree
     const volume = cubeVolumes(octree, new Float64Array(cells)).reduce((sum, value) => sum + value, 0)
     expect(volume / side ** 3).toBeCloseTo(1, 12)
+    expect(cells).toBe(7 * families + 1)
+    const sizeOf = (family: number) => records[RECORD * family + SIZE]
+    const withinOf = (place: number) => records[RECORD * (place >> 3) + CHILD + (place & 7)]
+    const cornerOf = (place: number, a: number) => corners[3 * (place >> 3) + a] + ((place >> a) & 1) * sizeOf(place >> 3)
     let faults = 0
     const require = (truth: boolean) => {
       if (!truth) faults++
     }
-    for (let node = 0; node < nodes; node++) {
-      const size = of(node, SIZE)
-      if (of(node, CHILD) < 0) require(nodeOf[-1 - of(node, CHILD)] === node)
+    for (let family = 0; family < families; family++) {
+      const size = 2 * sizeOf(family)
+      for (let k = 0; k < 8; k++) {
+        const place = 8 * family + k
+        const within = withinOf(place)
+        if (within < 0) require(places[-1 - within] === place)
+        else require(2 * sizeOf(within) === size / 2 && [0, 1, 2].every((a) => corners[3 * within + a] === cornerOf(place, a)))
+      }
       for (let face = 0; face < 6; face++) {
         const a = face >> 1
         const upper = face % 2 === 1
-        const wall = of(node, CORNER + a) + (upper ? size : 0)
-        const beyond = of(node, NEIGHBOUR + face)
-        if (beyond < 0) {
+        const wall = corners[3 * family + a] + (upper ? size : 0)
+        const beyond = records[RECORD * family + NEIGHBOUR + face]
+        if (beyond === OUTSIDE) {
           require(wall === (upper ? 2 ** LEVELS : 0))
           continue
         }
-        const theirs = of(beyond, SIZE)
-        require(of(beyond, CORNER + a) + (upper ? 0 : theirs) === wall)
-        require(theirs === size || (theirs > size && of(beyond, CHILD) < 0))
+        // A family of the same size, or a cell.
+        const place = -2 - beyond
+        const theirs = beyond >= 0 ? 2 * sizeOf(beyond) : sizeOf(place >> 3)
+        const corner = [0, 1, 2].map((b) => (beyond >= 0 ? corners[3 * beyond + b] : cornerOf(place, b)))
+        require(beyond >= 0 ? theirs === size : theirs >= size && withinOf(place) < 0)
+        require(corner[a] + (upper ? 0 : theirs) === wall)
         for (const b of [0, 1, 2]) {
           if (b === a) continue
-          require(of(node, CORNER + b) >= of(beyond, CORNER + b))
-          require(of(node, CORNER + b) + size <= of(beyond, CORNER + b) + theirs)
+          require(corners[3 * family + b] >= corner[b])
+          require(corners[3 * family + b] + size <= corner[b] + theirs)
         }
       }
     }
     expect(faults).toBe(0)
+  })
+
+  it('divides the whole cube at least once', () => {
+    const octree = new OctreeBuilder([0, 0, 0], 1).finish()
+    expect(octree.cells).toBe(8)
+    const walk = new OctreeWalk(octree)
+    walk.startAt(0.1, 0.2, 0.3, 1, 0, 0)
+    expect([walk.cell, walk.toWall(), walk.cross(), walk.toWall(), walk.cross()]).toEqual([0, 0.4, 1, 0.5, -1])
   })
 })
