@@ -31,54 +31,72 @@ export function surveyAperture(field: IntensityField, radius: number): Float64Ar
   const sum = new Float64Array(size)
   const edge = Math.min(radius, field.outermost)
   const nearest = Math.min(CAVITY * field.innermost, edge)
-  const ratio = (edge / flattening / nearest) ** (1 / RINGS)
-  for (let i = -1; i < RINGS; i++) {
-    const from = i < 0 ? 0 : nearest * ratio ** i
-    const to = nearest * ratio ** (i + 1)
-    const b = Math.sqrt(0.5 * (from * from + to * to))
-    const weight = (Math.PI * (to * to - from * from) * flattening) / DIRECTIONS
-    for (let k = 0; k < DIRECTIONS; k++) {
-      const angle = (2 * Math.PI * (k + (i % 2 === 0 ? 0.25 : 0.75))) / DIRECTIONS
-      const x = b * Math.cos(angle)
-      const y = b * Math.sin(angle)
-      if (Math.hypot(x, y * flattening) > edge) continue
-      round.sample(x, y, ray, true)
-      for (let j = 0; j < size; j++) sum[j] += weight * ray[j]
-    }
-  }
+  overRings(nearest, edge / flattening, RINGS, DIRECTIONS, (x, y, area) => {
+    if (Math.hypot(x, y * flattening) > edge) return
+    round.sample(x, y, ray, true)
+    for (let j = 0; j < size; j++) sum[j] += area * flattening * ray[j]
+  })
   return sum
 }
 
 /** A quick look at a picture: rays through the middles of some pixels, denser towards its centre; each stands for its share of a ring. */
 export function survey(field: IntensityField, frame: PixelFrame): Survey {
   const { width, height, pixelWidth, pixelHeight } = frame
-  const area = pixelWidth * pixelHeight
-  const nearest = 0.5 * Math.sqrt(area)
+  const nearest = 0.5 * Math.sqrt(pixelWidth * pixelHeight)
   const farthest = 0.5 * Math.hypot(width * pixelWidth, height * pixelHeight)
-  const ratio = Math.max(1, farthest / nearest) ** (1 / PICTURE_RINGS)
   const ray = new Float64Array(field.size)
   const lights: number[] = []
   const errors: number[] = []
   const pixels: number[] = []
   let flux = 0
-  for (let i = -1; i < PICTURE_RINGS; i++) {
-    const from = i < 0 ? 0 : nearest * ratio ** i
-    const to = nearest * ratio ** (i + 1)
-    const count = (Math.PI * (to * to - from * from)) / area / PICTURE_DIRECTIONS
-    const b = Math.sqrt(0.5 * (from * from + to * to))
-    for (let k = 0; k < PICTURE_DIRECTIONS; k++) {
-      const angle = (2 * Math.PI * (k + (i % 2 === 0 ? 0.25 : 0.75))) / PICTURE_DIRECTIONS
-      const column = Math.floor((b * Math.cos(angle)) / pixelWidth + width / 2)
-      const row = Math.floor((b * Math.sin(angle)) / pixelHeight + height / 2)
-      if (column < 0 || column >= width || row < 0 || row >= height || !(count > 0)) continue
-      field.sample((column + 0.5 - width / 2) * pixelWidth, (row + 0.5 - height / 2) * pixelHeight, ray, true)
-      const light = ray[EMITTED] + ray[SCATTERED]
-      lights.push(light)
-      errors.push(light > 0 ? standardError(ray.subarray(FIRST_GROUP, RAY_VALUES)) / light : 0)
-      pixels.push(count)
-      flux += light * count
-    }
-  }
+  overRings(nearest, Math.max(nearest, farthest), PICTURE_RINGS, PICTURE_DIRECTIONS, (x, y, area) => {
+    const count = area / (pixelWidth * pixelHeight)
+    const column = Math.floor(x / pixelWidth + width / 2)
+    const row = Math.floor(y / pixelHeight + height / 2)
+    if (column < 0 || column >= width || row < 0 || row >= height || !(count > 0)) return
+    field.sample((column + 0.5 - width / 2) * pixelWidth, (row + 0.5 - height / 2) * pixelHeight, ray, true)
+    const light = ray[EMITTED] + ray[SCATTERED]
+    lights.push(light)
+    errors.push(light > 0 ? standardError(ray.subarray(FIRST_GROUP, RAY_VALUES)) / light : 0)
+    pixels.push(count)
+    flux += light * count
+  })
   const all = pixels.reduce((sum, count) => sum + count, 0)
   return { error: flux > 0 ? medianOverCountedBulk(errors, lights, pixels, BULK) : 0, mean: flux / all }
+}
+
+/** A quick look at what a picture misses: light of dust beyond its edges, without stars, intensity x cm2; to some per cent of itself. */
+export function surveyBeyond(field: IntensityField, { width, height, pixelWidth, pixelHeight }: PixelFrame): number {
+  const [halfWidth, halfHeight] = [0.5 * width * pixelWidth, 0.5 * height * pixelHeight]
+  const nearest = Math.min(halfWidth, halfHeight)
+  if (nearest >= field.outermost) return 0
+  const ray = new Float64Array(field.size)
+  let sum = 0
+  overRings(nearest, field.outermost, PICTURE_RINGS, PICTURE_DIRECTIONS, (x, y, area) => {
+    if (Math.abs(x) <= halfWidth && Math.abs(y) <= halfHeight) return
+    field.sample(x, y, ray, false)
+    sum += area * (ray[EMITTED] + ray[SCATTERED])
+  })
+  return sum
+}
+
+/** Points in rings, the first one within `nearest`, the others to `farthest` in equal ratios, each with the area that it stands for. */
+function overRings(
+  nearest: number,
+  farthest: number,
+  rings: number,
+  directions: number,
+  visit: (x: number, y: number, area: number) => void
+): void {
+  const ratio = (farthest / nearest) ** (1 / rings)
+  for (let i = -1; i < rings; i++) {
+    const from = i < 0 ? 0 : nearest * ratio ** i
+    const to = nearest * ratio ** (i + 1)
+    const b = Math.sqrt(0.5 * (from * from + to * to))
+    const area = (Math.PI * (to * to - from * from)) / directions
+    for (let k = 0; k < directions; k++) {
+      const angle = (2 * Math.PI * (k + (i % 2 === 0 ? 0.25 : 0.75))) / directions
+      visit(b * Math.cos(angle), b * Math.sin(angle), area)
+    }
+  }
 }

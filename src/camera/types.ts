@@ -24,6 +24,10 @@ export interface CameraImages {
   deficit?: Float64Array
   /** For each wavelength: the estimated relative error of placing the rays, weighted by flux. */
   samplingError: number[]
+  /** For each wavelength: about how much light of the dust lies beyond the edges, as a sum over such pixels; 0 where it is not known. */
+  beyond: number[]
+  /** Dust along the line of sight, absent without any: g/cm2 (height x width, as one wavelength), and the error of placing rays. */
+  column?: { density: Float64Array; samplingError: number }
 }
 
 /** A star as an observer sees it; angles in rad from the centre of the picture. */

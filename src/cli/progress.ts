@@ -24,6 +24,8 @@ export function startProgress(
 
 function lineOf(progress: RunProgress, rate: number, elapsed: number, effort: EffortSpec): string {
   if (progress.stage === 'grains') return grainsLine(progress)
+  if (progress.stage === 'columns')
+    return `column density, camera ${progress.observer?.name}: ${Math.round((100 * progress.done) / progress.of)} %`
   const { stage, wavelength, index = 0, count = 0, done, of, error, observer } = progress
   const left = secondsLeft(progress, rate, elapsed, effort)
   const at = wavelength === undefined ? '' : `wavelength ${index + 1} of ${count} (${wavelengthText(wavelength * 1e4)}), `

@@ -61,7 +61,7 @@ const meanings: Record<string, string> = {
 
 /**
  * The images of a FITS file that this program wrote, at most `most` numbers. The first plane and its SIGMA come first, at as many
- * wavelengths as fit, evenly spread, then the others at the same ones. Undefined when not even one image fits.
+ * wavelengths as fit, evenly spread, then the others at the same ones; an image without wavelengths is one. Undefined when not even one image fits.
  */
 function readPicture({ path, file, heading, planes }: PictureFile, most: number): PictureData | undefined {
   const units = readFits(path)
@@ -70,13 +70,20 @@ function readPicture({ path, file, heading, planes }: PictureFile, most: number)
   if (distance === undefined) throw new DataError(path, 'has no DIST_PC')
   const [width, height] = first.axes
   const pixels = width * height
-  const all = Array.from(tableColumn(unitNamed(units, 'WAVELENGTH'), 'WAVELENGTH').values, (metres) => 100 * metres)
+  const cube = first.axes.length > 2
+  const all = !cube
+    ? [Number.NaN]
+    : Array.from(tableColumn(unitNamed(units, 'WAVELENGTH'), 'WAVELENGTH').values, (metres) => 100 * metres)
   const fits = Math.min(all.length, Math.floor(most / (2 * pixels)))
   if (fits === 0) return undefined
   const kept = spread(all.length, fits)
   const images = units.filter(
     ({ kind, axes, name }) =>
-      kind === 'image' && axes[0] === width && axes[1] === height && (!planes || planes.some((plane) => plane.name === name))
+      kind === 'image' &&
+      axes.length === first.axes.length &&
+      axes[0] === width &&
+      axes[1] === height &&
+      (!planes || planes.some((plane) => plane.name === name))
   )
   const notes: string[] = []
   if (fits < all.length)
@@ -115,7 +122,7 @@ function readPicture({ path, file, heading, planes }: PictureFile, most: number)
     height,
     pixel: [side(perEast), side(perNorth)],
     auPerArcsec: (distance * PARSEC * ARCSECOND) / AU,
-    wavelengths: wavelengthLabels(wavelengths).map(spacedWavelength),
+    wavelengths: cube ? wavelengthLabels(wavelengths).map(spacedWavelength) : [''],
     planes: shown.map(({ name }) => {
       const given = planes?.find((plane) => plane.name === name)
       if (given) return given

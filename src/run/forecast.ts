@@ -45,12 +45,13 @@ export function forecast({ scene, dimensions }: Model, trial: Trial, workers: nu
   const picture = ([width, height]: [number, number]) =>
     each(trial.pictures.fixedSeconds, trial.pictures.count) +
     each(trial.pictures.seconds, trial.pictures.count) * finer * ((width * height) / TRIAL_PIXELS ** 2) ** BY_PIXELS
+  // One picture more is that of the column density.
   const aperture = each(trial.apertures.seconds, trial.apertures.count) * finer
   const seconds = {
     dust: time(dust, trial.dust) / workers,
     light: (time(light, trial.light) * observedWavelengths(scene).length) / workers,
     pictures:
-      cameras.reduce((sum, { pixels, wavelengths }) => sum + (picture(pixels) * wavelengths.length) / workers, 0) +
+      cameras.reduce((sum, { pixels, wavelengths }) => sum + (picture(pixels) * (wavelengths.length + 1)) / workers, 0) +
       spectra.reduce((sum, { wavelengths }) => sum + aperture * wavelengths.length, 0)
   }
   return {

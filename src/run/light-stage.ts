@@ -10,6 +10,7 @@ import type { Estimator } from './estimator.js'
 import { inLanes } from './in-lanes.js'
 import { lightJob } from './light-job.js'
 import { wavelengthsAbreast } from './memory.js'
+import { observeColumns } from './observe-columns.js'
 import { observeDeficit } from './observe-deficit.js'
 import type { Studio } from './observe-wavelength.js'
 import { type RunProgress, Stopped } from './progress.js'
@@ -117,6 +118,10 @@ export async function lightStage(
     ledger.forget(names.pictures)
   }
   await inLanes(wavelengths, wavelengthsAbreast(model, pool.size), observe)
+  const onDone: Studio['onDone'] = (observer, rows, of) =>
+    onProgress({ stage: 'columns', observer, done: rows, of, round: 0, error: Number.NaN })
+  if (!(await observeColumns(model, images, { pool, onDone, stop }))) throw new Stopped()
+  time = addTime(time, clock())
   return { images, spectra, lightPackets, time }
 }
 

@@ -1,7 +1,7 @@
 import type { PixelFrame } from '../camera/direct.js'
 import { type FieldData, fieldData, openField } from '../camera/ray-field.js'
 import type { RayMedium } from '../camera/ray-medium.js'
-import { type Survey, survey, surveyAperture } from '../camera/survey.js'
+import { type Survey, survey, surveyAperture, surveyBeyond } from '../camera/survey.js'
 import type { ViewBasis } from '../camera/view.js'
 import { dimensionsOf } from '../grid/cells.js'
 import type { WorkerPool } from '../workers/pool.js'
@@ -11,7 +11,8 @@ export const looks = {
   profile: ({ medium, view, accuracy }: { medium: RayMedium; view: ViewBasis; accuracy: number }) =>
     fieldData(medium, view, accuracy),
   survey: ({ field, frame }: { field: FieldData; frame: PixelFrame }) => survey(openField(field), frame),
-  'survey-aperture': ({ field, radius }: { field: FieldData; radius: number }) => surveyAperture(openField(field), radius)
+  'survey-aperture': ({ field, radius }: { field: FieldData; radius: number }) => surveyAperture(openField(field), radius),
+  'survey-beyond': ({ field, frame }: { field: FieldData; frame: PixelFrame }) => surveyBeyond(openField(field), frame)
 }
 
 /** The intensity towards an observer, its rays traced on a thread where they are traced beforehand. */
@@ -28,4 +29,9 @@ export async function surveyOn(pool: WorkerPool, field: FieldData, frame: PixelF
 /** `surveyAperture` on a thread. */
 export async function surveyApertureOn(pool: WorkerPool, field: FieldData, radius: number): Promise<Float64Array> {
   return (await pool.ask({ name: 'survey-aperture', input: { field, radius } })) as Float64Array
+}
+
+/** `surveyBeyond` on a thread. */
+export async function surveyBeyondOn(pool: WorkerPool, field: FieldData, frame: PixelFrame): Promise<number> {
+  return (await pool.ask({ name: 'survey-beyond', input: { field, frame } })) as number
 }

@@ -6,7 +6,7 @@ import { ambientIntensity } from '../solve/scatter-medium.js'
 import { noLedger } from '../workers/ledger.js'
 import { observeWavelength, type Studio } from './observe-wavelength.js'
 import { observersOf } from './observers-of.js'
-import type { Wanted } from './wanted.js'
+import { inPlaceOfFlux, inPlaceOfTotal, type Wanted } from './wanted.js'
 
 /**
  * Ambient light of intensity I that is missing towards the observer: I (1 - exp(-tau)) through dust, all of it behind a star. That is
@@ -35,21 +35,11 @@ export async function observeDeficit(model: Model, light: DustLight, wanted: Wan
   return observeWavelength({ ...model, stars }, dark, [], scratch, indices, { ...studio, ledger: noLedger })
 }
 
-/** The same product with its deficit in place of the total, and nothing else kept. */
+/** The same product with its deficit in place of the total. */
 function intoDeficit(scene: Scene, want: Wanted): Wanted {
-  const planes = (deficit: Float64Array, from: number, length: number) => ({
-    total: deficit.subarray(from, from + length),
-    sigma: new Float64Array(length),
-    direct: new Float64Array(length),
-    emitted: new Float64Array(length),
-    scattered: new Float64Array(length),
-    deficit: undefined,
-    stokes: undefined,
-    samplingError: [0]
-  })
-  if (want.kind === 'spectrum') return { ...want, k: 0, result: { ...want.result, ...planes(want.result.deficit!, want.k, 1) } }
+  if (want.kind === 'spectrum') return inPlaceOfFlux(want, want.result.deficit!.subarray(want.k, want.k + 1))
   const pixels = want.images.width * want.images.height
   // Exit bins know no stars, but their deficit does.
   const stars = starsOnSky(scene, want.spec)
-  return { ...want, k: 0, images: { ...want.images, ...planes(want.images.deficit!, want.k * pixels, pixels), stars } }
+  return inPlaceOfTotal(want, want.images.deficit!.subarray(want.k * pixels, (want.k + 1) * pixels), stars)
 }

@@ -14,7 +14,7 @@ import type { ScatteredLight } from '../solve/scattered-light.js'
 import type { Ledger, Piece } from '../workers/ledger.js'
 import type { WorkerPool } from '../workers/pool.js'
 import { runKept } from '../workers/run-kept.js'
-import { fieldOn, surveyOn } from './look.js'
+import { fieldOn, surveyBeyondOn, surveyOn } from './look.js'
 import { mediumFor } from './observers-of.js'
 import { addStars, directFlux } from './stars-seen.js'
 import { putValues, valuesOf, type Wanted, type WantedValues } from './wanted.js'
@@ -147,6 +147,7 @@ async function takePicture(model: Model, work: PictureWork, { pool, ledger, name
   const frame = pixelFrame(spec, model.scene.distance)
   // Pixels a hundred times fainter than the mean need no finer rays.
   const floor = 0.01 * (await surveyOn(pool, data, frame)).mean
+  images.beyond[k] = (await surveyBeyondOn(pool, data, frame)) / (frame.pixelWidth * frame.pixelHeight)
   const tasks = []
   for (let from = 0; from < frame.height; from += ROWS_A_TASK) {
     const to = Math.min(frame.height, from + ROWS_A_TASK)

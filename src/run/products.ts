@@ -4,6 +4,7 @@ import { spectrumPlot } from '../output/plot/spectrum-plot.js'
 import { structurePlot } from '../output/plot/structure-plot.js'
 import { azimuthalPicture } from '../output/png/azimuthal-picture.js'
 import { cameraPicture } from '../output/png/camera-picture.js'
+import { columnPicture } from '../output/png/column-picture.js'
 import { polarisedPicture } from '../output/png/polarised-picture.js'
 import { spectrumEcsv } from '../output/spectrum-ecsv.js'
 import { wavelengthLabels } from '../output/wavelength-label.js'
@@ -23,7 +24,9 @@ import { type Product, writeFolder } from './write-folder.js'
 export async function writeProducts(result: RunResult, folder: RunFolder, making: RunMaking): Promise<RunRecord> {
   const time = stopwatch()
   const warnings = warningsOf(result)
-  const products = productsOf(result).filter(({ file }) => !(making.dataOnly && /\.(png|svg|html)$/.test(file)))
+  const products = productsOf(result).filter(
+    ({ file }) => !(making.dataOnly && /\.(png|svg|html)$/.test(file))
+  )
   const record = (files: string[]) => runRecord(result, making, warnings, { files, time: time() })
   const report = (finished: RunRecord) => runReport(folder.path, finished)
   return writeFolder(folder, recordName, products, record, making.dataOnly ? undefined : report)
@@ -45,6 +48,9 @@ function productsOf({ model, dust, images, spectra }: RunResult): Product[] {
               wavelengths.map((wavelength) => ambientIntensity(model, LIGHT_SPEED / wavelength))
             )
         },
+        ...(result.column
+          ? [{ file: `images/${name}-column.png`, make: () => columnPicture(result, result.column!.density, scene) }]
+          : []),
         ...wavelengthLabels(wavelengths).flatMap((label, k) => {
           const path = `images/${name}-${label}`
           const picture = { file: `${path}.png`, make: () => cameraPicture(result, k, scene) }

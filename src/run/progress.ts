@@ -1,6 +1,6 @@
 /** What a run is doing, for whoever shows it. */
 export interface RunProgress {
-  stage: 'grains' | 'dust' | 'light' | 'pictures'
+  stage: 'grains' | 'dust' | 'light' | 'pictures' | 'columns'
   /** Wavelength at hand, cm, and how many of how many; absent for the dust. */
   wavelength?: number
   index?: number

@@ -9,7 +9,7 @@ const TOO_HOT = 1500
 
 /** Dust that may sublimate counts as too hot beyond this much of its temperature: cells just inside are averages. */
 const SLACK = 1.05
-/** Share of a source's light above which ambient light missing behind it is worth a word. */
+/** Share of a source's light above which what is missing, ambient light behind it or light outside the field, is worth a word. */
 const NOTICED = 0.01
 /** Share of the mass that may sublimate without a word. */
 const LITTLE = 1e-3
@@ -28,6 +28,7 @@ export function resultWarnings(result: RunResult): string[] {
     }),
     ...sublimated(result),
     ...unsettledRadii(result),
+    ...cutByEdges(result),
     ...seenAgainstLight(result),
     ...emptyCells(result),
     ...precisionWarnings(result),
@@ -59,16 +60,41 @@ function seenAgainstLight({ images, spectra }: RunResult): string[] {
   ]
   return products.flatMap(({ what, where, of: { wavelengths }, total, deficit }) => {
     if (!deficit) return []
-    const size = total.length / wavelengths.length
-    const sum = (values: Float64Array, k: number) => values.subarray(k * size, (k + 1) * size).reduce((a, b) => a + b, 0)
-    const shares = wavelengths.map((_, k) => sum(deficit, k) / sum(total, k))
+    const shares = wavelengths.map((_, k) => planeSum(deficit, wavelengths.length, k) / planeSum(total, wavelengths.length, k))
     const many = shares.filter((share) => share > NOTICED).length
     if (many === 0) return []
-    const most = shares.reduce((best, share, k) => (share > shares[best] ? k : best), 0)
+    const most = largest(shares)
     return [
       `${what}: ambient light that the source takes out of its background is more than ${percent(NOTICED)} of its own light at ${many} of ${wavelengths.length} wavelengths (${Number(shares[most].toPrecision(2))} times its light at ${wavelengthLabel(wavelengths[most])}); it is not subtracted: see the ${where} ${where === 'column' ? 'deficit' : 'DEFICIT'}`
     ]
   })
+}
+
+/** Cameras that more of the light misses than their images are precise. */
+function cutByEdges({ model, images }: RunResult): string[] {
+  const noticed = Math.max(NOTICED, model.scene.effort.precision ?? 0)
+  return images.flatMap(({ camera: { name, wavelengths }, total, beyond }) => {
+    const shares = wavelengths.map((_, k) =>
+      beyond[k] > 0 ? beyond[k] / (beyond[k] + planeSum(total, wavelengths.length, k)) : 0
+    )
+    const worst = largest(shares)
+    return shares[worst] > noticed
+      ? [
+          `camera ${name}: about ${percent(shares[worst])} of the light at ${wavelengthLabel(wavelengths[worst])} comes from outside its field`
+        ]
+      : []
+  })
+}
+
+/** Sum of the values at wavelength number `k` of `count`. */
+function planeSum(values: Float64Array, count: number, k: number): number {
+  const size = values.length / count
+  return values.subarray(k * size, (k + 1) * size).reduce((a, b) => a + b, 0)
+}
+
+/** Where the largest value stands; those that are no numbers do not count. */
+function largest(values: number[]): number {
+  return values.reduce((best, value, k) => (value > values[best] ? k : best), 0)
 }
 
 function unsettledRadii({ model, innerRadii }: RunResult): string[] {

@@ -11,6 +11,8 @@ import { percent } from './percent.js'
 import type { RunRecord } from './run-record.js'
 import type { PhaseTime } from './stopwatch.js'
 
+const columnPlane = { name: 'COLUMN', meaning: 'column density' }
+
 /** The page of a run, from its record and the files in its folder. Throws a DataError for a file that cannot be used. */
 export function runReport(path: string, record: RunRecord): string {
   const at = (file: string) => join(path, file)
@@ -18,14 +20,21 @@ export function runReport(path: string, record: RunRecord): string {
     record.files.filter((file) => file.startsWith(folder) && file.endsWith(ending))
   const nameOf = (file: string) => file.replace(/^[^/]*\//, '').replace(/\.[a-z]+$/, '')
   const images = named('images/', '.fits').map((file) => ({ path: at(file), file, heading: `Camera ${nameOf(file)}` }))
-  const { pictures, leftOut } = readPictures(images)
+  const columns = images
+    .filter(({ file }) => record.files.includes(file.replace(/\.fits$/, '-column.png')))
+    .map((from) => ({ ...from, heading: `${from.heading}: dust along the line of sight`, planes: [columnPlane] }))
+  // They take little of a page's room, and come first where it is shared.
+  const { pictures, leftOut } = readPictures([...columns, ...images])
   const spectra = named('spectra/', '.ecsv').map((file) => readSpectrumChart(at(file), file, `Spectrum ${nameOf(file)}`))
   const charts: ChartSection[] = [{ heading: 'Spectra', charts: spectra, pictures: [], tables: [] }, dustSection(record, at)]
   return reportPage({
     title: record.title,
     summary: summaryOf(record),
     warnings: [...record.warnings, ...leftOut],
-    pictures,
+    pictures: [
+      ...pictures.filter(({ planes }) => planes[0] !== columnPlane),
+      ...pictures.filter(({ planes }) => planes[0] === columnPlane)
+    ],
     charts,
     tables: [energyTable(record), precisionTable(record), packetsTable(record)],
     texts: existsSync(at('scene.yaml'))
@@ -60,19 +69,14 @@ function summaryOf({ precision, cells, warnings }: RunRecord): string {
 function dustSection({ found, files }: RunRecord, at: (file: string) => string): ChartSection {
   const cells = 'dust/cells.fits'
   const charts = files.includes(cells) ? readStructureCharts(at(cells), cells) : []
-  const drawn = 'dust/structure.png'
-  const picture = charts.length === 0 && existsSync(at(drawn))
+  const drawn = charts.length > 0 ? [] : ['dust/structure.png', 'dust/planes.png'].filter((file) => existsSync(at(file)))
   return {
     heading: 'Dust',
     charts,
-    pictures: picture
-      ? [
-          {
-            alt: 'Maps of temperature and density of the dust, distance from the axis against height',
-            base64: readFileSync(at(drawn)).toString('base64')
-          }
-        ]
-      : [],
+    pictures: drawn.map((file) => ({
+      alt: `Maps of temperature and density of the dust: ${file}`,
+      base64: readFileSync(at(file)).toString('base64')
+    })),
     tables: [
       {
         heading: 'Components',

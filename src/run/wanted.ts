@@ -1,6 +1,6 @@
 import { starsOnSky } from '../camera/stars-on-sky.js'
 import { STOKES, stokesPlanes } from '../camera/stokes-planes.js'
-import type { ApertureSpectrum, CameraImages } from '../camera/types.js'
+import type { ApertureSpectrum, CameraImages, StarOnSky } from '../camera/types.js'
 import { hasAmbient } from '../scene/has-ambient.js'
 import { isPolarised } from '../scene/is-polarised.js'
 import type { CameraSpec, Scene, SpectrumSpec } from '../scene/types.js'
@@ -17,6 +17,8 @@ const PLANES = ['total', 'sigma', 'direct', 'emitted', 'scattered'] as const
 export type WantedValues = Record<(typeof PLANES)[number], Float64Array> &
   Partial<Record<(typeof STOKES)[number] | 'deficit', Float64Array>> & {
     samplingError: number
+    /** Of pictures: see CameraImages. */
+    beyond: number
     /** Of each star in the picture, erg/s/cm2/Hz. */
     starFlux: number[]
   }
@@ -38,7 +40,15 @@ export function emptyProducts(scene: Scene, estimator: Estimator) {
     const count = camera.wavelengths.length
     // Exit bins catch direct light like all other, wherever it leaves.
     const stars = estimator === 'exit' ? [] : starsOnSky(scene, camera)
-    return { camera, width, height, ...arrays(width * height * count), stars, samplingError: new Array(count).fill(0) }
+    return {
+      camera,
+      width,
+      height,
+      ...arrays(width * height * count),
+      stars,
+      samplingError: new Array(count).fill(0),
+      beyond: new Array(count).fill(0)
+    }
   })
   const spectra = scene.spectra.map((spectrum): ApertureSpectrum => {
     const count = spectrum.wavelengths.length
@@ -68,7 +78,12 @@ export function valuesOf(wanted: Wanted[]): WantedValues[] {
     if (stokes) copies.push(...STOKES.map((plane): [string, Float64Array] => [plane, stokes[plane].slice(from, to)]))
     if (product.deficit) copies.push(['deficit', product.deficit.slice(from, to)])
     const starFlux = starsOf(want).map(({ flux }) => flux[want.k])
-    return { ...Object.fromEntries(copies), samplingError: product.samplingError[want.k], starFlux } as WantedValues
+    return {
+      ...Object.fromEntries(copies),
+      samplingError: product.samplingError[want.k],
+      beyond: want.kind === 'camera' ? want.images.beyond[want.k] : 0,
+      starFlux
+    } as WantedValues
   })
 }
 
@@ -80,10 +95,45 @@ export function putValues(wanted: Wanted[], values: WantedValues[]): void {
     if (product.stokes) for (const plane of STOKES) product.stokes[plane].set(values[i][plane]!, from)
     product.deficit?.set(values[i].deficit!, from)
     product.samplingError[want.k] = values[i].samplingError
+    if (want.kind === 'camera') want.images.beyond[want.k] = values[i].beyond
     starsOf(want).forEach(({ flux }, star) => {
       flux[want.k] = values[i].starFlux[star]
     })
   })
+}
+
+/**
+ * The same picture, of one wavelength, with `plane` (width x height) in place of the total and nothing else kept: for what is made as if
+ * it were light.
+ */
+export function inPlaceOfTotal(
+  { spec, images }: Pick<Extract<Wanted, { kind: 'camera' }>, 'spec' | 'images'>,
+  plane: Float64Array,
+  stars: StarOnSky[]
+): Extract<Wanted, { kind: 'camera' }> {
+  return { kind: 'camera', spec, k: 0, images: { ...images, ...asTotal(plane), beyond: [0], stars } }
+}
+
+/** As `inPlaceOfTotal`, of a spectrum; `value` has one element. */
+export function inPlaceOfFlux(
+  { spec, result }: Pick<Extract<Wanted, { kind: 'spectrum' }>, 'spec' | 'result'>,
+  value: Float64Array
+): Wanted {
+  return { kind: 'spectrum', spec, k: 0, result: { ...result, ...asTotal(value) } }
+}
+
+function asTotal(total: Float64Array) {
+  const none = () => new Float64Array(total.length)
+  return {
+    total,
+    sigma: none(),
+    direct: none(),
+    emitted: none(),
+    scattered: none(),
+    deficit: undefined,
+    stokes: undefined,
+    samplingError: [0]
+  }
 }
 
 const starsOf = (want: Wanted) => (want.kind === 'camera' ? want.images.stars : [])

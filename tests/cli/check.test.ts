@@ -82,11 +82,6 @@ describe('check', () => {
       /a pixel \(2500 au\) is larger than the source \(2000 au\)/
     ],
     [
-      'a source larger than the field',
-      sceneWith(['field: 2000 au', 'field: 500 au']),
-      /source \(2000 au\) is larger than the field \(500 au\)/
-    ],
-    [
       'a star larger than the cavity',
       sceneWith(['5000 Lsun', '5000 Lsun\n    extent: sphere'], ['inner: 10 au', 'inner: 0.5 au']),
       /giant: its radius, 1\.22 au, is larger than the cavity of dust wind \(0\.5 au\)/

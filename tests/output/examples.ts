@@ -63,6 +63,7 @@ export function exampleImages(intensity: (x: number, y: number, k: number) => nu
     scattered: total.map((value) => value / 2),
     stars: [],
     samplingError: wavelengths.map(() => 0),
+    beyond: wavelengths.map(() => 0),
     ...(options.polarised && { stokes: exampleStokes(total, width, height, options.polarised) })
   }
 }

@@ -24,7 +24,7 @@ function cameraFile(pixels: number, wavelengths: number) {
     scattered: total
   }
   const path = join(folderWith({}), 'face.fits')
-  writeFileSync(path, cameraFits({ ...images, stars: [], samplingError: [] }, scene))
+  writeFileSync(path, cameraFits({ ...images, stars: [], samplingError: [], beyond: [] }, scene))
   return { path, file: 'images/face.fits', heading: 'Camera face' }
 }
 

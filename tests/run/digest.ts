@@ -13,6 +13,7 @@ export function digest({ dust, equilibrium, images, spectra, lightPackets }: Run
     for (const part of ['total', 'sigma', 'direct', 'emitted', 'scattered'] as const) add(product[part])
     for (const part of STOKES) if (product.stokes) add(product.stokes[part])
     add(Float64Array.from(product.samplingError))
+    if ('column' in product && product.column) add(product.column.density)
   }
   for (const { packets, error } of lightPackets) add(Float64Array.of(packets, error))
   return hash.digest('hex')

@@ -12,7 +12,7 @@ import { joined } from './hdu.js'
 import { imageHdu } from './image.js'
 import { originCards } from './origin-cards.js'
 import { tableHdu } from './table.js'
-import { wavelengthTableHdu, wcsCards } from './wcs.js'
+import { imageWcsCards, wavelengthTableHdu, wcsCards } from './wcs.js'
 
 type Plane = 'total' | 'sigma' | 'direct' | 'emitted' | 'scattered' | 'deficit'
 
@@ -27,8 +27,8 @@ const planes: [Plane, string][] = [
 
 /**
  * The FITS file of a camera in the camera's unit, axes x (west), y (north), wavelength. The primary HDU is the total;
- * image extensions SIGMA, DIRECT, EMITTED, SCATTERED, where light is polarised Q, SIGMA_Q, U, SIGMA_U, V and SIGMA_V, the table of
- * wavelengths and that of the stars follow. With ambient fields there is DEFICIT too, whose header holds their intensity beside the dust,
+ * image extensions SIGMA, DIRECT, EMITTED, SCATTERED, where light is polarised Q, SIGMA_Q, U, SIGMA_U, V and SIGMA_V, with dust COLUMN,
+ * the table of wavelengths and that of the stars follow. With ambient fields there is DEFICIT too, whose header holds their intensity beside the dust,
  * `ambient` (cgs, one value a wavelength), in the cards AMBI1, AMBI2 and so on.
  */
 export function cameraFits(images: CameraImages, scene: Scene, ambient: number[] = []): Uint8Array {
@@ -45,7 +45,7 @@ export function cameraFits(images: CameraImages, scene: Scene, ambient: number[]
   })
   const stokes = stokesHdus(images, axes, wcsCards({ width, height, field: camera.field }, scene.sky))
   const stars = images.stars.length > 0 ? [starsTableHdu(images)] : []
-  return joined([...parts, ...stokes, wavelengthTableHdu(camera.wavelengths), ...stars])
+  return joined([...parts, ...stokes, ...columnHdu(images, scene), wavelengthTableHdu(camera.wavelengths), ...stars])
 }
 
 /** Extensions Q, U, V and their errors; beside magnitudes they are in MJy/sr. */
@@ -76,6 +76,19 @@ const stokesMeaning = {
   q: 'Stokes Q, > 0: electric vector north-south',
   u: 'Stokes U, > 0: electric vector north-east to south-west',
   v: 'Stokes V, > 0: electric vector turns north to east'
+}
+
+/** The extension COLUMN, a single image: the column density of all dust. */
+function columnHdu({ column, width, height, camera }: CameraImages, scene: Scene): Uint8Array[] {
+  if (!column) return []
+  const cards = [
+    card('EXTNAME', 'COLUMN'),
+    commentCard('This image: column density of all dust along the line of sight.'),
+    card('BUNIT', 'g cm-2'),
+    realCard('PLACING', column.samplingError, 'relative error of placing rays, estimated'),
+    ...imageWcsCards({ width, height, field: camera.field }, scene.sky)
+  ]
+  return [imageHdu('extension', [width, height], column.density, cards)]
 }
 
 /** The extension STARS, one row a star; their names stand in the cards STAR1, STAR2 and so on. */

@@ -13,30 +13,41 @@ export interface FieldOfView {
 }
 
 /**
- * World coordinates of an image cube. Celestial axes: gnomonic projection about the image centre, north up and east to
- * the left (Calabretta & Greisen 2002, A&A 395, 1077). Third axis: vacuum wavelength looked up in a table
+ * World coordinates of an image cube: celestial axes, and a third of vacuum wavelengths looked up in a table
  * (Greisen et al. 2006, A&A 446, 747, section 6), which `wavelengthTableHdu` writes.
  */
-export function wcsCards({ width, height, field: [across, up] }: FieldOfView, sky: Scene['sky']): string[] {
+export function wcsCards(view: FieldOfView, sky: Scene['sky']): string[] {
   return [
     card('WCSAXES', 3),
-    card('CTYPE1', 'RA---TAN', 'right ascension, gnomonic'),
-    card('CTYPE2', 'DEC--TAN', 'declination, gnomonic'),
+    ...celestialCards(view, sky),
     card('CTYPE3', 'WAVE-TAB', 'vacuum wavelength, by table'),
-    card('CUNIT1', 'deg'),
-    card('CUNIT2', 'deg'),
     card('CUNIT3', 'm'),
-    realCard('CRPIX1', (width + 1) / 2, 'centre of the image'),
-    realCard('CRPIX2', (height + 1) / 2, 'centre of the image'),
     realCard('CRPIX3', 1),
-    realCard('CRVAL1', sky?.raDeg ?? 0),
-    realCard('CRVAL2', sky?.decDeg ?? 0),
     realCard('CRVAL3', 1, 'row of the wavelength table'),
-    realCard('CDELT1', -across / width / DEGREE, 'east is to the left'),
-    realCard('CDELT2', up / height / DEGREE, 'north is up'),
     realCard('CDELT3', 1),
     card('PS3_0', wavelengthTable, 'extension with the wavelengths'),
-    card('PS3_1', wavelengthTable, 'its column'),
+    card('PS3_1', wavelengthTable, 'its column')
+  ]
+}
+
+/** World coordinates of a single image. */
+export function imageWcsCards(view: FieldOfView, sky: Scene['sky']): string[] {
+  return [card('WCSAXES', 2), ...celestialCards(view, sky)]
+}
+
+/** Gnomonic projection about the image centre, north up and east to the left (Calabretta & Greisen 2002, A&A 395, 1077). */
+function celestialCards({ width, height, field: [across, up] }: FieldOfView, sky: Scene['sky']): string[] {
+  return [
+    card('CTYPE1', 'RA---TAN', 'right ascension, gnomonic'),
+    card('CTYPE2', 'DEC--TAN', 'declination, gnomonic'),
+    card('CUNIT1', 'deg'),
+    card('CUNIT2', 'deg'),
+    realCard('CRPIX1', (width + 1) / 2, 'centre of the image'),
+    realCard('CRPIX2', (height + 1) / 2, 'centre of the image'),
+    realCard('CRVAL1', sky?.raDeg ?? 0),
+    realCard('CRVAL2', sky?.decDeg ?? 0),
+    realCard('CDELT1', -across / width / DEGREE, 'east is to the left'),
+    realCard('CDELT2', up / height / DEGREE, 'north is up'),
     card('RADESYS', 'ICRS'),
     ...(sky ? [] : [commentCard('The scene gives no sky position: CRVAL1 and CRVAL2 are placeholders.')])
   ]

@@ -15,6 +15,6 @@ export function headLines({ title, subtitle }: Pick<SkyView, 'title' | 'subtitle
 
 /** What the stretch is, and what it leaves out, in words. */
 export function stretchNote({ stretch, brightest }: IntensityScale): string {
-  if (stretch.empty) return 'no light in this image'
-  return `${stretch.kind} stretch${stretch.cut ? `; a few pixels are brighter, up to ${brightest}` : ''}`
+  if (stretch.empty) return 'nothing in this image'
+  return `${stretch.kind} stretch${stretch.cut ? `; a few pixels exceed it, up to ${brightest}` : ''}`
 }

@@ -52,12 +52,16 @@ export interface SkyLayer {
 }
 
 /** Wavelength number `k` of a camera, with its view. */
-export function cameraView({ camera, width, height }: CameraImages, k: number, scene: Scene): SkyView {
-  const wavelength = spacedWavelength(wavelengthLabels(camera.wavelengths)[k])
+export function cameraView(images: CameraImages, k: number, scene: Scene): SkyView {
+  return viewOf(images, spacedWavelength(wavelengthLabels(images.camera.wavelengths)[k]), scene)
+}
+
+/** What a camera sees, `what` in a word or two. */
+export function viewOf({ camera, width, height }: CameraImages, what: string, scene: Scene): SkyView {
   const { inclination, azimuth, roll } = camera.view
   const [i, a, r] = [inclination, azimuth, roll].map((angle) => `${shortNumber(inDegrees(angle))}°`)
   const view = `inclination ${i}, azimuth ${a}, roll ${r} east of north`
-  const subtitle = `camera ${camera.name} · ${wavelength} · ${view} · ${shortNumber(scene.distance / PARSEC)} pc`
+  const subtitle = `camera ${camera.name} · ${what} · ${view} · ${shortNumber(scene.distance / PARSEC)} pc`
   return { width, height, field: camera.field, distance: scene.distance, title: scene.title, subtitle }
 }
 

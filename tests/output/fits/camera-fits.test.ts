@@ -22,6 +22,8 @@ function written(name: string, bytes: Uint8Array): string {
 // MJy/sr is 1e-17 erg/s/cm2/Hz/sr by definition, so values are x + 10 y + 100 k MJy/sr.
 const images = exampleImages((x, y, k) => (x + 10 * y + 100 * k) * 1e-17, { wavelengths: [870e-4, 0.55e-4] })
 
+const column = { density: Float64Array.from({ length: 24 }, (_, i) => i / 1000), samplingError: 1e-3 }
+
 describe('FITS bytes', () => {
   it('are blocks of 2880 with a header in ASCII and big-endian data', () => {
     const bytes = imageHdu('primary', [3], new Float64Array([1, -2, Number.POSITIVE_INFINITY]), [])
@@ -62,6 +64,7 @@ describe('FITS files', () => {
     const columns = [{ name: 'density_inner wind', unit: 'g cm-3', values: new Float64Array([1, 2, 3]) }]
     const files = [
       written('camera.fits', cameraFits(images, exampleScene())),
+      written('column.fits', cameraFits({ ...images, column }, exampleScene({ sky: undefined }))),
       written('no-sky.fits', cameraFits(magnitudes, exampleScene({ sky: undefined, title: `It's ü ${'x'.repeat(90)}` }))),
       written('cells.fits', cellsFits(columns, exampleScene()))
     ]
@@ -108,6 +111,27 @@ with fits.open(sys.stdin.read(), checksum=True) as file:
       expect(hdu.east[0] - hdu.centre[0]).toBeCloseTo(2 / 3600 / Math.cos((31.7 * Math.PI) / 180), 8)
     }
     expect(header).toEqual({ OBJECT: 'Example source', ORIGIN: 'motelight', DIST_PC: 250, INCLIN: 35, RADESYS: 'ICRS' })
+  })
+
+  itWith(astropy, 'hold the column density as one image with celestial coordinates, by astropy', () => {
+    const path = written('column-astropy.fits', cameraFits({ ...images, column }, exampleScene()))
+    const script = `
+import json, sys, warnings
+warnings.simplefilter('error')
+import astropy.units as u
+from astropy.io import fits
+from astropy.wcs import WCS
+with fits.open(sys.stdin.read()) as file:
+    hdu = file['COLUMN']
+    kg = (hdu.data[2, 3] * u.Unit(hdu.header['BUNIT'], format='fits')).to_value('kg/m2')
+    print(json.dumps(dict(kg=float(kg), shape=hdu.data.shape, centre=[float(v) for v in WCS(hdu.header).pixel_to_world_values(2.5, 1.5)])))
+`
+    const found = JSON.parse(runPython(script, path))
+    // Row 2, column 3 of 6: element 15, 0.015 g/cm2.
+    expect(found.kg).toBeCloseTo(0.15, 12)
+    expect(found.shape).toEqual([4, 6])
+    expect(found.centre[0]).toBeCloseTo(84.21, 10)
+    expect(found.centre[1]).toBeCloseTo(-31.7, 10)
   })
 
   itWith(astropy, 'give the wavelength of a single image and magnitudes, by astropy', () => {
