@@ -11,7 +11,7 @@ import { stopSignal } from './stop-signal.js'
 export async function conduct(
   scene: Scene,
   path: string,
-  { workers, estimator, memory, json, quiet }: RunWords,
+  { workers, estimator, memory, 'cell-edges': cellEdges, json, quiet }: RunWords,
   work: (request: RunOptions & { path: string }) => Promise<FolderOutcome>
 ): Promise<void> {
   const signal = stopSignal()
@@ -21,6 +21,7 @@ export async function conduct(
       path,
       workers,
       estimator,
+      cellEdges,
       stop: signal.stop,
       onBegin: signal.arm,
       onProgress: progress.show,

@@ -45,6 +45,11 @@ export const runOptions = {
     defaultDescription: 'that of the machine',
     coerce: bytesOf
   },
+  'cell-edges': {
+    describe: 'Show the edges of the cells in the pictures of the dust',
+    type: 'boolean',
+    default: false
+  },
   ...sceneOptions
 } as const
 

@@ -1,9 +1,8 @@
-import { isOctree } from '../grid/cells.js'
+import { isOctree, sphericalOf } from '../grid/cells.js'
 import type { SphericalWalls } from '../grid/geometry.js'
 import { cellCube, type Octree } from '../grid/octree/octree.js'
-import { OctreeWalk } from '../grid/octree/octree-walk.js'
 import type { Model } from '../model/model.js'
-import type { DustStructure, RadialComponent } from '../output/plot/structure.js'
+import type { MeridionalStructure, RadialComponent, RadialStructure } from '../output/plot/structure.js'
 import type { DustTemperatures } from '../solve/temperatures.js'
 import { AU } from '../units/constants.js'
 
@@ -75,16 +74,21 @@ export function cellCentres(walls: SphericalWalls, cells: number): Record<'r' | 
   return centres
 }
 
-/** What the picture of the dust shows: all radii of spherical shells, the mean over azimuth outside the core, or cubes in two planes. */
-export function dustStructure(model: Model, dust: DustTemperatures): DustStructure {
-  const { walls, components, dimensions } = model
-  const parts = components.map(({ spec, density }, c): RadialComponent => {
+/** Density of every component by cell, temperature where it emits, and 1 sigma where that is solved for. */
+export function shownParts(model: Model, dust: DustTemperatures): RadialComponent[] {
+  return model.components.map(({ spec, density }, c) => {
     const emits = spec.temperature !== 'none'
     const temperature = ofComponent(model, dust.temperature, c)
     const sigma = ofComponent(model, dust.sigma, c)
     return { name: spec.name, density, ...(emits && { temperature }), ...(spec.temperature === 'solve' && { sigma }) }
   })
-  if (isOctree(walls)) return { kind: 'planes', half: 0.5 * walls.side, ...cutCubes(walls), components: parts }
+}
+
+/** Dust in spherical cells: all radii where it depends on them alone, else the mean over azimuth outside the core. */
+export function dustStructure(model: Model, dust: DustTemperatures): RadialStructure | MeridionalStructure {
+  const { components, dimensions } = model
+  const walls = sphericalOf(model.walls)
+  const parts = shownParts(model, dust)
   if (dimensions === 1) {
     const first = components.some(({ density }) => density[0] > 0) ? 0 : 1
     const outer = (values: Float64Array) => values.subarray(first)
@@ -118,32 +122,6 @@ export function dustStructure(model: Model, dust: DustTemperatures): DustStructu
         })
       }
     })
-  }
-}
-
-/** Pixels along each side of a plane. */
-const PLANE_PIXELS = 360
-
-/** The cubes in the planes x-z and x-y through the origin; row by row from the top. */
-function cutCubes(octree: Octree): { pixels: number; planes: { axes: [string, string]; cells: Int32Array }[] } {
-  const walk = new OctreeWalk(octree)
-  const at = (k: number) => octree.side * ((k + 0.5) / PLANE_PIXELS - 0.5)
-  const plane = (cellAt: (a: number, b: number) => void) => {
-    const cells = new Int32Array(PLANE_PIXELS * PLANE_PIXELS)
-    for (let row = 0; row < PLANE_PIXELS; row++) {
-      for (let column = 0; column < PLANE_PIXELS; column++) {
-        cellAt(at(column), -at(row))
-        cells[row * PLANE_PIXELS + column] = walk.cell
-      }
-    }
-    return cells
-  }
-  return {
-    pixels: PLANE_PIXELS,
-    planes: [
-      { axes: ['x', 'z'], cells: plane((x, z) => walk.startAt(x, 0, z, 0, 0, 1)) },
-      { axes: ['x', 'y'], cells: plane((x, y) => walk.startAt(x, y, 0, 0, 0, 1)) }
-    ]
   }
 }
 

@@ -1,6 +1,9 @@
+import { isOctree } from '../grid/cells.js'
+import type { Model } from '../model/model.js'
 import { cameraFits } from '../output/fits/camera-fits.js'
 import { cellsFits } from '../output/fits/cells-fits.js'
 import { spectrumPlot } from '../output/plot/spectrum-plot.js'
+import type { DustStructure } from '../output/plot/structure.js'
 import { structurePlot } from '../output/plot/structure-plot.js'
 import { azimuthalPicture } from '../output/png/azimuthal-picture.js'
 import { cameraPicture } from '../output/png/camera-picture.js'
@@ -10,8 +13,10 @@ import { spectrumEcsv } from '../output/spectrum-ecsv.js'
 import { wavelengthLabels } from '../output/wavelength-label.js'
 import { sceneYaml } from '../scene/write.js'
 import { ambientIntensity } from '../solve/scatter-medium.js'
+import type { DustTemperatures } from '../solve/temperatures.js'
 import { LIGHT_SPEED } from '../units/constants.js'
 import { cellColumns, dustStructure } from './dust-cells.js'
+import { dustPlanes } from './dust-planes.js'
 import { type RunFolder, recordName } from './run-folder.js'
 import { type RunMaking, type RunRecord, runRecord } from './run-record.js'
 import { runReport } from './run-report.js'
@@ -24,7 +29,7 @@ import { type Product, writeFolder } from './write-folder.js'
 export async function writeProducts(result: RunResult, folder: RunFolder, making: RunMaking): Promise<RunRecord> {
   const time = stopwatch()
   const warnings = warningsOf(result)
-  const products = productsOf(result).filter(
+  const products = productsOf(result, making.cellEdges ?? false).filter(
     ({ file }) => !(making.dataOnly && /\.(png|svg|html)$/.test(file))
   )
   const record = (files: string[]) => runRecord(result, making, warnings, { files, time: time() })
@@ -32,7 +37,7 @@ export async function writeProducts(result: RunResult, folder: RunFolder, making
   return writeFolder(folder, recordName, products, record, making.dataOnly ? undefined : report)
 }
 
-function productsOf({ model, dust, images, spectra }: RunResult): Product[] {
+function productsOf({ model, dust, images, spectra }: RunResult, edges: boolean): Product[] {
   const { scene } = model
   return [
     { file: 'scene.yaml', make: () => sceneYaml(scene) },
@@ -80,8 +85,20 @@ function productsOf({ model, dust, images, spectra }: RunResult): Product[] {
     ...(model.components.length > 0
       ? [
           { file: 'dust/cells.fits', make: () => cellsFits(cellColumns(model, dust), scene) },
-          { file: 'dust/structure.png', make: () => structurePlot(dustStructure(model, dust), scene.title) }
+          ...structurePlots(model, dust, edges)
         ]
       : [])
   ]
+}
+
+/** Spherical cells as curves or maps, in more than one dimension in two planes as well; cubes in those alone. */
+function structurePlots(model: Model, dust: DustTemperatures, edges: boolean): Product[] {
+  const plot = (name: string, structure: () => DustStructure) => ({
+    file: `dust/${name}.png`,
+    make: () => structurePlot(structure(), model.scene.title, edges)
+  })
+  const planes = () => dustPlanes(model, dust)
+  if (isOctree(model.walls)) return [plot('structure', planes)]
+  const curvesOrMaps = plot('structure', () => dustStructure(model, dust))
+  return model.dimensions === 1 ? [curvesOrMaps] : [curvesOrMaps, plot('planes', planes)]
 }

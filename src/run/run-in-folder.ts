@@ -98,8 +98,8 @@ async function finish(scene: Scene, options: RunOptions, folder: RunFolder, pack
   await sweep(folder.path)
   // Drawing needs large packages; other commands start faster without them.
   const { writeProducts } = await import('./products.js')
-  const { workers, estimator, dataOnly = false } = options
-  const record = await writeProducts(result, folder, { started, workers, estimator, dataOnly })
+  const { workers, estimator, dataOnly = false, cellEdges = false } = options
+  const record = await writeProducts(result, folder, { started, workers, estimator, dataOnly, cellEdges })
   await rm(join(folder.path, stateName), { recursive: true, force: true })
   return { kind: 'products', record, already: false }
 }

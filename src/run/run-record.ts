@@ -15,6 +15,8 @@ export interface RunMaking {
   estimator: Estimator
   /** Without pictures and plots. */
   dataOnly?: boolean
+  /** Pictures of the dust show the edges of its cells. */
+  cellEdges?: boolean
 }
 
 /** Content of `run.json`. */

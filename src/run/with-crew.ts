@@ -25,6 +25,8 @@ export interface RunOptions {
   memory?: number
   /** Leave out pictures and plots. */
   dataOnly?: boolean
+  /** Show the edges of the cells in pictures of the dust. */
+  cellEdges?: boolean
 }
 
 /** A model and the workers that are to run it. */

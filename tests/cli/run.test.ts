@@ -10,6 +10,7 @@ const products = [
   'dust/structure.png',
   'images/face-2.2um.png',
   'images/face-60um.png',
+  'images/face-column.png',
   'images/face.fits',
   'report.html',
   'run.json',
@@ -57,7 +58,7 @@ describe('run', () => {
       /spectrum sed +10 um .* Jy/,
       /camera face +60 um +peak/,
       /energy: 1\.91e\+37 erg\/s emitted/,
-      /Results are in out\/scene: 2 pictures/
+      /Results are in out\/scene: 3 pictures/
     ])
       expect(result.stdout).toMatch(text)
     expect(result.stderr).toBe('')
@@ -133,11 +134,22 @@ describe('run', () => {
     expect(result.stdout).toContain('not reached')
   })
 
+  it('warns of light outside the field of a camera, not of faint dust there', async () => {
+    const outside = async (wavelength: string) => {
+      const { record } = await finishedRun(sceneWith(['field: 2000 au', 'field: 600 au'], ['[2.2 um, 60 um]', `[${wavelength}]`]))
+      return record.warnings.filter((warning: string) => warning.includes('outside its field'))
+    }
+    expect(await outside('60 um')).toEqual([
+      expect.stringMatching(/^camera face: about \d+ % of the light at 60um comes from outside its field$/)
+    ])
+    expect(await outside('2.2 um')).toEqual([])
+  })
+
   it('runs a scene without dust, and one that asks for temperatures only', async () => {
     const bare = sceneText.replace(/opacities:[\s\S]*?(?=grid:)/, '')
     const { out, result } = await finishedRun(bare)
     expect(result.exitCode).toBe(0)
-    expect(filesIn(out)).toEqual(products.filter((file) => !file.startsWith('dust/')))
+    expect(filesIn(out)).toEqual(products.filter((file) => !file.startsWith('dust/') && !file.includes('column')))
     const warm = await finishedRun(sceneText.replace(/cameras:\n[\s\S]*/, ''))
     expect(warm.result.exitCode).toBe(0)
     expect(filesIn(warm.out)).toEqual(['dust/cells.fits', 'dust/structure.png', 'report.html', 'run.json', 'scene.yaml'])
@@ -153,10 +165,11 @@ describe('run', () => {
         ['[2.2 um, 60 um]', '[60 um]'],
         ['[1 um, 10 um, 100 um]', '[60 um]'],
         ['precision: none, equilibrium: 8000', 'precision: 20 %, equilibrium: 2e5']
-      )
+      ),
+      '--cell-edges'
     )
     expect(result.exitCode).toBe(0)
-    expect(filesIn(out)).toContain('dust/structure.png')
+    expect(filesIn(out)).toEqual(expect.arrayContaining(['dust/structure.png', 'dust/planes.png']))
   })
 
   itWith(astropy, 'the table of cells holds the mass and the centres of the cells', async () => {
@@ -199,7 +212,9 @@ describe('a folder that holds a run', () => {
     const forced = await motelight(folder, 'run', 'scene.yaml', '--force')
     expect(forced.exitCode).toBe(0)
     const kept = products.filter((file) => !file.startsWith('images/'))
-    expect(filesIn(out)).toEqual([...kept, 'images/front-60um.png', 'images/front.fits', 'notes.txt'].sort())
+    expect(filesIn(out)).toEqual(
+      [...kept, 'images/front-60um.png', 'images/front-column.png', 'images/front.fits', 'notes.txt'].sort()
+    )
   })
 
   it('removes nothing outside, whatever an old record lists', async () => {

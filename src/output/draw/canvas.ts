@@ -2,6 +2,11 @@ import { PNG } from 'pngjs'
 import { type ColourMap, colourIndex } from './colours.js'
 import { rasterize } from './rasterize.js'
 
+/** Share of black or white in a line through pixels. */
+const LINE = 0.4
+/** Such a line is white where colours are darker than this, 0 to 255. */
+const DARK = 60
+
 /** A white picture to draw on: pixels first, then lines and text from an SVG of the same size. */
 export class Canvas {
   private readonly png: PNG
@@ -33,6 +38,18 @@ export class Canvas {
       const colour = 3 * colourIndex(fractions[i])
       for (let channel = 0; channel < 3; channel++) this.png.data[at + channel] = map[colour + channel]
     }
+  }
+
+  /** Draws a line through the pixels of a panel that are marked by 1: lighter on dark colours, darker on light ones. */
+  trace({ left, top, width }: { left: number; top: number; width: number }, marked: Uint8Array): void {
+    const { data } = this.png
+    marked.forEach((mark, i) => {
+      if (mark === 0) return
+      const at = 4 * ((top + Math.floor(i / width)) * this.width + left + (i % width))
+      const light = 0.3 * data[at] + 0.6 * data[at + 1] + 0.1 * data[at + 2]
+      const ink = light > DARK ? 0 : 255
+      for (let channel = 0; channel < 3; channel++) data[at + channel] = Math.round((1 - LINE) * data[at + channel] + LINE * ink)
+    })
   }
 
   /** Lays an SVG over what is there. */

@@ -5,6 +5,7 @@ import { colourBar } from '../draw/colour-bar.js'
 import type { ColourMap } from '../draw/colours.js'
 import { outline, text } from '../draw/svg.js'
 import { linearTicks, logTicks } from '../draw/ticks.js'
+import { cellEdges } from './cell-edges.js'
 import { type MeridianView, meridianCells } from './meridian.js'
 import type { MeridionalStructure } from './structure.js'
 
@@ -16,6 +17,8 @@ export interface MapContent {
   values: Float64Array
   map: ColourMap
   title: string
+  /** The edges of the cells show. */
+  edges: boolean
 }
 
 /** Paints one map of the meridional plane with its upper left corner at (left, top), and returns its axes and bar. */
@@ -35,7 +38,7 @@ export function mapPanel(
 export function paintMap(
   canvas: Canvas,
   cells: Int32Array,
-  { values, map, title }: MapContent,
+  { values, map, title, edges }: MapContent,
   { left, top, width, height }: { left: number; top: number; width: number; height: number }
 ): string[] {
   const frame = outline(left, top, width, height)
@@ -49,6 +52,7 @@ export function paintMap(
     Float64Array.from(cells, (cell) => (cell < 0 ? Number.NaN : fraction(values[cell]))),
     map
   )
+  if (edges) canvas.trace({ left, top, width }, cellEdges(cells, width))
   return [
     frame,
     ...colourBar(canvas, { left: left + width + 14, top, height, map, ticks: logTicks(floor, high, 6), title, fraction })

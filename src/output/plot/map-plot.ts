@@ -9,6 +9,12 @@ const margin = 16
 const headHeight = 70
 const footHeight = 30
 const decadesOfDensity = 10
+/** What maps of the dust leave out. */
+export function mapNote(edges: boolean): string {
+  const cells = edges ? '; lines: edges of the cells, as far as these are three pixels wide' : ''
+  return `white: no dust, or less than 10⁻¹⁰ of the densest${cells}`
+}
+
 const titleStyle = { size: 17, anchor: 'start', bold: true } as const
 const nameStyle = { size: 14, bold: true } as const
 
@@ -17,18 +23,17 @@ const nameStyle = { size: 14, bold: true } as const
  * cylindrical radius R (logarithmic) and z/R, so that the inner rim and the outer edge are seen at once. White: no dust,
  * or less than 1e-10 of the densest.
  */
-export function mapPlot(structure: MeridionalStructure, title: string): Uint8Array {
+export function mapPlot(structure: MeridionalStructure, title: string, edges: boolean): Uint8Array {
   const columnWidth = panel.leftRoom + panel.width + panel.rightRoom
   const canvas = new Canvas(columnWidth * structure.components.length + margin, headHeight + 2 * panel.pitch + footHeight)
   const columns = structure.components.flatMap((component, i) =>
-    column(canvas, structure, component, i * columnWidth + panel.leftRoom)
+    column(canvas, structure, component, edges, i * columnWidth + panel.leftRoom)
   )
-  const note = `white: no dust, or less than 10⁻¹⁰ of the densest`
   canvas.overlay(
     drawing(canvas.width, canvas.height, [
       text(margin, 28, fitted(title, canvas.width - 2 * margin, titleStyle), titleStyle),
       ...columns,
-      text(margin, canvas.height - margin, note, { size: 12, anchor: 'start', fill: '#555' })
+      text(margin, canvas.height - margin, mapNote(edges), { size: 12, anchor: 'start', fill: '#555' })
     ])
   )
   return canvas.encode()
@@ -42,12 +47,18 @@ export function shownDust({ density, temperature }: MeridionalComponent): { dens
   return { density: kept(density), temperature: kept(temperature) }
 }
 
-function column(canvas: Canvas, structure: MeridionalStructure, component: MeridionalComponent, left: number): string[] {
+function column(
+  canvas: Canvas,
+  structure: MeridionalStructure,
+  component: MeridionalComponent,
+  edges: boolean,
+  left: number
+): string[] {
   const { name } = component
   const { density, temperature } = shownDust(component)
   const view = meridianView(structure, (cell) => density[cell] > 0)
-  const densities = { values: density, map: viridis, title: 'density (g/cm³)' }
-  const temperatures = { values: temperature, map: inferno, title: 'temperature (K)' }
+  const densities = { values: density, map: viridis, title: 'density (g/cm³)', edges }
+  const temperatures = { values: temperature, map: inferno, title: 'temperature (K)', edges }
   return [
     text(left + panel.width / 2, headHeight - 12, fitted(name, panel.width, nameStyle), nameStyle),
     ...mapPanel(canvas, structure, view, densities, [left, headHeight]),

@@ -5,58 +5,46 @@ import { inferno, viridis } from '../draw/colours.js'
 import { drawing, fitted, text } from '../draw/svg.js'
 import { linearTicks } from '../draw/ticks.js'
 import { paintMap } from './map-panel.js'
-import { shownDust } from './map-plot.js'
-import type { MeridionalComponent, PlaneStructure } from './structure.js'
+import { mapNote, shownDust } from './map-plot.js'
+import type { PlaneStructure } from './structure.js'
 
 const room = { left: 86, right: 130, below: 62, head: 70, foot: 30, margin: 16 }
 const titleStyle = { size: 17, anchor: 'start', bold: true } as const
 const nameStyle = { size: 14, bold: true } as const
 
 /** Maps (PNG) of density, above, and temperature, below, of every component in each plane, side by side. White as in `mapPlot`. */
-export function planesPlot(structure: PlaneStructure, title: string): Uint8Array {
-  const { components, planes, pixels } = structure
+export function planesPlot({ components, pixels }: PlaneStructure, title: string, edges: boolean): Uint8Array {
   const columnWidth = room.left + pixels + room.right
   const rowHeight = pixels + room.below
-  const width = columnWidth * components.length * planes.length + room.margin
-  const canvas = new Canvas(width, room.head + 2 * rowHeight + room.foot)
-  const maps = components.flatMap((component, c) =>
-    planes.flatMap((_, p) => column(canvas, structure, component, p, (c * planes.length + p) * columnWidth + room.left))
-  )
-  const note = `white: no dust, or less than 10⁻¹⁰ of the densest`
+  const columns = components.flatMap((component) => component.planes.map((plane) => ({ component, plane })))
+  const canvas = new Canvas(columnWidth * columns.length + room.margin, room.head + 2 * rowHeight + room.foot)
+  const maps = columns.flatMap(({ component, plane }, i) => {
+    const left = i * columnWidth + room.left
+    const name = `${component.name}, plane ${plane.axes.join('-')}`
+    const { density, temperature } = shownDust(component)
+    const contents = [
+      { values: density, map: viridis, title: 'density (g/cm³)' },
+      { values: temperature, map: inferno, title: 'temperature (K)' }
+    ]
+    return [
+      text(left + pixels / 2, room.head - 12, fitted(name, pixels, nameStyle), nameStyle),
+      ...contents.flatMap((content, row) => {
+        const top = room.head + row * rowHeight
+        return [
+          ...paintMap(canvas, plane.cells, { ...content, edges }, { left, top, width: pixels, height: pixels }),
+          ...lengths(component.half / AU, plane.axes, pixels, left, top)
+        ]
+      })
+    ]
+  })
   canvas.overlay(
     drawing(canvas.width, canvas.height, [
       text(room.margin, 28, fitted(title, canvas.width - 2 * room.margin, titleStyle), titleStyle),
       ...maps,
-      text(room.margin, canvas.height - room.margin, note, { size: 12, anchor: 'start', fill: '#555' })
+      text(room.margin, canvas.height - room.margin, mapNote(edges), { size: 12, anchor: 'start', fill: '#555' })
     ])
   )
   return canvas.encode()
-}
-
-function column(
-  canvas: Canvas,
-  { planes, pixels, half }: PlaneStructure,
-  component: MeridionalComponent,
-  plane: number,
-  left: number
-): string[] {
-  const { axes, cells } = planes[plane]
-  const { density, temperature } = shownDust(component)
-  const contents = [
-    { values: density, map: viridis, title: 'density (g/cm³)' },
-    { values: temperature, map: inferno, title: 'temperature (K)' }
-  ]
-  const name = `${component.name}, plane ${axes.join('-')}`
-  return [
-    text(left + pixels / 2, room.head - 12, fitted(name, pixels, nameStyle), nameStyle),
-    ...contents.flatMap((content, row) => {
-      const top = room.head + row * (pixels + room.below)
-      return [
-        ...paintMap(canvas, cells, content, { left, top, width: pixels, height: pixels }),
-        ...lengths(half / AU, axes, pixels, left, top)
-      ]
-    })
-  ]
 }
 
 function lengths(half: number, [across, up]: [string, string], pixels: number, left: number, top: number): string[] {

@@ -30,13 +30,16 @@ export interface MeridionalStructure {
 /** Cells of any kind, cut by planes through the origin. */
 export interface PlaneStructure {
   kind: 'planes'
-  /** The planes reach from -half to half, cm. */
-  half: number
   /** Pixels along each side. */
   pixels: number
-  /** Names of the axes to the right and up; the cell in every pixel, row by row from the top. */
+  components: PlaneComponent[]
+}
+
+export interface PlaneComponent extends MeridionalComponent {
+  /** Its planes reach from -half to half, cm. */
+  half: number
+  /** Names of the axes to the right and up; the cell in every pixel, row by row from the top, -1 outside. */
   planes: { axes: [string, string]; cells: Int32Array }[]
-  components: MeridionalComponent[]
 }
 
 export interface MeridionalComponent {

@@ -121,6 +121,22 @@ describe('structurePlot', () => {
       expect(await structurePlot(input, 'Example source')).toEqual(picture)
       expect(PNG.sync.read(Buffer.from(picture)).width).toBeGreaterThan(600)
     }
+    const planes: DustStructure = {
+      kind: 'planes',
+      pixels: 40,
+      components: [
+        {
+          name: 'dust',
+          density: Float64Array.of(1, 1),
+          half: 100 * au,
+          planes: [{ axes: ['x', 'z'], cells: Int32Array.from({ length: 1600 }, (_, i) => (i % 40 < 20 ? 0 : 1)) }]
+        }
+      ]
+    }
+    // The edge between two cells of the top colour of viridis (#fde725) is darker by two fifths: 40 pixels of it, less two under the frame.
+    const edge: [number, number, number] = [0x98, 0x8b, 0x16]
+    expect(pixelsOf(await structurePlot(planes, 'x'), edge)).toBe(0)
+    expect(pixelsOf(await structurePlot(planes, 'x', true), edge)).toBe(38)
     expect(pixelsOf(await structurePlot(radial, 'x'), [0x00, 0x72, 0xb2])).toBeGreaterThan(1000)
     // A uniform density takes the top colour of viridis (#fde725), over the whole of a 380 x 270 panel but its empty corners.
     expect(pixelsOf(await structurePlot(maps, 'x'), [0xfd, 0xe7, 0x25])).toBeGreaterThan(50_000)
