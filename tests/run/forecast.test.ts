@@ -47,7 +47,7 @@ describe('forecast', () => {
     expect(two.seconds.all).toBeCloseTo(one.seconds.all / 2, 6)
     const finer = forecast(modelWith('precision: 0.5 %'), trial, 1)
     expect(finer.seconds.pictures).toBeGreaterThan(one.seconds.pictures)
-    // As exact as the trial: each of the two pictures takes the second that it took there.
+    // As exact as the trial: each of the two pictures, and that of the column density, takes the second that it took there.
     expect(forecast(modelWith('precision: 5 %'), trial, 1).seconds.pictures).toBeCloseTo(3, 6)
   })
 
