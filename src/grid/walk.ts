@@ -258,10 +258,8 @@ export class SphericalWalk extends StraightWalk {
     const q = z0 * z0 + b2 * a
     const cw = (up ? c : -c) * (q > 0 ? Math.sqrt(q) : 0)
     const b = z0 * uz
-    if (b > 0 === cw > 0) {
-      const other = -b - cw
-      return other === 0 ? Number.POSITIVE_INFINITY : (z0 * z0 - c * c * b2) / other
-    }
+    // Both are 0 where a ray along the axis meets the midplane: there the other form has no cancellation either.
+    if (b > 0 === cw > 0 && b + cw !== 0) return (z0 * z0 - c * c * b2) / (-b - cw)
     return a === 0 ? Number.POSITIVE_INFINITY : (-b + cw) / a
   }
 

@@ -96,6 +96,37 @@ describe('SphericalWalk', () => {
     })
   }
 
+  it('finds the cells of rays along the axis, and of rays in planes with it', () => {
+    for (const [, grid] of kinds) {
+      const walk = new SphericalWalk(grid)
+      const outer = grid.r[grid.r.length - 1]
+      const uniform = stream('axis')
+      let [misplaced, steps, worst] = [0, 0, 0]
+      for (let n = 0; n < 300; n++) {
+        // Down the axis, up it, and along x: without rounding, a component of place and direction is 0.
+        const [ux, uz] = n % 3 === 2 ? [1, 0] : [0, n % 3 ? 1 : -1]
+        const b = outer * (grid.r[1] / outer) ** uniform()
+        const azimuth = 2 * Math.PI * uniform()
+        const start = [ux ? 0 : b * Math.cos(azimuth), b * Math.sin(azimuth), ux ? b * Math.cos(azimuth) : 0]
+        walk.enter(start[0], start[1], start[2], ux, 0, uz)
+        let path = 0
+        do {
+          const cell = walk.cell
+          const step = walk.toWall()
+          path += step
+          if (step < 1e-9 * outer) continue
+          const s = walk.s + 0.5 * step
+          if (brute(grid, start[0] + s * ux, start[1], start[2] + s * uz) !== cell) misplaced++
+          steps++
+        } while (walk.cross() >= 0)
+        worst = Math.max(worst, Math.abs(path / (2 * Math.sqrt(outer * outer - b * b)) - 1))
+      }
+      expect(misplaced).toBe(0)
+      expect(steps).toBeGreaterThan(1000)
+      expect(worst).toBeLessThan(1e-10)
+    }
+  })
+
   it('sums cell volumes to the sphere', () => {
     fc.assert(
       fc.property(
