@@ -106,7 +106,7 @@ export function equilibriumSetup(model: Model): EquilibriumSetup {
       ...binnedLaws(components, grid),
       emission: tables.map(({ sampling }) => sampling),
       emissionRow,
-      rosseland: shared(cells),
+      walk: { first: new Int32Array(allocateShared(4 * (cells + 1))), levels: new Float64Array() },
       planck: shared(components.length * cells),
       sources,
       sourceTable: makeSamplingTable(shares, 1, powers.length),

@@ -18,6 +18,7 @@ import {
 } from './equilibrium-round.js'
 import { type DustTemperatures, firstGuess, temperaturesFrom } from './temperatures.js'
 import { ThickCells } from './thick-cells.js'
+import { WalkWriter } from './walk-levels.js'
 
 const FIRST_ROUND = 16_384
 /** Rounds of a run that spends exactly the packets given: each twice the one before, the last about half of all. */
@@ -66,6 +67,7 @@ export async function solveEquilibrium(
 ): Promise<EquilibriumResult | 'stopped'> {
   const { precision, equilibrium: most } = model.scene.effort
   const thick = new ThickCells(model, setup)
+  const walk = new WalkWriter(setup, thick)
   pool.share('equilibrium', setup.medium)
   const sizes = precision === null ? fixedSizes(most) : undefined
   const state = (ledger.take(equilibriumPiece) as EquilibriumState | undefined) ?? {
@@ -78,7 +80,7 @@ export async function solveEquilibrium(
   }
   for (;;) {
     setRows(setup, state.present)
-    thick.update(state.present)
+    walk.update(state.present)
     const batches = divide(state.size)
     if (!(await playRound(state, batches, model.scene.seed, pool, ledger, onProgress, stop))) return 'stopped'
     const packets = batches.count * batches.packets

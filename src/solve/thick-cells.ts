@@ -1,93 +1,56 @@
-import { coolingOf } from '../dust/emission.js'
 import { planckNuDerivative } from '../dust/planck.js'
 import { isOctree } from '../grid/cells.js'
 import { cubeVolumes } from '../grid/octree/octree.js'
+import { allocateShared } from '../math/allocate.js'
 import type { Model } from '../model/model.js'
-import { LEAST_DEPTH } from '../transport/random-walk.js'
-import { LIGHT_SPEED, STEFAN_BOLTZMANN } from '../units/constants.js'
+import { LIGHT_SPEED } from '../units/constants.js'
 import type { EquilibriumSetup } from './equilibrium-medium.js'
 
-/** Temperatures at which the weights of the Rosseland mean are known, evenly in the logarithm. */
-const ROWS = 60
-const COLDEST = 3
-const HOTTEST = 3000
-
-/**
- * Writes what the modified random walk needs of the cells that are thick to their own radiation at the present temperatures:
- * the Rosseland mean of the transport extinction, absorption + (1 - g) scattering, cm-1 (0 for all other cells), and the Planck
- * mean absorption opacity of every component, cm2/g.
- */
+/** How thick cells are to their own radiation, by the transport extinction: absorption + (1 - g) scattering. */
 export class ThickCells {
-  /** ROWS x bins: share of a bin in int dB/dT d(nu). */
-  private readonly weights: Float64Array
+  /** Half the smallest extent of every cell, cm. */
+  readonly size: Float64Array
+  /** Rows of the emission tables x bins: share of a bin in int dB/dT d(nu). */
+  private readonly ofFlux: Float64Array
   /** components x bins, cm2/g. */
   private readonly transport: Float64Array
-  /** Half the smallest extent of every cell, cm. */
-  private readonly size: Float64Array
   private readonly largest: number[]
+  /** By bin, of the cell asked for last. */
+  private readonly extinction: Float64Array
 
   constructor(
     model: Model,
     private readonly setup: EquilibriumSetup
   ) {
-    const { medium, grid } = setup
+    const { medium } = setup
     const { bins, components } = medium
-    this.weights = new Float64Array(ROWS * bins)
-    for (let row = 0; row < ROWS; row++) {
-      let sum = 0
-      for (let k = 0; k < bins; k++) {
-        const weight = planckNuDerivative(LIGHT_SPEED / grid.centres[k], temperatureAt(row)) * grid.widthsHz[k]
-        this.weights[row * bins + k] = weight
-        sum += weight
-      }
-      for (let k = 0; k < bins; k++) this.weights[row * bins + k] /= sum
-    }
+    this.size = halfExtents(model)
+    this.ofFlux = spectrumShares(setup, planckNuDerivative)
     this.transport = medium.extinction.map((value, i) => value - medium.asymmetry[i] * (value - medium.absorption[i]))
     this.largest = Array.from({ length: components }, (_, c) =>
       this.transport.subarray(c * bins, (c + 1) * bins).reduce((a, b) => Math.max(a, b), 0)
     )
-    this.size = halfExtents(model)
+    this.extinction = new Float64Array(bins)
   }
 
-  /** Updates the medium for new temperatures (K; components x cells). */
-  update(temperature: Float64Array): void {
-    const { medium, tables } = this.setup
-    const { cells, components, density, rosseland, planck, emissionRow } = medium
-    rosseland.fill(0)
-    for (let cell = 0; cell < cells; cell++) {
-      let most = 0
-      let solved = true
-      let hottest = 0
-      for (let c = 0; c < components; c++) {
-        const at = c * cells + cell
-        most += density[at] * this.largest[c]
-        if (!(density[at] > 0)) continue
-        solved &&= emissionRow[at] >= 0
-        hottest = Math.max(hottest, temperature[at])
-      }
-      if (!solved || most * this.size[cell] < LEAST_DEPTH || hottest === 0) continue
-      const mean = this.meanExtinction(cell, hottest)
-      if (this.size[cell] * mean < LEAST_DEPTH) continue
-      rosseland[cell] = mean
-      for (let c = 0; c < components; c++) {
-        const at = c * cells + cell
-        const here = temperature[at]
-        planck[at] = here > 0 ? (Math.PI * coolingOf(tables[c], here)) / (STEFAN_BOLTZMANN * here ** 4) : 0
-      }
-    }
-  }
-
-  /** Rosseland mean of the transport extinction of a cell at a temperature (K), cm-1; 0 without dust. */
-  meanExtinction(cell: number, temperature: number): number {
+  /** Transport extinction of a cell by bin, cm-1, into `out`. */
+  extinctionOf(cell: number, out: Float64Array): void {
     const { cells, components, bins, density } = this.setup.medium
-    const position = (Math.log(temperature / COLDEST) / Math.log(HOTTEST / COLDEST)) * (ROWS - 1)
-    const row = Math.min(ROWS - 1, Math.max(0, Math.round(position)))
-    let inverse = 0
-    for (let k = 0; k < bins; k++) {
-      let extinction = 0
-      for (let c = 0; c < components; c++) extinction += density[c * cells + cell] * this.transport[c * bins + k]
-      inverse += this.weights[row * bins + k] / extinction
+    out.fill(0)
+    for (let c = 0; c < components; c++) {
+      const rho = density[c * cells + cell]
+      if (rho > 0) for (let k = 0; k < bins; k++) out[k] += rho * this.transport[c * bins + k]
     }
+  }
+
+  /** Rosseland mean of a cell at a temperature (K), cm-1; 0 without dust. */
+  meanExtinction(cell: number, temperature: number): number {
+    const { bins } = this.setup.medium
+    const { lnFirst, lnStep, rows } = this.setup.tables[0]
+    const row = Math.min(rows - 1, Math.max(0, Math.round((Math.log(temperature) - lnFirst) / lnStep)))
+    this.extinctionOf(cell, this.extinction)
+    let inverse = 0
+    for (let k = 0; k < bins; k++) inverse += this.ofFlux[row * bins + k] / this.extinction[k]
     return 1 / inverse
   }
 
@@ -95,19 +58,48 @@ export class ThickCells {
   halfDepth(cell: number, temperature: number): number {
     return this.size[cell] * this.meanExtinction(cell, temperature)
   }
+
+  /** The same where the dust is most opaque: an upper limit for all temperatures. */
+  mostDepth(cell: number): number {
+    const { cells, components, density } = this.setup.medium
+    let most = 0
+    for (let c = 0; c < components; c++) most += density[c * cells + cell] * this.largest[c]
+    return most * this.size[cell]
+  }
 }
 
-function temperatureAt(row: number): number {
-  return COLDEST * (HOTTEST / COLDEST) ** (row / (ROWS - 1))
+/** Rows of the emission tables x bins: share of a bin in the integral over frequency of a function of frequency (Hz) and temperature (K). */
+export function spectrumShares(
+  { medium: { bins }, grid, tables: [table] }: EquilibriumSetup,
+  spectrum: (nu: number, kelvin: number) => number
+): Float64Array {
+  const shares = new Float64Array(table.rows * bins)
+  for (let row = 0; row < table.rows; row++) {
+    const kelvin = Math.exp(table.lnFirst + row * table.lnStep)
+    let sum = 0
+    for (let k = 0; k < bins; k++) {
+      const part = spectrum(LIGHT_SPEED / grid.centres[k], kelvin) * grid.widthsHz[k]
+      shares[row * bins + k] = part
+      sum += part
+    }
+    for (let k = 0; k < bins; k++) shares[row * bins + k] /= sum
+  }
+  return shares
 }
+
+const shared = (length: number) => new Float64Array(allocateShared(8 * length))
 
 /** Half the smallest extent of every cell, cm: no point of a cell is farther from all of its walls. */
 function halfExtents({ walls, cells }: Model): Float64Array {
-  if (isOctree(walls)) return cubeVolumes(walls, new Float64Array(cells)).map((volume) => 0.5 * Math.cbrt(volume))
+  if (isOctree(walls)) {
+    const size = cubeVolumes(walls, shared(cells))
+    for (let cell = 0; cell < cells; cell++) size[cell] = 0.5 * Math.cbrt(size[cell])
+    return size
+  }
   const { r, cosTheta, phi } = walls
   const nt = cosTheta.length - 1
   const np = phi.length - 1
-  const size = new Float64Array(cells)
+  const size = shared(cells)
   size[0] = r[1]
   for (let cell = 1; cell < cells; cell++) {
     const ip = (cell - 1) % np

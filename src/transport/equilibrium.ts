@@ -6,7 +6,7 @@ import { GOLDEN } from '../math/golden.js'
 import type { Vector } from '../scene/types.js'
 import { deflect, isotropicDirection } from './direction.js'
 import { emittingCell, launchFromCell, launchFromSurface, launchInwards } from './launch.js'
-import { diffuse, emittedBin } from './random-walk.js'
+import { diffuse, type WalkLevels } from './random-walk.js'
 import { pathToStar, spheresOf } from './star-spheres.js'
 
 /** What the temperature phase needs to know, as flat arrays that all threads share. Component c, cell i, bin k. */
@@ -28,9 +28,8 @@ export interface EquilibriumMedium {
   emission: SamplingTable[]
   /** components x cells: row of `emission` at the present temperature, with a fraction. Negative: absorbs for good. */
   emissionRow: Float64Array
-  /** By cell: Rosseland mean of the transport extinction, cm-1, where the modified random walk may run; 0 elsewhere. */
-  rosseland: Float64Array
-  /** components x cells: Planck mean absorption opacity, cm2/g, in those cells. */
+  walk: WalkLevels
+  /** components x cells: Planck mean absorption opacity, cm2/g, in cells where packets walk. */
   planck: Float64Array
   sources: EquilibriumSource[]
   /** One row, one entry a source: its share of the packets. */
@@ -54,7 +53,7 @@ export interface EquilibriumTally {
   escaped: number
   returned: number
   kept: number
-  /** Absorptions, scatterings and steps of the random walk. */
+  /** Absorptions and scatterings outside the random walk. */
   interactions: number
 }
 
@@ -78,10 +77,10 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
     tables,
     emission,
     emissionRow,
-    rosseland,
     sources,
     sourceEnergy
   } = medium
+  const levelsOf = medium.walk.first
   const absorbed = new Float64Array(components * cells)
   const walk = openWalk(walls)
   const direction = new Float64Array(3)
@@ -186,13 +185,7 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
         deflect(direction, walk.ux, walk.uy, walk.uz, mu, uniform())
       }
       walk.turn(x, y, z, direction[0], direction[1], direction[2])
-      if (absorbs && rosseland[cell] > 0) {
-        const steps = diffuse(medium, walk, energy, absorbed, uniform, direction)
-        if (steps > 0) {
-          interactions += steps
-          bin = emittedBin(medium, cell, uniform)
-        }
-      }
+      if (absorbs && levelsOf[cell + 1] > levelsOf[cell]) bin = diffuse(medium, walk, bin, energy, absorbed, uniform, direction)
       remaining = -Math.log(uniform())
     }
   }

@@ -8,6 +8,7 @@ import { fillThick } from '../../src/solve/fill-thick.js'
 import { GROUPS } from '../../src/solve/groups.js'
 import { firstGuess, givenTemperatures, temperaturesFrom } from '../../src/solve/temperatures.js'
 import { ThickCells } from '../../src/solve/thick-cells.js'
+import { WalkWriter } from '../../src/solve/walk-levels.js'
 import { propagateEnergy } from '../../src/transport/equilibrium.js'
 
 const disk = `
@@ -29,12 +30,13 @@ function solve(walks: boolean, packets: number[], from?: Float64Array) {
   const model = buildModel(parseScene(disk, 'disk.yaml'))
   const setup = equilibriumSetup(model)
   const thick = new ThickCells(model, setup)
+  const walk = new WalkWriter(setup, thick)
   const { medium, tables } = setup
   let temperature = from ?? firstGuess(model, setup)
   let dust = givenTemperatures(model)
   packets.forEach((count, round) => {
     medium.emissionRow.set(temperature.map((kelvin) => (kelvin > 0 ? rowOf(tables[0], kelvin) : 0)))
-    if (walks) thick.update(temperature)
+    if (walks) walk.update(temperature)
     const absorbed = Array.from(
       { length: GROUPS },
       (_, group) => propagateEnergy(medium, count / GROUPS, stream(`${walks}/${round}/${group}`)).absorbed
