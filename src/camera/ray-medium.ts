@@ -8,7 +8,7 @@ import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
 import { sphereStars } from '../solve/scatter-medium.js'
 import type { PolarisedPart, ScatteredLight } from '../solve/scattered-light.js'
-import type { StarBeam } from '../solve/star-beams.js'
+import { beamDepth, type StarBeam } from '../solve/star-beams.js'
 
 /** What the intensity along rays to one observer at one wavelength follows from, as flat arrays that all threads share. */
 export interface RayMedium {
@@ -73,7 +73,7 @@ export function rayMedium(model: Model, light: DustLight, scattered: ScatteredLi
       starlight: {
         luminosity: isOctree(model.walls) ? 0 : luminosity,
         opticalDepth: light.opticalDepth,
-        beams: light.beams(),
+        beams: light.beams,
         asymmetry: light.asymmetry,
         scattering: light.scattering,
         ...(light.tables && { tables: light.tables }),
@@ -112,10 +112,11 @@ function brightestAmongCubes(octree: Octree, light: DustLight): Float64Array {
   for (let cell = 0; cell < cells; cell++) {
     if (favoured[cell] === 0) continue
     const [x, y, z, length] = cellCube(octree, cell, cube)
-    for (const { at, luminosity, depths } of light.beams()) {
+    for (const beam of light.beams) {
+      const { at, luminosity } = beam
       const distance = Math.hypot(x - at[0], y - at[1], z - at[2]) - length * Math.sqrt(0.75)
-      let least = depths[8 * cell]
-      for (let k = 1; k < 8; k++) least = Math.min(least, depths[8 * cell + k])
+      let least = beamDepth(beam, cell, 0)
+      for (let k = 1; k < 8; k++) least = Math.min(least, beamDepth(beam, cell, k))
       // Within the cell of the star nothing may be left out.
       brightest[cell] +=
         distance > 0

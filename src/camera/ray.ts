@@ -6,7 +6,8 @@ import type { SphericalWalk } from '../grid/walk.js'
 import type { Vector } from '../scene/types.js'
 import { GROUPS } from '../solve/groups.js'
 import { ANGLE_NODES } from '../solve/scattered-light.js'
-import { BEAM_POINT, depthToPoint, type StarBeam } from '../solve/star-beams.js'
+import { beamDepth, type StarBeam } from '../solve/star-beams.js'
+import { BEAM_POINT, columnsBetween } from '../solve/star-columns.js'
 import { pathToStar } from '../transport/star-spheres.js'
 import type { RayMedium } from './ray-medium.js'
 import { EMITTED, FIRST_GROUP, POLARISED_VALUES, RAY_VALUES, SCATTERED } from './ray-values.js'
@@ -32,6 +33,8 @@ const TINY = 1e-9
 const HIDES = 1e-12
 /** Within so many sides of its cell, the way to a star among cubes is followed. */
 const NEAR = 2
+/** The extinction of all components as that of one. */
+const ONE = Float64Array.of(1)
 
 /**
  * The formal solution of radiative transfer along rays to one observer: intensity is the integral of the emission coefficient
@@ -274,22 +277,26 @@ export class RayIntegrator {
   }
 
   /** Optical depth from a star among cubes to the point at `s` of the ray, sqrt(r2) from it: from the table, or near the star along the way. */
-  private depthOnBeam({ at, depths }: StarBeam, s: number, r2: number): number {
-    const { place, medium, shadow } = this
+  private depthOnBeam(beam: StarBeam, s: number, r2: number): number {
+    const { place, medium } = this
     const walk = this.walk as OctreeWalk
     const x = walk.x0 + s * walk.ux
     const y = walk.y0 + s * walk.uy
     const z = walk.z0 + s * walk.uz
     const side = walk.within(x, y, z, place)
-    if (r2 < NEAR * NEAR * side * side) return depthToPoint(shadow!, medium.extinction, medium.spheres, x, y, z, walk.cell, at)
+    const { cell } = walk
+    if (r2 < NEAR * NEAR * side * side)
+      return columnsBetween(this.shadow!, medium.extinction, ONE, medium.spheres, x, y, z, cell, beam.at, place)
     const u = 0.5 + (0.5 / BEAM_POINT) * place[0]
     const v = 0.5 + (0.5 / BEAM_POINT) * place[1]
     const w = 0.5 + (0.5 / BEAM_POINT) * place[2]
-    const i = 8 * walk.cell
-    const low = (depths[i] * (1 - u) + depths[i + 1] * u) * (1 - v) + (depths[i + 2] * (1 - u) + depths[i + 3] * u) * v
-    const high = (depths[i + 4] * (1 - u) + depths[i + 5] * u) * (1 - v) + (depths[i + 6] * (1 - u) + depths[i + 7] * u) * v
-    const depth = low * (1 - w) + high * w
-    return Math.max(depth, 0)
+    const low =
+      (beamDepth(beam, cell, 0) * (1 - u) + beamDepth(beam, cell, 1) * u) * (1 - v) +
+      (beamDepth(beam, cell, 2) * (1 - u) + beamDepth(beam, cell, 3) * u) * v
+    const high =
+      (beamDepth(beam, cell, 4) * (1 - u) + beamDepth(beam, cell, 5) * u) * (1 - v) +
+      (beamDepth(beam, cell, 6) * (1 - u) + beamDepth(beam, cell, 7) * u) * v
+    return Math.max(low * (1 - w) + high * w, 0)
   }
 }
 

@@ -26,6 +26,7 @@ function lineOf(progress: RunProgress, rate: number, elapsed: number, effort: Ef
   if (progress.stage === 'grains') return grainsLine(progress)
   if (progress.stage === 'columns')
     return `column density, camera ${progress.observer?.name}: ${Math.round((100 * progress.done) / progress.of)} %`
+  if (progress.stage === 'starlight') return `dust between stars and cells: ${Math.round((100 * progress.done) / progress.of)} %`
   const { stage, wavelength, index = 0, count = 0, done, of, error, observer } = progress
   const left = secondsLeft(progress, rate, elapsed, effort)
   const at = wavelength === undefined ? '' : `wavelength ${index + 1} of ${count} (${wavelengthText(wavelength * 1e4)}), `

@@ -6,15 +6,16 @@ import { type EquilibriumResult, needsEquilibrium, solveEquilibrium } from '../s
 import { equilibriumSetup } from '../solve/equilibrium-medium.js'
 import { type EquilibriumProgress, equilibriumPiece } from '../solve/equilibrium-round.js'
 import { type InnerRadii, radiiPiece, solveInnerRadii } from '../solve/inner-radius.js'
+import type { StarColumns } from '../solve/star-columns.js'
 import { type Sublimation, sublimate, sublimationPiece, withoutDust } from '../solve/sublimation.js'
 import { type DustTemperatures, givenTemperatures } from '../solve/temperatures.js'
-import type { Ledger } from '../workers/ledger.js'
 import type { WorkerPool } from '../workers/pool.js'
 import { type RunProgress, Stopped } from './progress.js'
 import { quickError } from './quick-error.js'
 import { SHARE } from './share.js'
 import { type PhaseTime, stopwatch } from './stopwatch.js'
 import { emptyProducts } from './wanted.js'
+import type { Crew } from './with-crew.js'
 
 /** Under this name the ledger holds temperatures that are done. */
 export const dustPiece = 'dust'
@@ -36,9 +37,7 @@ export interface DustStage {
  * found, and dust that is too hot is gone. Throws SceneError, WorkerFailure or Stopped.
  */
 export async function dustStage(
-  model: Model,
-  pool: WorkerPool,
-  ledger: Ledger,
+  { model, pool, ledger, columnsToStars }: Crew,
   onProgress: (progress: RunProgress) => void,
   stop?: AbortSignal
 ): Promise<DustStage & { model: Model }> {
@@ -63,7 +62,7 @@ export async function dustStage(
     equilibriumSetup(last),
     pool,
     ledger,
-    (dust) => errorOfEmission(last, dust, pool),
+    async (dust) => errorOfEmission(last, dust, await columnsToStars(last), pool),
     show,
     stop
   )
@@ -92,14 +91,14 @@ function fitted(model: Model, { innerRadii, sublimation }: DustFit): Model {
 const LOOKS = 8
 
 /** Largest relative error that the noise of the temperatures makes in what will be seen. */
-async function errorOfEmission(model: Model, dust: DustTemperatures, pool: WorkerPool): Promise<number> {
+async function errorOfEmission(model: Model, dust: DustTemperatures, columns: StarColumns[], pool: WorkerPool): Promise<number> {
   const { wantedAt } = emptyProducts(model.scene, 'emissivity')
   const { cameras, spectra } = model.scene
   const wavelengths = new Set([...spread(cameras), ...spread(spectra)])
   const errors = Array.from(wavelengths, (wavelength) => {
     const wanted = wantedAt(wavelength)
     const indices = wanted.map(() => 0)
-    return quickError(model, dustLight(model, dust, wavelength), [], wanted, indices, 'all', pool)
+    return quickError(model, dustLight(model, dust, wavelength, columns), [], wanted, indices, 'all', pool)
   })
   return Math.max(0, ...(await Promise.all(errors))) / SHARE
 }

@@ -49,7 +49,7 @@ export function forecast({ scene, dimensions }: Model, trial: Trial, workers: nu
   const aperture = each(trial.apertures.seconds, trial.apertures.count) * finer
   const seconds = {
     dust: time(dust, trial.dust) / workers,
-    light: (time(light, trial.light) * observedWavelengths(scene).length) / workers,
+    light: (trial.starlightSeconds + time(light, trial.light) * observedWavelengths(scene).length) / workers,
     pictures:
       cameras.reduce((sum, { pixels, wavelengths }) => sum + (picture(pixels) * (wavelengths.length + 1)) / workers, 0) +
       spectra.reduce((sum, { wavelengths }) => sum + aperture * wavelengths.length, 0)

@@ -1,11 +1,8 @@
 import type { ApertureSpectrum, CameraImages } from '../camera/types.js'
-import type { Model } from '../model/model.js'
 import { observedWavelengths } from '../model/wavelengths.js'
 import { dustLight } from '../solve/dust-light.js'
 import { playRounds, type RoundsOutcome, type RoundsProgress, type RoundsRequest } from '../solve/rounds.js'
 import type { DustTemperatures } from '../solve/temperatures.js'
-import type { Ledger } from '../workers/ledger.js'
-import type { WorkerPool } from '../workers/pool.js'
 import type { Estimator } from './estimator.js'
 import { inLanes } from './in-lanes.js'
 import { lightJob } from './light-job.js'
@@ -16,6 +13,7 @@ import type { Studio } from './observe-wavelength.js'
 import { type RunProgress, Stopped } from './progress.js'
 import { addTime, type PhaseTime, stopwatch } from './stopwatch.js'
 import { emptyProducts, putValues, valuesOf, type WantedValues } from './wanted.js'
+import type { Crew } from './with-crew.js'
 
 /** Packets at one observed wavelength (cm), and the relative error they left in scattered light; NaN when none was asked for. */
 export interface LightPackets {
@@ -47,7 +45,6 @@ export type PacketSource = (
 
 export interface LightOptions {
   estimator: Estimator
-  ledger: Ledger
   onProgress: (progress: RunProgress) => void
   stop?: AbortSignal
   /** Default: they are played. */
@@ -56,12 +53,11 @@ export interface LightOptions {
 
 /** Images and spectra, a few wavelengths at a time, from the ledger as far as it goes. Throws WorkerFailure or Stopped. */
 export async function lightStage(
-  model: Model,
+  { model, pool, ledger, columnsToStars }: Crew,
   dust: DustTemperatures,
-  pool: WorkerPool,
   options: LightOptions
 ): Promise<LightStage> {
-  const { estimator, ledger, onProgress, stop } = options
+  const { estimator, onProgress, stop } = options
   const play: PacketSource = (request, index, progress) =>
     playRounds(request, pool, ledger, lightPieces(index).packets, progress, stop)
   const packetsFrom = options.packetsFrom ?? play
@@ -89,7 +85,9 @@ export async function lightStage(
     const report = (progress: Omit<RunProgress, 'wavelength' | 'index' | 'count'>) => {
       if (index === front) onProgress({ wavelength, index, count: wavelengths.length, ...progress })
     }
-    const light = dustLight(model, dust, wavelength)
+    // Rays look for light of point stars scattered once; packets find it themselves.
+    const columns = estimator === 'emissivity' ? await columnsToStars(model) : []
+    const light = dustLight(model, dust, wavelength, columns)
     const job = lightJob(model, light, estimator, wanted, pool)
     const found = job.request
       ? await packetsFrom(job.request, index, (round) => report({ stage: 'light', ...round, of: round.packets }))

@@ -49,6 +49,6 @@ function glowOfMass({ components, cells }: Model): DustLight {
     emission,
     emissionGroups: new Float32Array(),
     opticalDepth: new Float64Array(),
-    beams: () => []
+    beams: []
   }
 }

@@ -22,7 +22,7 @@ export async function observeDeficit(model: Model, light: DustLight, wanted: Wan
     scattering: new Float64Array(light.scattering.length),
     emission: light.extinction.map((value) => value * intensity),
     emissionGroups: new Float32Array(),
-    beams: () => []
+    beams: []
   }
   const stars = model.stars.flatMap(({ spec, spectrum }) => {
     if (spec.extent === 'point') return []

@@ -102,7 +102,7 @@ function caughtBy(pixels: number, { sums, packets }: GroupSums): Caught {
 function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted, caught: Caught, offset: number): number {
   const { distance } = model.scene
   const view = seenFrom(model, want.spec.view)
-  const medium = rayMedium(model, { ...light, beams: () => [] }, undefined)
+  const medium = rayMedium(model, light, undefined)
   if (want.kind === 'spectrum') {
     const { result, k, spec } = want
     const area = distance * distance

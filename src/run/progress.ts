@@ -1,6 +1,6 @@
 /** What a run is doing, for whoever shows it. */
 export interface RunProgress {
-  stage: 'grains' | 'dust' | 'light' | 'pictures' | 'columns'
+  stage: 'grains' | 'dust' | 'starlight' | 'light' | 'pictures' | 'columns'
   /** Wavelength at hand, cm, and how many of how many; absent for the dust. */
   wavelength?: number
   index?: number
@@ -9,7 +9,7 @@ export interface RunProgress {
   observer?: { kind: 'camera' | 'spectrum'; name: string }
   /** The opacity whose grains are at hand. */
   opacity?: string
-  /** Packets (or rows of pixels, or wavelengths of grains) done and asked for in the present round. */
+  /** Packets (or rows of pixels, wavelengths of grains, cells on whose way to the stars columns are found) done and asked for in the present round. */
   done: number
   of: number
   round: number

@@ -43,8 +43,9 @@ export function requireParts(scene: Scene, of: number): void {
 export function runPart(scene: Scene, { index, of }: Part, options: RunOptions): Promise<void> {
   requireParts(scene, of)
   const { estimator, onProgress, stop } = options
-  return withCrew(scene, options, async ({ model: first, pool, ledger }) => {
-    const { model, dust } = await dustStage(first, pool, ledger, onProgress, stop)
+  return withCrew(scene, options, async (crew) => {
+    const { pool, ledger } = crew
+    const { model, dust } = await dustStage(crew, onProgress, stop)
     const { wantedAt } = emptyProducts(scene, estimator)
     const range = shareOf(index - 1, of, divide(scene.effort.cameras))
     const wavelengths = observedWavelengths(scene)

@@ -34,19 +34,11 @@ export interface RunResult {
  * MemoryError, WorkerFailure or Stopped.
  */
 export function runScene(scene: Scene, options: RunOptions, packetsFrom?: PacketSource): Promise<RunResult> {
-  return withCrew(scene, options, async ({ model: first, pool, ledger, time: modelTime }) => {
+  return withCrew(scene, options, async (crew) => {
     const { estimator, onProgress, stop } = options
-    const {
-      model,
-      dust,
-      equilibrium,
-      innerRadii,
-      sublimation,
-      time: dustTime
-    } = await dustStage(first, pool, ledger, onProgress, stop)
-    const light = await lightStage(model, dust, pool, {
+    const { model, dust, equilibrium, innerRadii, sublimation, time: dustTime } = await dustStage(crew, onProgress, stop)
+    const light = await lightStage({ ...crew, model }, dust, {
       estimator,
-      ledger,
       onProgress,
       ...(stop && { stop }),
       ...(packetsFrom && { packetsFrom })
@@ -62,12 +54,12 @@ export function runScene(scene: Scene, options: RunOptions, packetsFrom?: Packet
       spectra,
       lightPackets,
       precision: precisionOf(images, spectra),
-      times: { model: modelTime, dust: dustTime, light: light.time }
+      times: { model: crew.time, dust: dustTime, light: light.time }
     }
   })
 }
 
 /** Solves for the dust temperatures of a scene and leaves them in the ledger. Throws as `runScene` does. */
 export function runDust(scene: Scene, options: RunOptions): Promise<DustStage & { model: Model }> {
-  return withCrew(scene, options, ({ model, pool, ledger }) => dustStage(model, pool, ledger, options.onProgress, options.stop))
+  return withCrew(scene, options, (crew) => dustStage(crew, options.onProgress, options.stop))
 }

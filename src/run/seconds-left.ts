@@ -8,7 +8,7 @@ const FIRST_ROUND = 16_384
  * far. Errors are taken to fall as the square root of the packets. `rate` is in packets per second. Undefined while unknown.
  */
 export function secondsLeft(progress: RunProgress, rate: number, elapsed: number, effort: EffortSpec): number | undefined {
-  if (progress.stage === 'grains' || progress.stage === 'columns') return undefined
+  if (progress.stage === 'grains' || progress.stage === 'starlight') return undefined
   const { stage, index = 0, count = 1, done, of } = progress
   if (stage === 'dust') return rate > 0 && Number.isFinite(rate) ? dustPackets(progress, effort) / rate : undefined
   const share = (index + (stage === 'light' ? 0.5 : 0.9) * (done / of)) / count

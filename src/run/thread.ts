@@ -7,6 +7,7 @@ import type { ScatteringTables } from '../dust/scattering-tables.js'
 import { stream } from '../math/random.js'
 import { type LightRequest, lightTowards } from '../solve/light-towards.js'
 import { turningMatrices } from '../solve/scattered-stokes.js'
+import { type ColumnsRequest, fillColumns } from '../solve/star-columns.js'
 import type { Detector } from '../transport/detector.js'
 import { type EquilibriumMedium, propagateEnergy } from '../transport/equilibrium.js'
 import { tallyExits } from '../transport/exit.js'
@@ -55,6 +56,8 @@ serve({
     inOne(tallyPeeled(scattering(shared), detectors, packets, stream(seed))),
   exits: ({ packets, seed, detectors }: Batch & { detectors: Detector[] }, shared: Shared) =>
     inOne(tallyExits(scattering(shared), detectors, packets, stream(seed))),
+  'star-columns': ({ from, to }: { from: number; to: number }, shared: Shared) =>
+    fillColumns(shared('star-columns') as ColumnsRequest, from, to),
   scattered: (request: LightRequest) => lightTowards(request),
   turning: (tables: ScatteringTables) => turningMatrices(tables),
   ...looks,

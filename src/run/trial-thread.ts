@@ -13,6 +13,7 @@ const trial: Trial = {
   light: { packets: 0, seconds: 0, noise: 0 },
   pictures: { fixedSeconds: 0, seconds: 0, count: 0 },
   apertures: { seconds: 0, count: 0 },
+  starlightSeconds: 0,
   precision: scene.effort.precision ?? TRIAL_PRECISION,
   complete: false
 }
@@ -28,7 +29,8 @@ parentPort!.postMessage(trial)
 function note({ stage, done, of, observer, index = 0 }: RunProgress): void {
   const seconds = (performance.now() - last) / 1000
   last = performance.now()
-  if (stage === 'dust' || stage === 'light') {
+  if (stage === 'starlight') trial.starlightSeconds += seconds
+  else if (stage === 'dust' || stage === 'light') {
     trial[stage].seconds += seconds
     trial[stage].packets = index * TRIAL_PACKETS[stage] + done
   } else if (observer?.kind === 'spectrum') {

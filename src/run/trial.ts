@@ -11,6 +11,8 @@ export interface Trial {
   /** Sums over the pictures, TRIAL_PIXELS squared each: what does not depend on their size, and the rest. */
   pictures: { fixedSeconds: number; seconds: number; count: number }
   apertures: { seconds: number; count: number }
+  /** Columns between stars and cells, which are those of the whole run. */
+  starlightSeconds: number
   /** Placing tolerance is a tenth of this. */
   precision: number
   /** False when time ran out. */
@@ -43,6 +45,7 @@ export function runTrial({ locate, ...scene }: Scene, tables: GrainTables, mostS
       light: { packets: 0, seconds: 0, noise: 0 },
       pictures: { fixedSeconds: 0, seconds: 0, count: 0 },
       apertures: { seconds: 0, count: 0 },
+      starlightSeconds: 0,
       precision: TRIAL_PRECISION,
       complete: false
     }

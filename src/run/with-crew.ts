@@ -3,6 +3,7 @@ import type { Model } from '../model/model.js'
 import type { Scene } from '../scene/types.js'
 import { type Ledger, noLedger } from '../workers/ledger.js'
 import { WorkerPool } from '../workers/pool.js'
+import { type ColumnsToStars, columnsToStars } from './columns-to-stars.js'
 import type { Estimator } from './estimator.js'
 import { type GrainTables, grainTables } from './grain-tables.js'
 import type { RunProgress } from './progress.js'
@@ -34,6 +35,7 @@ export interface Crew {
   model: Model
   pool: WorkerPool
   ledger: Ledger
+  columnsToStars: ColumnsToStars
   /** What building the model took. */
   time: PhaseTime
 }
@@ -51,7 +53,7 @@ export async function withCrew<Result>(
   onBegin?.()
   const pool = new WorkerPool(workers, new URL('./thread.js', import.meta.url))
   try {
-    return await work({ model, pool, ledger, time: clock() })
+    return await work({ model, pool, ledger, columnsToStars: columnsToStars(pool, onProgress, stop), time: clock() })
   } finally {
     await pool.close()
     await ledger.settle()

@@ -8,6 +8,7 @@ import { LIGHT_SPEED } from '../units/constants.js'
 import { GROUPS } from './groups.js'
 import { lawsAt } from './laws.js'
 import { type StarBeam, starBeams } from './star-beams.js'
+import type { StarColumns } from './star-columns.js'
 import type { DustTemperatures } from './temperatures.js'
 
 /** The dust of a model at one wavelength, as flat arrays that all threads share. */
@@ -30,15 +31,15 @@ export interface DustLight {
   emissionGroups: Float32Array
   /** (nt np) x (nr + 1): optical depth from the origin to each radial wall, by column of spherical cells; empty among cubes. */
   opticalDepth: Float64Array
-  /** The light of point stars on its way through cubes, found when first asked for; none in spherical cells. */
-  beams: () => StarBeam[]
+  /** The light of point stars on its way through cubes, as far as it is known; none in spherical cells. */
+  beams: StarBeam[]
 }
 
 const shared64 = (length: number) => new Float64Array(allocateShared(8 * length))
 const shared32 = (length: number) => new Float32Array(allocateShared(4 * length))
 
-/** Coefficients of every cell at a wavelength (cm). */
-export function dustLight(model: Model, dust: DustTemperatures, wavelength: number): DustLight {
+/** Coefficients of every cell at a wavelength (cm); `columns`: what lies before the point stars, where their light is looked for. */
+export function dustLight(model: Model, dust: DustTemperatures, wavelength: number, columns: StarColumns[] = []): DustLight {
   const { components, cells } = model
   const nu = LIGHT_SPEED / wavelength
   const laws = lawsAt(components, wavelength)
@@ -76,15 +77,7 @@ export function dustLight(model: Model, dust: DustTemperatures, wavelength: numb
     emission,
     emissionGroups,
     opticalDepth: isOctree(model.walls) ? new Float64Array() : radialDepths(model.walls, extinction),
-    beams: once(() => (isOctree(model.walls) ? starBeams(model, model.walls, extinction, nu) : []))
-  }
-}
-
-function once<Value>(make: () => Value): () => Value {
-  let made: Value | undefined
-  return () => {
-    made ??= make()
-    return made
+    beams: starBeams(columns, components, wavelength, nu)
   }
 }
 

@@ -50,6 +50,7 @@ const cases: [string, string, 'emissivity' | 'peel' | 'exit'][] = [
   ],
   ['disk, temperatures solved', sceneOf(disk, '{kind: spherical, radial: 30, polar: 20}', fixed), 'emissivity'],
   ['disk, three dimensions', sceneOf(disk, '{kind: spherical, radial: 15, polar: 10, azimuthal: 4}', fixed), 'emissivity'],
+  ['disk, cubes', sceneOf(`${disk}, temperature: none`, '{kind: octree, cells-at-most: 3000}', few), 'emissivity'],
   ['shell, peel-off', sceneOf(shell, '{kind: auto}', fixed), 'peel'],
   ['shell, polarised', sceneOf(`${shell}, temperature: none`, '{kind: auto}', few, 'bits', 'rayleigh'), 'emissivity'],
   [

@@ -10,6 +10,7 @@ const trial: Trial = {
   light: { packets: 2 * TRIAL_PACKETS.light, seconds: 2, noise: 0.02 },
   pictures: { fixedSeconds: 0, seconds: 2, count: 2 },
   apertures: { seconds: 0, count: 2 },
+  starlightSeconds: 0,
   precision: 0.05,
   complete: true
 }
