@@ -8,7 +8,7 @@ export default defineConfig({
   resolve: { alias: [{ find: /^(?:\.\.\/)+src\/(.*)$/, replacement: `${dist}$1` }] },
   test: {
     include: ['tests/**/*.test.ts'],
-    globalSetup: ['tests/setup/build.ts', 'tests/setup/cache.ts'],
+    globalSetup: ['tests/setup/build.ts', 'tests/setup/own-folder.ts'],
     server: { deps: { external: [/\/dist\//] } },
     execArgv: ['--enable-source-maps'],
     testTimeout: 300_000,

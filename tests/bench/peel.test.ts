@@ -1,8 +1,8 @@
-import { mkdtempSync, rmSync } from 'node:fs'
+import { mkdtempSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
-import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { beforeAll, describe, expect, it } from 'vitest'
 import { readDoubles } from '../../bench/doubles.js'
 import { lightDust, writeMedium } from '../../bench/lit-dust.js'
 import { compileNative } from '../../bench/native.js'
@@ -14,7 +14,6 @@ import { AU } from '../../src/units/constants.js'
 import { sumOf } from '../physics/pictures.js'
 
 const folder = mkdtempSync(join(tmpdir(), 'motelight-peel-'))
-afterAll(() => rmSync(folder, { recursive: true }))
 const native = compileNative(fileURLToPath(new URL('../../bench/native', import.meta.url)), folder)
 
 const cases = [

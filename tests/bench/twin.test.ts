@@ -1,8 +1,8 @@
-import { mkdtempSync, rmSync } from 'node:fs'
+import { mkdtempSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
-import { afterAll, describe, expect, it } from 'vitest'
+import { describe, expect, it } from 'vitest'
 import { lightDust } from '../../bench/lit-dust.js'
 import { compileNative } from '../../bench/native.js'
 import { shellScene } from '../../bench/scenes.js'
@@ -11,7 +11,6 @@ import { stream } from '../../src/math/random.js'
 import { tallyFlights } from '../../src/transport/flights.js'
 
 const folder = mkdtempSync(join(tmpdir(), 'motelight-twin-'))
-afterAll(() => rmSync(folder, { recursive: true }))
 const native = compileNative(fileURLToPath(new URL('../../bench/native', import.meta.url)), folder)
 const PACKETS = 20_000
 

@@ -1,7 +1,7 @@
-import { mkdtempSync, rmSync, writeFileSync } from 'node:fs'
+import { mkdtempSync, writeFileSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
-import { afterAll, describe, expect, it } from 'vitest'
+import { describe, expect, it } from 'vitest'
 import { DataError } from '../../src/data/error.js'
 import { imageValues } from '../../src/data/fits/image.js'
 import { firstImage, readFits, unitNamed } from '../../src/data/fits/read.js'
@@ -10,7 +10,6 @@ import { imageHdu } from '../../src/output/fits/image.js'
 import { astropy, itWith, runPython } from '../support/python.js'
 
 const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
-afterAll(() => rmSync(folder, { recursive: true }))
 const place = (name: string) => join(folder, name)
 
 /** The message of the DataError that reading these bytes ends in. */

@@ -1,11 +1,10 @@
-import { mkdirSync, mkdtempSync, readdirSync, readFileSync, rmSync } from 'node:fs'
+import { mkdirSync, mkdtempSync, readdirSync, readFileSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
-import { afterAll, describe, expect, it } from 'vitest'
+import { describe, expect, it } from 'vitest'
 import { writeAtomic } from '../../src/output/atomic.js'
 
 const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
-afterAll(() => rmSync(folder, { recursive: true }))
 
 describe('writeAtomic', () => {
   it('makes the folder, writes, replaces, and leaves nothing else', async () => {

@@ -1,9 +1,9 @@
 import { execFileSync } from 'node:child_process'
-import { mkdtempSync, rmSync, writeFileSync } from 'node:fs'
+import { mkdtempSync, writeFileSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { PNG } from 'pngjs'
-import { afterAll, describe, expect, it } from 'vitest'
+import { describe, expect, it } from 'vitest'
 import { stokesPlanes } from '../../src/camera/stokes-planes.js'
 import { cameraFits } from '../../src/output/fits/camera-fits.js'
 import { azimuthalPicture, azimuthalStokes } from '../../src/output/png/azimuthal-picture.js'
@@ -14,7 +14,6 @@ import { astropy, fitsverify, itWith, runPython } from '../support/python.js'
 import { exampleImages, exampleScene, exampleSpectrum } from './examples.js'
 
 const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
-afterAll(() => rmSync(folder, { recursive: true }))
 
 /** Wholly azimuthal about the middle of an 8 x 8 image, 40 % of 1 MJy/sr: Q = -0.4 cos 2 phi, U = -0.4 sin 2 phi. */
 const swirl = (unit = 'MJy/sr') =>

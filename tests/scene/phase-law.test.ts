@@ -1,7 +1,7 @@
-import { mkdtempSync, rmSync, writeFileSync } from 'node:fs'
+import { mkdtempSync, writeFileSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
-import { afterAll, describe, expect, it, test } from 'vitest'
+import { describe, expect, it, test } from 'vitest'
 import { SceneError } from '../../src/scene/error.js'
 import { isPolarised } from '../../src/scene/is-polarised.js'
 import { parseMatrixTable } from '../../src/scene/phase-law.js'
@@ -59,7 +59,6 @@ describe('a table of a scattering law', () => {
 
 describe('the phase of an opacity', () => {
   const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
-  afterAll(() => rmSync(folder, { recursive: true }))
   writeFileSync(join(folder, 'phase.csv'), sound.join('\n'))
   const read = (phase: string) => parseScene(exampleWith(phaseLine(phase)), join(folder, 'scene.yaml'))
 

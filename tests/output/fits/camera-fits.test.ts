@@ -1,8 +1,8 @@
 import { execFileSync } from 'node:child_process'
-import { mkdtempSync, rmSync, writeFileSync } from 'node:fs'
+import { mkdtempSync, writeFileSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
-import { afterAll, describe, expect, it } from 'vitest'
+import { describe, expect, it } from 'vitest'
 import { cameraFits } from '../../../src/output/fits/camera-fits.js'
 import { cellsFits } from '../../../src/output/fits/cells-fits.js'
 import { imageHdu } from '../../../src/output/fits/image.js'
@@ -11,7 +11,6 @@ import { astropy, fitsverify, itWith, runPython } from '../../support/python.js'
 import { exampleImages, exampleScene } from '../examples.js'
 
 const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
-afterAll(() => rmSync(folder, { recursive: true }))
 
 function written(name: string, bytes: Uint8Array): string {
   const path = join(folder, name)
