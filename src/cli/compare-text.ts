@@ -1,5 +1,6 @@
 import { relative } from 'node:path'
-import type { Agreement, ComparisonRecord, ScalingFinding, SetFinding } from '../compare/comparison-record.js'
+import type { ComparisonRecord } from '../compare/comparison-record.js'
+import type { Agreement, ScalingFinding, SetFinding } from '../compare/verdict.js'
 import { shown, table, withError } from './words.js'
 
 /** What `compare` says at its end. */

@@ -2,6 +2,7 @@ import { fileURLToPath } from 'node:url'
 import { outcomesOf } from '../sweep/folder/outcomes-of.js'
 import type { SweepFolder } from '../sweep/folder/sweep-folder.js'
 import { readSlurmSettings } from '../sweep/plan/slurm-settings.js'
+import { judged } from '../sweep/results/outcomes.js'
 import { writeTables } from '../sweep/results/write-tables.js'
 import { cancelJobs } from '../sweep/slurm/cancel.js'
 import { isLive, type QueueEntry, queueOf } from '../sweep/slurm/queue.js'
@@ -88,7 +89,7 @@ export const slurmActions = {
   /** What a task of a job does. */
   task: async (folder: SweepFolder, task: string, cores: number): Promise<void> => {
     const [serial, kind, first] = task.split('/')
-    if (kind === 'table') return writeTables(folder, outcomesOf(folder))
+    if (kind === 'table') return writeTables(folder, judged(folder.sweep, outcomesOf(folder)))
     const index = Number(first) + Number(process.env.SLURM_ARRAY_TASK_ID)
     const megabytes = Number(process.env.SLURM_MEM_PER_NODE)
     const signal = stopSignal()

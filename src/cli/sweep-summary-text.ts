@@ -8,12 +8,12 @@ import { shown, table } from './words.js'
 export function summaryText(sweep: Sweep, summary: Summary, path: string): string {
   const { title, compared, points, best, warnings } = summary
   return [
-    `${title}: ${compared} of ${sweep.models.length} models compared with ${points} measured fluxes`,
+    `${title}: ${compared} of ${sweep.models.length} models compared with ${points} measured values`,
     '',
     ...table([['parameter', 'best model', '68 % by profile', '68 % credible', 'median'], ...parameterRows(sweep, summary)]),
     '',
     ...table([
-      ['model', 'chi squared', '-2 ln (L / L best)', ...sweep.parameters.map(({ name }) => name)],
+      ['model', 'chi-squared', '-2 ln (L / L best)', ...sweep.parameters.map(({ name }) => name)],
       ...best.map(({ model, chiSquared, deviance, values }) => [
         String(model),
         shown(chiSquared, 4),

@@ -1,6 +1,7 @@
 import type { Estimate } from '../sweep/estimate.js'
 import { inScene } from '../sweep/plan/value.js'
-import { type ModelState, type Outcomes, stateOf } from '../sweep/results/sweep-table.js'
+import type { Outcomes } from '../sweep/results/outcomes.js'
+import { type ModelState, stateOf } from '../sweep/results/sweep-table.js'
 import { tableNames } from '../sweep/results/write-tables.js'
 import { isLive, isLost, isStuck, type QueueEntry } from '../sweep/slurm/queue.js'
 import type { Sweep } from '../sweep/types.js'

@@ -7,12 +7,14 @@ import { openSweep, reopenSweep, type SweepFolder } from '../sweep/folder/sweep-
 import { summarize } from '../sweep/meaning/summary.js'
 import { readPlan } from '../sweep/plan/read-plan.js'
 import { runHere } from '../sweep/players/run-here.js'
+import { judged } from '../sweep/results/outcomes.js'
 import { writeTables } from '../sweep/results/write-tables.js'
 import type { QueueEntry } from '../sweep/slurm/queue.js'
 import { exitCode } from './exit-code.js'
 import { UsageError } from './failure.js'
 import { runOptions } from './options.js'
 import { startLine } from './status-line.js'
+import { startSteps } from './steps.js'
 import { stopSignal } from './stop-signal.js'
 import { startSweepProgress } from './sweep-progress.js'
 import { slurmActions, slurmOptions } from './sweep-slurm.js'
@@ -98,18 +100,15 @@ async function make(folder: SweepFolder, models: number[], { workers, memory, qu
 /** Tells what the data say, from what is finished. */
 async function sumUp(folder: SweepFolder, words: SweepWords): Promise<void> {
   const { sweep: plan, path } = folder
-  const outcomes = outcomesOf(folder)
+  if (!plan.data) throw new UsageError('--summary needs `data` in the plan')
+  const outcomes = judged(plan, outcomesOf(folder))
   const summary = summarize(plan, outcomes)
-  if (!summary)
-    throw new UsageError(
-      plan.data.length === 0
-        ? '--summary needs `data` in the plan'
-        : '--summary: no model is finished yet; the same without it makes them'
-    )
+  if (!summary) throw new UsageError('--summary: no model is finished yet; the same without it makes them')
   // Drawing needs large packages; other commands start faster without them.
   const { writeSummary } = await import('../sweep/meaning/write-summary.js')
+  const steps = startSteps(process.stderr, words.quiet)
   await writeTables(folder, outcomes)
-  await writeSummary(folder, outcomes, summary)
+  await writeSummary(folder, outcomes, summary, steps.show)
   tell(words, summary, summaryText(plan, summary, shownPath(path)))
 }
 
@@ -117,7 +116,7 @@ async function sumUp(folder: SweepFolder, words: SweepWords): Promise<void> {
 async function finish(folder: SweepFolder, words: SweepWords, queue: QueueEntry[] | undefined): Promise<void> {
   const { sweep: plan, path } = folder
   const outcomes = outcomesOf(folder)
-  await writeTables(folder, outcomes)
+  await writeTables(folder, judged(plan, outcomes))
   tell(words, standJson(plan, outcomes, path, queue), standText(plan, outcomes, shownPath(path), queue))
   const { unfinished, failed, imprecise } = countsOf(plan, outcomes)
   const asksForState = words.status || words.cancel || words.on === 'slurm'

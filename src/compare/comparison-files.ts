@@ -3,9 +3,9 @@ import { type Product, writeFolder } from '../run/write-folder.js'
 import type { Compared } from './compare-run.js'
 import { type ComparisonRecord, comparisonRecord, comparisonRecordName } from './comparison-record.js'
 import { comparisonReport } from './comparison-report.js'
-import { factorOf, placementOf } from './fit.js'
-import { comparedFits, profilePlot, residualPng } from './picture-files.js'
-import { rowsEcsv, rowsPlot } from './rows-files.js'
+import { comparedFits } from './picture-files.js'
+import { rowsEcsv } from './rows-files.js'
+import { drawPlot, plotsOf } from './set-plots.js'
 
 /** Writes all files of a comparison, the record last. Throws OutputError. */
 export function writeComparison(compared: Compared, folder: RunFolder): Promise<ComparisonRecord> {
@@ -13,23 +13,22 @@ export function writeComparison(compared: Compared, folder: RunFolder): Promise<
   return writeFolder(folder, comparisonRecordName, productsOf(compared), (files) => comparisonRecord(compared, files), report)
 }
 
-function productsOf({ run, data, sets, models, parameters, values }: Compared): Product[] {
+function productsOf(compared: Compared): Product[] {
+  const { run, data, sets, models } = compared
   const { title } = run.record
   return [
     { file: 'data.yaml', make: () => data.text },
     ...sets.flatMap((set, i): Product[] => {
       const { shown, spec } = set
-      if (shown.kind === 'rows')
-        return [
-          { file: `sets/${spec.name}.ecsv`, make: () => rowsEcsv(set, shown, models[i], title) },
-          { file: `sets/${spec.name}.png`, make: () => rowsPlot(set, shown, models[i], factorOf(set, parameters, values), title) }
-        ]
-      const placement = placementOf(set, parameters, values)
-      return [
-        { file: `sets/${spec.name}.fits`, make: () => comparedFits(set, shown, models[i], title) },
-        { file: `sets/${spec.name}-residual.png`, make: () => residualPng(set, shown, models[i], title) },
-        { file: `sets/${spec.name}-profiles.png`, make: () => profilePlot(set, shown, models[i], placement, title) }
-      ]
+      const table =
+        shown.kind === 'rows'
+          ? { file: `sets/${spec.name}.ecsv`, make: () => rowsEcsv(set, shown, models[i], title) }
+          : { file: `sets/${spec.name}.fits`, make: () => comparedFits(set, shown, models[i], title) }
+      const plots = plotsOf(spec.kind).map((plot) => ({
+        file: `sets/${spec.name}${plot.ending}.png`,
+        make: () => drawPlot(compared, i, plot, title)
+      }))
+      return [table, ...plots]
     })
   ]
 }

@@ -8,7 +8,9 @@ import { readModelChart } from '../report/read-charts.js'
 import { type PictureFile, readPictures } from '../report/read-picture.js'
 import { reportPage } from '../report/report-page.js'
 import type { ChartSection, TableSection } from '../report/types.js'
-import type { Agreement, ComparisonRecord, SetFinding } from './comparison-record.js'
+import type { ComparisonRecord } from './comparison-record.js'
+import { plotsOf } from './set-plots.js'
+import type { Agreement, SetFinding } from './verdict.js'
 
 const offsetNote = 'Pixels are those of the data; offsets are from the middle of the picture.'
 
@@ -64,19 +66,14 @@ function pictureFiles(name: string, at: (file: string) => string): PictureFile[]
 /** The chart of a table; plots that hold more: the model between its rows, profiles of a picture, residuals of a turned one north up. */
 function setSection({ name, kind }: SetFinding, at: (file: string) => string, upright: boolean): ChartSection {
   const table = `sets/${name}.ecsv`
-  const plots =
-    kind === 'picture'
-      ? [
-          ...(upright ? [] : [{ file: `sets/${name}-residual.png`, alt: `${name}: residuals over sigma, north up` }]),
-          { file: `sets/${name}-profiles.png`, alt: `${name}: means of data and model over rings and sectors, with residuals` }
-        ]
-      : [{ file: `sets/${name}.png`, alt: `${name}: data, model and residuals over sigma` }]
+  const plots = plotsOf(kind).filter(({ ending }) => !(upright && ending === '-residual'))
   return {
     heading: kind === 'picture' ? `${name}: profiles` : `${name}: ${kind}`,
     charts: kind === 'picture' ? [] : [readModelChart(at(table), table, 'Data and model')],
     pictures: plots
-      .filter(({ file }) => existsSync(at(file)))
-      .map(({ file, alt }) => ({ alt, base64: readFileSync(at(file)).toString('base64') })),
+      .map(({ ending, alt }) => ({ file: at(`sets/${name}${ending}.png`), alt: `${name}: ${alt}` }))
+      .filter(({ file }) => existsSync(file))
+      .map(({ file, alt }) => ({ alt, base64: readFileSync(file).toString('base64') })),
     tables: []
   }
 }

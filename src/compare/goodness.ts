@@ -30,10 +30,13 @@ export function residual(data: number, model: number, sigma: number, isLimit: bo
   return isLimit ? -Math.sqrt(-2 * logNormalBelow(off)) : off
 }
 
-/** Compares a model with data; errors of both are taken to be Gaussian and independent. */
-export function goodness(data: Measured, model: Values): Goodness {
+/**
+ * Compares a model with data; errors of both are taken to be Gaussian, and that part of the values to be `independent` (less than 1
+ * where errors are correlated): chi-squared and deviance count as many.
+ */
+export function goodness({ data, independent }: { data: Measured; independent: number }, model: Values): Goodness {
   const count = data.values.length
-  const sum: Goodness = { chiSquared: 0, deviance: 0, noiseShare: 0 }
+  const sum = { chiSquared: 0, deviance: 0, noiseShare: 0 }
   for (let i = 0; i < count; i++) {
     const [ofData, ofModel] = [data.sigma[i] ** 2, model.sigma[i] ** 2]
     const isLimit = data.limit?.[i] === 1
@@ -41,6 +44,9 @@ export function goodness(data: Measured, model: Values): Goodness {
     if (!isLimit) sum.deviance += Math.log1p(ofModel / ofData)
     sum.noiseShare += ofModel / (ofData + ofModel) / count
   }
-  sum.deviance += sum.chiSquared
-  return sum
+  return {
+    chiSquared: independent * sum.chiSquared,
+    deviance: independent * (sum.deviance + sum.chiSquared),
+    noiseShare: sum.noiseShare
+  }
 }

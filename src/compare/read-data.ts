@@ -5,17 +5,24 @@ import { beamOf, lightOf } from '../observe/read-instrument.js'
 import type { LightSpec } from '../observe/types.js'
 import { fluxOf } from '../observe/unit.js'
 import type { DataFiles } from '../scene/data-files.js'
-import { readListFile } from '../scene/read-list-file.js'
+import { parseList, readListFile } from '../scene/read-list-file.js'
 import type { ScenePath } from '../scene/types.js'
+import type { YamlDocument } from '../scene/yaml-document.js'
 import { DEGREE } from '../units/angles.js'
 import { errorsIn, type MeasuredPicture, parsePicture, planeLike, soundErrors } from './measured-picture.js'
 import { type DataEntry, dataSchema } from './schema/data-schema.js'
-import type { MeasuredSpec, Measurements } from './types.js'
+import type { DataList, MeasuredSpec, Measurements } from './types.js'
 
 /** Reads a file of data. Throws a SceneError that lists every problem found in it and in the files it names. */
 export function readData(file: string): Measurements {
   const { content, specs, ...list } = readListFile(file, 'file of data', dataSchema, 'data', resolved)
   return { ...list, free: content.free, sets: specs }
+}
+
+/** The same of a value that stands in a document of another kind, such as a plan, with its list at the key `data`. */
+export function parseData(value: unknown, document: YamlDocument, file: string): DataList {
+  const { content, specs, inputs, problemAt } = parseList(value, document, file, dataSchema, 'data', resolved)
+  return { free: content.free, sets: specs, inputs, problemAt }
 }
 
 /** JSON Schema (draft 2020-12) of a file of data. */

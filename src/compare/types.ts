@@ -4,17 +4,21 @@ import type { SceneProblem } from '../scene/error.js'
 import type { InputFile, ScenePath } from '../scene/types.js'
 import type { MeasuredPicture } from './measured-picture.js'
 
-/** What a run is compared with: cgs, angles in rad. */
-export interface Measurements {
-  file: string
-  text: string
-  title: string
+/** What models are compared with: cgs, angles in rad. */
+export interface DataList {
   /** Scalings shared by all sets that have none of their own. */
   free: Scaling[]
   sets: MeasuredSpec[]
   inputs: InputFile[]
   /** A problem at a path of the file. */
   problemAt: (path: ScenePath, message: string) => SceneProblem
+}
+
+/** A file of data. */
+export interface Measurements extends DataList {
+  file: string
+  text: string
+  title: string
 }
 
 /** What may be fitted: a factor on the flux, an offset of the centre, a turn about it. */

@@ -5,7 +5,7 @@ import { makeBeam } from './beam.js'
 import { pixelsAcross } from './blur.js'
 import { measureFlux, type Photometry } from './photometry.js'
 import { type Picture, takePicture } from './picture.js'
-import { type CameraSource, openRun, type RunSource, readCamera, readSpectrum, type SpectrumSource } from './run-source.js'
+import { type CameraSource, openRun, type RunSource, type SpectrumSource } from './run-source.js'
 import type { Instrument, LightSpec, PictureSpec, VisibilitiesSpec } from './types.js'
 import { measureVisibilities, type Visibilities } from './visibilities.js'
 
@@ -44,7 +44,7 @@ export function observeRun(
     }
     if (spec.kind === 'photometry') {
       if (!run.spectra.includes(spec.spectrum)) refuse('spectrum', absent('spectrum', run.spectra))
-      const source = readSpectrum(run, spec.spectrum)
+      const source = run.spectrum(spec.spectrum)
       const light = weightsFor(spec, source.wavelengths, refuse)
       observed.fluxes.push({ photometry: measureFlux(spec, source, light, seed), source })
       return
@@ -76,7 +76,7 @@ function cameraOf(
   refuse: Refuse
 ): CameraSource {
   if (!run.cameras.includes(spec.camera)) refuse('camera', absent('camera', run.cameras))
-  const source = known.get(spec.camera) ?? readCamera(run, spec.camera)
+  const source = known.get(spec.camera) ?? run.camera(spec.camera)
   known.set(spec.camera, source)
   return source
 }

@@ -15,12 +15,18 @@ import { intensityUnit, intensityUnits } from '../units/intensity.js'
 import type { SpectralUnit } from '../units/spectral-unit.js'
 import type { PixelGrid } from './blur.js'
 
-/** A finished run in a folder. */
-export interface RunSource {
-  path: string
-  record: RunRecord
+/** Images and spectra of a model, wherever they are: their names, and how each is had. */
+export interface ModelLight {
   cameras: string[]
   spectra: string[]
+  camera: (name: string) => CameraSource
+  spectrum: (name: string) => SpectrumSource
+}
+
+/** A finished run in a folder. Its images and spectra are read when asked for; what cannot be used is a DataError. */
+export interface RunSource extends ModelLight {
+  path: string
+  record: RunRecord
 }
 
 /** Images of a camera of a run, cgs; planes of wavelengths x height x width values, rows from south to north. */
@@ -64,12 +70,17 @@ export function openRun(path: string): RunSource {
     record.files.flatMap((name) =>
       name.startsWith(folder) && name.endsWith(ending) ? [name.slice(folder.length, -ending.length)] : []
     )
-  return { path, record, cameras: named('images/', '.fits'), spectra: named('spectra/', '.ecsv') }
+  return {
+    path,
+    record,
+    cameras: named('images/', '.fits'),
+    spectra: named('spectra/', '.ecsv'),
+    camera: (name) => readCamera(join(path, 'images', `${name}.fits`), name),
+    spectrum: (name) => readSpectrum(join(path, 'spectra', `${name}.ecsv`), name)
+  }
 }
 
-/** Reads the images of a camera. Throws a DataError. */
-export function readCamera(run: RunSource, name: string): CameraSource {
-  const file = join(run.path, 'images', `${name}.fits`)
+function readCamera(file: string, name: string): CameraSource {
   const units = readFits(file)
   const total = units[0]
   const [width, height] = total.axes
@@ -110,18 +121,26 @@ export function readCamera(run: RunSource, name: string): CameraSource {
   }
 }
 
-/** Reads a spectrum. Throws a DataError. */
-export function readSpectrum(run: RunSource, name: string): SpectrumSource {
-  const file = join(run.path, 'spectra', `${name}.ecsv`)
+function readSpectrum(file: string, name: string): SpectrumSource {
   const table = readEcsv(file)
   const unit = unitOfFits(table.columns.get('flux')?.unit, fluxUnits.map(fluxUnit), file)
-  const wavelengths = Array.from(ecsvNumbers(table, 'wavelength'), (um) => um * 1e-4)
+  const [wavelengthUm, flux, sigma] = ['wavelength', 'flux', 'sigma'].map((column) => ecsvNumbers(table, column))
+  return spectrumSource(name, unit, { wavelengthUm, flux, sigma })
+}
+
+/** A spectrum from its numbers in a unit; what is no number is dark. */
+export function spectrumSource(
+  name: string,
+  unit: SpectralUnit<{ frequencyHz: number }>,
+  { wavelengthUm, flux, sigma }: Record<'wavelengthUm' | 'flux' | 'sigma', ArrayLike<number>>
+): SpectrumSource {
+  const wavelengths = Array.from(wavelengthUm, (um) => um * 1e-4)
   const contexts = wavelengths.map((wavelength) => ({ frequencyHz: LIGHT_SPEED / wavelength }))
-  const total = ecsvNumbers(table, 'flux').map((value, k) => orDark(unit.toCgs(value, contexts[k])))
-  const sigma = ecsvNumbers(table, 'sigma').map((value, k) =>
+  const total = Float64Array.from(flux, (value, k) => orDark(unit.toCgs(value, contexts[k])))
+  const errors = Float64Array.from(sigma, (value, k) =>
     orDark(unit.name === 'mag' ? (total[k] * value * Math.LN10) / 2.5 : unit.toCgs(value, contexts[k]))
   )
-  return { name, wavelengths, total, sigma }
+  return { name, wavelengths, total, sigma: errors }
 }
 
 const orDark = (value: number) => (Number.isFinite(value) ? value : 0)

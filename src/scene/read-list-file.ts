@@ -19,36 +19,51 @@ export function readUserFile(file: string, what: string): string {
   return content.text
 }
 
-/** A file that is a list of named entries. */
-export interface ListFile<Content, Spec> {
-  file: string
-  text: string
-  title: string
+/** A list of named entries: what each means, and every file that they name. */
+interface List<Content, Spec> {
   content: Content
   specs: Spec[]
   inputs: InputFile[]
   problemAt: (path: ScenePath, message: string) => SceneProblem
 }
 
-/**
- * Reads a YAML file whose `key` is a list of entries with names, each turned into what it means by `specOf`, which reads the files it
- * names and gives undefined where one cannot be used. Throws a SceneError that lists every problem found in all of them.
- */
+/** A file that is such a list. */
+export interface ListFile<Content, Spec> extends List<Content, Spec> {
+  file: string
+  text: string
+  title: string
+}
+
+/** What an entry means, once the files that it names are read; undefined where one cannot be used. */
+type SpecOf<Entry, Spec> = (entry: Entry, path: ScenePath, files: DataFiles) => Spec | undefined
+
+/** Reads a YAML file whose `key` is a list of named entries. Throws a SceneError as `parseList`, the file first among its inputs. */
 export function readListFile<
   Key extends string,
   Entry extends { name: string },
   Content extends { title?: string } & Record<Key, Entry[]>,
   Spec
->(
-  file: string,
-  what: string,
-  schema: z.ZodType<Content>,
-  key: Key,
-  specOf: (entry: Entry, path: ScenePath, files: DataFiles) => Spec | undefined
-): ListFile<Content, Spec> {
+>(file: string, what: string, schema: z.ZodType<Content>, key: Key, specOf: SpecOf<Entry, Spec>): ListFile<Content, Spec> {
   const text = readUserFile(file, what)
   const document = new YamlDocument(text, file)
-  const result = schema.safeParse(document.value, { error: wording, reportInput: true })
+  const list = parseList(document.value, document, file, schema, key, specOf)
+  const title = list.content.title ?? basename(file, extname(file))
+  return { ...list, file, text, title, inputs: [{ file, sha256: sha256(text) }, ...list.inputs] }
+}
+
+/**
+ * The list at a key of a value that stands in a document. Throws a SceneError that lists every problem found in it and in the files that
+ * its entries name.
+ */
+export function parseList<Key extends string, Entry extends { name: string }, Content extends Record<Key, Entry[]>, Spec>(
+  value: unknown,
+  document: YamlDocument,
+  file: string,
+  schema: z.ZodType<Content>,
+  key: Key,
+  specOf: SpecOf<Entry, Spec>
+): List<Content, Spec> {
+  const result = schema.safeParse(value, { error: wording, reportInput: true })
   const files = new DataFiles(file, document)
   const problems = issueProblems(result.error?.issues ?? [], document)
   const entries: Entry[] = result.data?.[key] ?? []
@@ -60,12 +75,9 @@ export function readListFile<
   problems.push(...files.problems)
   if (!result.success || problems.length > 0) throw new SceneError(problems.sort(byPlace(file)))
   return {
-    file,
-    text,
-    title: result.data.title ?? basename(file, extname(file)),
     content: result.data,
     specs: specs.filter((spec) => spec !== undefined),
-    inputs: [{ file, sha256: sha256(text) }, ...files.inputs],
+    inputs: files.inputs,
     problemAt: (path, message) => locateProblem(document, path, message)
   }
 }

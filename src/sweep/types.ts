@@ -16,15 +16,23 @@ export interface Parameter {
   log: boolean
 }
 
-/** Measured fluxes, wavelengths in cm, increasing. */
-export interface DataSet {
-  name: string
+/** What every model is compared with. */
+export interface SweepData {
+  /** The file that holds the list: a plan or a file of data. */
   file: string
-  /** Spectrum of every model at exactly the wavelengths of the data. */
-  spectrum: string
-  wavelengths: number[]
-  fluxJy: number[]
-  sigmaJy: number[]
+  /** The list as written, and what all its sets leave free. */
+  content: { free?: string[]; data: { name: string; kind: string; file: string }[] }
+  /** Tells these data from others, their files included. */
+  fingerprint: string
+  /** Some sets need the images of a model, which its row in the table does not hold. */
+  needsImages: boolean
+}
+
+/** A spectrum that every model gets for a data set: like another of its scene, at the wavelengths of the data. */
+export interface DataSpectrum {
+  name: string
+  like: string
+  wavelengths: string[]
 }
 
 /** All that a sweep is: its folder keeps this, and models are made from it alone. */
@@ -33,7 +41,7 @@ export interface Sweep {
   version: string
   title: string
   plan: string
-  /** Base scene: its file, where data files are relative to, and its content with precision and spectra of the data put in. */
+  /** Base scene: its file, where data files are relative to, and its content with the precision put in. */
   sceneFile: string
   base: Record<string, unknown>
   seed: string
@@ -43,6 +51,7 @@ export interface Sweep {
   parameters: Parameter[]
   /** One row a model: its values, in the order of the parameters. Models are numbered from 1. */
   models: Value[][]
-  data: DataSet[]
+  data?: SweepData
+  dataSpectra: DataSpectrum[]
   slurm: SlurmSettings
 }

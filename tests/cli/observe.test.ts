@@ -2,7 +2,7 @@ import { join } from 'node:path'
 import { expect, it, test } from 'vitest'
 import { imageValues } from '../../src/data/fits/image.js'
 import { readFits, unitNamed } from '../../src/data/fits/read.js'
-import { openRun, readCamera } from '../../src/observe/run-source.js'
+import { openRun } from '../../src/observe/run-source.js'
 import { filesIn, folderWith, motelight, sceneText, sceneWith } from './motelight.js'
 
 const night = `title: A small mirror
@@ -33,7 +33,7 @@ it('a run is observed: files, summary, JSON; the same seed gives the same bytes'
   const map = (out: string) => imageValues(readFits(join(folder, out, 'pictures', 'map.fits'))[0])
   expect(map('again')).toEqual(map('run-night'))
   // The point star of the run, at the place and with the flux of its pixels.
-  const { stars, direct, pixel } = readCamera(openRun(join(folder, 'run')), 'face')
+  const { stars, direct, pixel } = openRun(join(folder, 'run')).camera('face')
   const flux = direct.subarray(0, 64).reduce((sum, value) => sum + value, 0) * pixel[0] * pixel[1]
   expect(stars[0].flux[0] / flux).toBeCloseTo(1, 9)
   const refused = await motelight(folder, 'observe', 'run', 'night.yaml')
@@ -50,7 +50,7 @@ test.each(['peel', 'exit'])('a run by %s is observed with its star', async (esti
   expect(exitCode, stderr).toBe(0)
   const [{ fieldJy }] = JSON.parse(stdout).observations
   const units = readFits(join(folder, 'run', 'images', 'face.fits'))
-  const { pixel } = readCamera(openRun(join(folder, 'run')), 'face')
+  const { pixel } = openRun(join(folder, 'run')).camera('face')
   const sum = imageValues(units[0]).reduce((all, value) => all + value, 0) * 1e6 * pixel[0] * pixel[1]
   expect(fieldJy / sum).toBeCloseTo(1, 9)
   expect(imageValues(unitNamed(units, 'DIRECT')).reduce((all, value) => all + value, 0)).toBeGreaterThan(0)

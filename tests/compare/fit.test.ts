@@ -43,7 +43,7 @@ describe('chi-squared of fictitious data', () => {
   it('is what the noise implies with the true model', () => {
     const set = fictitious('true')
     const count = set.data.values.length
-    const { chiSquared } = goodness(set.data, fitScalings([set], []).models[0])
+    const { chiSquared } = goodness(set, fitScalings([set], []).models[0])
     // Mean n and variance 2 n: within 4 sigma, missed by chance once in 16 000 draws; the seed is fixed.
     expect(Math.abs(chiSquared - count)).toBeLessThan(4 * Math.sqrt(2 * count))
   })
@@ -60,7 +60,7 @@ describe('chi-squared of fictitious data', () => {
         0
       )
       expect(added).toBeGreaterThan(8 * Math.sqrt(2 * set.data.values.length))
-      const { chiSquared } = goodness(set.data, fitScalings([set], []).models[0])
+      const { chiSquared } = goodness(set, fitScalings([set], []).models[0])
       // Of a difference that adds 8 sigma, chance takes away 4 once in about 5000 draws.
       expect(chiSquareTail(chiSquared, set.data.values.length)).toBeLessThan(1e-4)
     }
@@ -93,7 +93,7 @@ describe('fitted scalings', () => {
       const set = fictitious(seed, truth, 0.8)
       const { values, sigma, models } = fitScalings([set], free(set, ['flux', 'east', 'north', 'rotation']))
       const degrees = set.data.values.length - 4
-      expect(Math.abs(goodness(set.data, models[0]).chiSquared - degrees)).toBeLessThan(4 * Math.sqrt(2 * degrees))
+      expect(Math.abs(goodness(set, models[0]).chiSquared - degrees)).toBeLessThan(4 * Math.sqrt(2 * degrees))
       return values.map((value, i) => (value - expected[i]) / sigma[i])
     })
     // 24 pulls: each within 4 sigma (missed once in 650 draws of all), their mean square 1 within 4 sigma of chi-squared of 24.
@@ -107,7 +107,7 @@ describe('fitted scalings', () => {
     const set = fictitious('beam', truth, 1, { beam })
     const { values, sigma, models } = fitScalings([set], free(set, ['rotation']))
     expect(Math.abs(values[0] - truth.rotation)).toBeLessThan(4 * sigma[0])
-    expect(chiSquareTail(goodness(set.data, models[0]).chiSquared, set.data.values.length - 1)).toBeGreaterThan(1e-4)
+    expect(chiSquareTail(goodness(set, models[0]).chiSquared, set.data.values.length - 1)).toBeGreaterThan(1e-4)
   })
 
   it('are common to several sets, or of each, as asked', () => {

@@ -6,7 +6,7 @@ import { DataError } from '../../src/data/error.js'
 import { writeObservation } from '../../src/observe/observation-files.js'
 import { type Observed, observeRun } from '../../src/observe/observe-run.js'
 import { readInstrument } from '../../src/observe/read-instrument.js'
-import { openRun, readCamera } from '../../src/observe/run-source.js'
+import { openRun } from '../../src/observe/run-source.js'
 import { observationWarnings } from '../../src/observe/warnings.js'
 import { cameraFits } from '../../src/output/fits/camera-fits.js'
 import { openRunFolder } from '../../src/run/run-folder.js'
@@ -140,14 +140,14 @@ answer['closure'] = [float(v) for v in QTable.read(data + '/visibilities/array-c
   })
 
   it('keeps stars through the files of a run', () => {
-    const { stars, direct, pixel, blanks, sky } = readCamera(openRun(runFolder()), 'face')
+    const { stars, direct, pixel, blanks, sky } = openRun(runFolder()).camera('face')
     expect(stars).toHaveLength(1)
     expect(stars[0].name).toBe('star')
     expect(stars[0].flux[0] / 3e-26).toBeCloseTo(1, 12)
     expect((direct.slice(0, 384).reduce((a, b) => a + b) * pixel[0] * pixel[1]) / 3e-26).toBeCloseTo(1, 12)
     expect([blanks, sky]).toEqual([0, { raDeg: 84.21, decDeg: -31.7 }])
     const placeless = runFolder({ fits: cameraFits(images(), exampleScene({ sky: undefined })) })
-    expect(readCamera(openRun(placeless), 'face').sky).toBeUndefined()
+    expect(openRun(placeless).camera('face').sky).toBeUndefined()
   })
 
   test.each([

@@ -1,6 +1,6 @@
 import { type ChildProcess, spawn, spawnSync } from 'node:child_process'
 import { randomBytes } from 'node:crypto'
-import { chmodSync, closeSync, mkdirSync, mkdtempSync, openSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
+import { chmodSync, closeSync, mkdirSync, mkdtempSync, openSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
 import { createServer } from 'node:net'
 import { hostname, tmpdir, userInfo } from 'node:os'
 import { join } from 'node:path'
@@ -113,6 +113,8 @@ export class Cluster {
       for (let i = 0; i < 250 && daemon.exitCode === null && daemon.signalCode === null; i++) await setTimeout(20)
       daemon.kill('SIGKILL')
     }
+    // Tasks on a node whose daemon was killed, or that are stopped, outlive all this.
+    for (const pid of processesWith(`SLURM_CONF=${this.env.SLURM_CONF}`)) process.kill(pid, 'SIGKILL')
     rmSync(this.folder, { recursive: true, force: true })
   }
 
@@ -123,6 +125,21 @@ export class Cluster {
       .slice(-20)
       .join('\n')
   }
+}
+
+/** Processes that have all these in their environment, such as `NAME=value`. */
+export function processesWith(...words: string[]): number[] {
+  return readdirSync('/proc')
+    .filter((name) => /^\d+$/.test(name))
+    .filter((pid) => {
+      try {
+        const environment = readFileSync(`/proc/${pid}/environ`, 'utf8').split('\0')
+        return words.every((word) => environment.includes(word))
+      } catch {
+        return false // It has ended meanwhile, or is not ours.
+      }
+    })
+    .map(Number)
 }
 
 function configuration(folder: string, [controller, ...ports]: number[], cpus: number, maxArraySize: number): string {

@@ -1,21 +1,24 @@
-import { readdirSync, readFileSync } from 'node:fs'
+import { readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { execa } from 'execa'
 import { folderWith, program, sceneWith } from '../cli/motelight.js'
+import { visibilityPlan, visibilityText } from '../sweep/example.js'
+import { processesWith } from './cluster.js'
 
-/** Eight models in pairs of the same dust. */
+/** Eight models in pairs of the same dust, compared with data by their images. */
 export const planText = `title: Small winds
 scene: scene.yaml
 vary:
   dust.wind.amount.optical-depth: {from: 0.5, to: 2, count: 4, spacing: log}
   distance: [300 pc, 400 pc]
-`
+${visibilityPlan}`
 
 /** A folder with a plan and its scene; `packets` decide how long a model takes; `within` is a folder in it. */
 export function sweepFolder(plan = planText, packets = 2000, within = ''): string {
   const folder = folderWith({
     [join(within, 'scene.yaml')]: sceneWith(['equilibrium: 8000, cameras: 2000', `equilibrium: 8000, cameras: ${packets}`]),
-    [join(within, 'plan.yaml')]: plan
+    [join(within, 'plan.yaml')]: plan,
+    [join(within, 'uv.csv')]: visibilityText
   })
   return join(folder, within)
 }
@@ -36,19 +39,13 @@ export function tablesOf(folder: string): string[] {
 
 /** Processes that do tasks of the sweep in a folder, by what they do, and where (default: anywhere). */
 export function tasksOf(folder: string, kind: string, node = ''): number[] {
-  return readdirSync('/proc')
-    .filter((name) => /^\d+$/.test(name))
-    .map(Number)
-    .filter((pid) => {
-      try {
-        const words = readFileSync(`/proc/${pid}/cmdline`, 'utf8').split('\0')
-        if (!words[1]?.endsWith('main.js') || !words.includes(join(folder, 'out/plan'))) return false
-        const environment = readFileSync(`/proc/${pid}/environ`, 'utf8').split('\0')
-        return (
-          words.some((word) => word.includes(`/${kind}/`)) && (node === '' || environment.includes(`SLURMD_NODENAME=${node}`))
-        )
-      } catch {
-        return false // It has ended meanwhile.
-      }
-    })
+  return processesWith(...(node ? [`SLURMD_NODENAME=${node}`] : [])).filter((pid) => {
+    try {
+      const words = readFileSync(`/proc/${pid}/cmdline`, 'utf8').split('\0')
+      const ours = words[1]?.endsWith('main.js') && words.includes(join(folder, 'out/plan'))
+      return ours && words.some((word) => word.includes(`/${kind}/`))
+    } catch {
+      return false // It has ended meanwhile.
+    }
+  })
 }

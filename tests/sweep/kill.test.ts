@@ -5,6 +5,7 @@ import { execa } from 'execa'
 import { describe, expect, it } from 'vitest'
 import { stream } from '../../src/math/random.js'
 import { filesIn, folderWith, program, sceneWith } from '../cli/motelight.js'
+import { visibilityPlan, visibilityText } from './example.js'
 
 /** Sweeps killed; `npm run test:sweep` asks for 20. */
 const KILLED = Number(process.env.KILLED_SWEEPS ?? 3)
@@ -15,7 +16,8 @@ const files = {
 vary:
   dust.wind.amount.optical-depth: [0.5, 1, 2]
   spectra.sed.view.inclination: [0 deg, 60 deg]
-`
+${visibilityPlan}`,
+  'uv.csv': visibilityText
 }
 const words = [program, 'sweep', 'plan.yaml', '--quiet', '--workers', '2']
 const tables = (folder: string) =>

@@ -46,7 +46,7 @@ describe('motelight sweep', () => {
     expect(out(folder, 'models.ecsv')).toBe(table)
     const { exitCode, stdout } = await motelight(folder, 'sweep', 'plan.yaml', '--summary')
     expect(exitCode).toBe(0)
-    expect(stdout).toContain('3 of 3 models compared with 3 measured fluxes')
+    expect(stdout).toContain('3 of 3 models compared with 3 measured values')
     expect(out(folder, 'summary.html')).toContain('<svg')
     expect(JSON.parse(out(folder, 'summary.json'))).toMatchObject({ compared: 3, points: 3 })
   })

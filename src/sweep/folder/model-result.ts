@@ -1,4 +1,10 @@
+import type { Verdict } from '../../compare/verdict.js'
 import type { RunRecord } from '../../run/run-record.js'
+
+/** How a model agrees with the data of a sweep, and with which. */
+export interface DataVerdict extends Verdict {
+  fingerprint: string
+}
 
 /** What the table tells of a finished model; the same bits however and wherever it was made, but for `cpuSeconds`. */
 export interface ModelResult {
@@ -11,10 +17,12 @@ export interface ModelResult {
   packets: number
   warnings: string[]
   cpuSeconds: number
+  /** Present where the data need images: then a model is compared as soon as it is made. */
+  verdict?: DataVerdict
 }
 
 /** The part of a run's record that is kept of a model. */
-export function modelResult(model: number, record: RunRecord): ModelResult {
+export function modelResult(model: number, record: RunRecord, verdict?: DataVerdict): ModelResult {
   const { found, packets, times, warnings, state } = record
   return {
     model,
@@ -36,7 +44,8 @@ export function modelResult(model: number, record: RunRecord): ModelResult {
     })),
     packets: packets.equilibrium + packets.light.reduce((sum, at) => sum + at.packets, 0),
     warnings,
-    cpuSeconds: Object.values(times).reduce((sum, { cpuSeconds }) => sum + cpuSeconds, 0)
+    cpuSeconds: Object.values(times).reduce((sum, { cpuSeconds }) => sum + cpuSeconds, 0),
+    ...(verdict && { verdict })
   }
 }
 

@@ -1,4 +1,4 @@
-import type { Outcomes } from '../results/sweep-table.js'
+import type { Outcomes } from '../results/outcomes.js'
 import { readFailures } from './failures.js'
 import { resultStore } from './result-store.js'
 import type { SweepFolder } from './sweep-folder.js'

@@ -4,6 +4,7 @@ import { join, resolve, sep } from 'node:path'
 import { writeAtomic } from '../../output/atomic.js'
 import { asOutputError, OutputError } from '../../run/output-error.js'
 import type { Sweep } from '../types.js'
+import { isPacked } from './is-packed.js'
 
 /** The file that makes a folder a sweep. */
 const sweepName = 'sweep.json'
@@ -81,8 +82,8 @@ export function reopenSweep(path: string): SweepFolder {
 }
 
 /** What decides the results of a sweep: its title, the values of the data and how Slurm is asked may change. */
-function substance({ version, sceneFile, base, seed, inputs, parameters, models }: Sweep) {
-  return { version, sceneFile, base, seed, inputs, parameters, models }
+function substance({ version, sceneFile, base, seed, inputs, parameters, models, dataSpectra }: Sweep) {
+  return { version, sceneFile, base, seed, inputs, parameters, models, dataSpectra }
 }
 
 /** A text of 12 letters that tells sweeps apart. */
@@ -100,5 +101,7 @@ function difference(kept: Sweep, present: Sweep): string | undefined {
   if (changed) return `${changed.file} has changed since`
   if (JSON.stringify([kept.parameters, kept.models]) !== JSON.stringify([present.parameters, present.models]))
     return 'its models had other parameters'
+  if (isPacked(present) && present.data?.needsImages && present.data.fingerprint !== kept.data?.fingerprint)
+    return 'its data were others, and of so many models no images are kept that new data could be compared with'
   return sweepId(kept) === sweepId(present) ? undefined : 'its base scene, precision, seed or wavelengths of the data were others'
 }

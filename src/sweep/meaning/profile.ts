@@ -6,13 +6,18 @@ import { coordinate } from './marginal.js'
 /** The least deviance that any model reaches with each value of a parameter. */
 export interface Profile {
   points: { value: number | string; deviance: number; model: number }[]
-  /** Where the deviance stays within 1 of its least: 68 % for one parameter (Wilks 1938); absent off a grid, and for text. */
+  /**
+   * Where the deviance stays within 1 of its least: 68 % for one parameter (Wilks 1938); absent off a grid, for text, and where the
+   * grid is so coarse that the curve between its points means nothing.
+   */
   low?: number
   high?: number
   /** The smooth curve through the points that the interval was read from. */
   curve?: { value: number; deviance: number }[]
 }
 
+/** With neighbours 4 sigma apart, the best of a grid may lie so far above the least of the curve. */
+const DEEPEST = 4
 /** Points at which an interpolated profile is looked at. */
 const FINE = 2000
 /** Of these, kept to be drawn. */
@@ -39,6 +44,7 @@ export function profileOf({ design, parameters, models }: Sweep, fits: Fit[], pa
   const fine = Array.from({ length: FINE + 1 }, (_, i) => first + ((last - first) * i) / FINE)
   const heights = fine.map(curve)
   const least = heights.reduce((a, b) => Math.min(a, b))
+  if (least < -DEEPEST) return { points }
   const within = fine.filter((_, i) => heights[i] <= least + 1)
   const back = (place: number) => (log ? Math.exp(place) : place)
   return {

@@ -1,16 +1,19 @@
 import type { TopLevelSpec } from 'vega-lite'
 import { vegaSvg } from '../../output/plot/vega-svg.js'
-import type { Outcomes } from '../results/sweep-table.js'
 import type { Sweep } from '../types.js'
 import type { Summary } from './summary.js'
 
 /** Deviances above this are of no interest. */
 const HIGHEST = 25
 
-/** Scale of a parameter: the range of its values. */
-function axisScale(log: boolean) {
-  return log ? { type: 'log' as const, nice: false } : { type: 'linear' as const, zero: false, nice: false }
+/** Scale of a parameter: the range of its values, or part of it. */
+function axisScale(log: boolean, domain?: [number, number]) {
+  const own = { nice: false, ...(domain && { domain }) }
+  return log ? { type: 'log' as const, ...own } : { type: 'linear' as const, zero: false, ...own }
 }
+
+/** Numbers of six digits, with an exponent only where they would be longer. */
+const numberAxis = { format: '.6~g' }
 
 type ParameterSummary = Summary['parameters'][number]
 
@@ -26,15 +29,17 @@ export function parameterPlot(sweep: Sweep, { name, unit, profile, marginal }: P
       ? { type: 'nominal' as const }
       : {
           type: 'quantitative' as const,
-          axis: { format: '~g' },
-          scale: axisScale(log)
+          axis: numberAxis,
+          scale: axisScale(log, shownRange(profile))
         })
   }
+  // Between the models the curve may lie below the best of them.
+  const least = (profile.curve ?? []).reduce((low, row) => Math.min(low, row.deviance), 0)
   const deviance = {
     field: 'deviance',
     type: 'quantitative' as const,
     title: '−2 ln (L / L best)',
-    scale: { domain: [0, HIGHEST], nice: false }
+    scale: { domain: [least, HIGHEST], nice: false }
   }
   const size = { width: 330, height: 220 }
   const seen = (rows: { deviance: number }[]) => ({ values: rows.filter((row) => row.deviance <= HIGHEST) })
@@ -42,12 +47,16 @@ export function parameterPlot(sweep: Sweep, { name, unit, profile, marginal }: P
     ...size,
     layer: [
       {
-        data: seen([{ deviance: 1 }, { deviance: 4 }]),
+        data: seen([{ deviance: least + 1 }, { deviance: least + 4 }]),
         mark: { type: 'rule', color: '#999', strokeDash: [4, 3] },
         encoding: { y: deviance }
       },
-      { data: seen(profile.curve ?? []), mark: { type: 'line', color: '#9fc8e6' }, encoding: { x, y: deviance } },
-      { data: seen(profile.points), mark: { type: 'point', filled: true, color: '#0072b2' }, encoding: { x, y: deviance } }
+      { data: seen(profile.curve ?? []), mark: { type: 'line', color: '#9fc8e6', clip: true }, encoding: { x, y: deviance } },
+      {
+        data: seen(profile.points),
+        mark: { type: 'point', filled: true, color: '#0072b2', clip: true },
+        encoding: { x, y: deviance }
+      }
     ]
   }
   if (!marginal) return vegaSvg(upper)
@@ -58,20 +67,28 @@ export function parameterPlot(sweep: Sweep, { name, unit, profile, marginal }: P
         data: { values: marginal.curve },
         mark: {
           type: 'area',
+          clip: true,
           color: '#9fc8e6',
           line: { color: '#0072b2' },
           interpolate: sweep.design === 'grid' ? 'linear' : 'step'
         },
-        encoding: { x, y: { field: 'density', type: 'quantitative', title: 'probability density', axis: { format: '~g' } } }
+        encoding: { x, y: { field: 'density', type: 'quantitative', title: 'probability density', axis: numberAxis } }
       },
       {
         data: { values: [marginal.low, marginal.middle, marginal.high].map((value) => ({ value })) },
-        mark: { type: 'rule', color: '#c8402f', strokeDash: [4, 3] },
+        mark: { type: 'rule', color: '#c8402f', strokeDash: [4, 3], clip: true },
         encoding: { x }
       }
     ]
   }
   return vegaSvg({ hconcat: [upper, lower] } as TopLevelSpec)
+}
+
+/** Where the profile is of interest; undefined where that is no range. */
+function shownRange({ points, curve }: ParameterSummary['profile']): [number, number] | undefined {
+  const values = (curve ?? points).filter(({ deviance }) => deviance <= HIGHEST).map(({ value }) => Number(value))
+  const [least, most] = [values.reduce((a, b) => Math.min(a, b)), values.reduce((a, b) => Math.max(a, b))]
+  return least < most ? [least, most] : undefined
 }
 
 /** Labels of values on a grid. */
@@ -94,7 +111,7 @@ export function pairPlot(sweep: Sweep, { names, points }: Summary['pairs'][numbe
         ? { type: 'ordinal' as const, sort: (i === 0 ? 'ascending' : 'descending') as 'ascending' | 'descending', axis: pairAxis }
         : {
             type: 'quantitative' as const,
-            axis: { format: '~g' },
+            axis: numberAxis,
             scale: axisScale(log)
           })
     }
@@ -116,62 +133,5 @@ export function pairPlot(sweep: Sweep, { names, points }: Summary['pairs'][numbe
         scale: { scheme: 'viridis', domain: [0, HIGHEST], reverse: true }
       }
     }
-  } as TopLevelSpec)
-}
-
-/** The fluxes of the best model and the data, with 1 sigma of both. */
-export function dataPlot(sweep: Sweep, { results }: Outcomes, model: number): Promise<string> {
-  const rows = sweep.data.flatMap(({ name, spectrum, wavelengths, fluxJy, sigmaJy }) => {
-    const fit = results.get(model)!.spectra.find((one) => one.name === spectrum)!
-    const own = fit.wavelengthUm.map((wavelength, k) => ({
-      what: `model ${model}`,
-      wavelength,
-      flux: fit.flux[k],
-      low: fit.flux[k] - fit.sigma[k],
-      high: fit.flux[k] + fit.sigma[k]
-    }))
-    const data = wavelengths.map((wavelength, i) => ({
-      what: name,
-      wavelength: wavelength * 1e4,
-      flux: fluxJy[i],
-      low: fluxJy[i] - sigmaJy[i],
-      high: fluxJy[i] + sigmaJy[i]
-    }))
-    return [...own, ...data]
-  })
-  const shown = rows.filter(({ flux }) => flux > 0)
-  const [least, most] = [
-    shown.reduce((a, { flux }) => Math.min(a, flux), Number.POSITIVE_INFINITY) / 2,
-    2 * shown.reduce((a, { flux }) => Math.max(a, flux), 0)
-  ]
-  const scale = { type: 'log' as const, nice: false }
-  const y = (field: string) => ({
-    field,
-    type: 'quantitative' as const,
-    title: 'flux density (Jy)',
-    axis: { format: '~g' },
-    scale: { ...scale, domain: [least, most] }
-  })
-  const x = { field: 'wavelength', type: 'quantitative' as const, title: 'wavelength (µm)', scale: { ...scale, padding: 12 } }
-  const color = {
-    field: 'what',
-    type: 'nominal' as const,
-    title: null,
-    scale: { range: ['#222222', '#c8402f', '#0072b2', '#e69f00', '#009e73'] }
-  }
-  const isModel = { filter: `datum.what === 'model ${model}'` }
-  const within = (value: number) => Math.min(most, Math.max(least, value))
-  return vegaSvg({
-    width: 640,
-    height: 320,
-    data: { values: shown.map((row) => ({ ...row, low: within(row.low), high: within(row.high) })) },
-    layer: [
-      { transform: [isModel], mark: { type: 'line', strokeWidth: 1 }, encoding: { x, y: y('flux'), color } },
-      { mark: { type: 'rule' }, encoding: { x, y: y('low'), y2: { field: 'high' }, color } },
-      {
-        mark: { type: 'point', filled: true, size: 40 },
-        encoding: { x, y: y('flux'), color, shape: { field: 'what', title: null } }
-      }
-    ]
   } as TopLevelSpec)
 }

@@ -12,20 +12,30 @@ const NOISY = 0.1
 /** So many of its own 1 sigma (square root of twice the points) above its mean, chi squared says that no model fits. */
 const UNFIT = 4
 
-interface Judged {
+interface Told {
   name: string
   profile: Profile
   marginal?: Marginal
 }
 
 /** Why not to trust what a sweep says of its parameters; `fits` come best first. */
-export function summaryWarnings(sweep: Sweep, fits: Fit[], parameters: Judged[], points: number): string[] {
+export function summaryWarnings(sweep: Sweep, fits: Fit[], parameters: Told[]): string[] {
   const [best] = fits
+  const { chiSquared, degreesOfFreedom } = best
   const unfinished = sweep.models.length - fits.length
+  const counts = fits.map(({ points }) => points)
+  const [fewest, most] = [counts.reduce((a, b) => Math.min(a, b)), counts.reduce((a, b) => Math.max(a, b))]
   return [
     ...(unfinished > 0 ? [`${unfinished} of ${sweep.models.length} models are missing from the comparison`] : []),
-    ...(best.chiSquared > points + UNFIT * Math.sqrt(2 * points)
-      ? [`no model fits: chi squared is ${best.chiSquared.toPrecision(3)} for ${points} measured fluxes`]
+    ...(fewest < most
+      ? [
+          `models are compared with ${fewest} to ${most} values, for not all of them cover the same data; those with fewer seem better than they are`
+        ]
+      : []),
+    ...(chiSquared > degreesOfFreedom + UNFIT * Math.sqrt(2 * degreesOfFreedom)
+      ? [
+          `no model fits: chi-squared is ${chiSquared.toPrecision(3)} for ${Number(degreesOfFreedom.toPrecision(4))} degrees of freedom`
+        ]
       : []),
     ...(best.noiseShare > NOISY
       ? [
@@ -36,7 +46,7 @@ export function summaryWarnings(sweep: Sweep, fits: Fit[], parameters: Judged[],
   ]
 }
 
-function ofParameter({ design }: Sweep, best: Fit, { name, profile, marginal }: Judged): string[] {
+function ofParameter({ design }: Sweep, best: Fit, { name, profile, marginal }: Told): string[] {
   const { points } = profile
   const numeric = points.length > 1 && points.every(({ value }) => typeof value === 'number')
   if (!numeric) return []

@@ -1,5 +1,5 @@
 import type { Value } from '../plan/value.js'
-import type { Outcomes } from '../results/sweep-table.js'
+import type { Judged } from '../results/outcomes.js'
 import type { Sweep } from '../types.js'
 import { type Fit, rankedFits } from './likelihood.js'
 import { type Marginal, marginalOf } from './marginal.js'
@@ -9,7 +9,7 @@ import { summaryWarnings } from './summary-warnings.js'
 /** What the data say about the parameters of a sweep. */
 export interface Summary {
   title: string
-  /** Models that could be compared with the data, and measured fluxes. */
+  /** Models that could be compared with the data, and measured values. */
   compared: number
   points: number
   /** The best models, with their values in the order of `parameters`. */
@@ -23,10 +23,10 @@ export interface Summary {
 /** Models told of in full. */
 const BEST = 5
 
-/** Sums up a sweep with data; undefined without data, or without a model that can be compared. */
-export function summarize(sweep: Sweep, outcomes: Outcomes): Summary | undefined {
-  const fits = rankedFits(sweep, outcomes)
-  if (sweep.data.length === 0 || fits.length === 0) return undefined
+/** Sums up a sweep; undefined without data, or without a model that was compared with them. */
+export function summarize(sweep: Sweep, judged: Judged): Summary | undefined {
+  const fits = rankedFits(judged)
+  if (fits.length === 0) return undefined
   const isVaried = (p: number) =>
     sweep.parameters[p].role === 'varied' && sweep.models.some((values) => values[p] !== sweep.models[0][p])
   const varied = [...sweep.parameters.keys()].filter(isVaried)
@@ -35,11 +35,10 @@ export function summarize(sweep: Sweep, outcomes: Outcomes): Summary | undefined
     const marginal = marginalOf(sweep, fits, p)
     return { name, unit, profile: profileOf(sweep, fits, p), ...(marginal && { marginal }) }
   })
-  const points = sweep.data.reduce((sum, { wavelengths }) => sum + wavelengths.length, 0)
   return {
     title: sweep.title,
     compared: fits.length,
-    points,
+    points: fits[0].points,
     best: fits.slice(0, BEST).map((fit) => ({ ...fit, values: sweep.models[fit.model - 1] })),
     parameters,
     pairs: varied.flatMap((one, i) =>
@@ -48,6 +47,6 @@ export function summarize(sweep: Sweep, outcomes: Outcomes): Summary | undefined
         points: pairProfile(sweep, fits, one, other)
       }))
     ),
-    warnings: summaryWarnings(sweep, fits, parameters, points)
+    warnings: summaryWarnings(sweep, fits, parameters)
   }
 }

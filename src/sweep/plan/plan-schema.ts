@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import { mostSobolDimensions } from '../../math/sobol.js'
-import { count, dataFile, name, real, section, text } from '../../scene/schema/fields.js'
+import { count, dataFile, real, section, text } from '../../scene/schema/fields.js'
 
 /** Most models of one sweep. */
 export const mostModels = 1_000_000
@@ -47,11 +47,11 @@ const design = z
     `Which models: every combination (\`grid\`, default), a Latin hypercube, a scrambled Sobol sequence (at most ${mostSobolDimensions} axes), or a table`
   )
 
-const dataSet = section({
-  name: name.describe('Name of the data set'),
-  file: dataFile.describe('CSV with columns wavelength [unit], flux [unit] and sigma [unit]'),
-  spectrum: name.describe('Spectrum of the scene whose view and aperture the data have')
-})
+const data = z
+  .union([dataFile, z.array(z.unknown()).min(1).max(1000)], {
+    error: () => 'a file of data, or a list such as [{name: old, file: fluxes.csv, spectrum: sed}], is expected'
+  })
+  .describe('A file of data (see `motelight schema data`), or a list of its entries; those without `kind` are of photometry')
 
 export const slurmSchema = section({
   partition: text.optional().describe('Partition'),
@@ -84,7 +84,7 @@ export const planSchema = section({
     })
     .optional()
     .describe('Precision of every model, instead of `effort.precision` of the scene'),
-  data: z.array(dataSet).prefault([]).describe('Measured fluxes to compare with'),
+  data: data.optional(),
   slurm: slurmSchema.describe('How to ask Slurm')
 })
 

@@ -1,20 +1,20 @@
-import { basename, dirname, extname, join, resolve } from 'node:path'
+import { basename, extname, resolve } from 'node:path'
 import { version } from '../../output/version.js'
 import { DataFiles } from '../../scene/data-files.js'
 import { SceneError } from '../../scene/error.js'
 import { isRecord } from '../../scene/is-record.js'
-import { issueProblems, locateProblem } from '../../scene/issue-problems.js'
-import { largestSceneFile } from '../../scene/limits.js'
+import { issueProblems } from '../../scene/issue-problems.js'
 import { parseScene } from '../../scene/read.js'
 import { readUserFile } from '../../scene/read-list-file.js'
-import { readText } from '../../scene/read-text.js'
 import { wording } from '../../scene/wording.js'
 import { YamlDocument } from '../../scene/yaml-document.js'
 import type { Sweep } from '../types.js'
 import { checkModels } from './check-models.js'
-import { readDataSets } from './data-sets.js'
+import { modelScene } from './model-scene.js'
+import { readPlanData } from './plan-data.js'
 import { planModels } from './plan-models.js'
 import { planSchema } from './plan-schema.js'
+import { readNamed } from './read-named.js'
 
 /** Reads a plan and all it names. Throws a SceneError that lists what is wrong, in the plan, the scene or their data files. */
 export function readPlan(file: string): Sweep {
@@ -25,10 +25,9 @@ export function readPlan(file: string): Sweep {
   const written = result.data
   const base = readBase(written.scene, file, document)
   const seed = written.seed ?? base.scene.seed
-  const files = new DataFiles(file, document)
-  const data = readDataSets(written.data, base.value, document, files)
-  const { locate, ...models } = planModels(written, base.value, seed, document, files)
-  const { effort, spectra } = base.value
+  const { locate, ...models } = planModels(written, base.value, seed, document, new DataFiles(file, document))
+  const { effort } = base.value
+  const data = written.data === undefined ? undefined : readPlanData(written.data, file, document, base.scene)
   const sweep: Sweep = {
     program: 'motelight',
     version,
@@ -37,24 +36,22 @@ export function readPlan(file: string): Sweep {
     sceneFile: resolve(base.file),
     base: {
       ...base.value,
-      ...(written.precision !== undefined && { effort: { ...(isRecord(effort) && effort), precision: written.precision } }),
-      spectra: [...(Array.isArray(spectra) ? spectra : []), ...data.map(({ spectrum }) => spectrum)]
+      ...(written.precision !== undefined && { effort: { ...(isRecord(effort) && effort), precision: written.precision } })
     },
     seed,
     inputs: base.scene.inputs.slice(1),
     ...models,
-    data: data.map(({ set }) => set),
+    ...(data && { data: data.data }),
+    dataSpectra: data?.dataSpectra ?? [],
     slurm: written.slurm
   }
   checkModels(sweep, locate, document)
+  data?.check(modelScene(sweep, 1))
   return sweep
 }
 
 /** The base scene as written, and as read: it must be sound by itself. */
 function readBase(name: string, plan: string, document: YamlDocument) {
-  const file = resolve(name) === name ? name : join(dirname(plan), name)
-  const content = readText(file, largestSceneFile)
-  if ('reason' in content) throw new SceneError([locateProblem(document, ['scene'], `the scene file ${file} ${content.reason}`)])
-  const scene = parseScene(content.text, file)
-  return { file, scene, value: new YamlDocument(content.text, file).value as Record<string, unknown> }
+  const { file, text } = readNamed(name, 'scene file', ['scene'], plan, document)
+  return { file, scene: parseScene(text, file), value: new YamlDocument(text, file).value as Record<string, unknown> }
 }

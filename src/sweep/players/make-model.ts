@@ -1,19 +1,22 @@
 import { existsSync } from 'node:fs'
 import { rm } from 'node:fs/promises'
 import { join } from 'node:path'
+import { compareModel } from '../../compare/compare-run.js'
+import { verdictOf } from '../../compare/verdict.js'
+import { openRun } from '../../observe/run-source.js'
+import { writeAtomic } from '../../output/atomic.js'
 import { dustPiece } from '../../run/dust-stage.js'
 import { stateName } from '../../run/run-folder.js'
 import { runInFolder } from '../../run/run-in-folder.js'
-import { runRecord } from '../../run/run-record.js'
-import { runScene } from '../../run/run-scene.js'
 import { identityOf } from '../../run/state/identity.js'
 import { pieceFile, StateFolder } from '../../run/state/state-folder.js'
-import { warningsOf } from '../../run/warnings-of.js'
 import type { RunOptions } from '../../run/with-crew.js'
 import type { Scene } from '../../scene/types.js'
-import { modelResult } from '../folder/model-result.js'
+import { dataOf, fingerprintOf } from '../data/data-of.js'
+import { verdictName } from '../folder/folder-store.js'
+import { isPacked } from '../folder/is-packed.js'
+import { type DataVerdict, modelResult } from '../folder/model-result.js'
 import { PackStore } from '../folder/pack-store.js'
-import { isPacked } from '../folder/result-store.js'
 import type { SweepFolder } from '../folder/sweep-folder.js'
 import { modelScene } from '../plan/model-scene.js'
 import { hasDust, makeDust, takeDust } from './make-dust.js'
@@ -24,22 +27,31 @@ export type ModelOptions = Omit<RunOptions, 'ledger' | 'estimator' | 'dataOnly'>
 export type Group = { lead: number; members: number[] } | undefined
 
 /**
- * Makes a model from the state that is there, and leaves its result in the folder of the sweep. Throws as `runInFolder` and
- * `runScene` do.
+ * Makes a model from the state that is there, and leaves its result in the folder of the sweep. Throws as `runInFolder` does, and as
+ * `compareRun` where data need its images.
  */
 export async function makeModel(folder: SweepFolder, model: number, group: Group, options: ModelOptions): Promise<void> {
   const { scene, path, all } = await prepareModel(folder, model, group, options)
-  if (!isPacked(folder.sweep)) {
-    await runInFolder(scene, { ...all, path, force: false, resume: true })
-    return
+  await runInFolder(scene, { ...all, path, force: false, resume: true })
+  await keepResult(folder, model)
+}
+
+/** Compares a model that is made with data that need its images, and of a large sweep keeps the row alone. */
+export async function keepResult(folder: SweepFolder, model: number): Promise<void> {
+  const { data } = folder.sweep
+  const path = folder.model(model)
+  const run = openRun(path)
+  let verdict: DataVerdict | undefined
+  if (data?.needsImages) {
+    // The files may have changed since the sweep was told of them: the verdict is about what they hold now.
+    const list = dataOf(data)
+    verdict = { fingerprint: fingerprintOf(data.content, list), ...verdictOf(compareModel(run, list)) }
+    if (!isPacked(folder.sweep)) await writeAtomic(join(path, verdictName), `${JSON.stringify(verdict)}\n`)
   }
-  const started = new Date().toISOString()
-  const state = new StateFolder(join(path, stateName), identityOf(scene, all.estimator))
-  const result = await runScene(scene, { ...all, ledger: state })
-  const none = { files: [], time: { wallSeconds: 0, cpuSeconds: 0 } }
-  const record = runRecord(result, { started, workers: all.workers, estimator: all.estimator }, warningsOf(result), none)
-  new PackStore(folder).add(modelResult(model, record))
-  await rm(path, { recursive: true, force: true })
+  if (isPacked(folder.sweep)) {
+    new PackStore(folder).add(modelResult(model, run.record, verdict))
+    await rm(path, { recursive: true, force: true })
+  }
 }
 
 /** The scene of a model, its folder with the shared temperatures in it, and the options of its run. */

@@ -1,7 +1,7 @@
 import { joinInFolder, runInFolder } from '../../run/run-in-folder.js'
 import type { SweepFolder } from '../folder/sweep-folder.js'
 import type { Job } from './job.js'
-import { type ModelOptions, prepareModel } from './make-model.js'
+import { keepResult, type ModelOptions, prepareModel } from './make-model.js'
 
 /** Does a step of a model that is cut into parts. Throws as `runInFolder` does; PartError when a step before it is missing. */
 export async function makeStep(
@@ -10,8 +10,10 @@ export async function makeStep(
   options: ModelOptions
 ): Promise<void> {
   const { scene, path, all } = await prepareModel(folder, job.model, job.group, options)
-  if (job.kind === 'join') await joinInFolder(scene, { ...all, path, runFolders: [] })
-  else
+  if (job.kind === 'join') {
+    await joinInFolder(scene, { ...all, path, runFolders: [] })
+    await keepResult(folder, job.model)
+  } else
     await runInFolder(scene, {
       ...all,
       path,

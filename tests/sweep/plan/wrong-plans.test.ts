@@ -56,17 +56,42 @@ const cases: [string, string, string, string][] = [
     'no such spectrum; there are: sed'
   ],
   [
-    'data without errors',
+    'data without wavelengths',
     `vary: {${depth}: [1]}\ndata: [{name: a, file: t.csv, spectrum: sed}]\n`,
-    't.csv:1:1',
-    'the column is missing'
+    'plan.yaml:3:18',
+    'has no column wavelength'
+  ],
+  [
+    'data without errors',
+    `vary: {${depth}: [1]}\ndata: [{name: a, file: fluxes.csv, spectrum: sed, errors: noise}]\n`,
+    'plan.yaml:3:18',
+    'has no column noise; there are wavelength, flux, sigma'
+  ],
+  ['data of no kind', `vary: {${depth}: [1]}\ndata: [{name: a, kind: movie}]\n`, 'plan.yaml:3:18', 'photometry'],
+  ['no data', `vary: {${depth}: [1]}\ndata: none.yaml\n`, 'plan.yaml:3:1', 'the file of data /'],
+  [
+    'data of a camera that is not there',
+    `vary: {${depth}: [1]}\ndata: seen.yaml\n`,
+    'seen.yaml:1:52',
+    'no such camera; there are face'
+  ],
+  [
+    'data at a wavelength that no model has',
+    `vary: {${depth}: [1]}\ndata: [{name: v, kind: visibilities, file: uv.csv, camera: face, wavelength: 3 mm}]\n`,
+    'plan.yaml:3:66',
+    'not a wavelength of the model; there are 2.2um, 60um'
   ],
   ['a line that is none', `vary: {${depth}: [1]}\nslurm: {lines: [--nice]}\n`, 'plan.yaml:3:17', '#SBATCH']
 ]
 
 describe('a wrong plan is refused where it is wrong', () => {
   it.each(cases)('%s', (_, plan, at, message) => {
-    const files = { 't.csv': 'dust.x\n1\n2\n', 'u.csv': `${depth}\n1\n-2\n` }
+    const files = {
+      't.csv': 'dust.x\n1\n2\n',
+      'u.csv': `${depth}\n1\n-2\n`,
+      'uv.csv': 'east [m], north [m], amplitude [Jy], sigma [Jy]\n10, 0, 1, 0.1\n',
+      'seen.yaml': 'data: [{name: v, kind: visibilities, file: uv.csv, camera: side, wavelength: 60 um}]\n'
+    }
     const problems = problemsOf(plan, files)
     expect(problems.map((problem) => problem.at)).toContain(at)
     expect(

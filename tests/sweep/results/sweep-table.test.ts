@@ -5,6 +5,7 @@ import { describe, expect, it } from 'vitest'
 import { ecsv } from '../../../src/output/ecsv.js'
 import { parquet } from '../../../src/output/parquet.js'
 import type { ModelResult } from '../../../src/sweep/folder/model-result.js'
+import { judged } from '../../../src/sweep/results/outcomes.js'
 import { sweepTable } from '../../../src/sweep/results/sweep-table.js'
 import { folderWith } from '../../cli/motelight.js'
 import { askPython, astropy, itWith } from '../../support/python.js'
@@ -35,10 +36,11 @@ function result(model: number): ModelResult {
   }
 }
 
-const table = sweepTable(sweep, {
+const outcomes = {
   results: new Map([1, 2, 4, 5].map((model) => [model, result(model)])),
   failures: new Map([[3, { model: 3, message: 'no memory\nat all' }]])
-})
+}
+const table = sweepTable(sweep, judged(sweep, outcomes))
 const folder = folderWith({})
 writeFileSync(join(folder, 'models.parquet'), parquet(table, { origin: 'motelight test', title: 'Winds' }))
 writeFileSync(join(folder, 'models.ecsv'), ecsv(table, { title: 'Winds' }))

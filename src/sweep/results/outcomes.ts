@@ -1,0 +1,32 @@
+import { compareModel } from '../../compare/compare-run.js'
+import type { DataList } from '../../compare/types.js'
+import { type Verdict, verdictOf } from '../../compare/verdict.js'
+import { dataOf } from '../data/data-of.js'
+import { lightOfResult } from '../data/model-lights.js'
+import type { ModelFailure } from '../folder/failures.js'
+import type { ModelResult } from '../folder/model-result.js'
+import type { Sweep } from '../types.js'
+
+/** Everything that is known of the models of a sweep. */
+export interface Outcomes {
+  results: Map<number, ModelResult>
+  failures: Map<number, ModelFailure>
+}
+
+/** The same with how each finished model agrees with the data, if there are any. */
+export interface Judged extends Outcomes {
+  verdicts: Map<number, Verdict>
+}
+
+/** How each finished model agrees with the data; those that need images were compared when they were made. */
+export function judged({ data }: Sweep, outcomes: Outcomes): Judged {
+  const { results } = outcomes
+  if (data && !data.needsImages) return { ...outcomes, verdicts: compareFluxes(results, dataOf(data)) }
+  const made = [...results].flatMap(([model, { verdict }]): [number, Verdict][] => (verdict ? [[model, verdict]] : []))
+  return { ...outcomes, verdicts: new Map(made) }
+}
+
+/** Compares models with measured fluxes. */
+export function compareFluxes(results: Map<number, ModelResult>, list: DataList): Map<number, Verdict> {
+  return new Map([...results].map(([model, result]) => [model, verdictOf(compareModel(lightOfResult(result), list))]))
+}
