@@ -1,4 +1,5 @@
 import type { TopLevelSpec } from 'vega-lite'
+import { extent } from '../math/stats.js'
 import { unitText } from '../output/draw/numbers.js'
 import { rasterize } from '../output/draw/rasterize.js'
 import { fluxAxis } from '../output/plot/flux-axis.js'
@@ -59,24 +60,27 @@ function axisOfX({ axis: { title, logarithmic }, points }: ModelPanel, bare: boo
   const shownTitle = bare ? '' : title
   if (logarithmic && values.every((value) => value > 0))
     return { field: 'x', type: 'quantitative', ...logAxis(shownTitle, spread(values)) } as const
-  const [low, high] = [Math.min(...values), Math.max(...values)]
+  const [low, high] = extent(values)
   const margin = high > low ? 0.03 * (high - low) : 1
   return { field: 'x', type: 'quantitative', ...linearAxis(shownTitle, [low - margin, high + margin]) } as const
 }
 
-const spread = (values: number[]) => [Math.min(...values) / 1.1, ...values, Math.max(...values) * 1.1]
+function spread(values: number[]): number[] {
+  const [low, high] = extent(values)
+  return [low / 1.1, ...values, high * 1.1]
+}
 
 function axisOfY({ points, unit, quantity }: ModelPanel): PlotAxis {
   const title = `${quantity} (${unitText(unit)})`
   const values = points.flatMap(({ data, model }) => [data, model]).filter(Number.isFinite)
-  const [low, high] = [Math.min(...values), Math.max(...values)]
+  const [low, high] = extent(values)
   if (unit === 'mag') return fluxAxis(unit, values)
   if (low > 0 && high > 30 * low) {
     const axis = fluxUnits.includes(unit) ? fluxAxis(unit, values) : logAxis(title, values, 8)
     return { ...axis, axis: { ...axis.axis, title } }
   }
   const ends = points.flatMap(({ data, sigma, model, limit }) => (limit ? [data, model] : [data - sigma, data + sigma, model]))
-  const [from, to] = [Math.min(...ends.filter(Number.isFinite)), Math.max(...ends.filter(Number.isFinite))]
+  const [from, to] = extent(ends.filter(Number.isFinite))
   const margin = 0.05 * (to - from || Math.abs(to) || 1)
   const axis = linearAxis(title, [from - margin, to + margin])
   return unit.startsWith('mag') ? { ...axis, scale: { ...axis.scale, reverse: true } } : axis

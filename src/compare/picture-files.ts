@@ -1,3 +1,4 @@
+import { extent } from '../math/stats.js'
 import { redBlue } from '../output/draw/colours.js'
 import { linearTicks } from '../output/draw/ticks.js'
 import { card, commentCard, realCard } from '../output/fits/card.js'
@@ -8,17 +9,12 @@ import { wavelengthTableHdu } from '../output/fits/wcs.js'
 import { panelSize } from '../output/png/panel-size.js'
 import { skyPicture } from '../output/png/sky-picture.js'
 import { spacedWavelength, wavelengthLabel } from '../output/wavelength-label.js'
-import { ARCSECOND, DEGREE } from '../units/angles.js'
 import { residual, type Values } from './goodness.js'
-import { type ModelPoint, modelPlot } from './model-plot.js'
-import { profileOf, rings, sectors } from './profile.js'
-import type { ComparedSet, Placement, ShownPicture } from './sets/compared-set.js'
+import type { ComparedSet, ShownPicture } from './sets/compared-set.js'
 import type { PictureData } from './types.js'
 
 const wcsKeywords = ['CTYPE', 'CUNIT', 'CRPIX', 'CRVAL', 'CDELT'].flatMap((name) => [`${name}1`, `${name}2`])
 const matrixKeywords = ['CD', 'PC'].flatMap((name) => ['1_1', '1_2', '2_1', '2_2'].map((end) => `${name}${end}`))
-const MOST_RINGS = 30
-const SECTORS = 24
 
 /** Residuals over sigma of the pixels that are compared. */
 function residualsOf({ data }: ComparedSet, model: Values): Float64Array {
@@ -32,9 +28,8 @@ function residualsOf({ data }: ComparedSet, model: Values): Float64Array {
  * SIGMA (data) and MODELSIG (Monte Carlo) in the unit of the data, then the wavelength. NaN where nothing is compared.
  */
 export function comparedFits(set: ComparedSet, shown: ShownPicture, model: Values, title: string): Uint8Array {
-  const { width, height, pixels, inUnit, unit } = shown
+  const { width, height, pixels, inUnit, sigmaInUnit } = shown
   const { picture } = set.spec as PictureData
-  const magnitudes = unit.startsWith('mag')
   const plane = (values: ArrayLike<number>) => {
     const whole = new Float64Array(width * height).fill(Number.NaN)
     pixels.forEach((pixel, i) => {
@@ -43,7 +38,7 @@ export function comparedFits(set: ComparedSet, shown: ShownPicture, model: Value
     return whole
   }
   const errors = (sigma: ArrayLike<number>, mean: ArrayLike<number>) =>
-    Float64Array.from(sigma, (value, i) => (magnitudes ? (2.5 / Math.LN10) * (value / mean[i]) : inUnit(value)))
+    Float64Array.from(sigma, (value, i) => sigmaInUnit(mean[i], value))
   const { header } = picture.image
   const place = [...wcsKeywords, ...matrixKeywords, 'CROTA2', 'EQUINOX', 'RADESYS', 'LONPOLE'].flatMap((keyword) => {
     const value = header.number(keyword) ?? header.text(keyword)
@@ -79,7 +74,7 @@ export function residualPng(set: ComparedSet, shown: ShownPicture, model: Values
     residuals[pixel] = values[i]
   })
   const side = Math.sqrt((set.spec as PictureData).picture.sky.pixelSr)
-  const reach = Math.max(...Array.from(shown.east, (east, i) => Math.max(Math.abs(east), Math.abs(shown.north[i]))))
+  const reach = extent(shown.east.map((east, i) => Math.max(Math.abs(east), Math.abs(shown.north[i]))))[1]
   const count = 2 * Math.ceil(reach / side + 0.5 - 1e-6)
   const seen = Float64Array.from({ length: count * count }, (_, i) => {
     const [x, y] = place((count / 2 - 0.5 - (i % count)) * side, (Math.floor(i / count) + 0.5 - count / 2) * side).map(Math.round)
@@ -94,7 +89,7 @@ export function residualPng(set: ComparedSet, shown: ShownPicture, model: Values
     title,
     subtitle: `${set.spec.name}${light} · residual over sigma: red where the data are brighter`
   }
-  const most = Math.max(3, Math.min(10, Math.ceil(Math.max(...values.map(Math.abs)))))
+  const most = Math.max(3, Math.min(10, Math.ceil(extent(values.map(Math.abs))[1])))
   const fraction = (value: number) => Math.min(1, Math.max(0, 0.5 + (0.5 * value) / most))
   const beyond = values.reduce((sum, value) => sum + (Math.abs(value) > 3 ? 1 : 0), 0)
   const size = panelSize(view)
@@ -108,55 +103,5 @@ export function residualPng(set: ComparedSet, shown: ShownPicture, model: Values
     title: '(data − model) / σ',
     fraction,
     note: `${beyond} of ${values.length} pixels beyond 3 sigma; grey: not compared`
-  })
-}
-
-/** The plot (PNG) of radial and azimuthal means of data and model about the fitted centre. */
-export function profilePlot(
-  set: ComparedSet,
-  shown: ShownPicture,
-  model: Values,
-  { east, north }: Placement,
-  title: string
-): Promise<Uint8Array> {
-  const { picture } = set.spec as PictureData
-  const from = { east: shown.east.map((value) => value - east), north: shown.north.map((value) => value - north) }
-  const side = Math.sqrt(picture.sky.pixelSr)
-  const reach = Math.max(...from.east.map((value, i) => Math.hypot(value, from.north[i])))
-  const count = Math.max(2, Math.min(MOST_RINGS, Math.ceil(reach / side)))
-  const edges = Array.from({ length: count + 1 }, (_, i) => (i * reach * (1 + 1e-9)) / count)
-  const middles = Float64Array.from({ length: count }, (_, i) => 0.5 * (edges[i] + edges[i + 1]))
-  const angles = Float64Array.from({ length: SECTORS }, (_, i) => (2 * Math.PI * (i + 0.5)) / SECTORS)
-  const panel = (at: Float64Array, size: number, axisTitle: string, binOf: ReturnType<typeof rings>) => {
-    const data = profileOf(at, binOf, { ...from, ...set.data }, set.independent)
-    const ofModel = profileOf(at, binOf, { ...from, ...model }, 0)
-    const points = Array.from(at, (value, i): ModelPoint => {
-      const error = Math.hypot(data.sigma[i], ofModel.sigma[i])
-      const [mean, expected] = [shown.inUnit(data.mean[i]), shown.inUnit(ofModel.mean[i])]
-      return {
-        x: value / size,
-        data: mean,
-        sigma: Math.abs(shown.inUnit(data.mean[i] + data.sigma[i]) - mean),
-        model: expected,
-        residual: (data.mean[i] - ofModel.mean[i]) / error,
-        limit: false
-      }
-    }).filter((_, i) => data.count[i] > 0)
-    const quantity = shown.unit.startsWith('mag') ? 'surface brightness' : 'mean intensity'
-    return {
-      axis: { title: axisTitle, logarithmic: false },
-      unit: shown.unit,
-      quantity,
-      points,
-      line: points.map(({ x, model: y }) => ({ x, y }))
-    }
-  }
-  return modelPlot({
-    title,
-    subtitle: `${set.spec.name} · means over rings, and over sectors of all that is compared`,
-    panels: [
-      panel(middles, ARCSECOND, 'radius (arcsec)', rings(edges)),
-      panel(angles, DEGREE, 'position angle (°), from north towards east', sectors(angles, [0, reach * (1 + 1e-9)]))
-    ]
   })
 }

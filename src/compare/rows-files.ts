@@ -17,16 +17,14 @@ interface Row {
 }
 
 /** Values and errors in the unit of the data (1 sigma of magnitudes in magnitudes), with residuals over sigma. */
-function rowsOf({ data }: ComparedSet, model: Values, { inUnit, unit }: ShownRows, rows: number): Row[] {
-  const magnitudes = unit.startsWith('mag')
+function rowsOf({ data }: ComparedSet, model: Values, { inUnit, sigmaInUnit }: ShownRows, rows: number): Row[] {
   return Array.from(data.values, (value, i) => {
-    const error = (mean: number, sigma: number) => (magnitudes ? (2.5 / Math.LN10) * (sigma / mean) : inUnit(sigma, i % rows))
     const limit = data.limit?.[i] === 1
     return {
       data: inUnit(value, i % rows),
-      sigma: error(value, data.sigma[i]),
+      sigma: sigmaInUnit(value, data.sigma[i], i % rows),
       model: inUnit(model.values[i], i % rows),
-      modelSigma: error(model.values[i], model.sigma[i]),
+      modelSigma: sigmaInUnit(model.values[i], model.sigma[i], i % rows),
       residual: residual(value, model.values[i], Math.hypot(data.sigma[i], model.sigma[i]), limit),
       limit
     }

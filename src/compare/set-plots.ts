@@ -1,6 +1,7 @@
 import type { Agreed } from './compare-run.js'
 import { factorOf, placementOf } from './fit.js'
-import { profilePlot, residualPng } from './picture-files.js'
+import { residualPng } from './picture-files.js'
+import { profilePlot } from './profile-plot.js'
 import { rowsPlot } from './rows-files.js'
 
 /** A plot of a data set with its model: what ends its file's name, and what it shows. */

@@ -1,7 +1,21 @@
-export function mean(values: ArrayLike<number>): number {
+export function sumOf(values: ArrayLike<number>): number {
   let sum = 0
   for (let i = 0; i < values.length; i++) sum += values[i]
-  return sum / values.length
+  return sum
+}
+
+export function mean(values: ArrayLike<number>): number {
+  return sumOf(values) / values.length
+}
+
+/** The least and the greatest of values, however many: `Math.max(...values)` fails above about 1e5. */
+export function extent(values: ArrayLike<number>): [least: number, greatest: number] {
+  let [least, greatest] = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY]
+  for (let i = 0; i < values.length; i++) {
+    if (values[i] < least) least = values[i]
+    if (values[i] > greatest) greatest = values[i]
+  }
+  return [least, greatest]
 }
 
 /** 1 sigma of the mean of G independent equal groups, from their scatter: sqrt(sum (x - mean)^2 / (G (G - 1))). NaN for G < 2. */

@@ -14,6 +14,9 @@ export interface LightWeights {
   wavelength: number
 }
 
+/** Relative error of interpolation above which it is told. */
+export const MOST_BAND_ERROR = 0.01
+
 /** Why a model cannot give what is wanted. */
 export class LightError extends Error {}
 
@@ -52,6 +55,20 @@ export function lightWeights(
     coarse[all.indexOf(wavelength)] = sparse[i]
   })
   return { weights, coarse, wavelength: pivot(light) }
+}
+
+/** Values at a model's wavelengths, seen in a light. */
+export function inLight({ weights }: Pick<LightWeights, 'weights'>, values: ArrayLike<number>): number {
+  return weights.reduce((sum, weight, k) => sum + weight * values[k], 0)
+}
+
+/** Estimated relative error of that, for values between which too few lie; halving the step takes three quarters of the error away. */
+export function interpolationError(
+  { weights, coarse }: Pick<LightWeights, 'weights' | 'coarse'>,
+  values: ArrayLike<number>
+): number {
+  const seen = inLight({ weights }, values)
+  return seen > 0 ? Math.abs(inLight({ weights: coarse }, values) - seen) / 3 / seen : 0
 }
 
 type Band = Extract<LightSpec, { kind: 'band' }>

@@ -1,4 +1,5 @@
 import { jinc } from '../math/bessel.js'
+import { sumOf } from '../math/stats.js'
 import { gaussianBeamSr } from '../units/solid-angle.js'
 import type { BeamSpec, Kernel } from './types.js'
 
@@ -83,7 +84,7 @@ function airy(diameter: number, obstruction: number, wavelength: number): Beam {
 
 /** A beam given as an image, straight between the centres of its pixels. */
 function fromImage({ width, height, values, centre, perEast, perNorth, pixelSr }: Kernel): Beam {
-  const sum = values.reduce((total, value) => total + value, 0)
+  const sum = sumOf(values)
   const peak = values.reduce((most, value) => Math.max(most, value), 0)
   const scale = 1 / (sum * pixelSr)
   const value = (x: number, y: number) => (x < 0 || y < 0 || x >= width || y >= height ? 0 : values[y * width + x])

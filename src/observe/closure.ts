@@ -1,3 +1,4 @@
+import { extent } from '../math/stats.js'
 import type { ComplexValues } from './fourier.js'
 
 /** The phase round a triangle of baselines, rad. */
@@ -25,7 +26,7 @@ export function closurePhases(
   sigma: Float64Array,
   noise: number
 ): ClosurePhase[] {
-  const longest = Math.max(...baselines.map(([east, north]) => Math.hypot(east, north)))
+  const [, longest] = extent(baselines.map(([east, north]) => Math.hypot(east, north)))
   const step = SAME * longest
   const key = (east: number, north: number) => `${Math.round(east / step)} ${Math.round(north / step)}`
   const places = new Map(baselines.map(([east, north], i) => [key(east, north), i]))

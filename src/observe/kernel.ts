@@ -2,6 +2,7 @@ import { DataError } from '../data/error.js'
 import { imageValues } from '../data/fits/image.js'
 import { pixelMatrix } from '../data/fits/pixel-matrix.js'
 import { firstImage, parseFits } from '../data/fits/read.js'
+import { sumOf } from '../math/stats.js'
 import type { Kernel } from './types.js'
 
 /**
@@ -17,7 +18,7 @@ export function parseKernel(bytes: Uint8Array, file: string): Kernel {
   const values = imageValues(unit)
   const bad = values.reduce((count, value) => count + (Number.isFinite(value) ? 0 : 1), 0)
   if (bad > 0) throw new DataError(file, `${bad} of ${values.length} pixels of the beam have no value`)
-  const sum = values.reduce((total, value) => total + value, 0)
+  const sum = sumOf(values)
   if (!(sum > 0)) throw new DataError(file, 'the pixels of the beam do not add up to more than 0')
   const { perEast, perNorth, pixelSr } = matrix
   return { file, width, height, values, centre: [(width - 1) / 2, (height - 1) / 2], perEast, perNorth, pixelSr }

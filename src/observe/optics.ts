@@ -1,10 +1,10 @@
 import type { StarOnSky } from '../camera/types.js'
-import type { LightWeights } from './band.js'
+import { sumOf } from '../math/stats.js'
+import { inLight, interpolationError, type LightWeights } from './band.js'
 import { type Beam, isChromatic, makeBeam, turned } from './beam.js'
 import { blurred, type PixelGrid, pixelMean, pixelSrOf } from './blur.js'
 import { regridded } from './regrid.js'
 import type { CameraSource } from './run-source.js'
-import { sumOf } from './sum-of.js'
 import type { PictureSpec } from './types.js'
 
 /** Stars smaller than this part of a pixel fill one pixel (or those that meet at its corner) of a run. */
@@ -47,9 +47,7 @@ export function throughOptics(optics: Optics, source: CameraSource, light: Light
   const [image, sigma] = [seen.image, seen.sigma].map((values) => Float64Array.from(regridded(values, source, grid)))
   for (const point of seen.points) addPoint(image, grid, point)
   const fluxes = source.wavelengths.map((_, k) => fluxAt(source, k, optics))
-  const inBand = (parts: Float64Array) => fluxes.reduce((sum, flux, k) => sum + parts[k] * flux, 0)
-  const flux = inBand(light.weights)
-  return { image, sigma, flux, bandError: flux > 0 ? Math.abs(inBand(light.coarse) - flux) / 3 / flux : 0 }
+  return { image, sigma, flux: inLight(light, fluxes), bandError: interpolationError(light, fluxes) }
 }
 
 /**

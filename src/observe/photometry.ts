@@ -1,7 +1,7 @@
 import { drawNormal } from '../math/draw.js'
 import { stream } from '../math/random.js'
 import { LIGHT_SPEED } from '../units/constants.js'
-import type { LightWeights } from './band.js'
+import { inLight, interpolationError, type LightWeights } from './band.js'
 import type { SpectrumSource } from './run-source.js'
 import type { PhotometrySpec } from './types.js'
 import { fluxOf } from './unit.js'
@@ -25,20 +25,20 @@ export interface Photometry {
 export function measureFlux(
   spec: PhotometrySpec,
   { total, sigma }: SpectrumSource,
-  { weights, coarse, wavelength }: LightWeights,
+  light: LightWeights,
   seed: string
 ): Photometry {
-  const inBand = (parts: Float64Array, values: Float64Array) => values.reduce((sum, value, k) => sum + parts[k] * value, 0)
-  const expected = inBand(weights, total)
+  const { wavelength } = light
+  const expected = inLight(light, total)
   const noise = noiseOf(spec, expected, LIGHT_SPEED / wavelength)
   return {
     spec,
     wavelength,
     expected,
     observed: noise > 0 ? expected + noise * drawNormal(stream(`${seed}/${spec.name}`)) : expected,
-    sigma: inBand(weights, sigma),
+    sigma: inLight(light, sigma),
     noise,
-    bandError: expected > 0 ? Math.abs(inBand(coarse, total) - expected) / 3 / expected : 0
+    bandError: interpolationError(light, total)
   }
 }
 

@@ -1,4 +1,5 @@
 import { stream } from '../math/random.js'
+import { sumOf } from '../math/stats.js'
 import { LIGHT_SPEED } from '../units/constants.js'
 import type { IntensityContext } from '../units/intensity.js'
 import type { SpectralUnit } from '../units/spectral-unit.js'
@@ -9,7 +10,6 @@ import { beamNoise, countsRead, whiteNoise } from './noise.js'
 import { throughOptics } from './optics.js'
 import { detectorGrid } from './regrid.js'
 import type { CameraSource } from './run-source.js'
-import { sumOf } from './sum-of.js'
 import type { PictureNoise, PictureSpec } from './types.js'
 import { COUNTS, countsUnit, fluxOf, intensityOf, pictureUnit } from './unit.js'
 

@@ -99,11 +99,9 @@ function readCamera(file: string, name: string): CameraSource {
   if (given.length !== pixels * wavelengths.length) throw new DataError(file, 'the image and its wavelengths do not agree')
   const cgs = (values: Float64Array) => values.map((value, i) => unit.toCgs(value, contexts[Math.floor(i / pixels)]))
   const sigmas = plane(unitNamed(units, 'SIGMA'))
-  const magnitudes = unit.name.startsWith('mag')
   const values = cgs(given)
-  // Of magnitudes, the 1 sigma is relative: 2.5/ln 10 times smaller.
-  const sigma = magnitudes ? sigmas.map((value, i) => (values[i] * value * Math.LN10) / 2.5) : cgs(sigmas)
-  const blanks = magnitudes ? 0 : given.reduce((count, value) => count + (Number.isFinite(value) ? 0 : 1), 0)
+  const sigma = sigmas.map((value, i) => unit.sigmaToCgs(values[i], value, contexts[Math.floor(i / pixels)]))
+  const blanks = unit.name.startsWith('mag') ? 0 : given.reduce((count, value) => count + (Number.isFinite(value) ? 0 : 1), 0)
   const placeholder = total.header.comments.some((comment) => comment.includes('CRVAL2 are placeholders'))
   return {
     name,
@@ -137,9 +135,7 @@ export function spectrumSource(
   const wavelengths = Array.from(wavelengthUm, (um) => um * 1e-4)
   const contexts = wavelengths.map((wavelength) => ({ frequencyHz: LIGHT_SPEED / wavelength }))
   const total = Float64Array.from(flux, (value, k) => orDark(unit.toCgs(value, contexts[k])))
-  const errors = Float64Array.from(sigma, (value, k) =>
-    orDark(unit.name === 'mag' ? (total[k] * value * Math.LN10) / 2.5 : unit.toCgs(value, contexts[k]))
-  )
+  const errors = Float64Array.from(sigma, (value, k) => orDark(unit.sigmaToCgs(total[k], value, contexts[k])))
   return { name, wavelengths, total, sigma: errors }
 }
 

@@ -1,7 +1,7 @@
 import { AB_ZERO_FLUX } from '../units/constants.js'
 import { fluxUnit } from '../units/flux.js'
 import { type IntensityContext, intensityUnit } from '../units/intensity.js'
-import type { SpectralUnit } from '../units/spectral-unit.js'
+import { linearUnit, type SpectralUnit } from '../units/spectral-unit.js'
 import type { Amount } from './types.js'
 
 /** Counts a pixel in the time of the exposure: a unit only where an exposure defines it. */
@@ -30,13 +30,7 @@ export function photometryUnit(name: string, zero?: number): SpectralUnit<{ freq
 
 /** Counts as a unit of intensity: `countSize` is the intensity of one count in a pixel. */
 export function countsUnit(countSize: number): SpectralUnit<IntensityContext> {
-  return {
-    name: COUNTS,
-    fits: 'count',
-    fromCgs: (value) => value / countSize,
-    sigmaFromCgs: (_, sigma) => sigma / countSize,
-    toCgs: (value) => value * countSize
-  }
+  return linearUnit(COUNTS, 'count', () => countSize)
 }
 
 /** An intensity in cgs. */

@@ -1,5 +1,6 @@
 import { drawNormal } from '../math/draw.js'
 import { stream } from '../math/random.js'
+import { extent } from '../math/stats.js'
 import { LIGHT_SPEED } from '../units/constants.js'
 import type { LightWeights } from './band.js'
 import { type ClosurePhase, closurePhases } from './closure.js'
@@ -40,7 +41,7 @@ export function measureVisibilities(
   const random = stream(`${seed}/${spec.name}`)
   const noisy = (values: Float64Array) => (noise > 0 ? values.map((value) => value + noise * drawNormal(random)) : values)
   const observed = { re: noisy(expected.re), im: noisy(expected.im) }
-  const longest = Math.max(...spec.baselines.map(([east, north]) => Math.hypot(east, north)))
+  const [, longest] = extent(spec.baselines.map(([east, north]) => Math.hypot(east, north)))
   const shortestWave = Math.min(...source.wavelengths.filter((_, k) => weights[k] !== 0))
   const curve = visibilityCurve(source, weights, longest)
   return {

@@ -13,6 +13,8 @@ export interface SpectralUnit<Context> {
   /** 1 sigma of the converted value, from the value and its 1 sigma in cgs. */
   sigmaFromCgs(value: number, sigma: number, context: Context): number
   toCgs(value: number, context: Context): number
+  /** 1 sigma in cgs, from the value in cgs and its 1 sigma in the unit. */
+  sigmaToCgs(value: number, sigma: number, context: Context): number
 }
 
 /** A unit proportional to the cgs one; `size` is the unit in cgs. */
@@ -22,7 +24,8 @@ export function linearUnit<Context>(name: string, fits: string, size: (context: 
     fits,
     fromCgs: (value, context) => value / size(context),
     sigmaFromCgs: (_, sigma, context) => sigma / size(context),
-    toCgs: (value, context) => value * size(context)
+    toCgs: (value, context) => value * size(context),
+    sigmaToCgs: (_, sigma, context) => sigma * size(context)
   }
 }
 
@@ -33,6 +36,7 @@ export function magnitudeUnit<Context>(name: string, fits: string, solidAngle: n
     fits,
     fromCgs: (value) => (value > 0 ? -2.5 * Math.log10((value * solidAngle) / AB_ZERO_FLUX) : Number.NaN),
     sigmaFromCgs: (value, sigma) => (value > 0 ? (2.5 / Math.LN10) * (sigma / value) : Number.NaN),
-    toCgs: (value) => (AB_ZERO_FLUX * 10 ** (-0.4 * value)) / solidAngle
+    toCgs: (value) => (AB_ZERO_FLUX * 10 ** (-0.4 * value)) / solidAngle,
+    sigmaToCgs: (value, sigma) => (value * sigma * Math.LN10) / 2.5
   }
 }

@@ -1,4 +1,4 @@
-import { mkdirSync, mkdtempSync, rmSync } from 'node:fs'
+import { chmodSync, mkdirSync, mkdtempSync, rmSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 
@@ -7,10 +7,11 @@ import { join } from 'node:path'
  * grains of a cache of its own.
  */
 export default function ownFolder(): () => void {
-  // Sockets have short names: so must the folder.
+  // Sockets have short names: so must the folder. Munge wants to know that everybody can reach them.
   const folder = mkdtempSync(join(tmpdir(), 'mote-'))
+  chmodSync(folder, 0o755)
   process.env.TMPDIR = join(folder, 't')
   process.env.XDG_CACHE_HOME = join(folder, 'cache')
-  mkdirSync(process.env.TMPDIR)
+  mkdirSync(process.env.TMPDIR, { mode: 0o755 })
   return () => rmSync(folder, { recursive: true, force: true, maxRetries: 5 })
 }

@@ -33,6 +33,11 @@ describe('flux units', () => {
           const unit = fluxUnit(name)
           expect(unit.toCgs(unit.fromCgs(10 ** lgFlux, context), context) / 10 ** lgFlux).toBeCloseTo(1, 10)
           if (name !== 'mag') expect(unit.sigmaFromCgs(1, 10 ** lgFlux, context)).toBe(unit.fromCgs(10 ** lgFlux, context))
+          const sigma = 0.1 * 10 ** lgFlux
+          expect(unit.sigmaToCgs(10 ** lgFlux, unit.sigmaFromCgs(10 ** lgFlux, sigma, context), context) / sigma).toBeCloseTo(
+            1,
+            12
+          )
         }
       ),
       { seed: 4 }

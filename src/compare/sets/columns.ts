@@ -20,8 +20,12 @@ export function columnIn(
   const { values, unit } = numbersIn(table, name)
   const known = units[astropyNames[unit] ?? canonicalUnit(unit)]
   if (known) return values.map(known)
+  return refuse('file', wrongUnit(table, name, unit, Object.keys(units)))
+}
+
+function wrongUnit({ file }: EcsvTable, name: string, unit: string, accepted: string[]): string {
   const fault = unit === '' ? `the column ${name} has no unit` : `the unit of the column ${name} is ${unit}`
-  return refuse('file', `${table.file}: ${fault}; accepted: ${Object.keys(units).join(', ')}`)
+  return `${file}: ${fault}; accepted: ${accepted.join(', ')}`
 }
 
 /** Wavelengths of the rows, cm, from wavelengths or frequencies. */
@@ -52,8 +56,8 @@ function unitOf<Context>(table: EcsvTable, name: string, units: SpectralUnit<Con
   const { unit } = numbersIn(table, name)
   const known = unitLike(unit, units)
   if (known) return known
-  const fault = unit === '' ? `the column ${name} has no unit` : `the unit of the column ${name} is ${unit}`
-  return refuse('file', `${table.file}: ${fault}; accepted: ${units.map((one) => one.name).join(', ')}`)
+  const names = units.map((one) => one.name)
+  return refuse('file', wrongUnit(table, name, unit, names))
 }
 
 /** 1 sigma of the rows, none negative or 0, in their own unit. */

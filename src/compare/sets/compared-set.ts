@@ -44,6 +44,8 @@ export interface ShownRows {
   quantity: string
   /** Turns values in cgs into that unit. */
   inUnit: (value: number, row: number) => number
+  /** 1 sigma in that unit, from the value and its 1 sigma in cgs. */
+  sigmaInUnit: (value: number, sigma: number, row: number) => number
   /** The model between the rows, times a factor, in that unit. */
   line?: (factor: number) => { x: number; y: number }[]
   /** What is plotted of complex values: the amplitude of real parts followed by as many imaginary ones. */
@@ -63,5 +65,6 @@ export interface ShownPicture {
   place: (east: number, north: number) => [number, number]
   unit: string
   inUnit: (value: number) => number
+  sigmaInUnit: (value: number, sigma: number) => number
   distance: number
 }

@@ -1,6 +1,7 @@
 import { numbersIn } from '../../data/table.js'
 import { bracket } from '../../math/interp.js'
-import { LightError, lightWeights } from '../../observe/band.js'
+import { extent } from '../../math/stats.js'
+import { inLight, interpolationError, LightError, lightWeights, MOST_BAND_ERROR } from '../../observe/band.js'
 import type { Refuse } from '../../observe/observe-run.js'
 import type { SpectrumSource } from '../../observe/run-source.js'
 import { photometryUnit } from '../../observe/unit.js'
@@ -10,7 +11,6 @@ import type { PhotometryData } from '../types.js'
 import { errorsOf, fluxUnitOf, limitsOf, textsOf, wavelengthsIn } from './columns.js'
 import type { ComparedSet } from './compared-set.js'
 
-const MOST_BAND_ERROR = 0.01
 const label = (wavelength: number) => wavelengthLabel(wavelength, 6)
 
 /** Measured fluxes with the spectrum that they are of. */
@@ -32,13 +32,10 @@ export function photometrySet(spec: PhotometryData, source: SpectrumSource, refu
   const made = rows.map((row) => rowOf(spec, source, wavelengths[row], names?.[row], row, refuse))
   const context = (row: number) => ({ frequencyHz: LIGHT_SPEED / made[row].wavelength })
   const values = Float64Array.from(rows, (row, i) => unit.toCgs(given[row], context(i)))
-  const sigma = Float64Array.from(rows, (row, i) =>
-    magnitudes ? (values[i] * errors[row] * Math.LN10) / 2.5 : errorUnit.toCgs(errors[row], context(i))
-  )
-  const sum = (weights: Float64Array, parts: Float64Array) => weights.reduce((all, weight, k) => all + weight * parts[k], 0)
-  const of = (parts: Float64Array) => Float64Array.from(made, ({ weights }) => sum(weights, parts))
+  const sigma = Float64Array.from(rows, (row, i) => errorUnit.sigmaToCgs(values[i], errors[row], context(i)))
+  const of = (parts: Float64Array) => Float64Array.from(made, (light) => inLight(light, parts))
   const model = { values: of(source.total), sigma: of(source.sigma) }
-  const worst = Math.max(...made.map(({ coarse }, i) => Math.abs(sum(coarse, source.total) / model.values[i] - 1) / 3))
+  const [, worst] = extent(made.map((light) => interpolationError(light, source.total)))
   return {
     spec,
     data: { values, sigma, limit: Uint8Array.from(rows, (row) => limit[row]) },
@@ -68,6 +65,7 @@ export function photometrySet(spec: PhotometryData, source: SpectrumSource, refu
       unit: unit.name,
       quantity: magnitudes ? 'magnitude' : 'flux density',
       inUnit: (value, row) => unit.fromCgs(value, context(row)),
+      sigmaInUnit: (value, sigma, row) => unit.sigmaFromCgs(value, sigma, context(row)),
       line: (factor) =>
         source.wavelengths.map((wavelength, k) => ({
           x: wavelength * 1e4,

@@ -1,20 +1,18 @@
 import { type Direction, frameAt } from '../../data/fits/sky-projection.js'
 import type { LightWeights } from '../../observe/band.js'
 import { makeBeam } from '../../observe/beam.js'
-import { pixelMean, type SkyVector } from '../../observe/blur.js'
 import type { Refuse } from '../../observe/observe-run.js'
-import { type BlurredLight, type PointLight, throughBeam } from '../../observe/optics.js'
+import { type BlurredLight, throughBeam } from '../../observe/optics.js'
 import type { CameraSource } from '../../observe/run-source.js'
 import { intensityOf, pictureUnit } from '../../observe/unit.js'
 import { LIGHT_SPEED } from '../../units/constants.js'
 import { reprojected } from '../reproject.js'
 import type { PictureData } from '../types.js'
 import { type ComparedSet, inPlace, type Placement } from './compared-set.js'
+import { addPoints, moved, offsetsOf, type Place } from './place.js'
 
 /** Part of a pixel that the model must cover. */
 const COVERED = 0.999
-
-type Place = (east: number, north: number) => [number, number]
 
 /** A picture with the camera that sees the same. */
 export function pictureSet(spec: PictureData, source: CameraSource, light: LightWeights, refuse: Refuse): ComparedSet {
@@ -26,13 +24,10 @@ export function pictureSet(spec: PictureData, source: CameraSource, light: Light
     refuse('beam', 'the picture is in flux a beam, but neither its header (BMAJ, BMIN, BPA) nor this entry gives the beam')
   if (!beam && spec.perBeam) refuse('errors', 'errors correlated over the beam need a `beam`')
   const context = { frequencyHz: LIGHT_SPEED / light.wavelength, pixelSr: sky.pixelSr, ...(beam && { beamSr: beam.solidAngle }) }
-  const magnitudes = inUnit.name.startsWith('mag')
   const values = picture.values.map((value) => inUnit.toCgs(value, context))
   const level = picture.level && intensityOf(picture.level, context)
-  const sigma = values.map((value, i) => {
-    if (!picture.errors) return level!
-    return magnitudes ? (value * picture.errors[i] * Math.LN10) / 2.5 : inUnit.toCgs(picture.errors[i], context)
-  })
+  const { errors } = picture
+  const sigma = values.map((value, i) => (errors ? inUnit.sigmaToCgs(value, errors[i], context) : level!))
   const centre = spec.centre ?? source.sky
   const frame = frameAt(centre?.raDeg ?? sky.raDeg, centre?.decDeg ?? sky.decDeg)
   const onSky: Place = (east, north) =>
@@ -84,6 +79,7 @@ export function pictureSet(spec: PictureData, source: CameraSource, light: Light
       place: onSky,
       unit: inUnit.name,
       inUnit: (value) => inUnit.fromCgs(value, context),
+      sigmaInUnit: (value, sigma) => inUnit.sigmaFromCgs(value, sigma, context),
       distance: source.distance
     }
   }
@@ -95,47 +91,6 @@ function lastOf(make: (turn: number) => BlurredLight): (turn: number) => Blurred
   return (turn) => {
     if (last?.turn !== turn) last = { turn, made: make(turn) }
     return last.made
-  }
-}
-
-/** Where an offset of the model lies after it was turned about its centre and shifted. */
-function moved(place: Place, { east, north, rotation }: Placement): Place {
-  const [sin, cos] = [Math.sin(rotation), Math.cos(rotation)]
-  return (x, y) => place(east + x * cos + y * sin, north + y * cos - x * sin)
-}
-
-/** Steps on the sky (rad) of one pixel to the right and up, at an offset. */
-function pixelSteps(place: Place, east: number, north: number): { across: SkyVector; up: SkyVector } {
-  const step = 1e-7
-  const difference = (one: [number, number], other: [number, number]) => [one[0] - other[0], one[1] - other[1]]
-  const [ax, ay] = difference(place(east + step, north), place(east - step, north)).map((value) => value / (2 * step))
-  const [bx, by] = difference(place(east, north + step), place(east, north - step)).map((value) => value / (2 * step))
-  const determinant = ax * by - ay * bx
-  return { across: [by / determinant, -ay / determinant], up: [-bx / determinant, ax / determinant] }
-}
-
-function offsetsOf(place: Place, width: number, height: number) {
-  const { across, up } = pixelSteps(place, 0, 0)
-  const [x0, y0] = place(0, 0)
-  const along = (axis: 0 | 1) =>
-    Float64Array.from(
-      { length: width * height },
-      (_, i) => ((i % width) - x0) * across[axis] + (Math.floor(i / width) - y0) * up[axis]
-    )
-  return { east: along(0), north: along(1) }
-}
-
-/** Adds stars: their beam averaged over each pixel, in the frame of the model. */
-function addPoints(image: Float64Array, { points }: BlurredLight, place: Place, pixels: Int32Array, width: number): void {
-  for (const { beam, east, north, flux } of points as PointLight[]) {
-    if (flux === 0) continue
-    const { across, up } = pixelSteps(place, east, north)
-    const [x0, y0] = place(east, north)
-    const mean = pixelMean(beam, across, up)
-    for (let k = 0; k < pixels.length; k++) {
-      const [dx, dy] = [(pixels[k] % width) - x0, Math.floor(pixels[k] / width) - y0]
-      image[k] += flux * mean(dx * across[0] + dy * up[0], dx * across[1] + dy * up[1])
-    }
   }
 }
 

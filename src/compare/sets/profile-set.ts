@@ -51,9 +51,7 @@ export function profileSet(spec: ProfileData, source: CameraSource, light: Light
     spec,
     data: {
       values,
-      sigma: Float64Array.from(rows, (row, i) =>
-        magnitudes ? (values[i] * errors[row] * Math.LN10) / 2.5 : errorUnit.toCgs(errors[row], context)
-      )
+      sigma: Float64Array.from(rows, (row, i) => errorUnit.sigmaToCgs(values[i], errors[row], context))
     },
     independent: 1,
     step: 1,
@@ -79,7 +77,8 @@ export function profileSet(spec: ProfileData, source: CameraSource, light: Light
       },
       unit: unit.name,
       quantity: magnitudes ? 'surface brightness' : 'specific intensity',
-      inUnit: (value) => unit.fromCgs(value, context)
+      inUnit: (value) => unit.fromCgs(value, context),
+      sigmaInUnit: (value, sigma) => unit.sigmaFromCgs(value, sigma, context)
     }
   }
 }

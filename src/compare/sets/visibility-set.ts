@@ -1,4 +1,5 @@
 import { numbersIn } from '../../data/table.js'
+import { extent } from '../../math/stats.js'
 import type { LightWeights } from '../../observe/band.js'
 import { NYQUIST, type Refuse } from '../../observe/observe-run.js'
 import type { CameraSource } from '../../observe/run-source.js'
@@ -31,7 +32,7 @@ export function visibilitySet(spec: VisibilityData, source: CameraSource, light:
   )
   if (rows.length === 0) refuse('file', 'no row holds a whole visibility with its 1 sigma')
   const baselines = rows.map((i): [number, number] => [east[i], north[i]])
-  const longest = Math.max(...baselines.map(([x, y]) => Math.hypot(x, y)))
+  const [, longest] = extent(baselines.map(([x, y]) => Math.hypot(x, y)))
   if ((longest / light.wavelength) * Math.max(...source.pixel) > NYQUIST)
     refuse('file', 'the pixels of the camera hide what the longest baseline sees; the run needs smaller pixels')
   const parts = (of: (i: number) => [number, number]) =>
@@ -66,6 +67,7 @@ export function visibilitySet(spec: VisibilityData, source: CameraSource, light:
       unit: unit.name,
       quantity: 'amplitude',
       inUnit: (value) => unit.fromCgs(value, context),
+      sigmaInUnit: (value, sigma) => unit.sigmaFromCgs(value, sigma, context),
       ...(withPhase && { complex: true as const })
     }
   }

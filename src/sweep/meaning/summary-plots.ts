@@ -1,4 +1,5 @@
 import type { TopLevelSpec } from 'vega-lite'
+import { extent } from '../../math/stats.js'
 import { vegaSvg } from '../../output/plot/vega-svg.js'
 import type { Sweep } from '../types.js'
 import type { Summary } from './summary.js'
@@ -87,7 +88,7 @@ export function parameterPlot(sweep: Sweep, { name, unit, profile, marginal }: P
 /** Where the profile is of interest; undefined where that is no range. */
 function shownRange({ points, curve }: ParameterSummary['profile']): [number, number] | undefined {
   const values = (curve ?? points).filter(({ deviance }) => deviance <= HIGHEST).map(({ value }) => Number(value))
-  const [least, most] = [values.reduce((a, b) => Math.min(a, b)), values.reduce((a, b) => Math.max(a, b))]
+  const [least, most] = extent(values)
   return least < most ? [least, most] : undefined
 }
 

@@ -1,3 +1,4 @@
+import { extent } from '../../math/stats.js'
 import type { Sweep } from '../types.js'
 import type { Fit } from './likelihood.js'
 import type { Marginal } from './marginal.js'
@@ -23,8 +24,7 @@ export function summaryWarnings(sweep: Sweep, fits: Fit[], parameters: Told[]): 
   const [best] = fits
   const { chiSquared, degreesOfFreedom } = best
   const unfinished = sweep.models.length - fits.length
-  const counts = fits.map(({ points }) => points)
-  const [fewest, most] = [counts.reduce((a, b) => Math.min(a, b)), counts.reduce((a, b) => Math.max(a, b))]
+  const [fewest, most] = extent(fits.map((fit) => fit.points))
   return [
     ...(unfinished > 0 ? [`${unfinished} of ${sweep.models.length} models are missing from the comparison`] : []),
     ...(fewest < most

@@ -1,3 +1,4 @@
+import { extent } from '../../math/stats.js'
 import { SceneError, type SceneProblem } from '../../scene/error.js'
 import type { YamlDocument } from '../../scene/yaml-document.js'
 import type { Sweep } from '../types.js'
@@ -67,7 +68,7 @@ function modelsToRead({ models, parameters }: Sweep): number[] {
     const values = models.map((values) => values[p])
     if (kind === 'number') {
       const numbers = values as number[]
-      const [least, most] = [numbers.reduce((a, b) => Math.min(a, b)), numbers.reduce((a, b) => Math.max(a, b))]
+      const [least, most] = extent(numbers)
       chosen.add(values.indexOf(least) + 1).add(values.indexOf(most) + 1)
     } else for (const value of new Set(values)) chosen.add(values.indexOf(value) + 1)
   })
