@@ -5,7 +5,7 @@ import { beamOf, lightOf } from '../observe/read-instrument.js'
 import type { LightSpec } from '../observe/types.js'
 import { fluxOf } from '../observe/unit.js'
 import type { DataFiles } from '../scene/data-files.js'
-import { parseList, readListFile } from '../scene/read-list-file.js'
+import { parseList, parseListFile, readUserFile } from '../scene/list-file.js'
 import type { ScenePath } from '../scene/types.js'
 import type { YamlDocument } from '../scene/yaml-document.js'
 import { DEGREE } from '../units/angles.js'
@@ -15,7 +15,7 @@ import type { DataList, MeasuredSpec, Measurements } from './types.js'
 
 /** Reads a file of data. Throws a SceneError that lists every problem found in it and in the files it names. */
 export function readData(file: string): Measurements {
-  const { content, specs, ...list } = readListFile(file, 'file of data', dataSchema, 'data', resolved)
+  const { content, specs, ...list } = parseListFile(readUserFile(file, 'file of data'), file, dataSchema, 'data', resolved)
   return { ...list, free: content.free, sets: specs }
 }
 

@@ -1,5 +1,5 @@
 import type { RunFolder } from '../run/run-folder.js'
-import { type Product, writeFolder } from '../run/write-folder.js'
+import { dataAmong, type Product, writeFolder } from '../run/write-folder.js'
 import { type ObservationRecord, observationRecord, observationRecordName } from './observation-record.js'
 import { observationReport } from './observation-report.js'
 import type { Observed } from './observe-run.js'
@@ -7,10 +7,17 @@ import { photometryEcsv, photometryPlot } from './photometry-files.js'
 import { pictureFits, picturePng } from './picture-files.js'
 import { closureEcsv, curveEcsv, visibilityEcsv, visibilityPlot } from './visibility-files.js'
 
-/** Writes all files of an observation, the record last. Throws OutputError. */
-export function writeObservation(observed: Observed, folder: RunFolder): Promise<ObservationRecord> {
+/** Writes all files of an observation, without pictures, plots and page where `dataOnly`, the record last. Throws OutputError. */
+export function writeObservation(observed: Observed, folder: RunFolder, dataOnly = false): Promise<ObservationRecord> {
+  const all = productsOf(observed)
   const report = (record: ObservationRecord) => observationReport(folder.path, record)
-  return writeFolder(folder, observationRecordName, productsOf(observed), (files) => observationRecord(observed, files), report)
+  return writeFolder(
+    folder,
+    observationRecordName,
+    dataOnly ? dataAmong(all) : all,
+    (files) => observationRecord(observed, files),
+    dataOnly ? undefined : report
+  )
 }
 
 function productsOf(observed: Observed): Product[] {

@@ -2,7 +2,7 @@ import { version } from '../output/version.js'
 import { micrometres } from '../run/findings.js'
 import type { InputFile } from '../scene/types.js'
 import { JANSKY, LIGHT_SPEED } from '../units/constants.js'
-import type { Observed } from './observe-run.js'
+import type { Observations, Observed } from './observe-run.js'
 import { photometryUnit } from './unit.js'
 import { observationWarnings } from './warnings.js'
 
@@ -57,13 +57,14 @@ export function observationRecord(observed: Observed, files: string[]): Observat
     inputs: instrument.inputs,
     seed: instrument.seed,
     run: { folder: run.path, title, version: runVersion, seed, inputs },
-    observations: findings(observed),
+    observations: observationFindings(observed),
     warnings: observationWarnings(observed),
     files
   }
 }
 
-function findings({ instrument, pictures, fluxes, visibilities }: Observed): ObservationFinding[] {
+/** What was observed, in the order of the instrument file. */
+export function observationFindings({ instrument, pictures, fluxes, visibilities }: Observations): ObservationFinding[] {
   const all = [
     ...pictures.map(({ picture }): ObservationFinding => {
       const { spec, observed, expected, noise, sigma, unit, context, flux } = picture

@@ -5,17 +5,21 @@ import { makeBeam } from './beam.js'
 import { pixelsAcross } from './blur.js'
 import { measureFlux, type Photometry } from './photometry.js'
 import { type Picture, takePicture } from './picture.js'
-import { type CameraSource, openRun, type RunSource, type SpectrumSource } from './run-source.js'
+import { type CameraSource, type ModelLight, openRun, type RunSource, type SpectrumSource } from './run-source.js'
 import type { Instrument, LightSpec, PictureSpec, VisibilitiesSpec } from './types.js'
 import { measureVisibilities, type Visibilities } from './visibilities.js'
 
-/** What came of pointing an instrument at a run. */
-export interface Observed {
-  run: RunSource
+/** What came of pointing an instrument at a model. */
+export interface Observations {
   instrument: Instrument
   pictures: { picture: Picture; source: CameraSource }[]
   fluxes: { photometry: Photometry; source: SpectrumSource }[]
   visibilities: { measured: Visibilities; source: CameraSource }[]
+}
+
+/** The same of a run. */
+export interface Observed extends Observations {
+  run: RunSource
 }
 
 /** Narrowest beam in pixels of a camera that makes sense to apply. */
@@ -34,7 +38,16 @@ export function observeRun(
   onProgress: (name: string, done: number) => void = () => {}
 ): Observed {
   const run = openRun(path)
-  const observed: Observed = { run, instrument, pictures: [], fluxes: [], visibilities: [] }
+  return { run, ...observeModel(run, instrument, onProgress) }
+}
+
+/** The same for a model, wherever it is. */
+export function observeModel(
+  model: ModelLight,
+  instrument: Instrument,
+  onProgress: (name: string, done: number) => void = () => {}
+): Observations {
+  const observed: Observations = { instrument, pictures: [], fluxes: [], visibilities: [] }
   const { seed, observations } = instrument
   const cameras = new Map<string, CameraSource>()
   observations.forEach((spec, i) => {
@@ -43,13 +56,13 @@ export function observeRun(
       throw new SceneError([instrument.problemAt(['observations', i, key], message)])
     }
     if (spec.kind === 'photometry') {
-      if (!run.spectra.includes(spec.spectrum)) refuse('spectrum', absent('spectrum', run.spectra))
-      const source = run.spectrum(spec.spectrum)
+      if (!model.spectra.includes(spec.spectrum)) refuse('spectrum', absent('spectrum', model.spectra))
+      const source = model.spectrum(spec.spectrum)
       const light = weightsFor(spec, source.wavelengths, refuse)
       observed.fluxes.push({ photometry: measureFlux(spec, source, light, seed), source })
       return
     }
-    const source = cameraOf(spec, run, cameras, refuse)
+    const source = cameraOf(spec, model, cameras, refuse)
     const light = weightsFor(spec, source.wavelengths, refuse)
     if (spec.kind === 'picture') {
       if (spec.pixel && (spec.pixel[0] > source.width * source.pixel[0] || spec.pixel[1] > source.height * source.pixel[1]))
@@ -71,12 +84,12 @@ export type Refuse = (key: string, message: string) => never
 
 function cameraOf(
   spec: PictureSpec | VisibilitiesSpec,
-  run: RunSource,
+  model: ModelLight,
   known: Map<string, CameraSource>,
   refuse: Refuse
 ): CameraSource {
-  if (!run.cameras.includes(spec.camera)) refuse('camera', absent('camera', run.cameras))
-  const source = known.get(spec.camera) ?? run.camera(spec.camera)
+  if (!model.cameras.includes(spec.camera)) refuse('camera', absent('camera', model.cameras))
+  const source = known.get(spec.camera) ?? model.camera(spec.camera)
   known.set(spec.camera, source)
   return source
 }

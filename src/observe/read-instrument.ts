@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import type { DataFiles } from '../scene/data-files.js'
-import { readListFile } from '../scene/read-list-file.js'
+import { parseListFile, readUserFile } from '../scene/list-file.js'
 import type { ScenePath } from '../scene/types.js'
 import { parseKernel } from './kernel.js'
 import { instrumentSchema, type ObservationEntry } from './schema/instrument-schema.js'
@@ -10,7 +10,12 @@ import { fluxOf } from './unit.js'
 
 /** Reads an instrument file. Throws a SceneError that lists every problem found in it and in the data files it names. */
 export function readInstrument(file: string, overrides: { seed?: string } = {}): Instrument {
-  const { content, specs, ...list } = readListFile(file, 'instrument file', instrumentSchema, 'observations', resolved)
+  return parseInstrument(readUserFile(file, 'instrument file'), file, overrides)
+}
+
+/** The same of its text. */
+export function parseInstrument(text: string, file: string, overrides: { seed?: string } = {}): Instrument {
+  const { content, specs, ...list } = parseListFile(text, file, instrumentSchema, 'observations', resolved)
   return { ...list, seed: overrides.seed ?? content.seed, observations: specs }
 }
 

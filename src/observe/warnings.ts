@@ -1,14 +1,14 @@
-import type { Observed } from './observe-run.js'
+import { MOST_BAND_ERROR } from './band.js'
+import type { Observations } from './observe-run.js'
 import type { CameraSource } from './run-source.js'
 
 /** Fewest pixels of a run across a beam that resolve what the beam does. */
 const FEWEST = 2
 const MOST_EDGE = 0.02
-const MOST_BAND_ERROR = 0.01
 const COARSE = 0.25
 
 /** What is doubtful in observations. */
-export function observationWarnings({ pictures, fluxes, visibilities }: Observed): string[] {
+export function observationWarnings({ pictures, fluxes, visibilities }: Observations): string[] {
   return [
     ...pictures.flatMap(({ picture, source }) => {
       const { spec, grid, fineness, edge, bandError } = picture

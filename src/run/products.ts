@@ -23,15 +23,14 @@ import { runReport } from './run-report.js'
 import type { RunResult } from './run-scene.js'
 import { stopwatch } from './stopwatch.js'
 import { warningsOf } from './warnings-of.js'
-import { type Product, writeFolder } from './write-folder.js'
+import { dataAmong, type Product, writeFolder } from './write-folder.js'
 
 /** Writes all files of a run, the record last. Throws OutputError. */
 export async function writeProducts(result: RunResult, folder: RunFolder, making: RunMaking): Promise<RunRecord> {
   const time = stopwatch()
   const warnings = warningsOf(result)
-  const products = productsOf(result, making.cellEdges ?? false).filter(
-    ({ file }) => !(making.dataOnly && /\.(png|svg|html)$/.test(file))
-  )
+  const all = productsOf(result, making.cellEdges ?? false)
+  const products = making.dataOnly ? dataAmong(all) : all
   const record = (files: string[]) => runRecord(result, making, warnings, { files, time: time() })
   const report = (finished: RunRecord) => runReport(folder.path, finished)
   return writeFolder(folder, recordName, products, record, making.dataOnly ? undefined : report)

@@ -10,6 +10,11 @@ export interface Product {
   make: () => Promise<string | Uint8Array> | string | Uint8Array
 }
 
+/** Those of the products that are data: no pictures, no plots. */
+export function dataAmong(products: Product[]): Product[] {
+  return products.filter(({ file }) => !/\.(png|svg)$/.test(file))
+}
+
 /** The page in the folder of a result. */
 export const reportName = 'report.html'
 

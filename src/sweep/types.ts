@@ -28,6 +28,13 @@ export interface SweepData {
   needsImages: boolean
 }
 
+/** The instrument file that every model is observed with. */
+export interface SweepInstrument {
+  file: string
+  text: string
+  fingerprint: string
+}
+
 /** A spectrum that every model gets for a data set: like another of its scene, at the wavelengths of the data. */
 export interface DataSpectrum {
   name: string
@@ -53,5 +60,6 @@ export interface Sweep {
   models: Value[][]
   data?: SweepData
   dataSpectra: DataSpectrum[]
+  instrument?: SweepInstrument
   slurm: SlurmSettings
 }

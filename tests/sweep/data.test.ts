@@ -4,14 +4,20 @@ import { describe, expect, it } from 'vitest'
 import { compareRun } from '../../src/compare/compare-run.js'
 import { readData } from '../../src/compare/read-data.js'
 import { type SetFinding, type Verdict, verdictOf } from '../../src/compare/verdict.js'
+import { observationFindings } from '../../src/observe/observation-record.js'
+import { observeRun } from '../../src/observe/observe-run.js'
+import { readInstrument } from '../../src/observe/read-instrument.js'
 import { mostModelFolders } from '../../src/sweep/folder/is-packed.js'
+import { outcomesOf } from '../../src/sweep/folder/outcomes-of.js'
 import { resultStore } from '../../src/sweep/folder/result-store.js'
 import { openSweep } from '../../src/sweep/folder/sweep-folder.js'
 import { modelScene } from '../../src/sweep/plan/model-scene.js'
 import { readPlan } from '../../src/sweep/plan/read-plan.js'
 import { runHere } from '../../src/sweep/players/run-here.js'
-import { folderWith, motelight, sceneText } from '../cli/motelight.js'
-import { planFolder, planned, visibilityPlan, visibilityText } from './example.js'
+import { judged } from '../../src/sweep/results/outcomes.js'
+import { sweepTable } from '../../src/sweep/results/sweep-table.js'
+import { filesIn, folderWith, motelight, sceneText } from '../cli/motelight.js'
+import { planFolder, planned, problemsOf, visibilityPlan, visibilityText } from './example.js'
 
 const depth = 'dust.wind.amount.optical-depth'
 const options = { workers: 1, onProgress: () => {} }
@@ -43,7 +49,7 @@ describe('data that need images', () => {
     expect(await motelight(folder, 'observe', 'out/scene', 'night.yaml', '--out', 'observed')).toMatchObject({ exitCode: 0 })
     expect(await motelight(folder, 'sweep', 'plan.yaml', '--quiet')).toMatchObject({ exitCode: 0, stderr: '' })
     const path = (model: number, name: string) => join(folder, `out/plan/models/000${model}`, name)
-    const kept = (model: number) => JSON.parse(readFileSync(path(model, 'verdict.json'), 'utf8')) as Verdict
+    const kept = (model: number) => JSON.parse(readFileSync(path(model, 'seen.json'), 'utf8')).verdict as Verdict
     const without = ({ sets }: Verdict) => sets.map(({ name, chiSquared }: SetFinding) => [name, chiSquared])
     for (const model of [1, 2, 3])
       expect(without(kept(model))).toEqual(without(verdictOf(compareRun(path(model, '.'), readData(join(folder, 'seen.yaml'))))))
@@ -80,12 +86,14 @@ describe('data that need images', () => {
     const packed = await openSweep(join(folderWith({}), 'out'), large)
     const foldered = await openSweep(join(folderWith({}), 'out'), { ...large, models: large.models.slice(0, 2) })
     for (const sweep of [packed, foldered]) await runHere(sweep, [2], options)
-    const verdictIn = (sweep: typeof packed) => resultStore(sweep).finished([2]).get(2)!.verdict!
+    const verdictIn = (sweep: typeof packed) => resultStore(sweep).finished([2]).get(2)!.seen!.verdict!
     expect(verdictIn(packed)).toEqual(verdictIn(foldered))
     expect(verdictIn(packed).sets[0]).toMatchObject({ name: 'array', values: 2 })
     expect(existsSync(packed.model(2))).toBe(false)
     writeFileSync(join(folder, 'uv.csv'), visibilityText.replace('9, 1', '8, 1'))
-    await expect(openSweep(packed.path, readPlan(join(folder, 'plan.yaml')))).rejects.toThrow('its data were others')
+    await expect(openSweep(packed.path, readPlan(join(folder, 'plan.yaml')))).rejects.toThrow(
+      'its data or instrument were others'
+    )
   })
 
   it('that changed while a model was made leave it open', async () => {
@@ -96,6 +104,49 @@ describe('data that need images', () => {
     expect(resultStore(sweep).finished([1]).size).toBe(0)
     const again = await openSweep(sweep.path, readPlan(join(folder, 'plan.yaml')))
     expect(resultStore(again).finished([1]).size).toBe(1)
+  })
+})
+
+describe('an instrument', () => {
+  const tool = `observations:
+  - {name: mid, kind: photometry, spectrum: sed, band: {from: 8 um, to: 12 um}, noise: {kind: relative, level: 5 %}, unit: mJy}
+  - {name: near, kind: picture, camera: face, wavelength: 2.2 um, beam: {kind: gaussian, major: 2 arcsec}}
+`
+
+  it('observes each model, with noise of its own, and leaves data and columns', async () => {
+    const folder = planFolder(`vary: {${depth}: [1, 2]}\nobserve: tool.yaml\n`, { 'tool.yaml': tool })
+    const plan = readPlan(join(folder, 'plan.yaml'))
+    const sweep = await openSweep(join(folderWith({}), 'out'), plan)
+    await runHere(sweep, [1, 2], options)
+    expect(filesIn(join(sweep.model(1), 'observed'))).toEqual([
+      'instrument.yaml',
+      'observation.json',
+      'photometry.ecsv',
+      'pictures/near.fits'
+    ])
+    const outcomes = judged(plan, outcomesOf(sweep))
+    const table = sweepTable(plan, outcomes)
+    const column = (name: string) => table.find((one) => one.name === name)!
+    const apart = [1, 2].map((model) => {
+      const instrument = readInstrument(join(folder, 'tool.yaml'), { seed: `1/${model}` })
+      return observationFindings(observeRun(sweep.model(model), instrument))
+    })
+    expect(column('observed_mid_flux')).toMatchObject({
+      unit: 'mJy',
+      values: apart.map(([one]) => ('value' in one ? one.value : undefined))
+    })
+    expect(column('observed_near_peak')).toMatchObject({
+      unit: 'MJy/sr',
+      values: apart.map(([, one]) => ('peak' in one ? one.peak : undefined))
+    })
+  })
+
+  it('that asks for what the scene has not is refused at once', () => {
+    const files = { 'tool.yaml': tool.replace('8 um, to: 12 um', '8 um, to: 200 um') }
+    expect(problemsOf(`vary: {${depth}: [1]}\nobserve: tool.yaml\n`, files)).toMatchObject([
+      { at: 'tool.yaml:2:50', message: expect.stringContaining('the band reaches from 8um to 200um') }
+    ])
+    expect(problemsOf(`vary: {${depth}: [1]}\nobserve: none.yaml\n`)).toMatchObject([{ at: 'plan.yaml:3:1' }])
   })
 })
 

@@ -1,10 +1,5 @@
-import type { Verdict } from '../../compare/verdict.js'
 import type { RunRecord } from '../../run/run-record.js'
-
-/** How a model agrees with the data of a sweep, and with which. */
-export interface DataVerdict extends Verdict {
-  fingerprint: string
-}
+import type { Seen } from '../data/see-model.js'
 
 /** What the table tells of a finished model; the same bits however and wherever it was made, but for `cpuSeconds`. */
 export interface ModelResult {
@@ -17,12 +12,12 @@ export interface ModelResult {
   packets: number
   warnings: string[]
   cpuSeconds: number
-  /** Present where the data need images: then a model is compared as soon as it is made. */
-  verdict?: DataVerdict
+  /** Present where more is asked of a model than its fluxes tell. */
+  seen?: Seen
 }
 
 /** The part of a run's record that is kept of a model. */
-export function modelResult(model: number, record: RunRecord, verdict?: DataVerdict): ModelResult {
+export function modelResult(model: number, record: RunRecord, seen?: Seen): ModelResult {
   const { found, packets, times, warnings, state } = record
   return {
     model,
@@ -45,7 +40,7 @@ export function modelResult(model: number, record: RunRecord, verdict?: DataVerd
     packets: packets.equilibrium + packets.light.reduce((sum, at) => sum + at.packets, 0),
     warnings,
     cpuSeconds: Object.values(times).reduce((sum, { cpuSeconds }) => sum + cpuSeconds, 0),
-    ...(verdict && { verdict })
+    ...(seen && { seen })
   }
 }
 
@@ -56,6 +51,6 @@ function byName<Point>(points: Point[], nameOf: (point: Point) => string): [stri
 }
 
 /** JSON has null where a number was none. */
-export function orNaN(value: number | null): number {
+export function orNaN(value: number | null | undefined): number {
   return value ?? Number.NaN
 }

@@ -3,6 +3,7 @@ import { existsSync, mkdirSync, readdirSync, readFileSync } from 'node:fs'
 import { join, resolve, sep } from 'node:path'
 import { writeAtomic } from '../../output/atomic.js'
 import { asOutputError, OutputError } from '../../run/output-error.js'
+import { seenAs } from '../data/see-model.js'
 import type { Sweep } from '../types.js'
 import { isPacked } from './is-packed.js'
 
@@ -101,7 +102,7 @@ function difference(kept: Sweep, present: Sweep): string | undefined {
   if (changed) return `${changed.file} has changed since`
   if (JSON.stringify([kept.parameters, kept.models]) !== JSON.stringify([present.parameters, present.models]))
     return 'its models had other parameters'
-  if (isPacked(present) && present.data?.needsImages && present.data.fingerprint !== kept.data?.fingerprint)
-    return 'its data were others, and of so many models no images are kept that new data could be compared with'
+  if (isPacked(present) && seenAs(present) !== seenAs(kept) && seenAs(present))
+    return 'its data or instrument were others, and of so many models no images are kept that new ones could be applied to'
   return sweepId(kept) === sweepId(present) ? undefined : 'its base scene, precision, seed or wavelengths of the data were others'
 }

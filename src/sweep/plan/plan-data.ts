@@ -8,8 +8,8 @@ import { isRecord } from '../../scene/is-record.js'
 import type { Scene } from '../../scene/types.js'
 import { YamlDocument } from '../../scene/yaml-document.js'
 import { formatQuantity } from '../../units/quantity.js'
-import { dataSpectrumName, fingerprintOf, forModels } from '../data/data-of.js'
 import { darkLight } from '../data/model-lights.js'
+import { dataSpectrumName, fingerprintOf, forModels } from '../data/sources.js'
 import type { DataSpectrum, SweepData } from '../types.js'
 import { readNamed } from './read-named.js'
 
@@ -37,7 +37,7 @@ export function readPlanData(written: string | unknown[], plan: string, document
     data: {
       file: resolve(source.file),
       content,
-      fingerprint: fingerprintOf(content, list),
+      fingerprint: fingerprintOf(list, content),
       needsImages: list.sets.some(({ kind }) => kind !== 'photometry')
     },
     dataSpectra,

@@ -85,6 +85,9 @@ export const planSchema = section({
     .optional()
     .describe('Precision of every model, instead of `effort.precision` of the scene'),
   data: data.optional(),
+  observe: dataFile
+    .optional()
+    .describe('Instrument file (see `motelight schema instrument`): every model is observed with it, with noise of its own'),
   slurm: slurmSchema.describe('How to ask Slurm')
 })
 

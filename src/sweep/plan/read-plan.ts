@@ -4,14 +4,15 @@ import { DataFiles } from '../../scene/data-files.js'
 import { SceneError } from '../../scene/error.js'
 import { isRecord } from '../../scene/is-record.js'
 import { issueProblems } from '../../scene/issue-problems.js'
+import { readUserFile } from '../../scene/list-file.js'
 import { parseScene } from '../../scene/read.js'
-import { readUserFile } from '../../scene/read-list-file.js'
 import { wording } from '../../scene/wording.js'
 import { YamlDocument } from '../../scene/yaml-document.js'
 import type { Sweep } from '../types.js'
 import { checkModels } from './check-models.js'
 import { modelScene } from './model-scene.js'
 import { readPlanData } from './plan-data.js'
+import { readPlanInstrument } from './plan-instrument.js'
 import { planModels } from './plan-models.js'
 import { planSchema } from './plan-schema.js'
 import { readNamed } from './read-named.js'
@@ -28,6 +29,7 @@ export function readPlan(file: string): Sweep {
   const { locate, ...models } = planModels(written, base.value, seed, document, new DataFiles(file, document))
   const { effort } = base.value
   const data = written.data === undefined ? undefined : readPlanData(written.data, file, document, base.scene)
+  const instrument = written.observe === undefined ? undefined : readPlanInstrument(written.observe, file, document)
   const sweep: Sweep = {
     program: 'motelight',
     version,
@@ -43,10 +45,11 @@ export function readPlan(file: string): Sweep {
     ...models,
     ...(data && { data: data.data }),
     dataSpectra: data?.dataSpectra ?? [],
+    ...(instrument && { instrument: instrument.instrument }),
     slurm: written.slurm
   }
   checkModels(sweep, locate, document)
-  data?.check(modelScene(sweep, 1))
+  for (const part of [data, instrument]) part?.check(modelScene(sweep, 1))
   return sweep
 }
 

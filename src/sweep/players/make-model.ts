@@ -1,21 +1,20 @@
 import { existsSync } from 'node:fs'
 import { rm } from 'node:fs/promises'
 import { join } from 'node:path'
-import { compareModel } from '../../compare/compare-run.js'
-import { verdictOf } from '../../compare/verdict.js'
+import { observationRecordName } from '../../observe/observation-record.js'
 import { openRun } from '../../observe/run-source.js'
 import { writeAtomic } from '../../output/atomic.js'
 import { dustPiece } from '../../run/dust-stage.js'
-import { stateName } from '../../run/run-folder.js'
+import { openRunFolder, stateName } from '../../run/run-folder.js'
 import { runInFolder } from '../../run/run-in-folder.js'
 import { identityOf } from '../../run/state/identity.js'
 import { pieceFile, StateFolder } from '../../run/state/state-folder.js'
 import type { RunOptions } from '../../run/with-crew.js'
 import type { Scene } from '../../scene/types.js'
-import { dataOf, fingerprintOf } from '../data/data-of.js'
-import { verdictName } from '../folder/folder-store.js'
+import { seeModel, seenAs } from '../data/see-model.js'
+import { seenName } from '../folder/folder-store.js'
 import { isPacked } from '../folder/is-packed.js'
-import { type DataVerdict, modelResult } from '../folder/model-result.js'
+import { modelResult } from '../folder/model-result.js'
 import { PackStore } from '../folder/pack-store.js'
 import type { SweepFolder } from '../folder/sweep-folder.js'
 import { modelScene } from '../plan/model-scene.js'
@@ -27,8 +26,8 @@ export type ModelOptions = Omit<RunOptions, 'ledger' | 'estimator' | 'dataOnly'>
 export type Group = { lead: number; members: number[] } | undefined
 
 /**
- * Makes a model from the state that is there, and leaves its result in the folder of the sweep. Throws as `runInFolder` does, and as
- * `compareRun` where data need its images.
+ * Makes a model from the state that is there, and leaves its result in the folder of the sweep. Throws as `runInFolder` does, and
+ * as `seeModel`.
  */
 export async function makeModel(folder: SweepFolder, model: number, group: Group, options: ModelOptions): Promise<void> {
   const { scene, path, all } = await prepareModel(folder, model, group, options)
@@ -36,22 +35,24 @@ export async function makeModel(folder: SweepFolder, model: number, group: Group
   await keepResult(folder, model)
 }
 
-/** Compares a model that is made with data that need its images, and of a large sweep keeps the row alone. */
+/** Makes of a finished model what data and instrument ask of its images, and of a large sweep keeps the row alone. */
 export async function keepResult(folder: SweepFolder, model: number): Promise<void> {
-  const { data } = folder.sweep
+  const { sweep } = folder
   const path = folder.model(model)
   const run = openRun(path)
-  let verdict: DataVerdict | undefined
-  if (data?.needsImages) {
-    // The files may have changed since the sweep was told of them: the verdict is about what they hold now.
-    const list = dataOf(data)
-    verdict = { fingerprint: fingerprintOf(data.content, list), ...verdictOf(compareModel(run, list)) }
-    if (!isPacked(folder.sweep)) await writeAtomic(join(path, verdictName), `${JSON.stringify(verdict)}\n`)
-  }
-  if (isPacked(folder.sweep)) {
-    new PackStore(folder).add(modelResult(model, run.record, verdict))
+  const { seen, observed } = seenAs(sweep) ? seeModel(sweep, model, run) : {}
+  if (isPacked(sweep)) {
+    new PackStore(folder).add(modelResult(model, run.record, seen))
     await rm(path, { recursive: true, force: true })
+    return
   }
+  if (observed) {
+    const out = await openRunFolder(join(path, 'observed'), 'replace', observed.instrument.inputs, observationRecordName)
+    // Drawing needs large packages; other commands start faster without them.
+    const { writeObservation } = await import('../../observe/observation-files.js')
+    await writeObservation(observed, out, true)
+  }
+  if (seen) await writeAtomic(join(path, seenName), `${JSON.stringify(seen)}\n`)
 }
 
 /** The scene of a model, its folder with the shared temperatures in it, and the options of its run. */

@@ -1,8 +1,8 @@
 import { compareModel } from '../../compare/compare-run.js'
 import type { DataList } from '../../compare/types.js'
 import { type Verdict, verdictOf } from '../../compare/verdict.js'
-import { dataOf } from '../data/data-of.js'
 import { lightOfResult } from '../data/model-lights.js'
+import { dataOf } from '../data/sources.js'
 import type { ModelFailure } from '../folder/failures.js'
 import type { ModelResult } from '../folder/model-result.js'
 import type { Sweep } from '../types.js'
@@ -22,7 +22,7 @@ export interface Judged extends Outcomes {
 export function judged({ data }: Sweep, outcomes: Outcomes): Judged {
   const { results } = outcomes
   if (data && !data.needsImages) return { ...outcomes, verdicts: compareFluxes(results, dataOf(data)) }
-  const made = [...results].flatMap(([model, { verdict }]): [number, Verdict][] => (verdict ? [[model, verdict]] : []))
+  const made = [...results].flatMap(([model, { seen }]): [number, Verdict][] => (seen?.verdict ? [[model, seen.verdict]] : []))
   return { ...outcomes, verdicts: new Map(made) }
 }
 

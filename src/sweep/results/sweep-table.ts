@@ -1,10 +1,10 @@
-import type { Verdict } from '../../compare/verdict.js'
 import type { TableColumn } from '../../output/table-column.js'
 import { fluxUnit } from '../../units/flux.js'
 import { intensityUnit } from '../../units/intensity.js'
-import { type ModelResult, orNaN } from '../folder/model-result.js'
+import type { ModelResult } from '../folder/model-result.js'
 import type { Sweep } from '../types.js'
 import type { Judged, Outcomes } from './outcomes.js'
+import { observationColumns, verdictColumns } from './seen-columns.js'
 
 /** How a model stands: `imprecise` is done, but for the precision asked for. */
 export type ModelState = 'done' | 'imprecise' | 'failed' | 'unfinished'
@@ -48,6 +48,7 @@ export function sweepTable(sweep: Sweep, outcomes: Judged): TableColumn[] {
         : { ...column, kind, values: column.values.map(Number), ...(unit && { unit }) }
     }),
     ...verdictColumns(sweep, outcomes, numbers),
+    ...observationColumns(outcomes, numbers),
     ...(first?.spectra ?? []).flatMap(({ name, unit }, s) => [
       lists(`${name}_wavelength`, 'vacuum wavelength', ({ spectra }) => spectra[s].wavelengthUm, 'um'),
       lists(`${name}_flux`, 'total in the aperture', ({ spectra }) => spectra[s].flux, fluxUnit(unit).fits),
@@ -71,35 +72,5 @@ export function sweepTable(sweep: Sweep, outcomes: Judged): TableColumn[] {
       kind: 'text',
       values: numbers.map((model) => results.get(model)?.warnings.join(' / ') ?? failures.get(model)?.message ?? '')
     }
-  ]
-}
-
-/** Chi-squared of each data set and what was fitted; NaN for a model that was not compared. */
-function verdictColumns({ data }: Sweep, { verdicts }: Judged, models: number[]): TableColumn[] {
-  const column = (name: string, description: string, of: (verdict: Verdict) => number | null, unit?: string): TableColumn => ({
-    name,
-    ...(unit && { unit }),
-    description,
-    kind: 'number',
-    values: models.map((model) => {
-      const verdict = verdicts.get(model)
-      return verdict ? orNaN(of(verdict)) : Number.NaN
-    })
-  })
-  const [first] = verdicts.values()
-  return [
-    ...(data?.content.data ?? []).map(({ name, file }, i) => {
-      const values = first ? `, ${first.sets[i].values} values` : ''
-      return column(`chi2_${name}`, `chi-squared of ${file}${values}`, ({ sets }) => sets[i].chiSquared)
-    }),
-    ...(first?.scalings ?? []).flatMap(({ scaling, unit, sets }, i, all) => {
-      const several = all.filter((other) => other.scaling === scaling).length > 1
-      const name = ['fitted', scaling, ...(several ? sets : [])].join('_')
-      const which = `${scaling} fitted to ${sets.join(', ')}`
-      return [
-        column(name, which, ({ scalings }) => scalings[i].value, unit),
-        column(`${name}_sigma`, `1 sigma of ${which}`, ({ scalings }) => scalings[i].sigma, unit)
-      ]
-    })
   ]
 }

@@ -37,14 +37,13 @@ export interface ListFile<Content, Spec> extends List<Content, Spec> {
 /** What an entry means, once the files that it names are read; undefined where one cannot be used. */
 type SpecOf<Entry, Spec> = (entry: Entry, path: ScenePath, files: DataFiles) => Spec | undefined
 
-/** Reads a YAML file whose `key` is a list of named entries. Throws a SceneError as `parseList`, the file first among its inputs. */
-export function readListFile<
+/** The text of a YAML file whose `key` is a list of named entries. Throws a SceneError as `parseList`; the file is first of its inputs. */
+export function parseListFile<
   Key extends string,
   Entry extends { name: string },
   Content extends { title?: string } & Record<Key, Entry[]>,
   Spec
->(file: string, what: string, schema: z.ZodType<Content>, key: Key, specOf: SpecOf<Entry, Spec>): ListFile<Content, Spec> {
-  const text = readUserFile(file, what)
+>(text: string, file: string, schema: z.ZodType<Content>, key: Key, specOf: SpecOf<Entry, Spec>): ListFile<Content, Spec> {
   const document = new YamlDocument(text, file)
   const list = parseList(document.value, document, file, schema, key, specOf)
   const title = list.content.title ?? basename(file, extname(file))
