@@ -10,7 +10,7 @@ const DOUBT = 0.1
 /** Share of the differences inside a region that is doubted even when its sum seems right. */
 const DISTRUST = 0.02
 /** The error need not be smaller than this share of the photon noise. */
-const NOISE_SHARE = 0.2
+const NOISE_SHARE = 0.1
 /** Two-point Gauss nodes on [0, 1]. */
 const LOW = 0.5 - 0.5 / Math.sqrt(3)
 const HIGH = 0.5 + 0.5 / Math.sqrt(3)

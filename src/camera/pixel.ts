@@ -11,9 +11,7 @@ const WIDE = 0.3
 const CROWDED = 5
 /** Largest angle of a first division, rad. */
 const FAN = 0.55
-/** Squares, whose errors differ in sign from pixel to pixel, may be this many times less accurate than patches. */
-const LEEWAY = 3
-/** Nor need they be better than this share of the photon noise. */
+/** Squares need not be better than this share of the photon noise. */
 const NOISE_SHARE = 0.3
 /** Quarters that differ by this many tolerances are divided even where their mean seems right. */
 const SPREAD = 30
@@ -85,7 +83,7 @@ export class PixelIntegrator {
     field.sample(x, y, middle, true)
     const light = middle[EMITTED] + middle[SCATTERED]
     const noise = standardError(middle.subarray(FIRST_GROUP, RAY_VALUES))
-    this.allowed = Math.max(LEEWAY * tolerance * Math.max(this.floor, light), NOISE_SHARE * noise)
+    this.allowed = Math.max(tolerance * Math.max(this.floor, light), NOISE_SHARE * noise)
     const near = Math.max(width, height) > LANE * Math.hypot(nearX, nearY)
     this.corners = near ? this.cornerLight(x, y, width, height) : Number.NaN
     this.brightest = 0
@@ -155,7 +153,7 @@ export class PixelIntegrator {
     }
     const light = 0.25 * (sums[from + EMITTED] + sums[from + SCATTERED])
     const error = Math.abs(light - middle) * share
-    const allowed = Math.max(this.allowed, LEEWAY * tolerance * Math.max(mean[EMITTED] + mean[SCATTERED], light * share))
+    const allowed = Math.max(this.allowed, tolerance * Math.max(mean[EMITTED] + mean[SCATTERED], light * share))
     const hidden = level === 0 && Math.abs(light - this.corners) > CORNERS * allowed
     if (level < DEEPEST && (hidden || error > allowed * Math.sqrt(share) || (high - low) * share > SPREAD * allowed)) {
       for (let q = 0; q < 4; q++) {
