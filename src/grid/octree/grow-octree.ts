@@ -29,6 +29,17 @@ const DETAIL = 1000
 const SAMPLES = 3
 /** Corners, just inside. */
 const INSIDE = 0.9999
+/** Where a cube of side 1 is looked at: samples, then corners, three numbers each. */
+const PLACES = Float64Array.from([
+  ...Array.from({ length: SAMPLES ** 3 }, (_, k) => [
+    k % SAMPLES,
+    Math.floor(k / SAMPLES) % SAMPLES,
+    Math.floor(k / SAMPLES ** 2)
+  ])
+    .flat()
+    .map((digit) => (digit + 0.5) / SAMPLES),
+  ...Array.from({ length: 8 }, (_, k) => [k & 1, k & 2, k & 4].map((upper) => (upper ? INSIDE : 1 - INSIDE))).flat()
+])
 /** Points that must lie in a cube before they count against its samples. */
 const FEW = 4
 
@@ -121,22 +132,20 @@ class Judge {
     const { builder, unit, points, request } = this
     const { origin, corner, level, side } = builder
     const length = side / 2 ** level[node]
-    const [x, y, z] = [0, 1, 2].map((a) => origin[a] + corner[3 * node + a] * unit)
+    const x = origin[0] + corner[3 * node] * unit
+    const y = origin[1] + corner[3 * node + 1] * unit
+    const z = origin[2] + corner[3 * node + 2] * unit
     let [sum, least, most] = [0, Number.POSITIVE_INFINITY, 0]
-    const sample = (fx: number, fy: number, fz: number): number => {
+    for (let k = 0; k < PLACES.length; k += 3) {
       let chi = 0
-      for (const { shape, scale, extinction } of request.layers)
-        chi += scale * extinction * shape.relativeDensity(x + fx * length, y + fy * length, z + fz * length)
+      for (const { shape, scale, extinction } of request.layers) {
+        const density = shape.relativeDensity(x + PLACES[k] * length, y + PLACES[k + 1] * length, z + PLACES[k + 2] * length)
+        chi += scale * extinction * density
+      }
+      if (k < 3 * SAMPLES ** 3) sum += chi
       least = Math.min(least, chi)
       most = Math.max(most, chi)
-      return chi
     }
-    for (let k = 0; k < SAMPLES ** 3; k++) {
-      const at = (digit: number) => ((digit % SAMPLES) + 0.5) / SAMPLES
-      sum += sample(at(k), at(Math.floor(k / SAMPLES)), at(Math.floor(k / SAMPLES ** 2)))
-    }
-    for (let k = 0; k < 8; k++)
-      sample(...([0, 1, 2].map((a) => ((k >> a) & 1 ? INSIDE : 1 - INSIDE)) as [number, number, number]))
     const volume = length ** 3
     // Dust that shows in a corner alone fills a part of it.
     const known = Math.max(sum / SAMPLES ** 3, most / (2 * SAMPLES) ** 3) * volume
