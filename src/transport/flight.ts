@@ -1,7 +1,7 @@
 import type { Walk } from '../grid/cells.js'
 import type { Polarisation } from './polarisation.js'
-import { scatterHere, scatteringOf } from './scatter-launch.js'
-import type { ScatterMedium } from './scatter-medium.js'
+import { scatterHere } from './scatter-launch.js'
+import { type ScatterMedium, scatteringOf } from './scatter-medium.js'
 
 /** Below this share of its first weight a packet plays roulette. */
 export const ROULETTE_BELOW = 1e-3

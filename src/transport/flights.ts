@@ -4,8 +4,8 @@ import { exponential } from '../math/exponential.js'
 import { GOLDEN_STEP, SHARE_OF_STEP } from '../math/golden.js'
 import { cosAzimuth } from './direction.js'
 import { importanceOf } from './importance.js'
-import { drawLaw, scatteringOf } from './scatter-launch.js'
-import { centralRadius2, FLIGHT_BINS, FLIGHT_STEPS, flightLookup, type ScatterMedium } from './scatter-medium.js'
+import { drawLaw } from './scatter-launch.js'
+import { centralRadius2, FLIGHT_BINS, FLIGHT_STEPS, flightLookup, type ScatterMedium, scatteringOf } from './scatter-medium.js'
 import { ShellLauncher } from './shell-launch.js'
 
 const { lookup } = flightLookup()

@@ -3,11 +3,11 @@ import { sphericalOf, type Walk } from '../grid/cells.js'
 import type { SphericalWalk } from '../grid/walk.js'
 import { sampleBin } from '../math/cdf.js'
 import { GOLDEN } from '../math/golden.js'
-import { deflect, isotropicDirection } from './direction.js'
+import { deflect, directionInOrder, isotropicDirection } from './direction.js'
 import { emittingCell, launchFromCell, launchFromSurface, launchInwards } from './launch.js'
 import type { Polarisation } from './polarisation.js'
-import type { ScatterLaunch, ScatterMedium } from './scatter-medium.js'
-import { pathToStar } from './star-spheres.js'
+import { type ScatterLaunch, type ScatterMedium, scatteringOf } from './scatter-medium.js'
+import { WayFromStar } from './way-from-star.js'
 
 /** Draws the scattering law of a cell: the index into `asymmetry`. */
 export function drawLaw(medium: ScatterMedium, cell: number, uniform: () => number): number {
@@ -18,13 +18,6 @@ export function drawLaw(medium: ScatterMedium, cell: number, uniform: () => numb
   while (law < last && pick >= medium.scattering[law * medium.cells + cell])
     pick -= medium.scattering[law++ * medium.cells + cell]
   return law
-}
-
-/** Sum of the scattering coefficients of a cell, cm-1. */
-export function scatteringOf(medium: ScatterMedium, cell: number): number {
-  let total = 0
-  for (let law = 0; law < medium.asymmetry.length; law++) total += medium.scattering[law * medium.cells + cell]
-  return total
 }
 
 /**
@@ -65,43 +58,6 @@ function firstScattering(
   return scatteringOf(medium, walk.cell) / medium.extinction[walk.cell]
 }
 
-/** Takes the walk to the first scattering on its way; returns the chance of one, with the albedo: 0 where nothing is on the way. */
-function scatterOnTheWay(walk: Walk, medium: ScatterMedium, uniform: () => number): number {
-  const { extinction, spheres } = medium
-  const { x, y, z, ux, uy, uz, cell } = walk
-  let total = 0
-  let ends = false
-  do {
-    const toStar = spheres.length > 0 ? pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
-    const toWall = walk.toWall()
-    ends = toStar < toWall
-    total += Math.min(toStar, toWall) * extinction[walk.cell]
-  } while (!ends && walk.cross() >= 0)
-  if (!(total > 0)) return 0
-  let remaining = -Math.log1p(uniform() * Math.expm1(-total))
-  walk.startIn(x, y, z, ux, uy, uz, cell)
-  let last = cell
-  let lastWall = walk.s
-  for (;;) {
-    const depth = walk.toWall() * extinction[walk.cell]
-    if (depth > 0) {
-      last = walk.cell
-      lastWall = walk.sWall
-    }
-    if (depth > remaining) break
-    remaining -= depth
-    // What rounding leaves of the last depth lies in the last dust.
-    if (walk.cross() < 0) {
-      walk.startIn(x, y, z, ux, uy, uz, last)
-      walk.s = lastWall
-      remaining = 0
-      break
-    }
-  }
-  if (remaining > 0) walk.s += remaining / extinction[walk.cell]
-  return (-Math.expm1(-total) * scatteringOf(medium, walk.cell)) / extinction[walk.cell]
-}
-
 /** Scatters the packet where the walk stands: a new direction, and a new polarisation where there is one, by the law of the dust there. */
 export function scatterHere(
   walk: Walk,
@@ -132,6 +88,7 @@ export class Launcher {
   from: 'star' | 'dust' | 'ambient' = 'star'
   /** Where the even sequence of impact parameters begins; drawn when first needed. */
   private lattice = -1
+  private readonly way = new WayFromStar()
 
   /** With `forced`, light of point stars starts where it is scattered for the first time; else at the star. */
   constructor(
@@ -164,10 +121,10 @@ export class Launcher {
       this.weight = chosen.luminosity * scale
     } else if (chosen.kind === 'free-star') {
       const [x, y, z] = chosen.at
-      isotropicDirection(out, uniform(), uniform())
+      directionInOrder(out, Math.min((choice - below) / chance, 1 - 1e-12), uniform)
       walk.startAt(x, y, z, out[0], out[1], out[2])
       this.weight = chosen.luminosity * scale
-      if (this.forced) this.weight *= scatterOnTheWay(walk, this.medium, uniform)
+      if (this.forced) this.weight *= this.way.scatter(walk, this.medium, uniform)
     } else if (this.forced) {
       const column = Math.min((choice - below) / chance, 1 - 1e-12)
       this.weight = chosen.removed * scale * firstScattering(walk as SphericalWalk, this.medium, chosen, column, uniform)

@@ -22,6 +22,13 @@ export interface ScatterMedium {
   spheres: Float64Array
 }
 
+/** Sum of the scattering coefficients of a cell, cm-1. */
+export function scatteringOf(medium: ScatterMedium, cell: number): number {
+  let total = 0
+  for (let law = 0; law < medium.asymmetry.length; law++) total += medium.scattering[law * medium.cells + cell]
+  return total
+}
+
 /** Square of the radius of the largest sphere at the centre of cells of one dimension, cm2; 0 for none. */
 export function centralRadius2({ spheres }: ScatterMedium): number {
   let most = 0

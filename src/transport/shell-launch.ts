@@ -4,8 +4,8 @@ import { sampleBin } from '../math/cdf.js'
 import { GOLDEN } from '../math/golden.js'
 import { meanImportance } from './importance.js'
 import { impactParameter } from './launch.js'
-import { drawLaw, scatteringOf } from './scatter-launch.js'
-import type { ScatterLaunch, ScatterMedium } from './scatter-medium.js'
+import { drawLaw } from './scatter-launch.js'
+import { type ScatterLaunch, type ScatterMedium, scatteringOf } from './scatter-medium.js'
 
 /** Starts the packets of a batch in cells of one dimension, one after another: light of point stars where it is first scattered. */
 export class ShellLauncher {

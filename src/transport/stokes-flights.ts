@@ -3,8 +3,8 @@ import { SphericalWalk } from '../grid/walk.js'
 import { exponential } from '../math/exponential.js'
 import { GOLDEN_STEP, SHARE_OF_STEP } from '../math/golden.js'
 import { ROULETTE_BELOW, SURVIVAL } from './flight.js'
-import { drawLaw, Launcher, scatteringOf } from './scatter-launch.js'
-import { centralRadius2, FLIGHT_BINS, FLIGHT_STEPS, flightLookup, type ScatterMedium } from './scatter-medium.js'
+import { drawLaw, Launcher } from './scatter-launch.js'
+import { centralRadius2, FLIGHT_BINS, FLIGHT_STEPS, flightLookup, type ScatterMedium, scatteringOf } from './scatter-medium.js'
 import { Stokes } from './stokes.js'
 
 const { lookup } = flightLookup()

@@ -21,6 +21,8 @@ export function tallyTowards(
   const { walls, cells, extinction, scattering, asymmetry, spheres } = medium
   const count = observers.length / 3
   const laws = asymmetry.length
+  // Of one law the coefficient is the same for all that a cell gains: it comes in the end, and the loop reads an array less.
+  const single = laws === 1
   const copies = new TurnedCopies(walls)
   const { count: turns, cos: cosTurn, sin: sinTurn, places } = copies
   const tally = new Float64Array(cells * copies.azimuths * count)
@@ -64,7 +66,7 @@ export function tallyTowards(
       const step = collides ? remaining / extinction[cell] : free
       copies.place(walk, step)
       for (let law = 0; law < laws; law++) {
-        const amount = weight * step * scattering[law * cells + cell]
+        const amount = single ? weight * step : weight * step * scattering[law * cells + cell]
         let from = law * turns * count
         for (let k = 0; k < turns; k++) {
           const base = places[k] * count
@@ -80,6 +82,10 @@ export function tallyTowards(
         if (toStar < toWall || walk.cross() < 0) weight = 0
       }
     }
+  }
+  if (single) {
+    const values = copies.azimuths * count
+    for (let i = 0; i < tally.length; i++) tally[i] *= scattering[Math.floor(i / values)]
   }
   return tally
 }
