@@ -6,7 +6,7 @@ import { drawing, fitted, text } from '../draw/svg.js'
 import { linearTicks } from '../draw/ticks.js'
 import { paintMap } from './map-panel.js'
 import { mapNote, shownDust } from './map-plot.js'
-import type { PlaneStructure } from './structure.js'
+import type { PlaneComponent, PlaneStructure } from './structure.js'
 
 const room = { left: 86, right: 130, below: 62, head: 70, foot: 30, margin: 16 }
 const titleStyle = { size: 17, anchor: 'start', bold: true } as const
@@ -21,7 +21,7 @@ export function planesPlot({ components, pixels }: PlaneStructure, title: string
   const maps = columns.flatMap(({ component, plane }, i) => {
     const left = i * columnWidth + room.left
     const name = `${component.name}, plane ${plane.axes.join('-')}`
-    const { density, temperature } = shownDust(component)
+    const { density, temperature } = inPlanes(component, shownDust(component))
     const contents = [
       { values: density, map: viridis, title: 'density (g/cm³)' },
       { values: temperature, map: inferno, title: 'temperature (K)' }
@@ -45,6 +45,17 @@ export function planesPlot({ components, pixels }: PlaneStructure, title: string
     ])
   )
   return canvas.encode()
+}
+
+/** Values of the cells that show in one of the planes, for colours of which none is left to others; NaN elsewhere. */
+function inPlanes(
+  { planes }: PlaneComponent,
+  { density, temperature }: ReturnType<typeof shownDust>
+): ReturnType<typeof shownDust> {
+  const shows = new Uint8Array(density.length)
+  for (const { cells } of planes) for (const cell of cells) if (cell >= 0) shows[cell] = 1
+  const kept = (values: Float64Array) => values.map((value, cell) => (shows[cell] === 1 ? value : Number.NaN))
+  return { density: kept(density), temperature: kept(temperature) }
 }
 
 function lengths(half: number, [across, up]: [string, string], pixels: number, left: number, top: number): string[] {
