@@ -4,7 +4,7 @@ import { runKept } from '../workers/run-kept.js'
 import { type Batches, divide, groupOf } from './batches.js'
 import { addTally, copySums, emptySums, type GroupSums } from './group-sums.js'
 
-/** Packets of the first round, unless exactly so many are asked for. */
+/** Packets of the first round, unless more or exactly so many are asked for. */
 export const FIRST_ROUND = 2048
 /** A round is at most so many times larger than all before it, and that much larger than the error asks for. */
 const FASTEST = 16
@@ -29,6 +29,8 @@ export interface RoundsRequest {
   /** Text that the random streams of all batches start from. */
   seed: string
   atMost: number
+  /** Fewer packets tell nothing of the error. */
+  atLeast?: number
   /** Relative error to reach; null: one round of `atMost` packets. */
   precision: number | null
   /** Relative error of all rounds so far. */
@@ -78,8 +80,8 @@ export async function playRounds(
   onProgress: (progress: RoundsProgress) => void,
   stop?: AbortSignal
 ): Promise<RoundsOutcome | 'stopped'> {
-  const { medium, atMost, precision, errorOf } = request
-  const first = precision === null ? atMost : Math.min(FIRST_ROUND, atMost)
+  const { medium, atMost, atLeast = 0, precision, errorOf } = request
+  const first = precision === null ? atMost : Math.min(Math.max(FIRST_ROUND, atLeast), atMost)
   const state =
     (ledger.take(name) as RoundsState | undefined) ??
     ({ sums: emptySums(), packets: 0, error: Number.NaN, round: 0, size: first, done: 0, finished: false } satisfies RoundsState)

@@ -8,6 +8,9 @@ import { scatterMedium } from './scatter-medium.js'
 import type { ScatteredLight } from './scattered-light.js'
 import type { TurningMatrices } from './scattered-stokes.js'
 
+/** Packets for each cell of three dimensions by which most of them are met: those that are not would seem to have no noise. */
+const MET = 0.25
+
 /** Packets that find the scattered light at one wavelength, and what their sums mean. */
 export interface Scattering {
   request: RoundsRequest
@@ -53,6 +56,7 @@ export function scattering(
       input: { observers },
       seed: `${seed}/light/${light.wavelength}`,
       atMost: effort.cameras,
+      ...(model.dimensions === 3 && { atLeast: MET * model.cells }),
       precision: effort.precision,
       errorOf: async (sums) => errorOf(await lightOf(sums))
     },
