@@ -10,7 +10,7 @@ opacities: {soot: {law: power, reference: {wavelength: 1 um, absorption: 1000 cm
 dust: [{name: dust, opacity: soot, temperature: none, amount: {mass: 1e-6 Msun}, ${dust}}]
 grid: ${grid}
 effort: {precision: 1 %, equilibrium: 1000, cameras: 1000}
-cameras: [{name: sky, view: {inclination: 40 deg, azimuth: 70 deg, roll: 20 deg}, field: [240 au, 320 au], pixels: [48, 64], wavelengths: [1 um]}]
+cameras: [{name: sky, view: {inclination: 40 deg, azimuth: 70 deg}, field: [240 au, 320 au], pixels: [36, 48], wavelengths: [1 um]}]
 `
 
 async function columnOf(dust: string, grid: string) {
