@@ -9,14 +9,17 @@ import { inflow } from '../sources/ambient.js'
 import { powerBins } from '../sources/power-bins.js'
 import type { EquilibriumMedium, EquilibriumSource } from '../transport/equilibrium.js'
 import { binnedLaws } from './binned-laws.js'
+import { type CentralLight, centralLight } from './central-light.js'
 
 /** The medium of the temperature phase with what its solution needs on the main thread. */
 export interface EquilibriumSetup {
   medium: EquilibriumMedium
   grid: WavelengthGrid
   tables: EmissionTable[]
-  /** All sources together, erg/s. */
+  /** What the packets of all sources carry together, erg/s. */
   luminosity: number
+  /** Starlight that needs no packets on its way to where it meets dust. */
+  central?: CentralLight
   /** Luminosity of the stars in each bin, erg/s. */
   starlight: Float64Array
   /** What ambient fields send into the outer sphere in each bin, erg/s. */
@@ -54,14 +57,23 @@ export function equilibriumSetup(model: Model): EquilibriumSetup {
   const starlight = new Float64Array(bins)
   const powers: number[] = []
   const sources: EquilibriumSource[] = []
+  const inMiddle = new Float64Array(bins)
   for (const { spec, spectrum } of stars) {
     const light = powerBins(spectrum, grid)
+    const central = spec.extent === 'point' && model.dimensions < 3
     light.forEach((value, k) => {
       starlight[k] += value
+      if (central) inMiddle[k] += value
     })
+    if (central) continue
     powers.push(spectrum.luminosity)
     const radius = spec.extent === 'sphere' ? spec.radius! : 0
     sources.push({ kind: 'star', at: spec.at, radius, bins: makeSamplingTable(light, 1, bins, allocateShared) })
+  }
+  const central = model.dimensions < 3 ? centralLight(model, { bins, density, absorption, extinction }, inMiddle) : undefined
+  if (central && central.caught > 0) {
+    powers.push(central.caught)
+    sources.push(central.source)
   }
   const outer = reachOf(walls)
   const ambient = new Float64Array(bins)
@@ -115,6 +127,7 @@ export function equilibriumSetup(model: Model): EquilibriumSetup {
     grid,
     tables,
     luminosity,
+    ...(central && { central }),
     starlight,
     ambient
   }

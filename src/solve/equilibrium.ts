@@ -120,14 +120,15 @@ export function needsEquilibrium({ dust, effort }: Scene): boolean {
 
 function budgetOf(
   { emitted, escaped, returned, kept }: RoundTally,
-  { luminosity, ambient }: EquilibriumSetup,
+  { luminosity, central, ambient }: EquilibriumSetup,
   packets: number
 ): EnergyBudget {
   const scale = luminosity / packets
+  const past = central?.escaped ?? 0
   return {
-    emitted: emitted * scale,
+    emitted: emitted * scale + past,
     ambient: ambient.reduce((sum, value) => sum + value, 0),
-    escaped: escaped * scale,
+    escaped: escaped * scale + past,
     returned: returned * scale,
     kept: kept * scale
   }

@@ -97,6 +97,7 @@ export function temperaturesFrom(
   const { temperature, sigma, slope } = result
   const deviation = new Float32Array(temperature.length * GROUPS)
   const perPacket = setup.luminosity / packets
+  const direct = setup.central?.heating
   const symmetric = !isOctree(model.walls) && components.every(({ shape }) => shape.symmetry !== 'none')
   components.forEach(({ spec, density }, c) => {
     if (spec.temperature !== 'solve') return
@@ -112,10 +113,12 @@ export function temperaturesFrom(
         sigma[at] = Number.NaN
         continue
       }
-      temperature[at] = temperatureOf(table, (sum * perPacket) / volume[i])
+      const heating = sum * perPacket + (direct ? 0.5 * (direct[at] + direct[twin]) : 0)
+      temperature[at] = temperatureOf(table, heating / volume[i])
+      const scale = perPacket / heating
       let square = 0
       for (let g = 0; g < GROUPS; g++) {
-        const relative = (0.5 * (absorbed[g][at] + absorbed[g][twin]) * GROUPS) / sum - 1
+        const relative = scale * (0.5 * (absorbed[g][at] + absorbed[g][twin]) * GROUPS - sum)
         deviation[at * GROUPS + g] = relative
         square += relative * relative
       }

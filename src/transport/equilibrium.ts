@@ -1,9 +1,11 @@
 import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
 import { cosineAt, drawPlace, type ScatteringTables } from '../dust/scattering-tables.js'
 import { type Cells, openWalk } from '../grid/cells.js'
+import type { SphericalWalk } from '../grid/walk.js'
 import { type SamplingTable, sampleBin } from '../math/cdf.js'
 import { GOLDEN } from '../math/golden.js'
 import type { Vector } from '../scene/types.js'
+import { meetDust } from './central-launch.js'
 import { deflect, isotropicDirection } from './direction.js'
 import { emittingCell, launchFromCell, launchFromSurface, launchInwards } from './launch.js'
 import { diffuse, type WalkLevels } from './random-walk.js'
@@ -40,6 +42,15 @@ export interface EquilibriumMedium {
 
 export type EquilibriumSource =
   | { kind: 'star'; at: Vector; radius: number; bins: SamplingTable }
+  /** Point stars at the centre of spherical cells of one or two dimensions: packets begin where their light first meets dust. */
+  | {
+      kind: 'central-stars'
+      bins: SamplingTable
+      /** bins x columns of cells seen from the centre. */
+      columns: SamplingTable
+      /** components x columns x (nr + 1): mass over area from the centre to each radial wall, g/cm2. */
+      columnDensity: Float64Array
+    }
   /** Isotropic light from outside. */
   | { kind: 'ambient'; bins: SamplingTable }
   /** Dust of fixed temperature: cells in proportion to luminosity, bins from the row of `emission` of its component. */
@@ -102,10 +113,15 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
     choice = Math.min((choice - below) / (medium.sourceTable.cumulative[index] - below), 1 - 1e-12)
     let energy = sourceEnergy[index]
     let bin: number
+    let met = false
     if (source.kind === 'ambient') {
       if (lattice < 0) lattice = uniform()
       bin = sampleBin(source.bins, 0, choice)
       energy *= launchInwards(walk, walls, (lattice + n * GOLDEN) % 1, uniform, direction)
+    } else if (source.kind === 'central-stars') {
+      bin = sampleBin(source.bins, 0, choice)
+      meetDust(walk as SphericalWalk, medium, source, bin, uniform)
+      met = true
     } else if (source.kind === 'star') {
       bin = sampleBin(source.bins, 0, choice)
       const [x, y, z] = source.at
@@ -121,7 +137,7 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
     }
 
     emitted += energy
-    let remaining = -Math.log(uniform())
+    let remaining = met ? 0 : -Math.log(uniform())
     let alive = walk.cell >= 0
     if (!alive) escaped += energy
     while (alive) {
