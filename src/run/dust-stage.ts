@@ -10,9 +10,9 @@ import type { StarColumns } from '../solve/star-columns.js'
 import { type Sublimation, sublimate, sublimationPiece, withoutDust } from '../solve/sublimation.js'
 import { type DustTemperatures, givenTemperatures } from '../solve/temperatures.js'
 import type { WorkerPool } from '../workers/pool.js'
+import { HEAT_SHARE } from './error-shares.js'
 import { type RunProgress, Stopped } from './progress.js'
-import { quickError } from './quick-error.js'
-import { SHARE } from './share.js'
+import { quickErrors } from './quick-error.js'
 import { type PhaseTime, stopwatch } from './stopwatch.js'
 import { emptyProducts } from './wanted.js'
 import type { Crew } from './with-crew.js'
@@ -98,9 +98,9 @@ async function errorOfEmission(model: Model, dust: DustTemperatures, columns: St
   const errors = Array.from(wavelengths, (wavelength) => {
     const wanted = wantedAt(wavelength)
     const indices = wanted.map(() => 0)
-    return quickError(model, dustLight(model, dust, wavelength, columns), [], wanted, indices, 'all', pool)
+    return quickErrors(model, dustLight(model, dust, wavelength, columns), [], wanted, indices, 'all', pool)
   })
-  return Math.max(0, ...(await Promise.all(errors))) / SHARE
+  return Math.max(0, ...(await Promise.all(errors)).flat()) / HEAT_SHARE
 }
 
 /** At most LOOKS of all wavelengths, spread evenly over the list. */

@@ -13,8 +13,8 @@ import type { Wanted } from './wanted.js'
 /** Relative accuracy of the rays of a quick look in one dimension. */
 const ACCURACY = 0.01
 
-/** Largest relative error among the wanted, of scattered light alone or of all light, by a quick look. */
-export async function quickError(
+/** Relative error of each of the wanted, of scattered light alone or of all light, by a quick look. */
+export async function quickErrors(
   model: Model,
   light: DustLight,
   scattered: ScatteredLight[],
@@ -22,7 +22,7 @@ export async function quickError(
   indices: number[],
   part: 'scattered' | 'all',
   pool: WorkerPool
-): Promise<number> {
+): Promise<number[]> {
   const errors = wanted.map(async (want, i) => {
     const medium = mediumFor(model, light, scattered, indices[i])
     if (part === 'scattered') medium.emissionGroups = new Float32Array()
@@ -35,5 +35,5 @@ export async function quickError(
     const total = value[EMITTED] + value[SCATTERED] + directFlux(model, light, medium, view, radius)
     return total > 0 ? standardError(value.subarray(FIRST_GROUP, RAY_VALUES)) / total : 0
   })
-  return Math.max(0, ...(await Promise.all(errors)))
+  return Promise.all(errors)
 }
