@@ -1,7 +1,7 @@
 import { standardError } from '../math/stats.js'
 import { GROUPS } from '../solve/groups.js'
 import type { IntensityField } from './field.js'
-import { EMITTED, FIRST_GROUP, SCATTERED } from './ray-values.js'
+import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray-values.js'
 
 /** Regions of one patch at most. */
 const MOST_REGIONS = 20_000
@@ -37,6 +37,8 @@ export interface Sector {
 
 interface Region extends Sector {
   value: Float64Array
+  /** Its middle ray, with all of the area. */
+  middle: number
   /** Its four rays less the middle one. */
   difference: number
   /** Size of that difference, and a share of what the rays differ among themselves. */
@@ -81,12 +83,14 @@ export function integratePatch(field: IntensityField, patch: Patch, tolerance: n
     field.sample(b * cos, b * sin, ray, withGroups)
     return 0.5 * span * (end - start)
   }
-  const measure = ({ from, to, start, end }: Sector): Region => {
-    const middleArea = sample(from, to, start, end, Math.SQRT1_2, 0.5, true)
+  const measure = ({ from, to, start, end }: Sector, whole?: Region): Region => {
+    // The photon noise needs no such care as the value: the middle ray stands for the region, and in proportion to the light for its halves.
+    const inherits = whole !== undefined && whole.middle > 0 && size === RAY_VALUES
+    const middleArea = sample(from, to, start, end, Math.SQRT1_2, 0.5, !inherits)
     const middle = middleArea > 0 ? middleArea * (ray[EMITTED] + ray[SCATTERED]) : 0
     const value = new Float64Array(size)
-    // The photon noise needs no such care as the value: the middle ray stands for the region.
-    if (middleArea > 0) for (let k = FIRST_GROUP; k < size; k++) value[k] = middleArea * ray[k]
+    if (inherits) for (let k = FIRST_GROUP; k < size; k++) value[k] = (middle / whole.middle) * whole.value[k]
+    else if (middleArea > 0) for (let k = FIRST_GROUP; k < size; k++) value[k] = middleArea * ray[k]
     for (let q = 0; q < 4; q++) {
       const area = sample(from, to, start, end, q % 2 === 0 ? OUTER : INNER, q < 2 ? LOW : HIGH, false)
       const weight = 0.5 * area * (q % 2 === 0 ? OUTER_WEIGHT : 1 - OUTER_WEIGHT)
@@ -97,7 +101,7 @@ export function integratePatch(field: IntensityField, patch: Patch, tolerance: n
     const difference = value[EMITTED] + value[SCATTERED] - middle
     const doubt = Math.abs(difference) + DISTRUST * (Math.max(a, b, c, d) - Math.min(a, b, c, d))
     const inwards = Math.abs(a - b) + Math.abs(c - d) >= Math.abs(a - c) + Math.abs(b - d)
-    return { from, to, start, end, value, difference, doubt, inwards }
+    return { from, to, start, end, value, middle, difference, doubt, inwards }
   }
 
   let total = 0
@@ -122,8 +126,8 @@ export function integratePatch(field: IntensityField, patch: Patch, tolerance: n
     const { from, to, start, end, inwards } = region
     count(region, -1)
     const half = inwards ? Math.sqrt(0.5 * (from * from + to * to)) : 0.5 * (start + end)
-    insert(measure(inwards ? { from, to: half, start, end } : { from, to, start, end: half }))
-    insert(measure(inwards ? { from: half, to, start, end } : { from, to, start: half, end }))
+    insert(measure(inwards ? { from, to: half, start, end } : { from, to, start, end: half }, region))
+    insert(measure(inwards ? { from: half, to, start, end } : { from, to, start: half, end }, region))
   }
   const integral = { value: new Float64Array(size), error: error() }
   for (const { value } of heap) for (let k = 0; k < size; k++) integral.value[k] += value[k]

@@ -119,7 +119,8 @@ export async function playRounds(
       const missing = state.packets * Math.min(FASTEST, Math.max(1, MARGIN * (state.error / precision) ** 2 - 1))
       state.size = Math.min(missing, atMost - state.packets)
     }
-    ledger.offer(name, piece, true)
+    // A first round is sooner played again than written.
+    ledger.offer(name, piece, state.packets > FIRST_ROUND)
   }
   pool.forget('scattering', name)
   return state
