@@ -2,17 +2,7 @@
 import yargs, { type CommandModule } from 'yargs'
 import { hideBin } from 'yargs/helpers'
 import { version } from '../output/version.js'
-import { check } from './check.js'
-import { compare } from './compare.js'
-import { convert } from './convert.js'
 import { failureOf, reportFailure, UsageError } from './failure.js'
-import { join } from './join.js'
-import { observe } from './observe.js'
-import { opacity } from './opacity.js'
-import { report } from './report.js'
-import { run } from './run.js'
-import { schema } from './schema.js'
-import { sweep } from './sweep.js'
 
 // A reader such as `head` that closes our output early is no error.
 process.stdout.on('error', (error: NodeJS.ErrnoException) => {
@@ -29,15 +19,29 @@ function missingWords(command: string): string {
   return command === 'observe' ? 'The run or the instrument file is' : 'The scene file is'
 }
 
-const commands = [check, run, join, opacity, convert, observe, compare, report, sweep, schema] as CommandModule[]
-const names = commands.map(({ command }) => String(command).split(' ')[0])
+/** Every command by its name, loaded when needed: together they take longer to load than `convert` to run. */
+const modules = {
+  check: async () => (await import('./check.js')).check,
+  run: async () => (await import('./run.js')).run,
+  join: async () => (await import('./join.js')).join,
+  opacity: async () => (await import('./opacity.js')).opacity,
+  convert: async () => (await import('./convert.js')).convert,
+  observe: async () => (await import('./observe.js')).observe,
+  compare: async () => (await import('./compare.js')).compare,
+  report: async () => (await import('./report.js')).report,
+  sweep: async () => (await import('./sweep.js')).sweep,
+  schema: async () => (await import('./schema.js')).schema
+}
+const names = Object.keys(modules) as (keyof typeof modules)[]
 
 const words = hideBin(process.argv)
 try {
+  const asked = names.filter((name) => name === words[0])
+  const commands = await Promise.all((asked.length > 0 ? asked : names).map((name) => modules[name]()))
   await yargs(words)
     .scriptName('motelight')
     .usage('$0 <command>\n\nImages and spectra of dusty sources from a scene file.')
-    .command(commands)
+    .command(commands as CommandModule[])
     .demandCommand(1, `Which command? There are ${names.slice(0, -1).join(', ')} and ${names.at(-1)}.`)
     .strict()
     .version(version)

@@ -49,10 +49,11 @@ export async function withCrew<Result>(
   const clock = stopwatch()
   const plan = planCells(scene, tables ?? (await grainTables(scene, workers, onProgress, stop)))
   requireMemory(plan, workers, memory)
-  const model = buildModel(scene, plan)
-  onBegin?.()
+  // The threads start up while the model is built.
   const pool = new WorkerPool(workers, new URL('./thread.js', import.meta.url))
   try {
+    const model = buildModel(scene, plan)
+    onBegin?.()
     return await work({ model, pool, ledger, columnsToStars: columnsToStars(pool, onProgress, stop), time: clock() })
   } finally {
     await pool.close()

@@ -1,9 +1,10 @@
-import * as vega from 'vega'
-import { compile, type TopLevelSpec } from 'vega-lite'
+import type { TopLevelSpec } from 'vega-lite'
 import { fontFamily } from '../draw/rasterize.js'
 
 /** Draws a Vega-Lite specification as an SVG; the same specification gives the same bytes. */
 export async function vegaSvg(spec: TopLevelSpec): Promise<string> {
+  // Large packages, which few files need.
+  const [vega, { compile }] = await Promise.all([import('vega'), import('vega-lite')])
   vega.resetSVGDefIds()
   const view = new vega.View(vega.parse(compile({ ...spec, config: { ...look, ...spec.config } }).spec), { renderer: 'none' })
   try {
