@@ -4,6 +4,7 @@ import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
 import { version } from '../src/output/version.js'
 import type { BenchCase } from './case.js'
+import { bias } from './cases/bias.js'
 import { figureOfMerit } from './cases/figure-of-merit.js'
 import { grainTableCases } from './cases/grain-tables.js'
 import { memory } from './cases/memory.js'
@@ -21,6 +22,7 @@ import { type Row, rowOf, tableLines } from './table.js'
 const cases: BenchCase[] = [
   ...packetLoop,
   ...figureOfMerit,
+  ...bias,
   ...wholeRunCases,
   ...polarisedCases,
   ...scaling,

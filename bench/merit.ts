@@ -22,15 +22,22 @@ export function ourPicture(path: string): Picture {
   return { light: scattered.map((value, i) => value + emitted[i]), variance: sigma.map((value) => value * value) }
 }
 
-/** The mean of the yardstick's images; the scatter between them gives the variance. */
-export function peeledPicture(path: string): Picture {
+/** The yardstick's images. */
+export function peeledGroups(path: string): Float64Array[] {
   const images = readDoubles(path)
   const pixels = images.length / GROUPS
+  return Array.from({ length: GROUPS }, (_, g) => images.subarray(g * pixels, (g + 1) * pixels))
+}
+
+/** The mean of the yardstick's images; the scatter between them gives the variance. */
+export function peeledPicture(path: string): Picture {
+  const images = peeledGroups(path)
+  const pixels = images[0].length
   const light = new Float64Array(pixels)
   const variance = new Float64Array(pixels)
   for (let i = 0; i < pixels; i++) {
-    for (let g = 0; g < GROUPS; g++) light[i] += images[g * pixels + i] / GROUPS
-    for (let g = 0; g < GROUPS; g++) variance[i] += (images[g * pixels + i] - light[i]) ** 2 / (GROUPS * (GROUPS - 1))
+    for (let g = 0; g < GROUPS; g++) light[i] += images[g][i] / GROUPS
+    for (let g = 0; g < GROUPS; g++) variance[i] += (images[g][i] - light[i]) ** 2 / (GROUPS * (GROUPS - 1))
   }
   return { light, variance }
 }
@@ -43,6 +50,18 @@ export function relativeVariance({ light, variance }: Picture, bright: Picture):
   const scale = sum(light) / sum(bright.light)
   const relative = variance.map((value, i) => value / (scale * bright.light[i]) ** 2)
   return medianOverBulk(relative, bright.light, BULK)
+}
+
+/** Indices of the brightest pixels that together hold BULK of the flux. */
+export function brightPixels(light: Float64Array): number[] {
+  const order = Array.from(light.keys()).sort((a, b) => light[b] - light[a])
+  const all = BULK * sum(light)
+  let held = 0
+  const count = order.findIndex((pixel) => {
+    held += light[pixel]
+    return held >= all
+  })
+  return order.slice(0, count + 1)
 }
 
 const sum = (values: Float64Array) => values.reduce((total, value) => total + value, 0)
