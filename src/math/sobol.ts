@@ -25,23 +25,52 @@ const directions: [polynomial: number, first: number[]][] = [
 export const mostSobolDimensions = directions.length + 1
 
 /**
- * The first `count` points of the Sobol sequence in the unit cube, one array of `dimensions` numbers a point, in the order of
- * the Gray code (Antonov & Saleev 1979). With `uniform` they are scrambled by random lower-triangular matrices and a digital
- * shift (Matousek 1998, J. Complexity 14, 527), which keeps their evenness and makes each point uniform in (0, 1).
+ * The points of the Sobol sequence in the unit cube, one after another, in the order of the Gray code (Antonov & Saleev 1979). With
+ * `uniform` they are scrambled by random lower-triangular matrices and a digital shift (Matousek 1998, J. Complexity 14, 527), which
+ * keeps their evenness and makes each point uniform in (0, 1).
  */
-export function sobolPoints(count: number, dimensions: number, uniform?: () => number): number[][] {
-  if (dimensions > mostSobolDimensions) throw new RangeError(`at most ${mostSobolDimensions} dimensions`)
-  const columns = Array.from({ length: dimensions }, (_, d) => scrambled(directionNumbers(d), uniform))
-  const state = columns.map(() => (uniform ? word(uniform) : 0))
-  const middle = uniform ? 0.5 : 0
-  const points: number[][] = []
-  for (let i = 0; i < count; i++) {
-    points.push(state.map((bits) => (bits + middle) / 2 ** BITS))
-    // The lowest zero bit of i tells which bit of the Gray code changes.
-    const bit = Math.clz32(1) - Math.clz32(~i & (i + 1))
-    for (let d = 0; d < dimensions; d++) state[d] = (state[d] ^ columns[d][bit]) >>> 0
+export class SobolSequence {
+  /** The present point; the first one from the start. */
+  readonly point: Float64Array
+  private readonly columns: Uint32Array[]
+  private readonly state: Uint32Array
+  private readonly middle: number
+  private index = 0
+
+  /** Throws RangeError beyond `mostSobolDimensions`. */
+  constructor(dimensions: number, uniform?: () => number) {
+    if (dimensions > mostSobolDimensions) throw new RangeError(`at most ${mostSobolDimensions} dimensions`)
+    this.columns = Array.from({ length: dimensions }, (_, d) => Uint32Array.from(scrambled(directionNumbers(d), uniform)))
+    this.state = Uint32Array.from(this.columns, () => (uniform ? word(uniform) : 0))
+    this.middle = uniform ? 0.5 : 0
+    this.point = new Float64Array(dimensions)
+    this.show()
   }
-  return points
+
+  /** Goes on to the next point. */
+  next(): void {
+    const { state, columns, index } = this
+    // The lowest zero bit of the index tells which bit of the Gray code changes.
+    const bit = Math.clz32(1) - Math.clz32(~index & (index + 1))
+    for (let d = 0; d < state.length; d++) state[d] ^= columns[d][bit]
+    this.index++
+    this.show()
+  }
+
+  private show(): void {
+    const { point, state, middle } = this
+    for (let d = 0; d < point.length; d++) point[d] = (state[d] + middle) / 2 ** BITS
+  }
+}
+
+/** The first `count` points of a SobolSequence, one array of `dimensions` numbers a point. */
+export function sobolPoints(count: number, dimensions: number, uniform?: () => number): number[][] {
+  const sequence = new SobolSequence(dimensions, uniform)
+  return Array.from({ length: count }, () => {
+    const point = Array.from(sequence.point)
+    sequence.next()
+    return point
+  })
 }
 
 /** The direction numbers of a dimension as fractions in 32 bits, most significant first. */

@@ -1,10 +1,14 @@
 import { henyeyGreenstein } from '../dust/phase-function.js'
 import { openWalk } from '../grid/cells.js'
+import { LeadingDraws } from '../math/leading-draws.js'
 import { collide, EARLY_BELOW, EARLY_SURVIVAL } from './flight.js'
 import { Launcher, scatterHere } from './scatter-launch.js'
 import type { ScatterMedium } from './scatter-medium.js'
 import { pathToStar } from './star-spheres.js'
 import { TurnedCopies } from './turned-copies.js'
+
+/** Numbers of a packet that are drawn evenly over a batch. */
+const EVEN = 10
 
 /**
  * Light scattered towards each observer in cells of two or three dimensions: sum of weight x path x scattering coefficient x
@@ -16,8 +20,10 @@ export function tallyTowards(
   medium: ScatterMedium,
   observers: Float64Array,
   packets: number,
-  uniform: () => number
+  random: () => number
 ): Float64Array {
+  const draws = new LeadingDraws(EVEN, random)
+  const uniform = draws.draw
   const { walls, cells, extinction, scattering, asymmetry, spheres } = medium
   const count = observers.length / 3
   const laws = asymmetry.length
@@ -32,6 +38,7 @@ export function tallyTowards(
   const out = new Float64Array(3)
 
   for (let n = 0; n < packets; n++) {
+    draws.begin()
     launcher.next(walk, n, uniform, out)
     if (launcher.atScattering) scatterHere(walk, medium, walk.s, uniform, out)
     const first = launcher.weight
