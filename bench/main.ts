@@ -13,6 +13,7 @@ import { packetLoop } from './cases/packet-loop.js'
 import { polarisedCases } from './cases/polarised.js'
 import { scaling } from './cases/scaling.js'
 import { stateCases } from './cases/state.js'
+import { thickDust } from './cases/thick-dust.js'
 import { wholeRunCases } from './cases/whole-runs.js'
 import { workerCases } from './cases/workers.js'
 import { compileNative } from './native.js'
@@ -24,6 +25,7 @@ const cases: BenchCase[] = [
   ...figureOfMerit,
   ...bias,
   ...wholeRunCases,
+  thickDust,
   ...polarisedCases,
   ...scaling,
   ...octree,

@@ -1,6 +1,6 @@
 /** What a scene of the bench is made with. */
 interface Effort {
-  /** Packets for each wavelength, or the precision to reach. */
+  /** Packets for each wavelength and for the temperatures, or the precision to reach. */
   packets?: number
   precision?: string
   /** Scattering law, default Henyey-Greenstein. */
@@ -8,7 +8,9 @@ interface Effort {
 }
 
 const effortOf = ({ packets, precision }: Effort) =>
-  packets ? `{precision: none, cameras: ${packets}}` : `{precision: ${precision}, cameras: 1e9, equilibrium: 1e9}`
+  packets
+    ? `{precision: none, cameras: ${packets}, equilibrium: ${packets}}`
+    : `{precision: ${precision}, cameras: 1e9, equilibrium: 1e9}`
 
 const dustOf = (slope: number, phase = 'henyey-greenstein') =>
   `{law: power, reference: {wavelength: 1 um, absorption: 1000 cm2/g}, slope: ${slope}, scattering: {albedo: 0.6, asymmetry: 0.5}, phase: ${phase}}`
