@@ -1,5 +1,3 @@
-import { mkdtempSync } from 'node:fs'
-import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
 import { beforeAll, describe, expect, it } from 'vitest'
@@ -12,8 +10,9 @@ import { runScene } from '../../src/run/run-scene.js'
 import { parseScene } from '../../src/scene/read.js'
 import { AU } from '../../src/units/constants.js'
 import { sumOf } from '../physics/pictures.js'
+import { folderWith } from '../support/folder-with.js'
 
-const folder = mkdtempSync(join(tmpdir(), 'motelight-peel-'))
+const folder = folderWith()
 const native = compileNative(fileURLToPath(new URL('../../bench/native', import.meta.url)), folder)
 
 const cases = [

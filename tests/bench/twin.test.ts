@@ -1,6 +1,3 @@
-import { mkdtempSync } from 'node:fs'
-import { tmpdir } from 'node:os'
-import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
 import { describe, expect, it } from 'vitest'
 import { lightDust } from '../../bench/lit-dust.js'
@@ -9,8 +6,9 @@ import { shellScene } from '../../bench/scenes.js'
 import { Twin, tallyDifference } from '../../bench/twin.js'
 import { stream } from '../../src/math/random.js'
 import { tallyFlights } from '../../src/transport/flights.js'
+import { folderWith } from '../support/folder-with.js'
 
-const folder = mkdtempSync(join(tmpdir(), 'motelight-twin-'))
+const folder = folderWith()
 const native = compileNative(fileURLToPath(new URL('../../bench/native', import.meta.url)), folder)
 const PACKETS = 20_000
 

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { filesIn, folderWith, motelight, sceneText, sceneWith } from './motelight.js'
+import { folderWith } from '../support/folder-with.js'
+import { filesIn, motelight, sceneText, sceneWith } from './motelight.js'
 
 async function checked(text: string, ...words: string[]) {
   const folder = folderWith({

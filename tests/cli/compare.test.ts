@@ -3,8 +3,9 @@ import { join } from 'node:path'
 import { expect, it } from 'vitest'
 import { imageValues } from '../../src/data/fits/image.js'
 import { readFits, unitNamed } from '../../src/data/fits/read.js'
+import { folderWith } from '../support/folder-with.js'
 import { askPython, astropy, fitsverify, itWith } from '../support/python.js'
-import { filesIn, folderWith, motelight, sceneText } from './motelight.js'
+import { filesIn, motelight, sceneText } from './motelight.js'
 
 const night = `observations:
   - {name: map, kind: picture, camera: face, wavelength: 60 um, unit: mJy/arcsec2, noise: {kind: rms, level: 50 mJy/arcsec2, per: pixel}}

@@ -3,7 +3,8 @@ import { join } from 'node:path'
 import { setTimeout } from 'node:timers/promises'
 import { execa } from 'execa'
 import { describe, expect, it } from 'vitest'
-import { filesIn, folderWith, motelight, program, sceneText, sceneWith } from './motelight.js'
+import { folderWith } from '../support/folder-with.js'
+import { filesIn, motelight, program, sceneText, sceneWith } from './motelight.js'
 
 /** Breaks every worker thread, between two of its tasks, once there is something on disk to go on with. */
 const saboteur = `const { isMainThread } = require('node:worker_threads')

@@ -5,7 +5,8 @@ import { setTimeout } from 'node:timers/promises'
 import { execa } from 'execa'
 import { describe, expect, it } from 'vitest'
 import { stream } from '../../src/math/random.js'
-import { filesIn, folderWith, motelight, program, sceneWith } from './motelight.js'
+import { folderWith } from '../support/folder-with.js'
+import { filesIn, motelight, program, sceneWith } from './motelight.js'
 
 /** Runs killed in all; `npm run test:kill` asks for 50. */
 const KILLED = Number(process.env.KILLED ?? 4)

@@ -1,6 +1,5 @@
-import { mkdirSync, mkdtempSync, readdirSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
-import { dirname, join } from 'node:path'
+import { readdirSync } from 'node:fs'
+import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
 import { execa } from 'execa'
 
@@ -43,16 +42,6 @@ export function sceneWith(...changes: [string, string][]): string {
     if (!text.includes(from)) throw new Error(`the scene does not hold ${from}`)
     return text.replace(from, to)
   }, sceneText)
-}
-
-/** A new empty folder with the given files. */
-export function folderWith(files: Record<string, string>): string {
-  const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
-  for (const [name, text] of Object.entries(files)) {
-    mkdirSync(dirname(join(folder, name)), { recursive: true })
-    writeFileSync(join(folder, name), text)
-  }
-  return folder
 }
 
 /** Every file below a folder, sorted. */

@@ -3,7 +3,8 @@ import { expect, it, test } from 'vitest'
 import { imageValues } from '../../src/data/fits/image.js'
 import { readFits, unitNamed } from '../../src/data/fits/read.js'
 import { openRun } from '../../src/observe/run-source.js'
-import { filesIn, folderWith, motelight, sceneText, sceneWith } from './motelight.js'
+import { folderWith } from '../support/folder-with.js'
+import { filesIn, motelight, sceneText, sceneWith } from './motelight.js'
 
 const night = `title: A small mirror
 observations:

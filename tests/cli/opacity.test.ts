@@ -3,8 +3,9 @@ import { readdirSync, readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { PNG } from 'pngjs'
 import { describe, expect, it } from 'vitest'
+import { folderWith } from '../support/folder-with.js'
 import { askPython, astropy, itWith, type OutsideTool } from '../support/python.js'
-import { filesIn, folderWith, motelight, sceneWith } from './motelight.js'
+import { filesIn, motelight, sceneWith } from './motelight.js'
 
 const power = `law: power
     reference: {wavelength: 0.55 um, absorption: 1e4 cm2/g}

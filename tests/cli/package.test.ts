@@ -3,7 +3,8 @@ import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
 import { execa } from 'execa'
 import { expect, it } from 'vitest'
-import { filesIn, folderWith, sceneText } from './motelight.js'
+import { folderWith } from '../support/folder-with.js'
+import { filesIn, sceneText } from './motelight.js'
 
 const root = fileURLToPath(new URL('../..', import.meta.url))
 

@@ -3,7 +3,8 @@ import { join } from 'node:path'
 import { setTimeout } from 'node:timers/promises'
 import { execa } from 'execa'
 import { describe, expect, it } from 'vitest'
-import { filesIn, folderWith, motelight, program, sceneText, sceneWith } from './motelight.js'
+import { folderWith } from '../support/folder-with.js'
+import { filesIn, motelight, program, sceneText, sceneWith } from './motelight.js'
 
 const power = `law: power
     reference: {wavelength: 0.55 um, absorption: 1e4 cm2/g}

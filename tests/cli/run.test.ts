@@ -2,8 +2,9 @@ import { createHash } from 'node:crypto'
 import { cpSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, it } from 'vitest'
+import { folderWith } from '../support/folder-with.js'
 import { astropy, itWith, runPython } from '../support/python.js'
-import { filesIn, folderWith, motelight, sceneText, sceneWith } from './motelight.js'
+import { filesIn, motelight, sceneText, sceneWith } from './motelight.js'
 
 const products = [
   'dust/cells.fits',
@@ -194,7 +195,7 @@ print(t['r'].to_value(u.au).min(), t['r'].to_value(u.au).max(), t['theta'].to_va
 
 /** A folder of its own with the run in it. */
 async function copiedRun() {
-  const folder = folderWith({})
+  const folder = folderWith()
   cpSync((await oneRun()).folder, folder, { recursive: true })
   return { folder, out: join(folder, 'out/scene') }
 }

@@ -1,6 +1,7 @@
 import { execa } from 'execa'
 import { describe, expect, it } from 'vitest'
-import { filesIn, folderWith, motelight, program, sceneWith } from './motelight.js'
+import { folderWith } from '../support/folder-with.js'
+import { filesIn, motelight, program, sceneWith } from './motelight.js'
 
 const long = sceneWith(['precision: none, equilibrium: 8000', 'precision: none, equilibrium: 1e9'])
 
@@ -30,7 +31,7 @@ describe('stopping', () => {
 
 describe('schema', () => {
   it('prints the JSON Schema', async () => {
-    const { stdout, exitCode } = await motelight(folderWith({}), 'schema')
+    const { stdout, exitCode } = await motelight(folderWith(), 'schema')
     expect(exitCode).toBe(0)
     expect(JSON.parse(stdout)).toMatchObject({ $schema: 'https://json-schema.org/draft/2020-12/schema', type: 'object' })
   })

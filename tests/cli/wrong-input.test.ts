@@ -1,7 +1,8 @@
 import { mkdirSync, readdirSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, it } from 'vitest'
-import { filesIn, folderWith, motelight, sceneText, sceneWith } from './motelight.js'
+import { folderWith } from '../support/folder-with.js'
+import { filesIn, motelight, sceneText, sceneWith } from './motelight.js'
 
 const power = `law: power
     reference: {wavelength: 0.55 um, absorption: 1e4 cm2/g}

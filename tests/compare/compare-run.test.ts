@@ -7,7 +7,8 @@ import { readData } from '../../src/compare/read-data.js'
 import { card } from '../../src/output/fits/card.js'
 import { SceneError } from '../../src/scene/error.js'
 import { runFolder } from '../observe/run-folder.js'
-import { fits, folderWith, type Layout, wcs } from './measured.js'
+import { folderWith } from '../support/folder-with.js'
+import { fits, type Layout, wcs } from './measured.js'
 
 const layout: Layout = { width: 16, height: 12, side: 0.5 }
 const count = layout.width * layout.height

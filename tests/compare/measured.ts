@@ -1,6 +1,3 @@
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
-import { join } from 'node:path'
 import { parsePicture } from '../../src/compare/measured-picture.js'
 import type { PictureData } from '../../src/compare/types.js'
 import { drawNormal } from '../../src/math/draw.js'
@@ -93,11 +90,4 @@ export function lopsided(
 export function noisy(values: ArrayLike<number>, sigma: number, seed: string): Float64Array {
   const random = stream(seed)
   return Float64Array.from(values, (value) => value + sigma * drawNormal(random))
-}
-
-/** A folder with files, by name. */
-export function folderWith(files: Record<string, string | Uint8Array>): string {
-  const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
-  for (const [name, content] of Object.entries(files)) writeFileSync(join(folder, name), content)
-  return folder
 }

@@ -1,5 +1,4 @@
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, it } from 'vitest'
 import { DataError } from '../../src/data/error.js'
@@ -7,9 +6,10 @@ import { imageValues } from '../../src/data/fits/image.js'
 import { firstImage, readFits, unitNamed } from '../../src/data/fits/read.js'
 import { tableColumn } from '../../src/data/fits/table.js'
 import { imageHdu } from '../../src/output/fits/image.js'
+import { folderWith } from '../support/folder-with.js'
 import { astropy, itWith, runPython } from '../support/python.js'
 
-const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
+const folder = folderWith()
 const place = (name: string) => join(folder, name)
 
 /** The message of the DataError that reading these bytes ends in. */

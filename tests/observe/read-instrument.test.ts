@@ -1,5 +1,3 @@
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { describe, expect, it, test } from 'vitest'
 import { instrumentJsonSchema, readInstrument } from '../../src/observe/read-instrument.js'
@@ -7,6 +5,7 @@ import { realCard } from '../../src/output/fits/card.js'
 import { imageHdu } from '../../src/output/fits/image.js'
 import { SceneError, type SceneProblem } from '../../src/scene/error.js'
 import { ARCSECOND, DEGREE, MILLIARCSECOND } from '../../src/units/angles.js'
+import { folderWith } from '../support/folder-with.js'
 
 const text = `title: Test bench
 observations:
@@ -41,10 +40,8 @@ const psf = (...cards: string[]) => imageHdu('primary', [3, 3], new Float64Array
 const scaled = psf(realCard('CDELT1', -1e-4), realCard('CDELT2', 1e-4))
 
 function place(content: string, files: Record<string, string | Uint8Array> = {}): string {
-  const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
   const all = { 'filter.csv': filter, 'stations.csv': stations, 'psf.fits': scaled, 'night.yaml': content, ...files }
-  for (const [name, bytes] of Object.entries(all)) writeFileSync(join(folder, name), bytes)
-  return join(folder, 'night.yaml')
+  return join(folderWith(all), 'night.yaml')
 }
 
 function problems(from: string, to: string, files = {}): SceneProblem[] {

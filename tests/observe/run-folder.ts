@@ -1,10 +1,10 @@
-import { mkdirSync, mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { mkdirSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import type { CameraImages } from '../../src/camera/types.js'
 import { cameraFits } from '../../src/output/fits/camera-fits.js'
 import { spectrumEcsv } from '../../src/output/spectrum-ecsv.js'
 import { exampleImages, exampleScene, exampleSpectrum } from '../output/examples.js'
+import { folderWith } from '../support/folder-with.js'
 
 /** Flux of a grey source of 2 Jy at every wavelength. */
 export const spectrum = exampleSpectrum([1e-4, 1.5e-4, 2e-4, 3e-4, 5e-4], [2e-23, 2e-23, 2e-23, 2e-23, 2e-23])
@@ -31,7 +31,7 @@ export function images(unit = 'MJy/sr'): CameraImages {
 
 /** A folder that holds what `observe` reads of a run: camera `face` and spectrum `sed`. */
 export function runFolder(change: { fits?: Uint8Array; record?: object } = {}): string {
-  const folder = join(mkdtempSync(join(tmpdir(), 'motelight-')), 'run')
+  const folder = join(folderWith(), 'run')
   for (const name of ['images', 'spectra']) mkdirSync(join(folder, name), { recursive: true })
   const record = {
     program: 'motelight',

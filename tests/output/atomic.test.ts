@@ -1,10 +1,10 @@
-import { mkdirSync, mkdtempSync, readdirSync, readFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { mkdirSync, readdirSync, readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, it } from 'vitest'
 import { writeAtomic } from '../../src/output/atomic.js'
+import { folderWith } from '../support/folder-with.js'
 
-const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
+const folder = folderWith()
 
 describe('writeAtomic', () => {
   it('makes the folder, writes, replaces, and leaves nothing else', async () => {

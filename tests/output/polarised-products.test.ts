@@ -1,6 +1,5 @@
 import { execFileSync } from 'node:child_process'
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { PNG } from 'pngjs'
 import { describe, expect, it } from 'vitest'
@@ -10,10 +9,11 @@ import { azimuthalPicture, azimuthalStokes } from '../../src/output/png/azimutha
 import { polarisationTicks } from '../../src/output/png/polarisation-ticks.js'
 import { polarisedPicture } from '../../src/output/png/polarised-picture.js'
 import { spectrumEcsv } from '../../src/output/spectrum-ecsv.js'
+import { folderWith } from '../support/folder-with.js'
 import { astropy, fitsverify, itWith, runPython } from '../support/python.js'
 import { exampleImages, exampleScene, exampleSpectrum } from './examples.js'
 
-const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
+const folder = folderWith()
 
 /** Wholly azimuthal about the middle of an 8 x 8 image, 40 % of 1 MJy/sr: Q = -0.4 cos 2 phi, U = -0.4 sin 2 phi. */
 const swirl = (unit = 'MJy/sr') =>

@@ -5,8 +5,9 @@ import { afterAll, beforeAll, describe, expect } from 'vitest'
 import { ecsvNumbers, readEcsv } from '../../src/data/ecsv.js'
 import { imageValues } from '../../src/data/fits/image.js'
 import { readFits, unitNamed } from '../../src/data/fits/read.js'
-import { folderWith, motelight, sceneWith } from '../cli/motelight.js'
+import { motelight, sceneWith } from '../cli/motelight.js'
 import { chromium, startChromium } from '../support/chromium.js'
+import { folderWith } from '../support/folder-with.js'
 import { itWith } from '../support/python.js'
 
 const night = `title: A small mirror

@@ -4,7 +4,8 @@ import { expect, it } from 'vitest'
 import { cameraFits } from '../../src/output/fits/camera-fits.js'
 import { readPictures } from '../../src/report/read-picture.js'
 import { parseScene } from '../../src/scene/read.js'
-import { folderWith, sceneWith } from '../cli/motelight.js'
+import { sceneWith } from '../cli/motelight.js'
+import { folderWith } from '../support/folder-with.js'
 
 /** The FITS file of a camera of that many pixels a side, whose value is the wavelength's number plus a hundredth of the pixel's. */
 function cameraFile(pixels: number, wavelengths: number) {
@@ -23,7 +24,7 @@ function cameraFile(pixels: number, wavelengths: number) {
     emitted: dark,
     scattered: total
   }
-  const path = join(folderWith({}), 'face.fits')
+  const path = join(folderWith(), 'face.fits')
   writeFileSync(path, cameraFits({ ...images, stars: [], samplingError: [], beyond: [] }, scene))
   return { path, file: 'images/face.fits', heading: 'Camera face' }
 }

@@ -1,5 +1,4 @@
-import { chmodSync, mkdtempSync, readdirSync, readFileSync, statSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { chmodSync, readdirSync, readFileSync, statSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { afterEach, beforeEach, describe, expect, it } from 'vitest'
 import { tabulateGrains } from '../../src/dust/grains/tabulate-grains.js'
@@ -8,6 +7,7 @@ import { grainTables } from '../../src/run/grain-tables.js'
 import { parseScene } from '../../src/scene/read.js'
 import type { GrainsOpacitySpec } from '../../src/scene/types.js'
 import { sceneWith } from '../cli/motelight.js'
+import { folderWith } from '../support/folder-with.js'
 
 const power = `law: power
     reference: {wavelength: 0.55 um, absorption: 1e4 cm2/g}
@@ -22,7 +22,7 @@ const scene = parseScene(sceneWith([power, grains]), 'scene.yaml')
 let cache = ''
 const before = process.env.XDG_CACHE_HOME
 beforeEach(() => {
-  cache = mkdtempSync(join(tmpdir(), 'motelight-cache-'))
+  cache = folderWith()
   process.env.XDG_CACHE_HOME = cache
 })
 afterEach(() => {
@@ -56,7 +56,7 @@ describe('grainTables', () => {
   })
 
   it('are kept by content: other grains are another table, other names of files are not', async () => {
-    const folder = mkdtempSync(join(tmpdir(), 'grains-'))
+    const folder = folderWith()
     const constants = 'wavelength [um],n,k\n0.1,1.6,0.5\n1,1.7,0.03\n10,1.5,0.8\n'
     for (const name of ['a.csv', 'b.csv']) writeFileSync(join(folder, name), constants)
     const withFile = (name: string, density = '3.2') =>

@@ -1,6 +1,5 @@
 import { createHash } from 'node:crypto'
-import { cpSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { cpSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, it } from 'vitest'
 import type { Estimator } from '../../src/run/estimator.js'
@@ -9,9 +8,10 @@ import { readScene } from '../../src/scene/read.js'
 import { divide, groupOf } from '../../src/solve/batches.js'
 import { GROUPS } from '../../src/solve/groups.js'
 import { shareOf } from '../../src/solve/share.js'
+import { folderWith } from '../support/folder-with.js'
 import { smallScenes } from './small-scenes.js'
 
-const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
+const folder = folderWith()
 const files = ['images/c.fits', 'spectra/s.ecsv', 'dust/cells.fits']
 
 function sceneOf(kind: keyof typeof smallScenes, seed?: string) {
@@ -20,7 +20,7 @@ function sceneOf(kind: keyof typeof smallScenes, seed?: string) {
   return readScene(file, { ...(seed !== undefined && { seed }) })
 }
 
-const newPath = () => join(mkdtempSync(join(folder, 'run-')), 'out')
+const newPath = () => join(folderWith(), 'out')
 
 const base = { workers: 1, estimator: 'emissivity' as Estimator, onProgress: () => {}, force: false, resume: false }
 const play = (scene: ReturnType<typeof sceneOf>, request: Partial<FolderRequest> & { path: string }) =>

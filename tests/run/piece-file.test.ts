@@ -1,13 +1,13 @@
 import { createHash } from 'node:crypto'
-import { mkdtempSync, readFileSync, writeFileSync } from 'node:fs'
+import { readFileSync, writeFileSync } from 'node:fs'
 import { open } from 'node:fs/promises'
-import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { describe, expect, it } from 'vitest'
 import { stream } from '../../src/math/random.js'
 import { readPiece, writePiece } from '../../src/run/state/piece-file.js'
+import { folderWith } from '../support/folder-with.js'
 
-const path = join(mkdtempSync(join(tmpdir(), 'motelight-')), 'piece.bin')
+const path = join(folderWith(), 'piece.bin')
 const piece = {
   rounds: [{ packets: 3, error: Number.NaN, change: Number.POSITIVE_INFINITY }],
   done: 2,

@@ -1,9 +1,9 @@
-import { existsSync, mkdtempSync, readdirSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { existsSync, readdirSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, it } from 'vitest'
 import { difference, type Identity } from '../../src/run/state/identity.js'
 import { StateFolder } from '../../src/run/state/state-folder.js'
+import { folderWith } from '../support/folder-with.js'
 
 const identity: Identity = {
   version: '1.0.0',
@@ -15,7 +15,7 @@ const identity: Identity = {
   estimator: 'emissivity'
 }
 
-const newPath = () => join(mkdtempSync(join(tmpdir(), 'motelight-')), 'state')
+const newPath = () => join(folderWith(), 'state')
 
 describe('a folder of pieces', () => {
   it('gives the last piece kept under a name to another process, until it is forgotten', async () => {

@@ -1,9 +1,9 @@
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, test } from 'vitest'
 import { parseScene } from '../../src/scene/read.js'
 import { sceneYaml } from '../../src/scene/write.js'
+import { folderWith } from '../support/folder-with.js'
 import { exampleWith, problemsOf } from './example.js'
 
 const giant = '- name: giant\n    temperature: 2800 K\n    luminosity: 6000 Lsun'
@@ -31,7 +31,7 @@ describe('ambient fields', () => {
   })
 
   test('a table gives an intensity', () => {
-    const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
+    const folder = folderWith()
     writeFileSync(join(folder, 'sky.csv'), 'wavelength [um],intensity-lambda [erg/s/cm2/um/sr]\n2,3\n1,5\n')
     const { sources, inputs } = parseScene(sky('{table: sky.csv}'), join(folder, 's.yaml'))
     // I_nu = I_lambda lambda^2 / c

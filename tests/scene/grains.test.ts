@@ -1,10 +1,10 @@
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, test } from 'vitest'
 import { parseScene } from '../../src/scene/read.js'
 import type { CurveOpacitySpec, GrainsOpacitySpec } from '../../src/scene/types.js'
 import { sceneYaml } from '../../src/scene/write.js'
+import { folderWith } from '../support/folder-with.js'
 import { exampleWith, problemsOf } from './example.js'
 
 const power = `law: power
@@ -20,7 +20,7 @@ const curve = `law: extinction-curve
     reference: {wavelength: 0.55 um, extinction: 2.8e4 cm2/g}`
 const rock = 'wavelength [um],n,k\n0.1,1.6,0.5\n1,1.7,0.03\n10,1.5,0.8\n'
 
-const folder = mkdtempSync(join(tmpdir(), 'grains-'))
+const folder = folderWith()
 const file = join(folder, 'scene.yaml')
 writeFileSync(join(folder, 'rock.csv'), rock)
 writeFileSync(join(folder, 'waves.csv'), 'wavenumber [cm-1],k,n\n1000,0.8,1.5\n10000,0.03,1.7\n1e5,0.5,1.6\n')

@@ -1,5 +1,4 @@
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, it, test } from 'vitest'
 import { SceneError } from '../../src/scene/error.js'
@@ -7,6 +6,7 @@ import { isPolarised } from '../../src/scene/is-polarised.js'
 import { parseMatrixTable } from '../../src/scene/phase-law.js'
 import { parseScene } from '../../src/scene/read.js'
 import { sceneYaml } from '../../src/scene/write.js'
+import { folderWith } from '../support/folder-with.js'
 import { example, exampleWith, problemsOf } from './example.js'
 
 const head = 'angle [deg],s11,s12,s33,s34'
@@ -58,7 +58,7 @@ describe('a table of a scattering law', () => {
 })
 
 describe('the phase of an opacity', () => {
-  const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
+  const folder = folderWith()
   writeFileSync(join(folder, 'phase.csv'), sound.join('\n'))
   const read = (phase: string) => parseScene(exampleWith(phaseLine(phase)), join(folder, 'scene.yaml'))
 

@@ -1,10 +1,10 @@
 import { createHash } from 'node:crypto'
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, test } from 'vitest'
 import { parseScene, readScene } from '../../src/scene/read.js'
 import type { StarSpec } from '../../src/scene/types.js'
+import { folderWith } from '../support/folder-with.js'
 import { example, exampleWith } from './example.js'
 
 const AU = 1.495978707e13 // IAU 2012 Resolution B2
@@ -158,7 +158,7 @@ spectra: [{name: f, wavelengths: [1 um]}]`,
 
 describe('readScene', () => {
   test('reads a file; the seed can be overridden', () => {
-    const file = join(mkdtempSync(join(tmpdir(), 'scene-')), 'giant.yaml')
+    const file = join(folderWith(), 'giant.yaml')
     writeFileSync(file, example)
     expect(readScene(file)).toMatchObject({ file, seed: 'winter-1' })
     expect(readScene(file, { seed: '007' }).seed).toBe('007')

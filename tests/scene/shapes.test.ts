@@ -1,16 +1,16 @@
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, test } from 'vitest'
 import { parseScene } from '../../src/scene/read.js'
 import type { DensityCube, DensityPoints } from '../../src/scene/types.js'
 import { sceneYaml } from '../../src/scene/write.js'
 import { AU } from '../../src/units/constants.js'
+import { folderWith } from '../support/folder-with.js'
 import { astropy, itWith, runPython } from '../support/python.js'
 import { exampleWith, problemsOf } from './example.js'
 
 const shell = '{kind: shell, inner: 6 au, outer: 3000 au, slope: -2}'
-const folder = mkdtempSync(join(tmpdir(), 'motelight-shapes-'))
+const folder = folderWith()
 const file = join(folder, 'scene.yaml')
 const withShape = (shape: string) => exampleWith([shell, shape])
 const dustOf = (shape: string) => parseScene(withShape(shape), file).dust[0]

@@ -1,11 +1,11 @@
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, test } from 'vitest'
 import { SceneError } from '../../src/scene/error.js'
 import { parseScene } from '../../src/scene/read.js'
 import { parseOpacityTable, parseSpectrumTable } from '../../src/scene/tables.js'
 import type { TableOpacitySpec } from '../../src/scene/types.js'
+import { folderWith } from '../support/folder-with.js'
 import { exampleWith, problemsOf } from './example.js'
 
 const opacity = (text: string) => parseOpacityTable(text, '/data/t.csv', 't.csv')
@@ -89,7 +89,7 @@ describe('spectrum tables', () => {
 })
 
 describe('tables named by a scene', () => {
-  const folder = mkdtempSync(join(tmpdir(), 'scene-'))
+  const folder = folderWith()
   writeFileSync(join(folder, 'grey.csv'), 'wavelength [um],absorption [cm2/g],scattering [cm2/g]\n1,2,0\n2,1,0\n')
   writeFileSync(join(folder, 'star.csv'), 'wavelength [um],flux-lambda [W/m2/um]\n1,2\n2,1\n')
   writeFileSync(join(folder, 'bad.csv'), 'wavelength [um],absorption [cm2/g]\n1,2\n2,-1\n')

@@ -1,11 +1,11 @@
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import fc from 'fast-check'
 import { describe, expect, test } from 'vitest'
 import { parseScene } from '../../src/scene/read.js'
 import type { Scene } from '../../src/scene/types.js'
 import { sceneYaml } from '../../src/scene/write.js'
+import { folderWith } from '../support/folder-with.js'
 import { example, exampleWith } from './example.js'
 
 function expectRoundTrip(scene: Scene): void {
@@ -63,7 +63,7 @@ describe('sceneYaml', () => {
   })
 
   test('with data files and a disk, from another folder', () => {
-    const folder = mkdtempSync(join(tmpdir(), 'scene-'))
+    const folder = folderWith()
     writeFileSync(join(folder, 'grey.csv'), 'wavelength [um],absorption [cm2/g],scattering [cm2/g]\n1,2,0\n2,1,0\n')
     writeFileSync(join(folder, 'star.csv'), 'wavelength [um],flux-lambda [W/m2/um]\n1,2\n2,1\n')
     const power = /law: power[\s\S]*asymmetry: 0.3}/.exec(example)![0]

@@ -1,9 +1,9 @@
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, test } from 'vitest'
 import { SceneError } from '../../src/scene/error.js'
 import { readScene } from '../../src/scene/read.js'
+import { folderWith } from '../support/folder-with.js'
 import { example, exampleWith, problemsOf } from './example.js'
 
 const shell = '{kind: shell, inner: 6 au, outer: 3000 au, slope: -2}'
@@ -171,7 +171,7 @@ describe('files that are no scenes', () => {
   })
 
   test('files that cannot be read', () => {
-    const folder = mkdtempSync(join(tmpdir(), 'scene-'))
+    const folder = folderWith()
     const file = (name: string, content: string | Buffer) => {
       writeFileSync(join(folder, name), content)
       return join(folder, name)

@@ -1,7 +1,7 @@
 import { chmodSync, readdirSync } from 'node:fs'
 import { join } from 'node:path'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
-import { folderWith } from '../cli/motelight.js'
+import { folderWith } from '../support/folder-with.js'
 import { itWith } from '../support/python.js'
 import { Cluster, slurmTool } from './cluster.js'
 import { sweep, sweepFolder, tablesOf } from './sweeps.js'
@@ -94,8 +94,8 @@ describe('sweeps on Slurm', () => {
 describe('without Slurm', () => {
   it('says so, and the sweep can be made here', async () => {
     const folder = sweepFolder(`scene: scene.yaml\n${onePath}`)
-    const { exitCode, stderr } = await sweep(folder, { PATH: folderWith({}) }, '--on', 'slurm')
+    const { exitCode, stderr } = await sweep(folder, { PATH: folderWith() }, '--on', 'slurm')
     expect({ exitCode, stderr }).toEqual({ exitCode: 2, stderr: 'this machine has no Slurm: there is no `scontrol`' })
-    expect(await sweep(folder, { PATH: folderWith({}) })).toMatchObject({ exitCode: 0, stderr: '' })
+    expect(await sweep(folder, { PATH: folderWith() })).toMatchObject({ exitCode: 0, stderr: '' })
   })
 })

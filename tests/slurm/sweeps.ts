@@ -1,7 +1,8 @@
 import { readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { execa } from 'execa'
-import { folderWith, program, sceneWith } from '../cli/motelight.js'
+import { program, sceneWith } from '../cli/motelight.js'
+import { folderWith } from '../support/folder-with.js'
 import { visibilityPlan, visibilityText } from '../sweep/example.js'
 import { processesWith } from './cluster.js'
 

@@ -16,7 +16,8 @@ import { readPlan } from '../../src/sweep/plan/read-plan.js'
 import { runHere } from '../../src/sweep/players/run-here.js'
 import { judged } from '../../src/sweep/results/outcomes.js'
 import { sweepTable } from '../../src/sweep/results/sweep-table.js'
-import { filesIn, folderWith, motelight, sceneText } from '../cli/motelight.js'
+import { filesIn, motelight, sceneText } from '../cli/motelight.js'
+import { folderWith } from '../support/folder-with.js'
 import { planFolder, planned, problemsOf, visibilityPlan, visibilityText } from './example.js'
 
 const depth = 'dust.wind.amount.optical-depth'
@@ -83,8 +84,8 @@ describe('data that need images', () => {
     const wide = `vary: {${depth}: {from: 0.5, to: 2, count: ${mostModelFolders + 1}}}\n`
     const folder = planFolder(wide + visibilityPlan, { 'uv.csv': visibilityText })
     const large = readPlan(join(folder, 'plan.yaml'))
-    const packed = await openSweep(join(folderWith({}), 'out'), large)
-    const foldered = await openSweep(join(folderWith({}), 'out'), { ...large, models: large.models.slice(0, 2) })
+    const packed = await openSweep(join(folderWith(), 'out'), large)
+    const foldered = await openSweep(join(folderWith(), 'out'), { ...large, models: large.models.slice(0, 2) })
     for (const sweep of [packed, foldered]) await runHere(sweep, [2], options)
     const verdictIn = (sweep: typeof packed) => resultStore(sweep).finished([2]).get(2)!.seen!.verdict!
     expect(verdictIn(packed)).toEqual(verdictIn(foldered))
@@ -98,7 +99,7 @@ describe('data that need images', () => {
 
   it('that changed while a model was made leave it open', async () => {
     const folder = planFolder(`vary: {${depth}: [1]}\n${visibilityPlan}`, { 'uv.csv': visibilityText })
-    const sweep = await openSweep(join(folderWith({}), 'out'), readPlan(join(folder, 'plan.yaml')))
+    const sweep = await openSweep(join(folderWith(), 'out'), readPlan(join(folder, 'plan.yaml')))
     writeFileSync(join(folder, 'uv.csv'), visibilityText.replace('9, 1', '8, 1'))
     await runHere(sweep, [1], options)
     expect(resultStore(sweep).finished([1]).size).toBe(0)
@@ -116,7 +117,7 @@ describe('an instrument', () => {
   it('observes each model, with noise of its own, and leaves data and columns', async () => {
     const folder = planFolder(`vary: {${depth}: [1, 2]}\nobserve: tool.yaml\n`, { 'tool.yaml': tool })
     const plan = readPlan(join(folder, 'plan.yaml'))
-    const sweep = await openSweep(join(folderWith({}), 'out'), plan)
+    const sweep = await openSweep(join(folderWith(), 'out'), plan)
     await runHere(sweep, [1, 2], options)
     expect(filesIn(join(sweep.model(1), 'observed'))).toEqual([
       'instrument.yaml',

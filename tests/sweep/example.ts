@@ -2,7 +2,8 @@ import { join } from 'node:path'
 import type { DataList } from '../../src/compare/types.js'
 import { parseTable } from '../../src/data/table.js'
 import { readPlan } from '../../src/sweep/plan/read-plan.js'
-import { folderWith, sceneText } from '../cli/motelight.js'
+import { sceneText } from '../cli/motelight.js'
+import { folderWith } from '../support/folder-with.js'
 
 export const dataText = `wavelength [um], flux [Jy], sigma [Jy]
 2.2, 300, 10

@@ -4,7 +4,8 @@ import { setTimeout } from 'node:timers/promises'
 import { execa } from 'execa'
 import { describe, expect, it } from 'vitest'
 import { stream } from '../../src/math/random.js'
-import { filesIn, folderWith, program, sceneWith } from '../cli/motelight.js'
+import { filesIn, program, sceneWith } from '../cli/motelight.js'
+import { folderWith } from '../support/folder-with.js'
 import { visibilityPlan, visibilityText } from './example.js'
 
 /** Sweeps killed; `npm run test:sweep` asks for 20. */

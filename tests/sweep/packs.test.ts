@@ -8,7 +8,7 @@ import { PackStore } from '../../src/sweep/folder/pack-store.js'
 import { resultStore } from '../../src/sweep/folder/result-store.js'
 import { openSweep } from '../../src/sweep/folder/sweep-folder.js'
 import { runHere } from '../../src/sweep/players/run-here.js'
-import { folderWith } from '../cli/motelight.js'
+import { folderWith } from '../support/folder-with.js'
 import { planned } from './example.js'
 
 const plan = (count: number) => `vary: {dust.wind.amount.optical-depth: {from: 0.5, to: 2, count: ${count}}}\n`
@@ -18,8 +18,8 @@ const comparable = (results: Map<number, ModelResult>) => [...results.values()].
 describe('packed results', () => {
   it('of a large sweep are those that folders would hold, without the folders', async () => {
     const large = planned(plan(mostModelFolders + 1))
-    const packed = await openSweep(join(folderWith({}), 'out'), large)
-    const foldered = await openSweep(join(folderWith({}), 'out'), { ...large, models: large.models.slice(0, 2) })
+    const packed = await openSweep(join(folderWith(), 'out'), large)
+    const foldered = await openSweep(join(folderWith(), 'out'), { ...large, models: large.models.slice(0, 2) })
     await runHere(packed, [1, 2], options)
     await runHere(foldered, [1, 2], options)
     expect(resultStore(packed)).toBeInstanceOf(PackStore)
@@ -34,7 +34,7 @@ describe('packed results', () => {
   })
 
   it('a line cut short is no result, and a model that two made counts once', async () => {
-    const folder = await openSweep(join(folderWith({}), 'out'), planned(plan(mostModelFolders + 1)))
+    const folder = await openSweep(join(folderWith(), 'out'), planned(plan(mostModelFolders + 1)))
     const store = new PackStore(folder)
     const result = (model: number, packets: number): ModelResult => ({
       model,

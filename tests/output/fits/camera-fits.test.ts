@@ -1,16 +1,16 @@
 import { execFileSync } from 'node:child_process'
-import { mkdtempSync, writeFileSync } from 'node:fs'
-import { tmpdir } from 'node:os'
+import { writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { describe, expect, it } from 'vitest'
 import { cameraFits } from '../../../src/output/fits/camera-fits.js'
 import { cellsFits } from '../../../src/output/fits/cells-fits.js'
 import { imageHdu } from '../../../src/output/fits/image.js'
 import { tableHdu } from '../../../src/output/fits/table.js'
+import { folderWith } from '../../support/folder-with.js'
 import { astropy, fitsverify, itWith, runPython } from '../../support/python.js'
 import { exampleImages, exampleScene } from '../examples.js'
 
-const folder = mkdtempSync(join(tmpdir(), 'motelight-'))
+const folder = folderWith()
 
 function written(name: string, bytes: Uint8Array): string {
   const path = join(folder, name)

@@ -10,7 +10,8 @@ import { marginalOf } from '../../../src/sweep/meaning/marginal.js'
 import { profileOf } from '../../../src/sweep/meaning/profile.js'
 import { runHere } from '../../../src/sweep/players/run-here.js'
 import { compareFluxes } from '../../../src/sweep/results/outcomes.js'
-import { folderWith, sceneWith } from '../../cli/motelight.js'
+import { sceneWith } from '../../cli/motelight.js'
+import { folderWith } from '../../support/folder-with.js'
 import { fluxList, planned } from '../example.js'
 
 const scene = sceneWith(
@@ -33,7 +34,7 @@ data: [{name: old, file: four.csv, spectrum: sed}]
 `
   const rows = wavelengthUm.map((wavelength) => `${wavelength}, 1, 1`).join('\n')
   const files = { 'scene.yaml': scene, 'four.csv': `wavelength [um], flux [Jy], sigma [Jy]\n${rows}\n` }
-  const folder = await openSweep(join(folderWith({}), 'out'), planned(plan, files))
+  const folder = await openSweep(join(folderWith(), 'out'), planned(plan, files))
   const models = folder.sweep.models.map((_, i) => i + 1)
   await runHere(folder, models, { workers: 2, onProgress: () => {} })
   return { sweep: folder.sweep, results: resultStore(folder).finished(models) }

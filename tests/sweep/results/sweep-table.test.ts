@@ -7,7 +7,7 @@ import { parquet } from '../../../src/output/parquet.js'
 import type { ModelResult } from '../../../src/sweep/folder/model-result.js'
 import { judged } from '../../../src/sweep/results/outcomes.js'
 import { sweepTable } from '../../../src/sweep/results/sweep-table.js'
-import { folderWith } from '../../cli/motelight.js'
+import { folderWith } from '../../support/folder-with.js'
 import { askPython, astropy, itWith } from '../../support/python.js'
 import { planned } from '../example.js'
 
@@ -41,7 +41,7 @@ const outcomes = {
   failures: new Map([[3, { model: 3, message: 'no memory\nat all' }]])
 }
 const table = sweepTable(sweep, judged(sweep, outcomes))
-const folder = folderWith({})
+const folder = folderWith()
 writeFileSync(join(folder, 'models.parquet'), parquet(table, { origin: 'motelight test', title: 'Winds' }))
 writeFileSync(join(folder, 'models.ecsv'), ecsv(table, { title: 'Winds' }))
 
