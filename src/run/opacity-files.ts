@@ -1,6 +1,4 @@
-import { mkdir } from 'node:fs/promises'
 import { join } from 'node:path'
-import { writeAtomic } from '../output/atomic.js'
 import { type EcsvColumn, ecsv } from '../output/ecsv.js'
 import { fractionAxis, linePlot, opacityAxis, type PlotLine } from '../output/plot/line-plot.js'
 import { linearAxis } from '../output/plot/linear-axis.js'
@@ -8,7 +6,7 @@ import { logAxis } from '../output/plot/log-axis.js'
 import { version } from '../output/version.js'
 import { wavelengthLabel } from '../output/wavelength-label.js'
 import type { OpacityReport, ScatteringReport } from './opacity-report.js'
-import { asOutputError } from './output-error.js'
+import { writeOutput } from './output-error.js'
 
 /** Plots leave out wavelengths beyond these, um: opacities are power laws there. */
 const SHOWN_UM: [number, number] = [0.05, 1e4]
@@ -36,15 +34,7 @@ export async function writeOpacityFiles(report: OpacityReport, folder: string): 
     [`${name}-means.svg`, means.svg],
     [`${name}-means.png`, means.png]
   ]
-  for (const [file, data] of files) {
-    const path = join(folder, file)
-    try {
-      await mkdir(folder, { recursive: true })
-      await writeAtomic(path, data)
-    } catch (error) {
-      throw asOutputError(path, error)
-    }
-  }
+  for (const [file, data] of files) await writeOutput(join(folder, file), data)
   return files.map(([file]) => file)
 }
 

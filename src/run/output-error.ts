@@ -1,3 +1,5 @@
+import { writeAtomic } from '../output/atomic.js'
+
 /** The output folder cannot be used as asked; the message says why and what to do. Exit code 2. */
 export class OutputError extends Error {
   override name = 'OutputError'
@@ -8,6 +10,15 @@ export function asOutputError(path: string, error: unknown): unknown {
   const { code } = error as NodeJS.ErrnoException
   if (typeof code !== 'string' || !Object.hasOwn(reasons, code)) return error
   return new OutputError(`cannot write ${path}: ${reasons[code]}`, { cause: error })
+}
+
+/** As `writeAtomic`. Throws OutputError. */
+export async function writeOutput(path: string, data: string | Uint8Array): Promise<void> {
+  try {
+    await writeAtomic(path, data)
+  } catch (error) {
+    throw asOutputError(path, error)
+  }
 }
 
 const reasons: Record<string, string> = {

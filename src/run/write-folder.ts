@@ -1,7 +1,6 @@
 import { rm } from 'node:fs/promises'
 import { join } from 'node:path'
-import { writeAtomic } from '../output/atomic.js'
-import { asOutputError } from './output-error.js'
+import { writeOutput } from './output-error.js'
 import type { RunFolder } from './run-folder.js'
 
 /** A file of a result: its path in the folder, and how its bytes are made. */
@@ -31,14 +30,7 @@ export async function writeFolder<Content extends { state: string }>(
   report?: (record: Content) => string
 ): Promise<Content> {
   const files = [name, ...products.map(({ file }) => file), ...(report ? [reportName] : [])]
-  const write = async (file: string, data: string | Uint8Array) => {
-    const path = join(folder.path, file)
-    try {
-      await writeAtomic(path, data)
-    } catch (error) {
-      throw asOutputError(path, error)
-    }
-  }
+  const write = (file: string, data: string | Uint8Array) => writeOutput(join(folder.path, file), data)
   const union = [...new Set([...files, ...folder.oldFiles])]
   await write(name, asText({ ...record(union), state: 'writing' }))
   for (const { file, make } of products) await write(file, await make())
@@ -56,12 +48,8 @@ function asText(record: object): string {
 /** Writes the page of a finished result anew, and lists it in its record if it was not there. Throws OutputError. */
 export async function rewriteReport(path: string, name: string, record: { files: string[] }, page: string): Promise<string> {
   const file = join(path, reportName)
-  try {
-    await writeAtomic(file, page)
-    if (!record.files.includes(reportName))
-      await writeAtomic(join(path, name), asText({ ...record, files: [...record.files, reportName] }))
-  } catch (error) {
-    throw asOutputError(file, error)
-  }
+  await writeOutput(file, page)
+  if (!record.files.includes(reportName))
+    await writeOutput(join(path, name), asText({ ...record, files: [...record.files, reportName] }))
   return file
 }

@@ -1,7 +1,7 @@
 import { readdirSync, readFileSync } from 'node:fs'
 import { rm } from 'node:fs/promises'
 import { join } from 'node:path'
-import { writeAtomic } from '../../output/atomic.js'
+import { writeOutput } from '../../run/output-error.js'
 import type { SweepFolder } from './sweep-folder.js'
 
 /** Why a model was given up. */
@@ -22,8 +22,9 @@ export function readFailures({ path }: SweepFolder): Map<number, ModelFailure> {
   return found
 }
 
+/** Throws OutputError. */
 export function noteFailure(folder: SweepFolder, failure: ModelFailure): Promise<void> {
-  return writeAtomic(folder.failure(failure.model), `${JSON.stringify(failure)}\n`)
+  return writeOutput(folder.failure(failure.model), `${JSON.stringify(failure)}\n`)
 }
 
 /** Forgets that models were given up, so that they are made again. */

@@ -1,6 +1,7 @@
 import { closeSync, existsSync, fsyncSync, mkdirSync, openSync, readdirSync, readFileSync, writeSync } from 'node:fs'
 import { hostname } from 'node:os'
 import { join } from 'node:path'
+import { asOutputError } from '../../run/output-error.js'
 import { type ModelResult, orNaN } from './model-result.js'
 import type { ResultStore } from './result-store.js'
 import type { SweepFolder } from './sweep-folder.js'
@@ -35,15 +36,20 @@ export class PackStore implements ResultStore {
     return found
   }
 
-  /** Adds a result; it is on the disk when this returns. */
+  /** Adds a result; it is on the disk when this returns. Throws OutputError. */
   add(result: ModelResult): void {
-    mkdirSync(this.folder.packs, { recursive: true })
-    const file = openSync(join(this.folder.packs, `${blockOf(result.model)}.${writer}.jsonl`), 'a')
+    const path = join(this.folder.packs, `${blockOf(result.model)}.${writer}.jsonl`)
     try {
-      writeSync(file, `${JSON.stringify(result)}\n`)
-      fsyncSync(file)
-    } finally {
-      closeSync(file)
+      mkdirSync(this.folder.packs, { recursive: true })
+      const file = openSync(path, 'a')
+      try {
+        writeSync(file, `${JSON.stringify(result)}\n`)
+        fsyncSync(file)
+      } finally {
+        closeSync(file)
+      }
+    } catch (error) {
+      throw asOutputError(path, error)
     }
   }
 }

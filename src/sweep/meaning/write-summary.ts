@@ -1,6 +1,5 @@
 import { join } from 'node:path'
-import { writeAtomic } from '../../output/atomic.js'
-import { asOutputError } from '../../run/output-error.js'
+import { writeOutput } from '../../run/output-error.js'
 import type { SweepFolder } from '../folder/sweep-folder.js'
 import type { Outcomes } from '../results/outcomes.js'
 import { compareBest } from './best-model.js'
@@ -23,12 +22,5 @@ export async function writeSummary(
   const plots = await compareBest(folder, outcomes, model)
   onProgress('drawing likelihoods')
   const contents = [await summaryPage(sweep, summary, plots), `${JSON.stringify(summary, null, 2)}\n`]
-  for (const [i, name] of summaryNames.entries()) {
-    const file = join(path, name)
-    try {
-      await writeAtomic(file, contents[i])
-    } catch (error) {
-      throw asOutputError(file, error)
-    }
-  }
+  for (const [i, name] of summaryNames.entries()) await writeOutput(join(path, name), contents[i])
 }

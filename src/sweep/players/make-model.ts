@@ -3,8 +3,8 @@ import { rm } from 'node:fs/promises'
 import { join } from 'node:path'
 import { observationRecordName } from '../../observe/observation-record.js'
 import { openRun } from '../../observe/run-source.js'
-import { writeAtomic } from '../../output/atomic.js'
 import { dustPiece } from '../../run/dust-stage.js'
+import { writeOutput } from '../../run/output-error.js'
 import { openRunFolder, stateName } from '../../run/run-folder.js'
 import { runInFolder } from '../../run/run-in-folder.js'
 import { identityOf } from '../../run/state/identity.js'
@@ -52,7 +52,7 @@ export async function keepResult(folder: SweepFolder, model: number): Promise<vo
     const { writeObservation } = await import('../../observe/observation-files.js')
     await writeObservation(observed, out, true)
   }
-  if (seen) await writeAtomic(join(path, seenName), `${JSON.stringify(seen)}\n`)
+  if (seen) await writeOutput(join(path, seenName), `${JSON.stringify(seen)}\n`)
 }
 
 /** The scene of a model, its folder with the shared temperatures in it, and the options of its run. */
