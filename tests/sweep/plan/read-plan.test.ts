@@ -114,12 +114,8 @@ design: {${kind}: 64}
   })
 })
 
-it('plans that come with the program are sound', () => {
-  const plan = (path: string) => readPlan(fileURLToPath(new URL(`../../../${path}`, import.meta.url)))
-  const giant = plan('scenes/plans/giant-wind.yaml')
-  expect(giant.models).toHaveLength(45)
-  expect(giant.dataSpectra[0].wavelengths).toHaveLength(7)
-  const disk = plan('examples/two-telescopes/plan.yaml')
-  expect(disk.models).toHaveLength(9)
-  expect(disk.data).toMatchObject({ needsImages: true })
+it('the plan that comes with the program is sound', () => {
+  const sweep = readPlan(fileURLToPath(new URL('../../../scenes/plans/giant-wind.yaml', import.meta.url)))
+  expect(sweep.models).toHaveLength(45)
+  expect(sweep.dataSpectra[0].wavelengths).toHaveLength(7)
 })
