@@ -6,7 +6,7 @@ import { OctreeWalk } from '../../src/grid/octree/octree-walk.js'
 import { buildModel } from '../../src/model/build-model.js'
 import { runScene } from '../../src/run/run-scene.js'
 import { parseScene, readScene } from '../../src/scene/read.js'
-import { folderWith } from '../cli/motelight.js'
+import { folderWith } from '../support/folder-with.js'
 import { sumOf } from './pictures.js'
 
 const sceneOf = (dust: string, grid: string, temperature = '100 K') => `
