@@ -7,7 +7,7 @@ import { openSweep, reopenSweep, type SweepFolder } from '../sweep/folder/sweep-
 import { summarize } from '../sweep/meaning/summary.js'
 import { readPlan } from '../sweep/plan/read-plan.js'
 import { runHere } from '../sweep/players/run-here.js'
-import { judged } from '../sweep/results/outcomes.js'
+import { type Judged, judged } from '../sweep/results/outcomes.js'
 import { writeTables } from '../sweep/results/write-tables.js'
 import type { QueueEntry } from '../sweep/slurm/queue.js'
 import { exitCode } from './exit-code.js'
@@ -101,7 +101,7 @@ async function make(folder: SweepFolder, models: number[], { workers, memory, qu
 async function sumUp(folder: SweepFolder, words: SweepWords): Promise<void> {
   const { sweep: plan, path } = folder
   if (!plan.data) throw new UsageError('--summary needs `data` in the plan')
-  const outcomes = judged(plan, outcomesOf(folder))
+  const outcomes = judge(folder, words)
   const summary = summarize(plan, outcomes)
   if (!summary) throw new UsageError('--summary: no model is finished yet; the same without it makes them')
   // Drawing needs large packages; other commands start faster without them.
@@ -115,13 +115,21 @@ async function sumUp(folder: SweepFolder, words: SweepWords): Promise<void> {
 /** Writes the tables and tells how the sweep stands. */
 async function finish(folder: SweepFolder, words: SweepWords, queue: QueueEntry[] | undefined): Promise<void> {
   const { sweep: plan, path } = folder
-  const outcomes = outcomesOf(folder)
-  await writeTables(folder, judged(plan, outcomes))
+  const outcomes = judge(folder, words)
+  await writeTables(folder, outcomes)
   tell(words, standJson(plan, outcomes, path, queue), standText(plan, outcomes, shownPath(path), queue))
   const { unfinished, failed, imprecise } = countsOf(plan, outcomes)
   const asksForState = words.status || words.cancel || words.on === 'slurm'
   if (unfinished > 0 && !asksForState) process.exitCode = exitCode.stopped
   else if (unfinished === 0 && failed + imprecise > 0) process.exitCode = exitCode.imprecise
+}
+
+/** What is known of the models, compared with the data. */
+function judge(folder: SweepFolder, { quiet }: SweepWords): Judged {
+  const line = startLine(process.stderr, quiet)
+  const all = judged(folder.sweep, outcomesOf(folder), (done, of) => line.show(`${done} of ${of} models compared with the data`))
+  line.clear()
+  return all
 }
 
 /** A folder as the user would write it. */

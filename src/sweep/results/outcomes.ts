@@ -18,15 +18,27 @@ export interface Judged extends Outcomes {
   verdicts: Map<number, Verdict>
 }
 
+/** Tells how many of the models were compared. */
+type OnCompared = (done: number, of: number) => void
+
 /** How each finished model agrees with the data; those that need images were compared when they were made. */
-export function judged({ data }: Sweep, outcomes: Outcomes): Judged {
+export function judged({ data }: Sweep, outcomes: Outcomes, onProgress?: OnCompared): Judged {
   const { results } = outcomes
-  if (data && !data.needsImages) return { ...outcomes, verdicts: compareFluxes(results, dataOf(data)) }
+  if (data && !data.needsImages) return { ...outcomes, verdicts: compareFluxes(results, dataOf(data), onProgress) }
   const made = [...results].flatMap(([model, { seen }]): [number, Verdict][] => (seen?.verdict ? [[model, seen.verdict]] : []))
   return { ...outcomes, verdicts: new Map(made) }
 }
 
 /** Compares models with measured fluxes. */
-export function compareFluxes(results: Map<number, ModelResult>, list: DataList): Map<number, Verdict> {
-  return new Map([...results].map(([model, result]) => [model, verdictOf(compareModel(lightOfResult(result), list))]))
+export function compareFluxes(
+  results: Map<number, ModelResult>,
+  list: DataList,
+  onProgress: OnCompared = () => {}
+): Map<number, Verdict> {
+  const verdicts = new Map<number, Verdict>()
+  for (const [model, result] of results) {
+    verdicts.set(model, verdictOf(compareModel(lightOfResult(result), list)))
+    onProgress(verdicts.size, results.size)
+  }
+  return verdicts
 }
