@@ -52,6 +52,8 @@ export interface DiskOptions extends Effort {
   pixels?: number
   /** radial, polar, azimuthal */
   grid?: [number, number, number]
+  /** Cubes of an octree, so many, in place of spherical cells. */
+  cubes?: number
   temperature?: 'none' | 'solve'
   /** Wavelengths of a spectrum in place of cameras. */
   wavelengths?: number
@@ -59,7 +61,17 @@ export interface DiskOptions extends Effort {
 
 /** A flared disk about a star, in scattered light unless its temperature is solved. */
 export function diskScene(options: DiskOptions): string {
-  const { depth, inclinations = [60], pixels = PIXELS, grid, temperature = 'none', wavelengths, phase, ...effort } = options
+  const {
+    depth,
+    inclinations = [60],
+    pixels = PIXELS,
+    grid,
+    cubes,
+    temperature = 'none',
+    wavelengths,
+    phase,
+    ...effort
+  } = options
   const camera = (inclination: number, i: number) =>
     `  - {name: c${i}, view: {inclination: ${inclination} deg}, field: ${DISK_FIELD.text}, pixels: ${pixels}, wavelengths: [1 um], unit: erg/s/cm2/Hz/sr}`
   return `title: Bench disk
@@ -74,6 +86,7 @@ dust:
     amount: {optical-depth: ${depth}, at: 1 um}
     temperature: ${temperature}
 ${grid ? `grid: {kind: spherical, radial: ${grid[0]}, polar: ${grid[1]}, azimuthal: ${grid[2]}}` : ''}
+${cubes ? `grid: {kind: octree, cells-at-most: ${cubes}, finest: 16}` : ''}
 effort: ${effortOf(effort)}
 ${
   wavelengths

@@ -41,6 +41,12 @@ const pairs = (): Pair[] => [
     large: sizeOf(diskScene({ depth: 100, grid: [81, 80, 80], pixels: 16, packets: PACKETS }))
   },
   {
+    unit: 'cell',
+    quantity: 'cubes, one camera and point star',
+    small: sizeOf(diskScene({ depth: 100, cubes: 3e4, pixels: 16, packets: PACKETS })),
+    large: sizeOf(diskScene({ depth: 100, cubes: 3e5, pixels: 16, packets: PACKETS }))
+  },
+  {
     unit: 'pixel',
     quantity: 'one wavelength',
     small: sizeOf(shellScene({ depth: 1, pixels: 64, packets: PACKETS }), 64 ** 2),

@@ -1,3 +1,4 @@
+import { isOctree } from '../grid/cells.js'
 import type { Model } from '../model/model.js'
 import { observedWavelengths } from '../model/wavelengths.js'
 import { hasAmbient } from '../scene/has-ambient.js'
@@ -18,7 +19,7 @@ const TABLE_BYTES = 5e6
 const ABREAST_BYTES = 1e9
 
 /** What the estimate needs to know of a model: the cells need not be filled yet. */
-export type Sizes = Pick<Model, 'scene' | 'dimensions' | 'cells'>
+export type Sizes = Pick<Model, 'scene' | 'dimensions' | 'walls' | 'cells'>
 
 /** Parts of the memory that a run is expected to hold, bytes; together good to a factor of two. */
 export interface MemoryEstimate {
@@ -45,10 +46,20 @@ export function memoryEstimate(sizes: Sizes, workers: number): MemoryEstimate {
   return {
     program: PROGRAM_BYTES,
     worker: WORKER_BYTES + WAITING * tally,
-    cells: Math.max(heat, light * wavelengthsAbreast(sizes, workers)) + 8 * cells * (1 + components),
+    cells: Math.max(heat, light * wavelengthsAbreast(sizes, workers)) + 8 * cells * (1 + components) + cubeBytes(sizes),
     // Column density once; five planes, eleven with polarisation, one more with ambient light; written out once more, and joined.
     images: columns * 8 + values * 8 * planes + largest * 8 * (2 * planes + 2)
   }
+}
+
+/** Families of an octree, bytes a cell: a record and a corner for seven cells, and the place of each. */
+const CUBE_BYTES = 15
+
+/** An octree, the columns from its cells to point stars, and the densities that these are made of. */
+function cubeBytes({ scene, walls, cells }: Sizes): number {
+  if (!isOctree(walls)) return 0
+  const points = scene.sources.filter((source) => source.kind === 'star' && source.extent === 'point').length
+  return cells * (CUBE_BYTES + (points > 0 ? scene.dust.length * (8 + 32 * points) : 0))
 }
 
 /** How many wavelengths so many workers go on with at a time: while packets of one fly, rays of another are traced. */

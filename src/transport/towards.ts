@@ -92,7 +92,7 @@ export function tallyTowards(
   }
   if (single) {
     const values = copies.azimuths * count
-    for (let i = 0; i < tally.length; i++) tally[i] *= scattering[Math.floor(i / values)]
+    for (let cell = 0, i = 0; cell < cells; cell++) for (let k = 0; k < values; k++) tally[i++] *= scattering[cell]
   }
   return tally
 }
