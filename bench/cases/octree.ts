@@ -67,11 +67,14 @@ function litMedium(shape: Shape, octree: Octree): ScatterMedium {
 
 async function octreeCost(): Promise<Measure[]> {
   const shape = makeShape({ kind: 'shell', inner: 5, outer: 1000, slope: -1.5 })
-  // So opaque that cells are divided until the number is reached.
+  // Without tolerance cells are divided until the number is reached.
   const layers = [{ shape, scale: 1e8 / shape.column, extinction: 1 }]
   const grown = SIZES.map((cells) => {
     const started = process.cpuUsage()
-    const octree = growOctree({ layers, stars: [[0, 0, 0]], width: 0, finest: 25, cellsAtMost: cells }, allocateShared)
+    const octree = growOctree(
+      { layers, stars: [[0, 0, 0]], width: 0, finest: 25, cellsAtMost: cells, tolerance: 0 },
+      allocateShared
+    )
     const seconds = process.cpuUsage(started).user / 1e6
     return { octree, seconds, bytes: process.memoryUsage().rss, pool: new PacketPool(litMedium(shape, octree), TO_OBSERVER) }
   })

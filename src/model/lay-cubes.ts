@@ -28,6 +28,11 @@ export function reasonForCubes(scene: Scene, dimensions: 1 | 2 | 3): string | un
   return away ? `source ${away.star.name} is away from the origin` : 'the scene is not symmetric about z'
 }
 
+/** Share of the light of the dust that cubes may get wrong: as much as the precision asked for, or 1 %. */
+export function octreeTolerance({ effort }: Scene): number {
+  return effort.precision ?? 0.01
+}
+
 /** Cubes about the dust and all stars. Throws SceneError for a star outside the width asked for. */
 export function layCubes(scene: Scene, layers: DustLayer[]): Octree {
   const { width, finest, cellsAtMost } = scene.grid
@@ -46,7 +51,11 @@ export function layCubes(scene: Scene, layers: DustLayer[]): Octree {
   }
   const half = Math.max(...layers.map(({ shape }) => shape.outerRadius), ...stars.map(needed))
   const side = width > 0 ? width : 2 * half
-  return growOctree({ layers, stars: stars.map(({ at }) => at), width: side, finest, cellsAtMost }, allocateShared)
+  const places = stars.map(({ at }) => at)
+  return growOctree(
+    { layers, stars: places, width: side, finest, cellsAtMost, tolerance: octreeTolerance(scene) },
+    allocateShared
+  )
 }
 
 /** The cube reaches farther than a star by this factor. */

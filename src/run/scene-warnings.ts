@@ -1,11 +1,13 @@
 import { isOctree } from '../grid/cells.js'
 import { integrate } from '../math/quadrature.js'
+import { octreeTolerance } from '../model/lay-cubes.js'
 import type { DustComponent, Model } from '../model/model.js'
 import { mattering, observedWavelengths } from '../model/wavelengths.js'
 import { wavelengthLabel } from '../output/wavelength-label.js'
 import type { StarSpectrum } from '../sources/star.js'
 import { AU, LIGHT_SPEED } from '../units/constants.js'
 import { grainWarnings } from './grain-warnings.js'
+import { percent } from './percent.js'
 import { scatteringWarnings } from './scattering-warnings.js'
 
 /** Optical depth of the first dusty cell above which the temperature at the inner edge is blurred. */
@@ -51,12 +53,19 @@ function unresolvedEdge(model: Model): string[] {
     : []
 }
 
-/** An octree that stopped growing because its cells were used up. */
+/** How many times fewer cells have so many times the error: it falls as the square of their sides. */
+const CELLS_FOR_ERROR = 1.5
+
+/** An octree that stopped growing because its cells or its levels were used up. */
 function crowded({ walls, cells, scene }: Model): string[] {
-  if (!isOctree(walls) || cells + 7 <= scene.grid.cellsAtMost) return []
-  return [
-    `grid: ${cells} cells do not resolve the dust everywhere as far as the program would; ask for more by grid.cells-at-most of an octree`
-  ]
+  if (!isOctree(walls)) return []
+  const { cellsAtMost } = scene.grid
+  const tolerance = octreeTolerance(scene)
+  if (walls.error <= tolerance) return []
+  const doubt = `grid: ${cells} cells may get ${percent(Math.min(1, walls.error))} of the light of the dust wrong, more than the ${percent(tolerance)} asked for`
+  if (cells + 7 <= cellsAtMost) return [`${doubt}; ask for smaller ones by grid.finest of an octree`]
+  const needed = cells * (walls.error / tolerance) ** CELLS_FOR_ERROR
+  return [`${doubt}; ask for about ${needed.toPrecision(2)} by grid.cells-at-most of an octree`]
 }
 
 function extinction(components: DustComponent[], cell: number, wavelength: number): number {

@@ -13,7 +13,7 @@ function grown(spec: ShapeSpec, more: Pick<DustSpec, 'carve' | 'clumps'>, tau: n
   return {
     shape,
     scale,
-    octree: growOctree({ layers, stars: [[0, 0, 0]], width: 0, finest: 20, cellsAtMost: 30_000, ...request })
+    octree: growOctree({ layers, stars: [[0, 0, 0]], width: 0, finest: 20, cellsAtMost: 30_000, tolerance: 0, ...request })
   }
 }
 
@@ -88,8 +88,12 @@ describe('growOctree and octreeDensities', () => {
     const volumes = cubeVolumes(shallow, new Float64Array(shallow.cells))
     expect(Math.min(...volumes) / shallow.side ** 3).toBeCloseTo(2 ** -12, 12)
     expect(grown(disk, {}, 100, { width: 50 }).octree).toMatchObject({ side: 50 })
-    // Limits that are met end it before the number is reached.
-    expect(grown(wind, {}, 0.01, { cellsAtMost: 1_000_000 }).octree.cells).toBeLessThan(900_000)
+    // What is good enough ends it before the number is reached; half of that takes 2^1.5 times the cells.
+    const [coarse, fine] = [0.04, 0.02].map((tolerance) => grown(wind, {}, 1, { cellsAtMost: 1_000_000, tolerance }).octree)
+    expect(coarse.error).toBeLessThan(0.04)
+    expect(fine.cells).toBeLessThan(200_000)
+    expect(fine.cells / coarse.cells).toBeGreaterThan(2)
+    expect(fine.cells / coarse.cells).toBeLessThan(4)
   })
 })
 

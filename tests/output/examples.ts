@@ -16,7 +16,7 @@ export function exampleScene(change: Partial<Scene> = {}): Scene {
     sources: [],
     opacities: {},
     dust: [],
-    grid: { kind: 'auto', radial: 0, polar: 0, azimuthal: 0, width: 0, finest: 12, cellsAtMost: 100_000 },
+    grid: { kind: 'auto', radial: 0, polar: 0, azimuthal: 0, width: 0, finest: 12, cellsAtMost: 300_000 },
     effort: { precision: 0.01, equilibrium: 0, cameras: 0, equilibriumAsked: false },
     cameras: [],
     spectra: [],

@@ -33,7 +33,7 @@ describe('parseScene', () => {
           phase: 'henyey-greenstein'
         }
       },
-      grid: { kind: 'auto', radial: 0, polar: 0, azimuthal: 0, width: 0, finest: 12, cellsAtMost: 100_000 },
+      grid: { kind: 'auto', radial: 0, polar: 0, azimuthal: 0, width: 0, finest: 12, cellsAtMost: 300_000 },
       effort: { precision: 0.01, equilibrium: 4e6, cameras: 1e6, equilibriumAsked: false }
     })
     expect(sources[0]).toMatchObject({ kind: 'star', at: [0, 0, 0], extent: 'point', limbDarkening: 0 })

@@ -46,7 +46,8 @@ export class OctreeBuilder {
       cells,
       records: new Int32Array(allocate(4 * RECORD * families)),
       corners: new Int32Array(allocate(12 * families)),
-      places: new Int32Array(allocate(4 * cells))
+      places: new Int32Array(allocate(4 * cells)),
+      error: 0
     }
     octree.origin.set(origin)
     this.putInOrder(octree)

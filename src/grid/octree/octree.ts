@@ -19,6 +19,8 @@ export interface Octree {
   corners: Int32Array
   /** Where each cell stands: 8 family + child. */
   places: Int32Array
+  /** Share of the light of all dust that the cells may get wrong, where it is known. */
+  error: number
 }
 
 export const RECORD = 16

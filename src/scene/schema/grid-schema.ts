@@ -7,7 +7,7 @@ const mostCells = 2e7
 
 /** Where the program chooses. */
 const spheres = { radial: 0, polar: 0, azimuthal: 0 }
-const cubes = { width: 0, finest: 12, cellsAtMost: 100_000 }
+const cubes = { width: 0, finest: 12, cellsAtMost: 300_000 }
 
 const auto = section({ kind: z.literal('auto').prefault('auto').describe('The program chooses (default)') }).transform(
   ({ kind }): GridSpec => ({ kind, ...spheres, ...cubes })
