@@ -1,7 +1,9 @@
 import type { Model } from '../model/model.js'
+import type { EquilibriumMedium } from '../transport/equilibrium.js'
 import { forEachWall } from './conduction.js'
-import { fillByDiffusion } from './diffusion-fill.js'
+import { diffuseDeviations, fillByDiffusion } from './diffusion-fill.js'
 import type { EquilibriumSetup } from './equilibrium-medium.js'
+import { GROUPS } from './groups.js'
 import type { DustTemperatures } from './temperatures.js'
 import type { ThickCells } from './thick-cells.js'
 
@@ -15,13 +17,13 @@ const DIFFUSES = 3
 const DIFFUSES_ABOUT = 1
 
 /**
- * Gives thick cells that few packets or none reached the temperatures with which radiation diffuses between their neighbours. Where
- * packets came, the 1 sigma stays that of the packets, which is more than what is left of it. A cell at the surface of its dust is
- * left as it is: it shines into the open.
+ * Gives thick cells that few packets or none reached the temperatures with which radiation diffuses between their neighbours, with the
+ * deviations of the groups, and so the 1 sigma, that those of the neighbours make there; where no packet came it stays unknown. A cell at
+ * the surface of its dust is left as it is: it shines into the open.
  */
 export function fillThick({ medium }: EquilibriumSetup, model: Model, thick: ThickCells, dust: DustTemperatures): void {
   const { cells, components, density, emissionRow } = medium
-  const { temperature, sigma, slope } = dust
+  const { temperature, sigma, slope, deviation } = dust
   const common = new Float64Array(cells)
   const uncertain: number[] = []
   for (let cell = 0; cell < cells; cell++) {
@@ -50,7 +52,39 @@ export function fillThick({ medium }: EquilibriumSetup, model: Model, thick: Thi
     return enclosed
   })
   if (unknown.length === 0) return
-  fillByDiffusion(model, common, unknown, (cell, kelvin) => (kelvin > 0 ? thick.meanExtinction(cell, kelvin) : 0))
+  const conduction = fillByDiffusion(model, common, unknown, (cell, kelvin) =>
+    kelvin > 0 ? thick.meanExtinction(cell, kelvin) : 0
+  )
   for (const cell of unknown)
     for (let at = cell; at < components * cells; at += cells) if (temperature[at] > 0) temperature[at] = common[cell]
+  const squares = new Float64Array(unknown.length)
+  for (let group = 0; group < GROUPS; group++) {
+    const known = fourthDeviations({ components, cells, density }, dust, group)
+    for (const cell of unknown) known[cell] = 0
+    diffuseDeviations(conduction, unknown, known).forEach((value, k) => {
+      const relative = value / common[unknown[k]] ** 4
+      squares[k] += relative * relative
+      for (let at = unknown[k]; at < components * cells; at += cells) deviation[at * GROUPS + group] = 0.25 * slope[at] * relative
+    })
+  }
+  unknown.forEach((cell, k) => {
+    const relative = 0.25 * Math.sqrt(squares[k] / (GROUPS * (GROUPS - 1)))
+    for (let at = cell; at < components * cells; at += cells) if (sigma[at] > 0) sigma[at] = relative * temperature[at]
+  })
+}
+
+/** Deviation of a group from the T^4 of each cell, the mean over the mass of its dust. */
+function fourthDeviations(
+  { components, cells, density }: Pick<EquilibriumMedium, 'components' | 'cells' | 'density'>,
+  { temperature, slope, deviation }: DustTemperatures,
+  group: number
+): Float64Array {
+  const sum = new Float64Array(cells)
+  const mass = new Float64Array(cells)
+  for (let at = 0; at < components * cells; at++) {
+    const cell = at % cells
+    mass[cell] += density[at]
+    if (slope[at] > 0) sum[cell] += (density[at] * 4 * temperature[at] ** 4 * deviation[at * GROUPS + group]) / slope[at]
+  }
+  return sum.map((value, cell) => (mass[cell] > 0 ? value / mass[cell] : 0))
 }
