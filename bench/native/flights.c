@@ -12,7 +12,7 @@ static inline double larger(double a, double b) { return a > b ? a : b; }
 static inline double smaller(double a, double b) { return a < b ? a : b; }
 
 enum { FLIGHT_BINS = 64, STEPS = 4096 };
-static const double ROULETTE_BELOW = 0.1, SPLIT_ABOVE = 4, MOST_PARTS = 32;
+static const double ROULETTE_BELOW = 0.1, SPLIT_ABOVE = 4, MOST_PARTS = 32, LONGEST = 4;
 enum { MOST_WAITING = 1024 };
 
 // Alea, the generator of Johannes Baagoe, seeded by a hash of a text, as the package seedrandom has it.
@@ -128,6 +128,7 @@ static double meanImportance(const Medium *m, const double *importance) {
 static struct {
   double s, b2, weight;
   int cell, parts;
+  bool straight;
 } waiting[MOST_WAITING];
 
 // Adds a segment to the tally, at a point drawn along it.
@@ -173,6 +174,8 @@ static void tallyFlights(const Medium *m, int packets, double *tally) {
     int held = 0;
     for (;;) {
       double remaining = exponential(uniform());
+      bool straight = remaining > LONGEST;
+      if (straight) remaining = LONGEST;
       double opacity = 0;
       bool collides = false;
 #define SIGNED(at) at * fabs(at)
@@ -211,7 +214,7 @@ static void tallyFlights(const Medium *m, int packets, double *tally) {
       const double step = remaining / opacity;
       TALLY(step);
       s += step;
-      weight *= albedo[cell];
+      if (!straight) weight *= albedo[cell];
       const double here = weight * importance[cell];
       if (here < least) {
         if (uniform() * worth >= here) goto gone;
@@ -221,14 +224,17 @@ static void tallyFlights(const Medium *m, int packets, double *tally) {
         weight /= parts;
         waiting[held].s = s, waiting[held].b2 = b2, waiting[held].weight = weight;
         waiting[held].cell = cell, waiting[held].parts = parts - 1;
+        waiting[held].straight = straight;
         held++;
       }
       goto scatter;
     gone:
       if (held == 0) break;
       s = waiting[held - 1].s, b2 = waiting[held - 1].b2, weight = waiting[held - 1].weight, cell = waiting[held - 1].cell;
+      straight = waiting[held - 1].straight;
       if (--waiting[held - 1].parts == 0) held--;
     scatter:;
+      if (straight) continue;
       const double r2 = b2 + s * s;
       const double turn = sampleHenyeyGreenstein(g, uniform());
       s = s * turn + sqrt(b2 * (1 - turn * turn)) * cosAzimuth(uniform());

@@ -18,11 +18,12 @@ const wallSquares = new Float64Array(MOST_CELLS + 1)
 const extinctions = new Float64Array(MOST_CELLS)
 const albedos = new Float64Array(MOST_CELLS)
 const importances = new Float64Array(MOST_CELLS)
-/** Parts of split packets that wait for their turn: s, b2 and weight, cell, and how many. */
+/** Parts of split packets that wait for their turn: s, b2 and weight, cell, and how many, and whether they fly on straight. */
 const MOST_WAITING = 1024
 const waiting = new Float64Array(MOST_WAITING * 3)
 const waitingCells = new Int32Array(MOST_WAITING)
 const waitingParts = new Int32Array(MOST_WAITING)
+const waitingStraight = new Uint8Array(MOST_WAITING)
 /**
  * Weight x importance is kept near what the packets of the source begin with, on average: below this share of it a packet plays
  * roulette, above that it is split.
@@ -30,6 +31,11 @@ const waitingParts = new Int32Array(MOST_WAITING)
 const ROULETTE_BELOW = 0.1
 const SPLIT_ABOVE = 4
 const MOST_PARTS = 32
+/**
+ * Longer flights, in mean free paths, are cut, and go on straight: on its way out importance may rise so far along one of them that it has
+ * to be split before its end. Without it the light of a shell of optical depth 100 hangs on a few long flights.
+ */
+const LONGEST = 4
 const flights = new Float64Array(MOST_CELLS * FLIGHT_BINS)
 
 /**
@@ -77,6 +83,8 @@ export function tallyFlights(medium: ScatterMedium, packets: number, uniform: ()
     let held = 0
     for (;;) {
       let remaining = exponential(uniform())
+      let straight = remaining > LONGEST
+      if (straight) remaining = LONGEST
       // biome-ignore-start lint/suspicious/noConfusingLabels: flags in their place cost every step a test
       scatter: {
         gone: {
@@ -127,7 +135,7 @@ export function tallyFlights(medium: ScatterMedium, packets: number, uniform: ()
           const at = s + (place >>> 0) * unit * step
           tally[((cell << 6) + bin[((half * at * Math.abs(at)) / (b2 + at * at) + half) | 0]) | 0] += weight * step
           s += step
-          weight *= albedo[cell]
+          if (!straight) weight *= albedo[cell]
           const here = weight * importance[cell]
           if (here < least) {
             if (uniform() * worth >= here) break gone
@@ -141,6 +149,7 @@ export function tallyFlights(medium: ScatterMedium, packets: number, uniform: ()
             waiting[top + 2] = weight
             waitingCells[held] = cell
             waitingParts[held] = parts - 1
+            waitingStraight[held] = straight ? 1 : 0
             held++
           }
           break scatter
@@ -151,9 +160,11 @@ export function tallyFlights(medium: ScatterMedium, packets: number, uniform: ()
         b2 = waiting[last * 3 + 1]
         weight = waiting[last * 3 + 2]
         cell = waitingCells[last]
+        straight = waitingStraight[last] === 1
         if (--waitingParts[last] === 0) held = last
       }
       // biome-ignore-end lint/suspicious/noConfusingLabels: see above
+      if (straight) continue
       // The radius stays; its part along the new direction is s cos(turn) + b sin(turn) cos(azimuth).
       const r2 = b2 + s * s
       const turn = sampleHenyeyGreenstein(single ? asymmetry[0] : asymmetry[drawLaw(medium, cell, uniform)], uniform())
