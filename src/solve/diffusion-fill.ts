@@ -6,7 +6,7 @@ const PASSES = 12
 const CLOSE = 1e-4
 /** The residual falls by this factor, that of deviations by this, within so many steps. */
 const RESIDUAL = 1e-9
-const ROUGH_RESIDUAL = 1e-4
+const ROUGH_RESIDUAL = 1e-6
 const STEPS = 4000
 
 /**

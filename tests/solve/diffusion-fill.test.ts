@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { cellCount, type SphericalWalls } from '../../src/grid/geometry.js'
-import { fillByDiffusion } from '../../src/solve/diffusion-fill.js'
+import { diffuseDeviations, fillByDiffusion } from '../../src/solve/diffusion-fill.js'
 
 const even = (count: number, from: number, to: number) =>
   Float64Array.from({ length: count + 1 }, (_, i) => from + ((to - from) * i) / count)
@@ -10,7 +10,10 @@ const wallsOf = (r: Float64Array, nt: number, np: number): SphericalWalls => ({
   phi: even(np, 0, 2 * Math.PI)
 })
 
-/** Largest relative error of T^4 when all cells but those at the inner and outer edge are solved for, from a wrong first guess. */
+/**
+ * Largest relative error of T^4 when all cells but those at the inner and outer edge are solved for, from a wrong first guess. A
+ * deviation that is T^4 at those edges has to be T^4 everywhere.
+ */
 function worst(walls: SphericalWalls, fourth: (r: number, theta: number, phi: number) => number, chi: (r: number) => number) {
   const { r, cosTheta, phi } = walls
   const nr = r.length - 1
@@ -31,7 +34,14 @@ function worst(walls: SphericalWalls, fourth: (r: number, theta: number, phi: nu
   }
   const temperature = exact.map((value) => value ** 0.25)
   for (const cell of unknown) temperature[cell] = 1
-  fillByDiffusion({ walls, cells }, temperature, unknown, (cell) => (cell === 0 ? 0 : chi(middle[cell])))
+  const conduction = fillByDiffusion({ walls, cells }, temperature, unknown, (cell) => (cell === 0 ? 0 : chi(middle[cell])))
+  const deviations = exact.slice()
+  for (const cell of unknown) deviations[cell] = 0
+  const within = diffuseDeviations(conduction, unknown, deviations)
+  // Diffusion is linear in T^4, and solved for deviations to a residual of 1e-6.
+  unknown.forEach((cell, k) => {
+    expect(within[k] / temperature[cell] ** 4).toBeCloseTo(1, 3)
+  })
   return unknown.reduce((most, cell) => Math.max(most, Math.abs(temperature[cell] ** 4 / exact[cell] - 1)), 0)
 }
 
