@@ -14,9 +14,10 @@ import { ambientField } from '../sources/ambient.js'
 import { starSpectrum } from '../sources/star.js'
 import { cellDensities } from './density.js'
 import { hollowed, withFirstRadii } from './inner-radii.js'
-import { layCubes, offCentre, reasonForCubes } from './lay-cubes.js'
+import { layCubes, reasonForCubes } from './lay-cubes.js'
 import type { DustComponent, Model } from './model.js'
 import { octreeDensities } from './octree-density.js'
+import { offCentre } from './off-centre.js'
 import { mattering } from './wavelengths.js'
 
 /** Cells laid about the dust of a scene, before anything as large as their number is allocated. */

@@ -6,6 +6,7 @@ import { errorAt, type SceneError } from '../scene/error.js'
 import type { DustSpec, Scene, ShapeSpec } from '../scene/types.js'
 import { starSpectrum } from '../sources/star.js'
 import { AU, LIGHT_SPEED } from '../units/constants.js'
+import { offCentre } from './off-centre.js'
 
 /** An inner radius that is to be found: where a component reaches a temperature, K. */
 export interface SoughtRadius {
@@ -17,15 +18,16 @@ export interface SoughtRadius {
 }
 
 /**
- * Every inner radius to be found: those given by a temperature, and those to which dust sublimates. Shapes without an inner radius, and
- * clumps, which would move with it, sublimate cell by cell alone.
+ * Every inner radius to be found: those given by a temperature, and those to which dust sublimates. Shapes without an inner radius,
+ * clumps, which would move with it, and dust in cubes sublimate cell by cell alone.
  */
-export function soughtRadii({ dust }: Scene): SoughtRadius[] {
-  return dust.flatMap(({ shape, sublimation, hollow, clumps }, component) => {
+export function soughtRadii(scene: Scene): SoughtRadius[] {
+  const inCubes = scene.grid.kind === 'octree' || offCentre(scene).length > 0
+  return scene.dust.flatMap(({ shape, sublimation, hollow, clumps }, component) => {
     if (!('inner' in shape)) return []
     const { inner, sought } = shape
     if (sought) return [{ component, temperature: sought.temperature, radius: inner, least: 0 }]
-    if (sublimation === undefined || clumps) return []
+    if (sublimation === undefined || clumps || inCubes) return []
     return [{ component, temperature: sublimation, radius: hollow ?? inner, least: inner }]
   })
 }

@@ -3,15 +3,9 @@ import { growOctree } from '../grid/octree/grow-octree.js'
 import type { Octree } from '../grid/octree/octree.js'
 import { allocateShared } from '../math/allocate.js'
 import { errorAt } from '../scene/error.js'
-import type { Scene, ScenePath, StarSpec } from '../scene/types.js'
+import type { Scene, StarSpec } from '../scene/types.js'
 import { refusal, soughtRadii } from './inner-radii.js'
-
-/** The stars away from the origin, with where they stand in the scene file. */
-export function offCentre({ sources }: Scene): { star: StarSpec; path: ScenePath }[] {
-  return sources.flatMap((star, i) =>
-    star.kind === 'star' && star.at.some((component) => component !== 0) ? [{ star, path: ['sources', i, 'at'] }] : []
-  )
-}
+import { offCentre } from './off-centre.js'
 
 /** Why a scene of such symmetry is laid out in cubes; undefined where spherical cells do. Throws SceneError where neither do. */
 export function reasonForCubes(scene: Scene, dimensions: 1 | 2 | 3): string | undefined {

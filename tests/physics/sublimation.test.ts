@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { sphericalOf } from '../../src/grid/cells.js'
+import { cellRadii } from '../../src/run/dust-cells.js'
 import { findings } from '../../src/run/findings.js'
 import { resultWarnings } from '../../src/run/result-warnings.js'
 import { AU, SOLAR_RADIUS } from '../../src/units/constants.js'
@@ -71,6 +72,27 @@ describe('dust that sublimates', () => {
     expect(result.sublimation!.settled).toBe(true)
     expect(Math.max(...result.dust.temperature)).toBeLessThan(804)
     expect(resultWarnings(result)).toContainEqual(expect.stringMatching(/of its mass would be hotter than 800 K and is gone/))
+  })
+
+  it('goes cell by cell from cubes', async () => {
+    const scene = sceneOf(
+      'grey',
+      '{kind: shell, inner: 1 au, outer: 6 au, slope: 0}',
+      '{optical-depth: 1e-4, at: 1 um}',
+      '{precision: 3 %, equilibrium: 3e5}\ngrid: {kind: octree, cells-at-most: 4000}'
+    )
+    const { model, sublimation, dust } = await runText(scene)
+    // As above: T = T* (R* / 2 r)^1/2, to half the diagonal of a cell.
+    const front = 50 * SOLAR_RADIUS * (2500 / 800) ** 2
+    const radii = cellRadii(model)
+    const { density } = model.components[0]
+    density.forEach((value, cell) => {
+      const corner = Math.sqrt(0.75) * Math.cbrt(model.volume[cell])
+      if (radii[cell] + corner < front) expect(value).toBe(0)
+      if (radii[cell] - corner > front && radii[cell] + corner < 6 * AU) expect(value).toBeGreaterThan(0)
+    })
+    expect(sublimation!.settled).toBe(true)
+    expect(Math.max(...dust.temperature)).toBeLessThan(840)
   })
 
   it('that would vanish altogether is refused', async () => {
