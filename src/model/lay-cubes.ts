@@ -43,7 +43,7 @@ export function layCubes(scene: Scene, layers: DustLayer[]): Octree {
       'the star lies outside the cube; ask for a larger `grid.width`'
     )
   }
-  const half = Math.max(...layers.map(({ shape }) => shape.outerRadius), ...stars.map(needed))
+  const half = Math.max(...layers.map(({ shape }) => shape.halfSide ?? shape.outerRadius), ...stars.map(needed))
   const side = width > 0 ? width : 2 * half
   const places = stars.map(({ at }) => at)
   return growOctree(

@@ -31,6 +31,7 @@ export function cubeField({ size: [nx, ny, nz], values }: DensityCube, width: nu
     line: { from: [0, 0, -c], to: [0, 0, c] },
     innerRadius: 0,
     outerRadius: Math.hypot(a, b, c),
+    halfSide: Math.max(a, b, c),
     sphereEdges: [Math.hypot(a, b, c)],
     place: (u, v, w, out) => {
       sums ??= runningSum(values)

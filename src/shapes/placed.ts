@@ -29,6 +29,7 @@ export function placed(shape: Shape, tilt: ShapeSpec['tilt'], at: Vector = [0, 0
     line: { from: outward(line.from), to: outward(line.to) },
     innerRadius: distance > outer ? distance - outer : Math.max(0, inner - distance),
     outerRadius: distance + outer,
+    halfSide: Math.max(...at.map(Math.abs)) + (tipped ? outer : (shape.halfSide ?? outer)),
     sphereEdges: edgeRadii(shape)
       .flatMap((r) => (distance > 0 ? [Math.abs(distance - r), distance + r] : [r]))
       .filter((r) => r > 0),

@@ -63,6 +63,7 @@ export function pointField(points: DensityPoints, width: number): FreeShape {
     line: { from: [0, 0, -half], to: [0, 0, half] },
     innerRadius: 0,
     outerRadius,
+    halfSide: Math.min(farthest, half),
     sphereEdges: [outerRadius],
     place: (u, v, w, out) => {
       const i = bracket(sums, u * total)

@@ -18,6 +18,8 @@ interface ShapeBase {
   innerRadius: number
   /** Distance from the origin beyond which the dust is negligible (less than 1e-8 of the mass). */
   outerRadius: number
+  /** Half the side of the smallest cube about the origin that holds the dust, cm; absent: the outer radius. */
+  halfSide?: number
   /** The point for three numbers in [0, 1), into `out`: numbers that fill the unit cube evenly give points that lie as the mass does. */
   place: (u: number, v: number, w: number, out: Float64Array) => void
   /** Share of a point of `place` that counts, where dust was taken away from the shape; absent: all. */

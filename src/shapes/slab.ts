@@ -11,6 +11,7 @@ export function slab(thickness: number, width: number): FreeShape {
     line: { from: [0, 0, -c], to: [0, 0, c] },
     innerRadius: 0,
     outerRadius: Math.hypot(a, a, c),
+    halfSide: Math.max(a, c),
     sphereEdges: [Math.min(a, c), Math.hypot(a, a, c)],
     place: (u, v, w, out) => {
       out[0] = (2 * u - 1) * a

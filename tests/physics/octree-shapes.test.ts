@@ -6,6 +6,7 @@ import { OctreeWalk } from '../../src/grid/octree/octree-walk.js'
 import { buildModel } from '../../src/model/build-model.js'
 import { runScene } from '../../src/run/run-scene.js'
 import { parseScene, readScene } from '../../src/scene/read.js'
+import { AU } from '../../src/units/constants.js'
 import { folderWith } from '../support/folder-with.js'
 import { sumOf } from './pictures.js'
 
@@ -67,12 +68,14 @@ describe('shapes in cubes', () => {
     for (const light of [emitted, scattered]) expect(light.every((value) => value >= 0 && Number.isFinite(value))).toBe(true)
   })
 
-  it('of a cube lie in its pixels where the octree is as wide: the densities of the file', () => {
+  it('of a cube lie in its pixels: the densities of the file', () => {
     const { model, values } = cloud()
     const [{ density, mass }] = model.components
-    const { width } = model.scene.grid
+    const octree = octreeOf(model.walls)
+    const width = octree.side
+    expect(width / AU).toBeCloseTo(20000, 6)
     const scale = mass / (sumOf(values) * (width / 32) ** 3)
-    const walk = new OctreeWalk(octreeOf(model.walls))
+    const walk = new OctreeWalk(octree)
     const middle = (n: number) => width * ((n + 0.5) / 32 - 0.5)
     let differences = 0
     for (let i = 0; i < values.length; i++) {
