@@ -1,6 +1,8 @@
 import { standardError } from '../math/stats.js'
+import { GROUPS } from '../solve/groups.js'
 import type { PixelFrame } from './direct.js'
 import type { IntensityField } from './field.js'
+import { putModes } from './noise-modes.js'
 import { PixelIntegrator } from './pixel.js'
 import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray-values.js'
 import { putStokes, type StokesPlanes, stokesPlanes } from './stokes-planes.js'
@@ -10,6 +12,8 @@ export interface PictureRows {
   emitted: Float64Array
   scattered: Float64Array
   sigma: Float64Array
+  /** GROUPS x as many values: see CameraImages. */
+  modes: Int8Array
   /** Where light is polarised. */
   stokes?: StokesPlanes
   /** Sum over the pixels of the estimated error of placing the rays. */
@@ -35,6 +39,7 @@ export function pictureRows(
     emitted: new Float64Array(count),
     scattered: new Float64Array(count),
     sigma: new Float64Array(count),
+    modes: new Int8Array(GROUPS * count),
     ...(field.size > RAY_VALUES && { stokes: stokesPlanes(count) }),
     placingError: 0
   }
@@ -45,12 +50,14 @@ export function pictureRows(
     const start = (row - from) * width
     for (let column = 0; column < traced; column++) {
       integrator.integrate((column + 0.5 - width / 2) * pixelWidth, y, pixelWidth, pixelHeight)
-      const sigma = standardError(integrator.mean.subarray(FIRST_GROUP, RAY_VALUES))
+      const groups = integrator.mean.subarray(FIRST_GROUP, RAY_VALUES)
+      const sigma = standardError(groups)
       const twin = width - 1 - column
       for (const at of mirrored && twin !== column ? [start + column, start + twin] : [start + column]) {
         rows.emitted[at] = integrator.mean[EMITTED]
         rows.scattered[at] = integrator.mean[SCATTERED]
         rows.sigma[at] = sigma
+        putModes(rows.modes, at, count, groups, sigma)
         if (rows.stokes) putStokes(rows.stokes, at, integrator.mean, at === start + column ? 1 : -1)
         rows.placingError += integrator.error
       }

@@ -13,6 +13,8 @@ export interface CameraImages {
   total: Float64Array
   /** 1 sigma of the Monte Carlo part. */
   sigma: Float64Array
+  /** wavelengths x GROUPS x height x width: the noise behind `sigma` (`noise-modes.ts`), in steps of sigma / MODE_STEPS. */
+  modes: Int8Array
   direct: Float64Array
   emitted: Float64Array
   scattered: Float64Array

@@ -40,12 +40,12 @@ function spectrumRow({ spectrum, wavelengthUm, flux, sigma, unit }: Findings['sp
   return [`spectrum ${spectrum}`, wavelengthText(wavelengthUm), `${withError(flux, sigma)} ${unit}`]
 }
 
-function imageRow({ camera, wavelengthUm, peak, peakSigma, unit, fluxJy }: Findings['images'][number]): string[] {
+function imageRow({ camera, wavelengthUm, peak, peakSigma, unit, fluxJy, fluxSigmaJy }: Findings['images'][number]): string[] {
   return [
     `camera ${camera}`,
     wavelengthText(wavelengthUm),
     `peak ${withError(peak, peakSigma)} ${unit}`,
-    `field ${shown(fluxJy)} Jy`
+    `field ${withError(fluxJy, fluxSigmaJy)} Jy`
   ]
 }
 

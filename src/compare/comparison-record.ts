@@ -49,7 +49,7 @@ function warningsOf({ sets }: Agreed, { sets: findings, scalings }: Verdict): st
       .filter(({ noiseShare }) => noiseShare > MOST_NOISE)
       .map(
         ({ name, noiseShare }) =>
-          `${name}: ${Math.round(100 * noiseShare)} % of the variance is the Monte Carlo noise of the run, whose 1 sigma is an upper limit; its chi-squared may be too small, a finer run would tell more`
+          `${name}: ${Math.round(100 * noiseShare)} % of the variance is the Monte Carlo noise of the run, which neighbouring values share: its chi-squared scatters more than its degrees of freedom say; a finer run would tell more`
       ),
     ...findings
       .filter(({ degreesOfFreedom }) => !(degreesOfFreedom > 0))

@@ -1,43 +1,49 @@
 import FFT from 'fft.js'
 
 /**
- * Convolves two real planes (`width` x `height`, row after row) with one real kernel, by fast Fourier transforms of planes padded
+ * Convolves real planes (`width` x `height`, row after row) with one real kernel, by fast Fourier transforms of planes padded
  * with zeros to more than twice their size: nothing wraps round. `kernel` gives the kernel at whole offsets (to the right, up)
- * smaller than the sides. The two planes travel as the real and imaginary part of one.
+ * smaller than the sides. Two planes at a time travel as the real and imaginary part of one.
  */
 export function convolve(
-  planes: readonly [Float64Array, Float64Array],
+  planes: Float64Array[],
   width: number,
   height: number,
   kernel: (dx: number, dy: number) => number
-): [Float64Array, Float64Array] {
+): Float64Array[] {
   const across = powerOfTwo(2 * width)
   const up = powerOfTwo(2 * height)
-  const light = new Float64Array(2 * across * up)
-  for (let y = 0; y < height; y++) {
-    for (let x = 0; x < width; x++) {
-      const at = 2 * (y * across + x)
-      light[at] = planes[0][y * width + x]
-      light[at + 1] = planes[1][y * width + x]
-    }
-  }
   const response = new Float64Array(2 * across * up)
   for (let dy = 1 - height; dy < height; dy++) {
     for (let dx = 1 - width; dx < width; dx++) {
       response[2 * (((dy + up) % up) * across + ((dx + across) % across))] = kernel(dx, dy)
     }
   }
-  transform(light, across, up, false)
   transform(response, across, up, false)
+  const light = new Float64Array(2 * across * up)
+  return planes.flatMap((_, p) => {
+    if (p % 2 === 1) return []
+    const pair = planes.slice(p, p + 2)
+    light.fill(0)
+    pair.forEach((values, part) => {
+      for (let i = 0; i < values.length; i++) light[2 * (Math.floor(i / width) * across + (i % width)) + part] = values[i]
+    })
+    transform(light, across, up, false)
+    multiply(light, response)
+    transform(light, across, up, true)
+    return pair.map((_, part) =>
+      Float64Array.from({ length: width * height }, (_, i) => light[2 * (Math.floor(i / width) * across + (i % width)) + part])
+    )
+  })
+}
+
+/** Complex numbers times others, in place. */
+function multiply(light: Float64Array, response: Float64Array): void {
   for (let i = 0; i < light.length; i += 2) {
     const re = light[i] * response[i] - light[i + 1] * response[i + 1]
     light[i + 1] = light[i] * response[i + 1] + light[i + 1] * response[i]
     light[i] = re
   }
-  transform(light, across, up, true)
-  const part = (offset: number) =>
-    Float64Array.from({ length: width * height }, (_, i) => light[2 * (Math.floor(i / width) * across + (i % width)) + offset])
-  return [part(0), part(1)]
 }
 
 /** The transform of a plane of complex numbers in place: rows, then columns. */

@@ -67,16 +67,7 @@ export function pixelMean(beam: Beam, across: SkyVector, up: SkyVector): (east: 
   }
 }
 
-/**
- * An image and its 1 sigma seen with a beam. The noise is taken as alike within the beam, so that 1 sigma is convolved like the
- * image: an upper limit.
- */
-export function blurred(
-  image: Float64Array,
-  sigma: Float64Array,
-  grid: PixelGrid,
-  beam: Beam
-): { image: Float64Array; sigma: Float64Array } {
-  const [light, noise] = convolve([image, sigma], grid.width, grid.height, beamKernel(beam, grid))
-  return { image: light, sigma: noise.map((value) => Math.max(0, value)) }
+/** Planes of the pixels of a grid seen with a beam. */
+export function blurred(planes: Float64Array[], grid: PixelGrid, beam: Beam): Float64Array[] {
+  return convolve(planes, grid.width, grid.height, beamKernel(beam, grid))
 }

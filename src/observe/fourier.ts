@@ -7,17 +7,13 @@ export interface ComplexValues {
   im: Float64Array
 }
 
-/** Light without that of the stars known, and 1 sigma of its pixels, as flux densities; `scatter`: the variance of their sum if pixels are independent. */
-export function planeOf({ width, height, total, direct, sigma, stars: known, ...grid }: CameraSource, k: number) {
-  const pixels = width * height
-  const pixelSr = pixelSrOf({ width, height, pixel: grid.pixel })
-  const slice = (values: Float64Array) => values.slice(k * pixels, (k + 1) * pixels).map((value) => value * pixelSr)
-  const [all, stars, noise] = [slice(total), slice(direct), slice(sigma)]
-  return {
-    dust: known.length > 0 ? all.map((value, i) => value - stars[i]) : all,
-    sigma: noise,
-    scatter: noise.reduce((sum, value) => sum + value * value, 0)
-  }
+/** Light without that of the stars known, as flux densities of the pixels. */
+export function dustOf(source: CameraSource, k: number): Float64Array {
+  const { width, height, total, direct, stars } = source
+  const pixelSr = pixelSrOf(source)
+  const from = k * width * height
+  const light = total.slice(from, from + width * height)
+  return light.map((value, i) => pixelSr * (stars.length > 0 ? value - direct[from + i] : value))
 }
 
 /**

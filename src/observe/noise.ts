@@ -18,7 +18,7 @@ export function beamNoise(beam: Beam, grid: PixelGrid, random: () => number): Fl
   const wide = { ...grid, width: grid.width + 2 * margin, height: grid.height + 2 * margin }
   const kernel = beamKernel(beam, wide)
   const white = whiteNoise(wide.width * wide.height, random)
-  const [noise] = convolve([white, new Float64Array(white.length)], wide.width, wide.height, kernel)
+  const [noise] = convolve([white], wide.width, wide.height, kernel)
   let power = 0
   for (let dy = 1 - wide.height; dy < wide.height; dy++) {
     for (let dx = 1 - wide.width; dx < wide.width; dx++) power += kernel(dx, dy) ** 2

@@ -3,6 +3,7 @@ import { sumOf } from '../math/stats.js'
 import { inLight, interpolationError, type LightWeights } from './band.js'
 import { type Beam, isChromatic, makeBeam, turned } from './beam.js'
 import { blurred, type PixelGrid, pixelMean, pixelSrOf } from './blur.js'
+import { noisePlanes } from './noise-planes.js'
 import { regridded } from './regrid.js'
 import type { CameraSource } from './run-source.js'
 import type { PictureSpec } from './types.js'
@@ -13,8 +14,8 @@ const UNRESOLVED = 0.25
 /** Light in the pixels of a detector, cgs. */
 interface SeenLight {
   image: Float64Array
-  /** 1 sigma of the run's Monte Carlo part, as if the noise of all that is added up were alike: an upper limit. */
-  sigma: Float64Array
+  /** The run's Monte Carlo part: see `noisePlanes`. */
+  noise: Float64Array[]
   /** Flux density in the field of the run. */
   flux: number
   /** Estimated relative error of interpolating between wavelengths. */
@@ -24,7 +25,7 @@ interface SeenLight {
 /** Light behind a beam in the pixels of the run, cgs; stars that are points stand apart, where they are. */
 export interface BlurredLight {
   image: Float64Array
-  sigma: Float64Array
+  noise: Float64Array[]
   points: PointLight[]
 }
 
@@ -44,10 +45,10 @@ type Optics = Pick<PictureSpec, 'beam' | 'core'>
  */
 export function throughOptics(optics: Optics, source: CameraSource, light: LightWeights, grid: PixelGrid): SeenLight {
   const seen = throughBeam(optics, source, light)
-  const [image, sigma] = [seen.image, seen.sigma].map((values) => Float64Array.from(regridded(values, source, grid)))
+  const [image, ...noise] = [seen.image, ...seen.noise].map((values) => Float64Array.from(regridded(values, source, grid)))
   for (const point of seen.points) addPoint(image, grid, point)
   const fluxes = source.wavelengths.map((_, k) => fluxAt(source, k, optics))
-  return { image, sigma, flux: inLight(light, fluxes), bandError: interpolationError(light, fluxes) }
+  return { image, noise, flux: inLight(light, fluxes), bandError: interpolationError(light, fluxes) }
 }
 
 /**
@@ -64,19 +65,16 @@ export function throughBeam(
   const points = spec ? pointsOf(source) : []
   const lit = Array.from(weights.keys()).filter((k) => weights[k] !== 0)
   const layers = isChromatic(spec) ? lit.map((k) => ({ at: source.wavelengths[k], of: [k] })) : [{ at: wavelength, of: lit }]
-  const all: BlurredLight = {
-    image: new Float64Array(source.width * source.height),
-    sigma: new Float64Array(source.width * source.height),
-    points: []
-  }
+  const all: BlurredLight = { image: new Float64Array(source.width * source.height), noise: [], points: [] }
   for (const { at, of } of layers) {
-    const layer = weightedSum(source, of, weights, starlight, points.length > 0)
+    const layer = [weightedSum(source, of, weights, starlight, points.length > 0), ...noisePlanes(source, of, weights)]
     const beam = spec && turned(makeBeam(spec, at), turn)
-    const seen = beam ? blurred(layer.image, layer.sigma, source, beam) : layer
-    for (let i = 0; i < all.image.length; i++) {
-      all.image[i] += seen.image[i]
-      all.sigma[i] += seen.sigma[i]
-    }
+    const [image, ...noise] = beam ? blurred(layer, source, beam) : layer
+    add(all.image, image)
+    noise.forEach((plane, g) => {
+      if (all.noise[g]) add(all.noise[g], plane)
+      else all.noise[g] = plane
+    })
     for (const { east, north, flux } of points)
       all.points.push({ beam: beam!, east, north, flux: starlight * of.reduce((sum, k) => sum + weights[k] * flux[k], 0) })
   }
@@ -92,29 +90,29 @@ function pointsOf({ stars, pixel }: CameraSource): StarOnSky[] {
 function fluxAt(source: CameraSource, k: number, { beam, core }: Optics): number {
   const starlight = core?.starlight ?? 1
   const points = beam ? pointsOf(source) : []
-  const { image } = weightedSum(source, [k], new Float64Array(source.wavelengths.length).fill(1), starlight, points.length > 0)
+  const image = weightedSum(source, [k], new Float64Array(source.wavelengths.length).fill(1), starlight, points.length > 0)
   return sumOf(image) * pixelSrOf(source) + points.reduce((sum, star) => sum + starlight * star.flux[k], 0)
 }
 
 /** The sum of some planes of a run, without the direct light of stars that are points. */
 function weightedSum(
-  { width, height, total, direct, sigma }: CameraSource,
+  { width, height, total, direct }: CameraSource,
   of: number[],
   weights: Float64Array,
   starlight: number,
   withoutDirect: boolean
-): { image: Float64Array; sigma: Float64Array } {
+): Float64Array {
   const pixels = width * height
   const image = new Float64Array(pixels)
-  const noise = new Float64Array(pixels)
   const kept = withoutDirect ? 0 : starlight
   for (const k of of) {
-    for (let i = 0, j = k * pixels; i < pixels; i++, j++) {
-      image[i] += weights[k] * (total[j] + (kept - 1) * direct[j])
-      noise[i] += weights[k] * sigma[j]
-    }
+    for (let i = 0, j = k * pixels; i < pixels; i++, j++) image[i] += weights[k] * (total[j] + (kept - 1) * direct[j])
   }
-  return { image, sigma: noise }
+  return image
+}
+
+function add(sum: Float64Array, plane: Float64Array): void {
+  for (let i = 0; i < sum.length; i++) sum[i] += plane[i]
 }
 
 function addPoint(

@@ -7,6 +7,7 @@ import type { LightWeights } from './band.js'
 import { type Beam, makeBeam } from './beam.js'
 import { type PixelGrid, pixelSrOf, pixelsAcross } from './blur.js'
 import { beamNoise, countsRead, whiteNoise } from './noise.js'
+import { sigmaOf } from './noise-planes.js'
 import { throughOptics } from './optics.js'
 import { detectorGrid } from './regrid.js'
 import type { CameraSource } from './run-source.js'
@@ -66,7 +67,7 @@ export function takePicture(spec: PictureSpec, source: CameraSource, light: Ligh
     wavelength: light.wavelength,
     observed: masked(made?.observed ?? expected),
     expected: masked(expected),
-    sigma: masked(seen.sigma),
+    sigma: masked(sigmaOf(seen.noise)),
     ...(made && { noise: masked(made.sigma) }),
     ...(beam && { beam, fineness: pixelsAcross(beam, source) }),
     unit: spec.unit === COUNTS ? countsUnit(count) : pictureUnit(spec.unit, zero),

@@ -3,7 +3,7 @@ import { join } from 'node:path'
 import type { StarOnSky } from '../camera/types.js'
 import { ecsvNumbers, readEcsv } from '../data/ecsv.js'
 import { DataError } from '../data/error.js'
-import { imageValues } from '../data/fits/image.js'
+import { imageValues, imageValuesInto, valueCount } from '../data/fits/image.js'
 import { type FitsUnit, readFits, unitNamed } from '../data/fits/read.js'
 import { tableColumn } from '../data/fits/table.js'
 import { recordName } from '../run/run-folder.js'
@@ -35,6 +35,8 @@ export interface CameraSource extends PixelGrid {
   wavelengths: number[]
   total: Float64Array
   sigma: Float64Array
+  /** wavelengths x modes x height x width: the noise in units of sigma, mode by mode; absent where the run did not keep it. */
+  modes?: Float32Array
   direct: Float64Array
   stars: StarOnSky[]
   /** Values that were no numbers, taken as dark. */
@@ -99,6 +101,7 @@ function readCamera(file: string, name: string): CameraSource {
   if (given.length !== pixels * wavelengths.length) throw new DataError(file, 'the image and its wavelengths do not agree')
   const cgs = (values: Float64Array) => values.map((value, i) => unit.toCgs(value, contexts[Math.floor(i / pixels)]))
   const sigmas = plane(unitNamed(units, 'SIGMA'))
+  const modes = units.find(({ name: extension }) => extension === 'MODES')
   const values = cgs(given)
   const sigma = sigmas.map((value, i) => unit.sigmaToCgs(values[i], value, contexts[Math.floor(i / pixels)]))
   const blanks = unit.name.startsWith('mag') ? 0 : given.reduce((count, value) => count + (Number.isFinite(value) ? 0 : 1), 0)
@@ -111,6 +114,7 @@ function readCamera(file: string, name: string): CameraSource {
     wavelengths,
     total: values.map(orDark),
     sigma: sigma.map(orDark),
+    ...(modes && { modes: imageValuesInto(new Float32Array(valueCount(modes)), modes) }),
     direct: cgs(plane(unitNamed(units, 'DIRECT'))).map(orDark),
     stars: starsOf(units, wavelengths.length),
     blanks,

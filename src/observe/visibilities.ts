@@ -4,12 +4,13 @@ import { extent } from '../math/stats.js'
 import { LIGHT_SPEED } from '../units/constants.js'
 import type { LightWeights } from './band.js'
 import { type ClosurePhase, closurePhases } from './closure.js'
-import { type ComplexValues, planeOf, transformed } from './fourier.js'
+import { type ComplexValues, dustOf, transformed } from './fourier.js'
 import type { CameraSource } from './run-source.js'
 import { diskVisibility } from './star-visibility.js'
 import type { VisibilitiesSpec } from './types.js'
 import { fluxOf } from './unit.js'
 import { type VisibilityCurve, visibilityCurve } from './visibility-curve.js'
+import { visibilitySigma } from './visibility-noise.js'
 
 /** Visibilities as an interferometer records them; one value a baseline. */
 export interface Visibilities {
@@ -65,21 +66,18 @@ export function modelVisibilities(
   weights: Float64Array
 ): { expected: ComplexValues; sigma: Float64Array } {
   const expected = { re: new Float64Array(baselines.length), im: new Float64Array(baselines.length) }
-  const variance = new Float64Array(baselines.length)
   weights.forEach((weight, k) => {
     if (weight === 0) return
-    const plane = planeOf(source, k)
+    const light = dustOf(source, k)
     baselines.forEach(([east, north], i) => {
       const [u, v] = [east / source.wavelengths[k], north / source.wavelengths[k]]
-      const dust = transformed(plane.dust, source, u, v)
+      const dust = transformed(light, source, u, v)
       const stars = starsAt(source, k, u, v)
       expected.re[i] += weight * (dust.re + stars.re)
       expected.im[i] += weight * (dust.im + stars.im)
-      const noise = transformed(plane.sigma, source, u, v)
-      variance[i] += weight ** 2 * (plane.scatter + noise.re ** 2 + noise.im ** 2)
     })
   })
-  return { expected, sigma: variance.map(Math.sqrt) }
+  return { expected, sigma: visibilitySigma(baselines, source, weights) }
 }
 
 /** Stars as the disks or points they are. */

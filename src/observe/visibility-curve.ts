@@ -1,5 +1,5 @@
 import { besselJ0 } from '../math/bessel.js'
-import { planeOf, sinc } from './fourier.js'
+import { dustOf, sinc } from './fourier.js'
 import type { CameraSource } from './run-source.js'
 import { diskVisibility } from './star-visibility.js'
 
@@ -19,8 +19,7 @@ export function visibilityCurve(source: CameraSource, weights: Float64Array, lon
   const visibility = new Float64Array(baseline.length)
   weights.forEach((weight, k) => {
     if (weight === 0) return
-    const { dust } = planeOf(source, k)
-    const { radii, fluxes } = quarter(dust, source)
+    const { radii, fluxes } = quarter(dustOf(source, k), source)
     baseline.forEach((length, i) => {
       const q = length / source.wavelengths[k]
       let sum = 0

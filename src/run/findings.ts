@@ -1,3 +1,4 @@
+import { sigmaOfSum } from '../camera/noise-modes.js'
 import type { CameraImages } from '../camera/types.js'
 import type { Model } from '../model/model.js'
 import { pixelContext } from '../output/pixel-context.js'
@@ -12,7 +13,16 @@ import type { RunResult } from './run-scene.js'
 export interface Findings {
   dust: DustFinding[]
   /** One entry a camera and wavelength. */
-  images: { camera: string; wavelengthUm: number; unit: string; peak: number; peakSigma: number; fluxJy: number }[]
+  images: {
+    camera: string
+    wavelengthUm: number
+    unit: string
+    peak: number
+    peakSigma: number
+    /** Of the whole field. */
+    fluxJy: number
+    fluxSigmaJy: number
+  }[]
   /** One entry a spectrum and wavelength. */
   spectra: { spectrum: string; wavelengthUm: number; unit: string; flux: number; sigma: number }[]
 }
@@ -90,7 +100,7 @@ function temperaturesOf(model: Model, { temperature, sigma }: DustTemperatures, 
   }
 }
 
-/** The brightest pixel with its 1 sigma in the camera's unit, and the flux of the whole field. */
+/** The brightest pixel in the camera's unit, and the flux of the whole field, each with its 1 sigma. */
 function imageFinding(result: CameraImages, wavelength: number, k: number): Findings['images'][number] {
   const { camera, width, height, total, sigma } = result
   const pixels = width * height
@@ -108,6 +118,7 @@ function imageFinding(result: CameraImages, wavelength: number, k: number): Find
     unit: camera.unit,
     peak: unit.fromCgs(total[brightest], context),
     peakSigma: unit.sigmaFromCgs(total[brightest], sigma[brightest], context),
-    fluxJy: (sum * context.pixelSr) / JANSKY
+    fluxJy: (sum * context.pixelSr) / JANSKY,
+    fluxSigmaJy: (sigmaOfSum(result, k) * context.pixelSr) / JANSKY
   }
 }

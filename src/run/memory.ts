@@ -42,12 +42,13 @@ export function memoryEstimate(sizes: Sizes, workers: number): MemoryEstimate {
   const values = sizesOf.reduce((sum, [pixels, count]) => sum + pixels * count, 0)
   const columns = sizesOf.reduce((sum, [pixels]) => sum + pixels, 0)
   const largest = Math.max(0, ...sizesOf.map(([pixels, count]) => pixels * count))
-  const planes = (parts > 1 ? 11 : 5) + (hasAmbient(scene) ? 1 : 0)
+  const planes = 5 + GROUPS / 8 + (parts > 1 ? 6 : 0) + (hasAmbient(scene) ? 1 : 0)
   return {
     program: PROGRAM_BYTES,
     worker: WORKER_BYTES + WAITING * tally,
     cells: Math.max(heat, light * wavelengthsAbreast(sizes, workers)) + 8 * cells * (1 + components) + cubeBytes(sizes),
-    // Column density once; five planes, eleven with polarisation, one more with ambient light; written out once more, and joined.
+    // Column density once; five planes and the modes of noise, six more with polarisation, one with ambient light; written out once more,
+    // and joined.
     images: columns * 8 + values * 8 * planes + largest * 8 * (2 * planes + 2)
   }
 }

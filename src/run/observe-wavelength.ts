@@ -10,6 +10,7 @@ import { turnStokes } from '../camera/stokes-ray.js'
 import { standardError } from '../math/stats.js'
 import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
+import { GROUPS } from '../solve/groups.js'
 import type { ScatteredLight } from '../solve/scattered-light.js'
 import type { Ledger, Piece } from '../workers/ledger.js'
 import type { WorkerPool } from '../workers/pool.js'
@@ -163,6 +164,11 @@ async function takePicture(model: Model, work: PictureWork, { pool, ledger, name
     images.emitted.set(rows.emitted, at)
     images.scattered.set(rows.scattered, at)
     images.sigma.set(rows.sigma, at)
+    for (let g = 0; g < GROUPS; g++)
+      images.modes.set(
+        rows.modes.subarray(g * rows.sigma.length, (g + 1) * rows.sigma.length),
+        ((k * GROUPS + g) * frame.height + index * ROWS_A_TASK) * frame.width
+      )
     if (images.stokes && rows.stokes) for (const plane of STOKES) images.stokes[plane].set(rows.stokes[plane], at)
     progress.placing += rows.placingError
     progress.tasks = index + 1

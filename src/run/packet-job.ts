@@ -1,4 +1,5 @@
 import { apertureDetector, cameraDetector, pixelSolidAngle, seenFrom } from '../camera/frame.js'
+import { putModes } from '../camera/noise-modes.js'
 import { rayMedium } from '../camera/ray-medium.js'
 import { STOKES, STOKES_PAIRS, type StokesPlanes, stokesPlanes } from '../camera/stokes-planes.js'
 import { BULK } from '../camera/survey.js'
@@ -19,6 +20,8 @@ interface Caught {
   emitted: Float64Array
   scattered: Float64Array
   sigma: Float64Array
+  /** GROUPS x as many values. */
+  modes: Int8Array
   stokes?: StokesPlanes
 }
 
@@ -76,14 +79,17 @@ function caughtBy(pixels: number, { sums, packets }: GroupSums): Caught {
   const mean = new Float64Array(sums[0]?.length ?? 3 * pixels)
   for (const sum of sums) for (let i = 0; i < mean.length; i++) mean[i] += sum[i] / all
   const estimates = new Float64Array(GROUPS)
+  const modes = new Int8Array(GROUPS * pixels)
   const sigma = Float64Array.from({ length: pixels }, (_, i) => {
     sums.forEach((sum, g) => {
       estimates[g] = (sum[i] + sum[pixels + i] + sum[2 * pixels + i]) / packets[g]
     })
-    return standardError(estimates)
+    const error = standardError(estimates)
+    putModes(modes, i, pixels, estimates, error)
+    return error
   })
   const [direct, emitted, scattered] = [0, 1, 2].map((part) => mean.subarray(part * pixels, (part + 1) * pixels))
-  if (mean.length === 3 * pixels) return { direct, emitted, scattered, sigma }
+  if (mean.length === 3 * pixels) return { direct, emitted, scattered, sigma, modes }
   const stokes = stokesPlanes(pixels)
   for (const [i, [value, error]] of STOKES_PAIRS.entries()) {
     const from = (3 + i) * pixels
@@ -95,7 +101,7 @@ function caughtBy(pixels: number, { sums, packets }: GroupSums): Caught {
       stokes[error][pixel] = standardError(estimates)
     }
   }
-  return { direct, emitted, scattered, sigma, stokes }
+  return { direct, emitted, scattered, sigma, modes, stokes }
 }
 
 /** Writes what a detector caught into its image or spectrum; returns where the next detector's values start. */
@@ -128,6 +134,9 @@ function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted
         at
       )
   }
+  const detected = caught.sigma.length
+  for (let g = 0; g < GROUPS; g++)
+    images.modes.set(caught.modes.subarray(g * detected + offset, g * detected + offset + pixels), (k * GROUPS + g) * pixels)
   for (let i = 0; i < pixels; i++) {
     direct[i] += caught.direct[offset + i] * scale
     images.emitted[at + i] = caught.emitted[offset + i] * scale

@@ -4,6 +4,7 @@ import type { ApertureSpectrum, CameraImages, StarOnSky } from '../camera/types.
 import { hasAmbient } from '../scene/has-ambient.js'
 import { isPolarised } from '../scene/is-polarised.js'
 import type { CameraSpec, Scene, SpectrumSpec } from '../scene/types.js'
+import { GROUPS } from '../solve/groups.js'
 import type { Estimator } from './estimator.js'
 
 /** A camera or spectrum that wants the wavelength at hand, and the index of the wavelength in its list. */
@@ -16,6 +17,8 @@ const PLANES = ['total', 'sigma', 'direct', 'emitted', 'scattered'] as const
 /** Values of one camera or spectrum at one wavelength. */
 export type WantedValues = Record<(typeof PLANES)[number], Float64Array> &
   Partial<Record<(typeof STOKES)[number] | 'deficit', Float64Array>> & {
+    /** Of pictures. */
+    modes?: Int8Array
     samplingError: number
     /** Of pictures: see CameraImages. */
     beyond: number
@@ -45,6 +48,7 @@ export function emptyProducts(scene: Scene, estimator: Estimator) {
       width,
       height,
       ...arrays(width * height * count),
+      modes: new Int8Array(GROUPS * width * height * count),
       stars,
       samplingError: new Array(count).fill(0),
       beyond: new Array(count).fill(0)
@@ -80,6 +84,7 @@ export function valuesOf(wanted: Wanted[]): WantedValues[] {
     const starFlux = starsOf(want).map(({ flux }) => flux[want.k])
     return {
       ...Object.fromEntries(copies),
+      ...(want.kind === 'camera' && { modes: want.images.modes.slice(GROUPS * from, GROUPS * to) }),
       samplingError: product.samplingError[want.k],
       beyond: want.kind === 'camera' ? want.images.beyond[want.k] : 0,
       starFlux
@@ -95,7 +100,10 @@ export function putValues(wanted: Wanted[], values: WantedValues[]): void {
     if (product.stokes) for (const plane of STOKES) product.stokes[plane].set(values[i][plane]!, from)
     product.deficit?.set(values[i].deficit!, from)
     product.samplingError[want.k] = values[i].samplingError
-    if (want.kind === 'camera') want.images.beyond[want.k] = values[i].beyond
+    if (want.kind === 'camera') {
+      want.images.beyond[want.k] = values[i].beyond
+      want.images.modes.set(values[i].modes!, GROUPS * from)
+    }
     starsOf(want).forEach(({ flux }, star) => {
       flux[want.k] = values[i].starFlux[star]
     })
@@ -111,7 +119,12 @@ export function inPlaceOfTotal(
   plane: Float64Array,
   stars: StarOnSky[]
 ): Extract<Wanted, { kind: 'camera' }> {
-  return { kind: 'camera', spec, k: 0, images: { ...images, ...asTotal(plane), beyond: [0], stars } }
+  return {
+    kind: 'camera',
+    spec,
+    k: 0,
+    images: { ...images, ...asTotal(plane), modes: new Int8Array(GROUPS * plane.length), beyond: [0], stars }
+  }
 }
 
 /** As `inPlaceOfTotal`, of a spectrum; `value` has one element. */

@@ -35,7 +35,7 @@ interface ImageOptions {
   wavelengths?: number[]
 }
 
-/** Images whose total is `intensity(x, y, k)` (cgs), with 1 % errors, half emitted and half scattered. */
+/** Images whose total is `intensity(x, y, k)` (cgs), with 1 % errors that are alike in all pixels (one mode), half emitted and half scattered. */
 export function exampleImages(intensity: (x: number, y: number, k: number) => number, options: ImageOptions = {}): CameraImages {
   const { pixels = [6, 4], fieldArcsec = [12, 8], unit = 'MJy/sr', wavelengths = [0.55e-4, 870e-4] } = options
   const [width, height] = pixels
@@ -58,6 +58,7 @@ export function exampleImages(intensity: (x: number, y: number, k: number) => nu
     height,
     total,
     sigma: total.map((value) => value / 100),
+    modes: Int8Array.from({ length: 16 * total.length }, (_, i) => (Math.floor(i / (width * height)) % 16 === 0 ? 127 : 0)),
     direct: new Float64Array(total.length),
     emitted: total.map((value) => value / 2),
     scattered: total.map((value) => value / 2),

@@ -25,7 +25,10 @@ function cameraFile(pixels: number, wavelengths: number) {
     scattered: total
   }
   const path = join(folderWith(), 'face.fits')
-  writeFileSync(path, cameraFits({ ...images, stars: [], samplingError: [], beyond: [] }, scene))
+  writeFileSync(
+    path,
+    cameraFits({ ...images, modes: new Int8Array(16 * images.total.length), stars: [], samplingError: [], beyond: [] }, scene)
+  )
   return { path, file: 'images/face.fits', heading: 'Camera face' }
 }
 

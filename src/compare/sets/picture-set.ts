@@ -1,6 +1,7 @@
 import { type Direction, frameAt } from '../../data/fits/sky-projection.js'
 import type { LightWeights } from '../../observe/band.js'
 import { makeBeam } from '../../observe/beam.js'
+import { sigmaOf } from '../../observe/noise-planes.js'
 import type { Refuse } from '../../observe/observe-run.js'
 import { type BlurredLight, throughBeam } from '../../observe/optics.js'
 import type { CameraSource } from '../../observe/run-source.js'
@@ -38,7 +39,7 @@ export function pictureSet(spec: PictureData, source: CameraSource, light: Light
   const whole = (placement: Placement) => {
     const seen = behindBeam(-placement.rotation)
     const place = moved(onSky, placement)
-    return { seen, place, ...reprojected([seen.image, seen.sigma], source, target, place) }
+    return { seen, place, ...reprojected([seen.image, ...seen.noise], source, target, place) }
   }
   const start = whole(inPlace)
   const offsets = offsetsOf(onSky, width, height)
@@ -65,9 +66,9 @@ export function pictureSet(spec: PictureData, source: CameraSource, light: Light
     model: (placement) => {
       const { seen, place, planes, coverage } = whole(placement)
       const covered = (plane: Float64Array) => Float64Array.from(pixels, (i) => (coverage[i] > 0 ? plane[i] / coverage[i] : 0))
-      const image = covered(planes[0])
+      const [image, ...noise] = planes.map(covered)
       addPoints(image, seen, place, pixels, width)
-      return { values: image, sigma: covered(planes[1]) }
+      return { values: image, sigma: sigmaOf(noise) }
     },
     shown: {
       kind: 'picture',

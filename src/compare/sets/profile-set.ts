@@ -1,6 +1,7 @@
 import { numbersIn } from '../../data/table.js'
 import type { LightWeights } from '../../observe/band.js'
 import { makeBeam } from '../../observe/beam.js'
+import { sigmaOf } from '../../observe/noise-planes.js'
 import type { Refuse } from '../../observe/observe-run.js'
 import { throughOptics } from '../../observe/optics.js'
 import type { CameraSource } from '../../observe/run-source.js'
@@ -90,24 +91,28 @@ function edgesOf(at: number[]): number[] {
   return [Math.max(0, 2 * first - middles[0]), ...middles, 2 * last - middles[middles.length - 1]]
 }
 
-/** Means of a picture in bins, each pixel shared by its parts; 1 sigma as if the noise within a bin were alike: an upper limit. */
+/** Means of a picture in bins, each pixel shared by its parts. */
 function binned(
-  seen: { image: Float64Array; sigma: Float64Array },
+  { image, noise }: { image: Float64Array; noise: Float64Array[] },
   { width, height, pixel }: CameraSource,
   binOf: BinOf,
   bins: number
 ) {
-  const [sum, noise, count] = [0, 0, 0].map(() => new Float64Array(bins))
+  const planes = [image, ...noise]
+  const sums = planes.map(() => new Float64Array(bins))
+  const count = new Float64Array(bins)
   for (let i = 0; i < width * height; i++) {
     for (let part = 0; part < PARTS * PARTS; part++) {
       const x = (i % width) + ((part % PARTS) + 0.5) / PARTS
       const y = Math.floor(i / width) + (Math.floor(part / PARTS) + 0.5) / PARTS
       const bin = binOf((width / 2 - x) * pixel[0], (y - height / 2) * pixel[1])
       if (bin < 0) continue
-      sum[bin] += seen.image[i]
-      noise[bin] += seen.sigma[i]
+      planes.forEach((plane, p) => {
+        sums[p][bin] += plane[i]
+      })
       count[bin]++
     }
   }
-  return { values: sum.map((value, bin) => value / count[bin]), sigma: noise.map((value, bin) => value / count[bin]) }
+  const [values, ...deviations] = sums.map((sum) => sum.map((value, bin) => value / count[bin]))
+  return { values, sigma: sigmaOf(deviations) }
 }

@@ -1,3 +1,4 @@
+import { MODE_STEPS } from '../../camera/noise-modes.js'
 import { STOKES_PAIRS } from '../../camera/stokes-planes.js'
 import type { CameraImages, StarOnSky } from '../../camera/types.js'
 import type { Scene } from '../../scene/types.js'
@@ -9,7 +10,7 @@ import { pixelContext } from '../pixel-context.js'
 import { stokesUnit } from '../stokes-unit.js'
 import { card, commentCard, realCard } from './card.js'
 import { joined } from './hdu.js'
-import { imageHdu } from './image.js'
+import { imageHdu, stepsHdu } from './image.js'
 import { originCards } from './origin-cards.js'
 import { tableHdu } from './table.js'
 import { imageWcsCards, wavelengthTableHdu, wcsCards } from './wcs.js'
@@ -27,7 +28,7 @@ const planes: [Plane, string][] = [
 
 /**
  * The FITS file of a camera in the camera's unit, axes x (west), y (north), wavelength. The primary HDU is the total;
- * image extensions SIGMA, DIRECT, EMITTED, SCATTERED, where light is polarised Q, SIGMA_Q, U, SIGMA_U, V and SIGMA_V, with dust COLUMN,
+ * image extensions SIGMA, DIRECT, EMITTED, SCATTERED, where light is polarised Q, SIGMA_Q, U, SIGMA_U, V and SIGMA_V, MODES, with dust COLUMN,
  * the table of wavelengths and that of the stars follow. With ambient fields there is DEFICIT too, whose header holds their intensity beside the dust,
  * `ambient` (cgs, one value a wavelength), in the cards AMBI1, AMBI2 and so on.
  */
@@ -45,7 +46,14 @@ export function cameraFits(images: CameraImages, scene: Scene, ambient: number[]
   })
   const stokes = stokesHdus(images, axes, wcsCards({ width, height, field: camera.field }, scene.sky))
   const stars = images.stars.length > 0 ? [starsTableHdu(images)] : []
-  return joined([...parts, ...stokes, ...columnHdu(images, scene), wavelengthTableHdu(camera.wavelengths), ...stars])
+  return joined([
+    ...parts,
+    ...stokes,
+    modesHdu(images, scene),
+    ...columnHdu(images, scene),
+    wavelengthTableHdu(camera.wavelengths),
+    ...stars
+  ])
 }
 
 /** Extensions Q, U, V and their errors; beside magnitudes they are in MJy/sr. */
@@ -89,6 +97,18 @@ function columnHdu({ column, width, height, camera }: CameraImages, scene: Scene
     ...imageWcsCards({ width, height, field: camera.field }, scene.sky)
   ]
   return [imageHdu('extension', [width, height], column.density, cards)]
+}
+
+/** The extension MODES: axes x, y, mode, wavelength. */
+function modesHdu({ modes, width, height, camera }: CameraImages, scene: Scene): Uint8Array {
+  const count = camera.wavelengths.length
+  return stepsHdu([width, height, modes.length / (width * height * count), count], modes, MODE_STEPS, [
+    card('EXTNAME', 'MODES'),
+    commentCard('This image: the noise behind SIGMA in units of SIGMA (axes x, y, mode, wavelength).'),
+    commentCard('What is made linearly of the image has as variance the sum over the modes of'),
+    commentCard('the squares of the same made of SIGMA x MODES.'),
+    ...imageWcsCards({ width, height, field: camera.field }, scene.sky)
+  ])
 }
 
 /** The extension STARS, one row a star; their names stand in the cards STAR1, STAR2 and so on. */

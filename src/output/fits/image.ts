@@ -1,4 +1,4 @@
-import { card } from './card.js'
+import { card, realCard } from './card.js'
 import { hdu } from './hdu.js'
 
 /**
@@ -18,6 +18,27 @@ export function imageHdu(place: 'primary' | 'extension', axes: number[], values:
   const view = new DataView(data.buffer)
   for (let i = 0; i < values.length; i++) view.setFloat64(8 * i, Number.isFinite(values[i]) ? values[i] : Number.NaN)
   return hdu([...structure, ...cards], data)
+}
+
+/**
+ * An image extension of bytes, whose values are whole numbers of steps: bytes stand for 1/`steps` each, counted from 128 (BITPIX 8 with
+ * BZERO and BSCALE).
+ */
+export function stepsHdu(axes: number[], values: Int8Array, steps: number, cards: string[]): Uint8Array {
+  const structure = [
+    card('XTENSION', 'IMAGE', 'image extension'),
+    card('BITPIX', 8, 'unsigned bytes'),
+    card('NAXIS', axes.length),
+    ...axes.map((length, i) => card(`NAXIS${i + 1}`, length)),
+    card('PCOUNT', 0),
+    card('GCOUNT', 1),
+    realCard('BSCALE', 1 / steps),
+    realCard('BZERO', -128 / steps)
+  ]
+  return hdu(
+    [...structure, ...cards],
+    Uint8Array.from(values, (value) => value + 128)
+  )
 }
 
 /** A primary HDU without data, for files that hold only tables. */

@@ -15,8 +15,9 @@ const DIGEST_BYTES = 32
 /** Read, written and hashed at a time, bytes. */
 const CHUNK = 4 * 1024 * 1024
 
-const KINDS = { Float64Array, Float32Array }
+const KINDS = { Float64Array, Float32Array, Int8Array }
 type Kind = keyof typeof KINDS
+type Values = Float64Array | Float32Array | Int8Array
 
 /** The file is not a whole piece; the message says how. */
 export class BrokenPiece extends Error {
@@ -25,7 +26,7 @@ export class BrokenPiece extends Error {
 
 /** Writes a piece into an open file, giving way to other work between chunks. */
 export async function writePiece(file: FileHandle, piece: Piece): Promise<void> {
-  const arrays: (Float64Array | Float32Array)[] = []
+  const arrays: Values[] = []
   const header = Buffer.from(JSON.stringify(piece, (_, value) => written(value, arrays)))
   const length = Buffer.alloc(4)
   length.writeUInt32LE(header.length)
@@ -71,9 +72,9 @@ export function readPiece(path: string): Piece {
 type Entry = { array: Kind; length: number } | { number: string }
 
 /** The header's word for a value: JSON knows neither arrays of doubles nor NaN and the infinities. */
-function written(value: unknown, arrays: (Float64Array | Float32Array)[]): unknown {
+function written(value: unknown, arrays: Values[]): unknown {
   if (typeof value === 'number' && !Number.isFinite(value)) return { number: String(value) } satisfies Entry
-  if (!(value instanceof Float64Array || value instanceof Float32Array)) return value
+  if (!(value instanceof Float64Array || value instanceof Float32Array || value instanceof Int8Array)) return value
   arrays.push(value)
   return { array: value.constructor.name as Kind, length: value.length } satisfies Entry
 }
