@@ -6,7 +6,7 @@ import { parseScene } from '../src/scene/read.js'
 import { type DustLight, dustLight } from '../src/solve/dust-light.js'
 import { scatterMedium } from '../src/solve/scatter-medium.js'
 import { givenTemperatures } from '../src/solve/temperatures.js'
-import type { ScatterMedium } from '../src/transport/scatter-medium.js'
+import { centralRadius2, type ScatterMedium } from '../src/transport/scatter-medium.js'
 import { writeDoubles } from './doubles.js'
 
 /** The dust of a scene at its first wavelength, as the program lays it out. */
@@ -30,6 +30,6 @@ export function writeMedium(path: string, { model, light, medium }: LitDust): vo
   const star = launch.find((source) => source.kind === 'point-star')
   const emitted = light.emission.map((value, cell) => 4 * Math.PI * value * model.volume[cell])
   const sizes = [walls.r.length - 1, walls.cosTheta.length - 1, asymmetry.length, cells]
-  const powers = [star?.luminosity ?? 0, star?.removed ?? 0]
-  writeDoubles(path, [sizes, powers, walls.r, walls.cosTheta, extinction, asymmetry, scattering, emitted, light.opticalDepth])
+  const source = [star?.luminosity ?? 0, star?.removed ?? 0, centralRadius2(medium)]
+  writeDoubles(path, [sizes, source, walls.r, walls.cosTheta, extinction, asymmetry, scattering, emitted, light.opticalDepth])
 }

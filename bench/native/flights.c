@@ -142,7 +142,7 @@ static struct {
 
 static void tallyFlights(const Medium *m, int packets, double *tally) {
   const double *extinction = m->extinction, *radii = m->r, *depths = m->opticalDepth;
-  const double g = m->asymmetry[0], scale = 1.0 / packets;
+  const double g = m->asymmetry[0], scale = 1.0 / packets, starRadius2 = m->starRadius2;
   const int cells = m->cells;
   double *squares = malloc((cells + 1) * sizeof(double)), *albedo = malloc(cells * sizeof(double));
   for (int i = 0; i <= cells; i++) squares[i] = radii[i] * radii[i];
@@ -182,13 +182,19 @@ static void tallyFlights(const Medium *m, int packets, double *tally) {
       while (s < 0) {
         const double below = squares[cell] - b2;
         const bool inwards = below > 0;
-        const double next = larger(inwards ? -sqrt(below) : sqrt(squares[cell + 1] - b2), s);
+        double next = larger(inwards ? -sqrt(below) : sqrt(squares[cell + 1] - b2), s);
+        bool ends = false;
+        if (b2 < starRadius2) {
+          const double star = -sqrt(starRadius2 - b2);
+          if (star < next) next = larger(star, s), ends = true;
+        }
         const double step = next - s;
         opacity = extinction[cell];
         const double depth = step * opacity;
         collides = depth >= remaining;
         if (collides) break;
         TALLY(step);
+        if (ends) goto gone;
         remaining -= depth;
         s = next;
         cell += inwards ? -1 : 1;

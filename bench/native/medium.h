@@ -5,7 +5,8 @@
 
 typedef struct {
   int nr, nt, laws, cells;
-  double luminosity, removed;
+  // Squared radius of a star at the centre, cm2; 0 for a point.
+  double luminosity, removed, starRadius2;
   const double *r, *cosTheta, *extinction, *asymmetry, *scattering, *emitted, *opticalDepth;
 } Medium;
 
@@ -24,8 +25,9 @@ static Medium readMedium(const char *path) {
     exit(2);
   }
   fclose(file);
-  Medium m = {.nr = data[0], .nt = data[1], .laws = data[2], .cells = data[3], .luminosity = data[4], .removed = data[5]};
-  const double *at = data + 6;
+  Medium m = {.nr = data[0], .nt = data[1], .laws = data[2], .cells = data[3], .luminosity = data[4], .removed = data[5],
+              .starRadius2 = data[6]};
+  const double *at = data + 7;
   m.r = at, at += m.nr + 1;
   m.cosTheta = at, at += m.nt + 1;
   m.extinction = at, at += m.cells;
