@@ -16,16 +16,17 @@ export function putModes(modes: Int8Array, at: number, stride: number, groups: F
   for (let g = 0; g < GROUPS; g++) modes[g * stride + at] = Math.round(steps * (groups[g] - centre))
 }
 
-/** 1 sigma of the sum over all pixels of a wavelength, the k-th. */
+/** 1 sigma of the sum over all pixels of a wavelength, the k-th, each times its weight. */
 export function sigmaOfSum(
   { width, height, sigma, modes }: Pick<CameraImages, 'width' | 'height' | 'sigma' | 'modes'>,
-  k: number
+  k: number,
+  weights: Float64Array
 ): number {
   const pixels = width * height
   let variance = 0
   for (let g = 0; g < GROUPS; g++) {
     let sum = 0
-    for (let i = 0; i < pixels; i++) sum += sigma[k * pixels + i] * modes[(k * GROUPS + g) * pixels + i]
+    for (let i = 0; i < pixels; i++) sum += weights[i] * sigma[k * pixels + i] * modes[(k * GROUPS + g) * pixels + i]
     variance += (sum / MODE_STEPS) ** 2
   }
   return Math.sqrt(variance)

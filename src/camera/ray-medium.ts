@@ -7,7 +7,7 @@ import { allocateShared } from '../math/allocate.js'
 import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
 import { sphereStars } from '../solve/scatter-medium.js'
-import type { PolarisedPart, ScatteredLight } from '../solve/scattered-light.js'
+import type { NearLight, PolarisedPart, ScatteredLight } from '../solve/scattered-light.js'
 import { beamDepth, type StarBeam } from '../solve/star-beams.js'
 
 /** What the intensity along rays to one observer at one wavelength follows from, as flat arrays that all threads share. */
@@ -26,8 +26,12 @@ export interface RayMedium {
   scatteredGroups: Float32Array
   /** Values a cell: ANGLE_NODES in one dimension, AZIMUTH_BINS in two, 1 in three; 0 when nothing scatters. */
   slots: number
+  /** As `ScatteredLight`; 1 when nothing scatters. */
+  polarNodes: number
   /** As `scattered`, the other Stokes parameters; absent where no law polarises or nothing scatters. */
   polarised?: PolarisedPart
+  /** As `ScatteredLight`. */
+  near?: NearLight
   /** Some law polarises: rays have POLARISED_VALUES numbers. */
   polarising: boolean
   /** First scatterings of the point stars, calculated exactly; absent without them. */
@@ -67,7 +71,9 @@ export function rayMedium(model: Model, light: DustLight, scattered: ScatteredLi
     scattered: scattered?.value ?? new Float64Array(),
     scatteredGroups: scattered?.groups ?? new Float32Array(),
     slots: scattered?.slots ?? 0,
+    polarNodes: scattered?.polarNodes ?? 1,
     ...(scattered?.polarised && { polarised: scattered.polarised }),
+    ...(scattered?.near && { near: scattered.near }),
     polarising: light.tables?.polarising ?? false,
     ...(luminosity > 0 && {
       starlight: {

@@ -1,18 +1,18 @@
 import { henyeyGreenstein } from '../dust/phase-function.js'
 import { elementAt, S11, S12 } from '../dust/scattering-tables.js'
-import { dimensionsOf, isOctree, openWalk, reachOf, sphericalOf, type Walk } from '../grid/cells.js'
+import { isOctree, openWalk, reachOf, sphericalOf, type Walk } from '../grid/cells.js'
 import { OctreeWalk } from '../grid/octree/octree-walk.js'
 import type { SphericalWalk } from '../grid/walk.js'
 import type { Vector } from '../scene/types.js'
 import { GROUPS } from '../solve/groups.js'
-import { ANGLE_NODES } from '../solve/scattered-light.js'
 import { beamDepth, type StarBeam } from '../solve/star-beams.js'
 import { BEAM_POINT, columnsBetween } from '../solve/star-columns.js'
 import { pathToStar } from '../transport/star-spheres.js'
 import type { RayMedium } from './ray-medium.js'
 import { EMITTED, FIRST_GROUP, POLARISED_VALUES, RAY_VALUES, SCATTERED } from './ray-values.js'
-import { AZIMUTH_LOOKUP, StokesRay } from './stokes-ray.js'
-import type { ViewBasis } from './view.js'
+import { ScatteredRay } from './scattered-ray.js'
+import { dot, Sight, type View } from './sight.js'
+import { StokesRay } from './stokes-ray.js'
 
 /** Beyond this optical depth nothing is seen. */
 const OPAQUE = 40
@@ -43,13 +43,11 @@ const ONE = Float64Array.of(1)
  */
 export class RayIntegrator {
   private readonly walk: Walk
-  private readonly dimensions: 1 | 2 | 3
   private readonly reach: number
-  /** Beyond all cells and stars, cm. */
+  /** Beyond all cells, stars and the observer at a place, cm. */
   private readonly far: number
-  private readonly azimuthPosition: Float32Array
-  /** Where rays start from and run to, turned into the half-plane of azimuth 0 in two dimensions. */
-  private readonly view: ViewBasis
+  private readonly scatteredRay: ScatteredRay
+  private readonly sight: Sight
   /** Numbers that `trace` writes. */
   readonly size: number
   /** Starlight scattered once along the last ray, polarised along the radius in the picture. */
@@ -63,21 +61,19 @@ export class RayIntegrator {
 
   constructor(
     private readonly medium: RayMedium,
-    view: ViewBasis
+    /** In two dimensions turned into the half-plane of azimuth 0. */
+    private readonly view: View
   ) {
-    this.view = view
+    this.sight = new Sight(view, medium.walls)
     this.size = medium.polarising ? POLARISED_VALUES : RAY_VALUES
-    this.stokes = medium.polarising ? new StokesRay(medium, view) : undefined
+    this.stokes = medium.polarising && 'observer' in view ? new StokesRay(medium, view) : undefined
     this.walk = openWalk(medium.walls)
-    this.dimensions = dimensionsOf(medium.walls)
     this.reach = reachOf(medium.walls)
-    this.far = medium.spheres.reduce((sum, value, i) => sum + (i % 4 < 3 ? Math.abs(value) : Math.sqrt(value)), this.reach)
+    const extent = this.reach + ('from' in view ? Math.hypot(...view.from) : 0)
+    this.far = medium.spheres.reduce((sum, value, i) => sum + (i % 4 < 3 ? Math.abs(value) : Math.sqrt(value)), extent)
     this.shadow = isOctree(medium.walls) ? new OctreeWalk(medium.walls) : undefined
     this.radials = new Float64Array(medium.starlight?.beams.length ?? 0)
-    this.azimuthPosition = Float32Array.from({ length: AZIMUTH_LOOKUP + 1 }, (_, i) => {
-      const angle = Math.acos(Math.min(1, -1 + (2 * (i + 0.5)) / AZIMUTH_LOOKUP))
-      return Math.min(medium.slots - 1, Math.max(0, (angle / Math.PI) * medium.slots - 0.5))
-    })
+    this.scatteredRay = new ScatteredRay(medium, this.stokes)
   }
 
   /**
@@ -86,23 +82,16 @@ export class RayIntegrator {
    * picture's north, in one dimension to the radius in the picture.
    */
   trace(x: number, y: number, out: Float64Array, withGroups: boolean): void {
-    const { medium, walk, stokes, dimensions } = this
-    const { right, up, observer } = this.view
-    const { extinction, emission, emissionGroups, scattered, scatteredGroups, slots, spheres } = medium
+    const { medium, walk, stokes, scatteredRay } = this
+    const { extinction, emission, emissionGroups, slots, spheres } = medium
     out.fill(0, 0, this.size)
     this.radial = 0
     // A ray exactly through the origin would see a point star's halo diverge.
     const tiny = TINY * this.reach
-    if (x * x + y * y < tiny * tiny) x = tiny
-    const entered = walk.enter(
-      x * right[0] + y * up[0],
-      x * right[1] + y * up[1],
-      x * right[2] + y * up[2],
-      -observer[0],
-      -observer[1],
-      -observer[2]
-    )
-    if (!entered) return
+    if ('observer' in this.view && x * x + y * y < tiny * tiny) x = tiny
+    this.sight.look(x, y)
+    if (!this.sight.enter(walk)) return
+    scatteredRay.begin(walk.ux, walk.uy, walk.uz)
     const starAt = spheres.length > 0 ? walk.s + pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
     const hasEmissionGroups = withGroups && emissionGroups.length > 0
     const brightest = medium.starlight?.brightest
@@ -126,43 +115,7 @@ export class RayIntegrator {
         const weight = (transmission * absorbed) / chi
         out[EMITTED] += weight * emission[cell]
         if (hasEmissionGroups) for (let g = 0; g < GROUPS; g++) out[FIRST_GROUP + g] += weight * emissionGroups[cell * GROUPS + g]
-        if (slots > 0) {
-          const s = start + 0.5 * step
-          let index = cell
-          let share = 0
-          let side = 1
-          if (dimensions === 1) {
-            // cos of the angle to the observer, who stands towards negative s.
-            const cosine = -s / Math.sqrt(walk.b2 + s * s)
-            const position = Math.sqrt(0.5 * (1 - cosine)) * (ANGLE_NODES - 1)
-            const node = Math.min(ANGLE_NODES - 2, position | 0)
-            index = cell * ANGLE_NODES + node
-            share = position - node
-          } else if (dimensions === 2) {
-            const px = walk.x0 + s * walk.ux
-            const py = walk.y0 + s * walk.uy
-            const rho = Math.sqrt(px * px + py * py)
-            const entry = rho > 0 ? ((px / rho + 1) * (AZIMUTH_LOOKUP / 2)) | 0 : 0
-            const position = this.azimuthPosition[entry]
-            if (stokes) side = py < 0 ? -stokes.oddness[entry] : stokes.oddness[entry]
-            const bin = Math.min(slots - 2, position | 0)
-            index = cell * slots + bin
-            share = position - bin
-          }
-          out[SCATTERED] +=
-            weight * (share > 0 ? scattered[index] + share * (scattered[index + 1] - scattered[index]) : scattered[index])
-          if (withGroups) {
-            const near = weight * (1 - share)
-            const far = weight * share
-            const at = index * GROUPS
-            // Where the share is none there may be no next bin.
-            if (far === 0) for (let g = 0; g < GROUPS; g++) out[FIRST_GROUP + g] += near * scatteredGroups[at + g]
-            else
-              for (let g = 0; g < GROUPS; g++)
-                out[FIRST_GROUP + g] += near * scatteredGroups[at + g] + far * scatteredGroups[at + GROUPS + g]
-          }
-          if (stokes) stokes.add(index, share, side, weight, out, withGroups)
-        }
+        if (slots > 0) scatteredRay.add(walk, start + 0.5 * step, weight, out, withGroups)
         if (brightest && brightest[cell] * weight > NEGLIGIBLE * (out[EMITTED] + out[SCATTERED])) {
           if (stars === 0) out[SCATTERED] += this.firstScatterings(start, step, chi, depth, -1)
           for (let star = 0; star < stars; star++) out[SCATTERED] += this.firstScatterings(start, step, chi, depth, star)
@@ -171,7 +124,8 @@ export class RayIntegrator {
         transmission *= 1 - absorbed
       }
     } while (!atStar && depth < OPAQUE && walk.cross() >= 0)
-    if (!stokes) return
+    if (!stokes || !('observer' in this.view)) return
+    const { right, up } = this.view
     stokes.finish(x, y, this.radial, out, withGroups)
     beams?.forEach(({ at }, star) => {
       stokes.addRadial(x - dot(at, right), y - dot(at, up), this.radials[star], out)
@@ -179,26 +133,19 @@ export class RayIntegrator {
   }
 
   /**
-   * Optical depth from the observer along the ray at (x, y) cm in the picture to a star: to its surface, or to the plane through its
-   * centre where the ray misses it or it is a point. Infinite where another star stands in front.
+   * Optical depth from the observer to a star, along the ray that passes its centre at an offset (u, v) cm across the line of sight: to
+   * its surface, or as far as its centre where the ray misses it or it is a point. Infinite where another star stands in front.
    */
-  depthTo(x: number, y: number, at: Vector, radius: number): number {
-    const { medium, walk } = this
-    const { right, up, observer } = this.view
+  depthTo(u: number, v: number, at: Vector, radius: number): number {
+    const { medium, walk, sight, far } = this
     const { spheres, extinction } = medium
-    const px = x * right[0] + y * up[0]
-    const py = x * right[1] + y * up[1]
-    const pz = x * right[2] + y * up[2]
-    const middle = -dot(at, observer)
-    const depth2 = radius * radius - (x - dot(at, right)) ** 2 - (y - dot(at, up)) ** 2
-    const end = middle - (depth2 > 0 ? Math.sqrt(depth2) : 0)
+    const depth2 = radius * radius - u * u - v * v
+    const end = sight.lookPast(at, u, v) - (depth2 > 0 ? Math.sqrt(depth2) : 0)
     if (spheres.length > 0) {
-      const [ux, uy, uz] = observer.map((component) => -component)
-      const { far } = this
-      walk.turn(px - far * ux, py - far * uy, pz - far * uz, ux, uy, uz)
+      sight.takeFrom(walk, far)
       if (walk.s + pathToStar(walk, spheres) < end - HIDES * far) return Number.POSITIVE_INFINITY
     }
-    if (!walk.enter(px, py, pz, -observer[0], -observer[1], -observer[2])) return 0
+    if (!sight.enter(walk)) return 0
     let depth = 0
     do {
       const start = walk.s
@@ -220,7 +167,9 @@ export class RayIntegrator {
     const laws = asymmetry.length
     if (laws === 1 && scattering[cell] === 0) return 0
     const beam = star < 0 ? undefined : beams[star]
-    let { b2 } = walk
+    // An observer at a place may look straight at a star or away from it.
+    const least2 = (TINY * this.reach) ** 2
+    let b2 = Math.max(walk.b2, least2)
     // Where the ray passes the star.
     let passes = 0
     let before = 0
@@ -228,8 +177,8 @@ export class RayIntegrator {
     if (beam) {
       const [x, y, z] = beam.at
       passes = x * walk.ux + y * walk.uy + z * walk.uz
-      b2 += x * x + y * y + z * z - 2 * (x * walk.x0 + y * walk.y0 + z * walk.z0) - passes * passes
-      b2 = Math.max(b2, (TINY * this.reach) ** 2)
+      b2 = walk.b2 + x * x + y * y + z * z - 2 * (x * walk.x0 + y * walk.y0 + z * walk.z0) - passes * passes
+      b2 = Math.max(b2, least2)
     } else {
       const { ir, it, ip, np, nr } = walk as SphericalWalk
       before = medium.starlight!.opticalDepth[(ir === 0 ? 0 : it * np + ip) * (nr + 1) + ir]
@@ -298,8 +247,4 @@ export class RayIntegrator {
       (beamDepth(beam, cell, 6) * (1 - u) + beamDepth(beam, cell, 7) * u) * v
     return Math.max(low * (1 - w) + high * w, 0)
   }
-}
-
-function dot(a: Vector, b: Vector): number {
-  return a[0] * b[0] + a[1] * b[1] + a[2] * b[2]
 }

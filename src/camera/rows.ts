@@ -1,7 +1,7 @@
 import { standardError } from '../math/stats.js'
 import { GROUPS } from '../solve/groups.js'
-import type { PixelFrame } from './direct.js'
 import type { IntensityField } from './field.js'
+import type { PixelFrame } from './frame.js'
 import { putModes } from './noise-modes.js'
 import { PixelIntegrator } from './pixel.js'
 import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray-values.js'
@@ -33,7 +33,8 @@ export function pictureRows(
   floor: number,
   mirrored: boolean
 ): PictureRows {
-  const { width, height, pixelWidth, pixelHeight } = frame
+  const { columns } = frame
+  const width = columns.length - 1
   const count = width * (to - from)
   const rows: PictureRows = {
     emitted: new Float64Array(count),
@@ -46,10 +47,11 @@ export function pictureRows(
   const integrator = new PixelIntegrator(field, tolerance, floor)
   const traced = mirrored ? Math.ceil(width / 2) : width
   for (let row = from; row < to; row++) {
-    const y = (row + 0.5 - height / 2) * pixelHeight
+    const [low, high] = frame.rows.subarray(row, row + 2)
     const start = (row - from) * width
     for (let column = 0; column < traced; column++) {
-      integrator.integrate((column + 0.5 - width / 2) * pixelWidth, y, pixelWidth, pixelHeight)
+      const [left, right] = columns.subarray(column, column + 2)
+      integrator.integrate(0.5 * (left + right), 0.5 * (low + high), right - left, high - low)
       const groups = integrator.mean.subarray(FIRST_GROUP, RAY_VALUES)
       const sigma = standardError(groups)
       const twin = width - 1 - column

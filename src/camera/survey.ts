@@ -1,6 +1,7 @@
+import { bracket } from '../math/interp.js'
 import { medianOverCountedBulk, standardError } from '../math/stats.js'
-import type { PixelFrame } from './direct.js'
 import type { IntensityField } from './field.js'
+import type { PixelFrame } from './frame.js'
 import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray-values.js'
 import { unflattened } from './unflattened.js'
 
@@ -39,22 +40,28 @@ export function surveyAperture(field: IntensityField, radius: number): Float64Ar
   return sum
 }
 
-/** A quick look at a picture: rays through the middles of some pixels, denser towards its centre; each stands for its share of a ring. */
-export function survey(field: IntensityField, frame: PixelFrame): Survey {
-  const { width, height, pixelWidth, pixelHeight } = frame
-  const nearest = 0.5 * Math.sqrt(pixelWidth * pixelHeight)
-  const farthest = 0.5 * Math.hypot(width * pixelWidth, height * pixelHeight)
+/**
+ * A quick look at a picture: rays through the middles of some pixels, denser towards the origin of its coordinates or what is nearest to
+ * that in it; each stands for its share of a ring.
+ */
+export function survey(field: IntensityField, { columns, rows }: PixelFrame): Survey {
+  const [left, right] = [columns[0], columns[columns.length - 1]]
+  const [low, high] = [rows[0], rows[rows.length - 1]]
+  const area = ((right - left) * (high - low)) / ((columns.length - 1) * (rows.length - 1))
+  const [x0, y0] = [Math.max(left, Math.min(right, 0)), Math.max(low, Math.min(high, 0))]
+  const nearest = 0.5 * Math.sqrt(area)
+  const farthest = Math.hypot(Math.max(right - x0, x0 - left), Math.max(high - y0, y0 - low))
   const ray = new Float64Array(field.size)
   const lights: number[] = []
   const errors: number[] = []
   const pixels: number[] = []
   let flux = 0
-  overRings(nearest, Math.max(nearest, farthest), PICTURE_RINGS, PICTURE_DIRECTIONS, (x, y, area) => {
-    const count = area / (pixelWidth * pixelHeight)
-    const column = Math.floor(x / pixelWidth + width / 2)
-    const row = Math.floor(y / pixelHeight + height / 2)
-    if (column < 0 || column >= width || row < 0 || row >= height || !(count > 0)) return
-    field.sample((column + 0.5 - width / 2) * pixelWidth, (row + 0.5 - height / 2) * pixelHeight, ray, true)
+  overRings(nearest, Math.max(nearest, farthest), PICTURE_RINGS, PICTURE_DIRECTIONS, (offX, offY, covered) => {
+    const count = covered / area
+    const [x, y] = [x0 + offX, y0 + offY]
+    if (x < left || x >= right || y < low || y >= high || !(count > 0)) return
+    const [column, row] = [bracket(columns, x), bracket(rows, y)]
+    field.sample(0.5 * (columns[column] + columns[column + 1]), 0.5 * (rows[row] + rows[row + 1]), ray, true)
     const light = ray[EMITTED] + ray[SCATTERED]
     lights.push(light)
     errors.push(light > 0 ? standardError(ray.subarray(FIRST_GROUP, RAY_VALUES)) / light : 0)
@@ -65,9 +72,13 @@ export function survey(field: IntensityField, frame: PixelFrame): Survey {
   return { error: flux > 0 ? medianOverCountedBulk(errors, lights, pixels, BULK) : 0, mean: flux / all }
 }
 
-/** A quick look at what a picture misses: light of dust beyond its edges, without stars, intensity x cm2; to some per cent of itself. */
-export function surveyBeyond(field: IntensityField, { width, height, pixelWidth, pixelHeight }: PixelFrame): number {
-  const [halfWidth, halfHeight] = [0.5 * width * pixelWidth, 0.5 * height * pixelHeight]
+/**
+ * A quick look at what a picture misses: light of dust beyond its edges, without stars, as a sum of intensity over such pixels; to some per
+ * cent of itself. For an observer far away: about one among the dust there is no end of it.
+ */
+export function surveyBeyond(field: IntensityField, { columns, rows }: PixelFrame): number {
+  const [halfWidth, halfHeight] = [columns[columns.length - 1], rows[rows.length - 1]]
+  const pixel = (columns[1] - columns[0]) * (rows[1] - rows[0])
   const nearest = Math.min(halfWidth, halfHeight)
   if (nearest >= field.outermost) return 0
   const ray = new Float64Array(field.size)
@@ -77,7 +88,7 @@ export function surveyBeyond(field: IntensityField, { width, height, pixelWidth,
     field.sample(x, y, ray, false)
     sum += area * (ray[EMITTED] + ray[SCATTERED])
   })
-  return sum
+  return sum / pixel
 }
 
 /** Points in rings, the first one within `nearest`, the others to `farthest` in equal ratios, each with the area that it stands for. */

@@ -32,7 +32,7 @@ export interface CameraImages {
   column?: { density: Float64Array; samplingError: number }
 }
 
-/** A star as an observer sees it; angles in rad from the centre of the picture. */
+/** A star as an observer sees it; angles in rad from the centre of the picture, or, from a place of the scene, its longitude and latitude. */
 export interface StarOnSky {
   name: string
   east: number

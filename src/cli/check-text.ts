@@ -80,7 +80,7 @@ function observerDepths({ opticalDepths: { observers } }: SceneCheck): string[] 
   return table(
     observers.map(({ kind, name, inclinationDeg, wavelengths }) => [
       `${kind} ${name}`,
-      `inclination ${inclinationDeg} deg`,
+      inclinationDeg === undefined ? 'from its place' : `inclination ${inclinationDeg} deg`,
       ...depths(wavelengths)
     ])
   )

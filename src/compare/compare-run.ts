@@ -1,5 +1,5 @@
 import { DataError } from '../data/error.js'
-import { absent, type Refuse, weightsFor } from '../observe/observe-run.js'
+import { absent, cameraNamed, type Refuse, weightsFor } from '../observe/observe-run.js'
 import { type ModelLight, openRun, type RunSource } from '../observe/run-source.js'
 import { SceneError } from '../scene/error.js'
 import { type Fitted, fitScalings, type Parameter } from './fit.js'
@@ -72,8 +72,7 @@ function setOf(spec: MeasuredSpec, light: ModelLight, refuse: Refuse): ComparedS
     if (!light.spectra.includes(spec.spectrum)) refuse('spectrum', absent('spectrum', light.spectra))
     return photometrySet(spec, light.spectrum(spec.spectrum), refuse)
   }
-  if (!light.cameras.includes(spec.camera)) refuse('camera', absent('camera', light.cameras))
-  const source = light.camera(spec.camera)
+  const source = cameraNamed(spec.camera, light, refuse)
   const weights = weightsFor(spec, source.wavelengths, refuse)
   if (spec.kind === 'picture') return pictureSet(spec, source, weights, refuse)
   return spec.kind === 'profile' ? profileSet(spec, source, weights, refuse) : visibilitySet(spec, source, weights, refuse)

@@ -34,6 +34,13 @@ export function reachOf(cells: Cells): number {
   return Math.hypot(...Array.from(origin, (low) => Math.max(Math.abs(low), Math.abs(low + side))))
 }
 
+/** Whether a point (cm) lies in a cell. */
+export function holds(cells: Cells, [x, y, z]: [number, number, number]): boolean {
+  if (!isOctree(cells)) return Math.hypot(x, y, z) < reachOf(cells)
+  const { origin, side } = cells
+  return [x, y, z].every((component, a) => component >= origin[a] && component < origin[a] + side)
+}
+
 /** Volume of every cell, cm3, into `out`. */
 export function volumesOf(cells: Cells, out: Float64Array): Float64Array {
   return isOctree(cells) ? cubeVolumes(cells, out) : cellVolumes(cells, out)

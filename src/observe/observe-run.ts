@@ -88,10 +88,15 @@ function cameraOf(
   known: Map<string, CameraSource>,
   refuse: Refuse
 ): CameraSource {
-  if (!model.cameras.includes(spec.camera)) refuse('camera', absent('camera', model.cameras))
-  const source = known.get(spec.camera) ?? model.camera(spec.camera)
+  const source = known.get(spec.camera) ?? cameraNamed(spec.camera, model, refuse)
   known.set(spec.camera, source)
   return source
+}
+
+/** The images of a camera that is far away. */
+export function cameraNamed(name: string, model: ModelLight, refuse: Refuse): CameraSource {
+  if (!model.cameras.includes(name)) refuse('camera', absent('camera', model.cameras))
+  return model.camera(name) ?? refuse('camera', 'this camera stands at a place of the scene; one far away is expected')
 }
 
 /** Tells what there is, where something is not. */

@@ -5,7 +5,7 @@ import { card, commentCard, realCard } from '../output/fits/card.js'
 import { joined } from '../output/fits/hdu.js'
 import { imageHdu } from '../output/fits/image.js'
 import { originCards } from '../output/fits/origin-cards.js'
-import { wavelengthTableHdu, wcsCards } from '../output/fits/wcs.js'
+import { celestialCards, wavelengthTableHdu, wcsCards } from '../output/fits/wcs.js'
 import { inDegrees } from '../output/in-degrees.js'
 import { stretchNote } from '../output/png/caption.js'
 import { intensityScale, quantityIn } from '../output/png/intensity-scale.js'
@@ -32,7 +32,11 @@ const planes: [keyof Picture & ('observed' | 'sigma' | 'noise' | 'expected'), st
  */
 export function pictureFits(picture: Picture, source: CameraSource, title: string): Uint8Array {
   const { grid, unit, wavelength, noise } = picture
-  const common = [card('BUNIT', unit.fits), ...wcsCards({ ...grid, field: fieldOf(picture) }, source.sky), ...beamCards(picture)]
+  const common = [
+    card('BUNIT', unit.fits),
+    ...wcsCards(celestialCards({ ...grid, field: fieldOf(picture) }, source.sky)),
+    ...beamCards(picture)
+  ]
   const parts = planes
     .filter(([plane]) => plane !== 'noise' || noise)
     .map(([plane, name, meaning], i) => {

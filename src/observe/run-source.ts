@@ -19,7 +19,8 @@ import type { PixelGrid } from './blur.js'
 export interface ModelLight {
   cameras: string[]
   spectra: string[]
-  camera: (name: string) => CameraSource
+  /** Undefined for a camera at a place of the scene, whose lines of sight are not parallel. */
+  camera: (name: string) => CameraSource | undefined
   spectrum: (name: string) => SpectrumSource
 }
 
@@ -82,9 +83,10 @@ export function openRun(path: string): RunSource {
   }
 }
 
-function readCamera(file: string, name: string): CameraSource {
+function readCamera(file: string, name: string): CameraSource | undefined {
   const units = readFits(file)
   const total = units[0]
+  if (total.header.text('CTYPE1') !== 'RA---TAN') return undefined
   const [width, height] = total.axes
   const wavelengths = Array.from(tableColumn(unitNamed(units, 'WAVELENGTH'), 'WAVELENGTH').values, (metres) => 100 * metres)
   const number = (keyword: string) => {

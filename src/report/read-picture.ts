@@ -41,6 +41,11 @@ export function readPictures(files: PictureFile[]): { pictures: PictureData[]; l
   return { pictures, leftOut }
 }
 
+/** Whether the images of a FITS file that this program wrote show offsets on the sky, not directions about a place. */
+export function isFlat(path: string): boolean {
+  return readFits(path)[0].header.text('CTYPE1') === 'RA---TAN'
+}
+
 const meanings: Record<string, string> = {
   TOTAL: 'total',
   OBSERVED: 'observed',

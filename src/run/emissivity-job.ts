@@ -12,12 +12,12 @@ import type { Wanted } from './wanted.js'
 
 /** Images and fluxes by the formal solution through the emissivity that packets find. */
 export function emissivityJob(model: Model, light: DustLight, wanted: Wanted[], pool: WorkerPool): LightJob {
-  const { observers, indices } = observersOf(model, wanted)
+  const { observers, seenBy, indices } = observersOf(model, wanted)
   const precision = model.scene.effort.precision ?? Number.POSITIVE_INFINITY
   const errorsOf = (found: ScatteredLight[], part: 'scattered' | 'all') =>
     quickErrors(model, light, found, wanted, indices, part, pool)
   let left: number[] | undefined
-  const scattered = scattering(model, light, observers, pool, async (found) => {
+  const scattered = scattering(model, light, observers, seenBy, pool, async (found) => {
     const errors = await errorsOf(found, 'scattered')
     const least = shareLeft(HEAT_SHARE)
     if (Math.max(...errors) <= least * precision) return Math.max(...errors) / least

@@ -1,3 +1,4 @@
+import { pixelSolidAngles } from '../camera/frame.js'
 import { sigmaOfSum } from '../camera/noise-modes.js'
 import type { CameraImages } from '../camera/types.js'
 import type { Model } from '../model/model.js'
@@ -104,10 +105,11 @@ function temperaturesOf(model: Model, { temperature, sigma }: DustTemperatures, 
 function imageFinding(result: CameraImages, wavelength: number, k: number): Findings['images'][number] {
   const { camera, width, height, total, sigma } = result
   const pixels = width * height
+  const solidAngles = pixelSolidAngles(camera)
   let brightest = k * pixels
   let sum = 0
   for (let i = k * pixels; i < (k + 1) * pixels; i++) {
-    sum += total[i]
+    sum += total[i] * solidAngles[i - k * pixels]
     if (total[i] > total[brightest]) brightest = i
   }
   const unit = intensityUnit(camera.unit)
@@ -118,7 +120,7 @@ function imageFinding(result: CameraImages, wavelength: number, k: number): Find
     unit: camera.unit,
     peak: unit.fromCgs(total[brightest], context),
     peakSigma: unit.sigmaFromCgs(total[brightest], sigma[brightest], context),
-    fluxJy: (sum * context.pixelSr) / JANSKY,
-    fluxSigmaJy: (sigmaOfSum(result, k) * context.pixelSr) / JANSKY
+    fluxJy: sum / JANSKY,
+    fluxSigmaJy: sigmaOfSum(result, k, solidAngles) / JANSKY
   }
 }

@@ -1,22 +1,21 @@
-import type { PixelFrame } from '../camera/direct.js'
+import type { PixelFrame } from '../camera/frame.js'
 import { type FieldData, fieldData, openField } from '../camera/ray-field.js'
 import type { RayMedium } from '../camera/ray-medium.js'
+import type { View } from '../camera/sight.js'
 import { type Survey, survey, surveyAperture, surveyBeyond } from '../camera/survey.js'
-import type { ViewBasis } from '../camera/view.js'
 import { dimensionsOf } from '../grid/cells.js'
 import type { WorkerPool } from '../workers/pool.js'
 
 /** What threads do of quick looks, by name. */
 export const looks = {
-  profile: ({ medium, view, accuracy }: { medium: RayMedium; view: ViewBasis; accuracy: number }) =>
-    fieldData(medium, view, accuracy),
+  profile: ({ medium, view, accuracy }: { medium: RayMedium; view: View; accuracy: number }) => fieldData(medium, view, accuracy),
   survey: ({ field, frame }: { field: FieldData; frame: PixelFrame }) => survey(openField(field), frame),
   'survey-aperture': ({ field, radius }: { field: FieldData; radius: number }) => surveyAperture(openField(field), radius),
   'survey-beyond': ({ field, frame }: { field: FieldData; frame: PixelFrame }) => surveyBeyond(openField(field), frame)
 }
 
 /** The intensity towards an observer, its rays traced on a thread where they are traced beforehand. */
-export async function fieldOn(pool: WorkerPool, medium: RayMedium, view: ViewBasis, accuracy: number): Promise<FieldData> {
+export async function fieldOn(pool: WorkerPool, medium: RayMedium, view: View, accuracy: number): Promise<FieldData> {
   if (dimensionsOf(medium.walls) > 1) return fieldData(medium, view, accuracy)
   return (await pool.ask({ name: 'profile', input: { medium, view, accuracy } })) as FieldData
 }

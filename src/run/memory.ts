@@ -2,9 +2,12 @@ import { isOctree } from '../grid/cells.js'
 import type { Model } from '../model/model.js'
 import { observedWavelengths } from '../model/wavelengths.js'
 import { hasAmbient } from '../scene/has-ambient.js'
+import { isFromPlace } from '../scene/is-from-place.js'
 import { isPolarised } from '../scene/is-polarised.js'
 import { GROUPS } from '../solve/groups.js'
-import { ANGLE_NODES } from '../solve/scattered-light.js'
+import { MOST_NEAR } from '../solve/near-cells.js'
+import { ANGLE_NODES, POLAR_NODES } from '../solve/scattered-light.js'
+import { NEAR_DIRECTIONS } from '../transport/observers.js'
 import { AZIMUTH_BINS, FLIGHT_BINS } from '../transport/scatter-medium.js'
 
 /** The program before it does anything, and each worker; measured with Node 20 on Linux, to a third or so. */
@@ -35,7 +38,7 @@ export function memoryEstimate(sizes: Sizes, workers: number): MemoryEstimate {
   const { cells, scene } = sizes
   const components = scene.dust.length
   const { bins, seen, parts } = seenLight(sizes)
-  const tally = 8 * cells * Math.max(components, seen * bins * parts)
+  const tally = 8 * Math.max(cells * components, cells * seen * bins * parts + nearValues(sizes))
   const heat = components * (TABLE_BYTES + cells * 8 * (6 + 2 * GROUPS + GROUPS / 2))
   const light = lightBytes(sizes)
   const sizesOf = scene.cameras.map(({ pixels, wavelengths }) => [pixels[0] * pixels[1], wavelengths.length])
@@ -71,7 +74,14 @@ export function wavelengthsAbreast(sizes: Sizes, workers: number): number {
 /** Sums of packets and scattered light of a wavelength, bytes. */
 function lightBytes(sizes: Sizes): number {
   const { bins, slots, seen, parts } = seenLight(sizes)
-  return Math.max(1, sizes.cells * seen * parts * (8 * bins * 2 * GROUPS + slots * (8 + 4 * GROUPS)))
+  const known = sizes.cells * seen * parts * (8 * bins * 2 * GROUPS + slots * (8 + 4 * GROUPS))
+  return Math.max(1, known + nearValues(sizes) * (8 * 2 * GROUPS + 8 + 4 * GROUPS))
+}
+
+/** Values of the cells near to observers at places of three dimensions, at most. */
+function nearValues({ scene, dimensions, cells }: Sizes): number {
+  const places = dimensions === 3 ? scene.cameras.filter(({ view }) => isFromPlace(view)).length : 0
+  return places * Math.min(cells, MOST_NEAR) * NEAR_DIRECTIONS
 }
 
 /** Values of the tally and of the scattered light for each cell and observer, the most observers of a wavelength, Stokes parameters. */
@@ -90,6 +100,8 @@ export function totalMemory({ program, worker, cells, images }: MemoryEstimate, 
   return program + worker * workers + cells + images
 }
 
-function observersAt({ scene }: Sizes, wavelength: number): number {
-  return [...scene.cameras, ...scene.spectra].filter(({ wavelengths }) => wavelengths.includes(wavelength)).length
+function observersAt({ scene, dimensions }: Sizes, wavelength: number): number {
+  const all = [...scene.cameras, ...scene.spectra].filter(({ wavelengths }) => wavelengths.includes(wavelength))
+  const near = all.filter(({ view }) => isFromPlace(view)).length
+  return all.length - near + (dimensions === 2 && near > 0 ? POLAR_NODES : near)
 }

@@ -9,6 +9,7 @@ import { putStokes, STOKES } from '../camera/stokes-planes.js'
 import { turnStokes } from '../camera/stokes-ray.js'
 import { standardError } from '../math/stats.js'
 import type { Model } from '../model/model.js'
+import { isFromPlace } from '../scene/is-from-place.js'
 import type { DustLight } from '../solve/dust-light.js'
 import { GROUPS } from '../solve/groups.js'
 import type { ScatteredLight } from '../solve/scattered-light.js'
@@ -67,14 +68,16 @@ export async function observeWavelength(
     if (stop?.aborted) return false
     const want = wanted[progress.want]
     const medium = mediumFor(model, light, scattered, indices[progress.want])
-    const view = seenFrom(model, want.kind === 'spectrum' ? { ...want.spec.view, roll: 0 } : want.spec.view)
-    const data = await fieldOn(studio.pool, medium, view, tolerance)
     const onDone = (done: number, of: number) => studio.onDone({ kind: want.kind, name: want.spec.name }, done, of)
     if (want.kind === 'camera') {
+      const view = seenFrom(model, want.spec.view)
+      const data = await fieldOn(studio.pool, medium, view, tolerance)
       const rows = { data, want, tolerance, progress, piece, onDone }
       if (!(await takePicture(model, rows, studio))) return false
       addStars(model, light, medium, view, want, progress.placing)
     } else {
+      const view = seenFrom(model, { ...want.spec.view, roll: 0 })
+      const data = await fieldOn(studio.pool, medium, view, tolerance)
       const integral = await integralOf(model, data, want.spec.aperture * model.scene.distance, tolerance, studio)
       if (!integral) return false
       writeFlux(model, directFlux(model, light, medium, view, want.spec.aperture * model.scene.distance), integral, want)
@@ -145,34 +148,35 @@ interface PictureWork {
 async function takePicture(model: Model, work: PictureWork, { pool, ledger, name, stop }: Studio): Promise<boolean> {
   const { data, want, tolerance, progress, piece, onDone } = work
   const { spec, images, k } = want
+  const { width, height } = images
   const frame = pixelFrame(spec, model.scene.distance)
   // Pixels a hundred times fainter than the mean need no finer rays.
   const floor = 0.01 * (await surveyOn(pool, data, frame)).mean
-  images.beyond[k] = (await surveyBeyondOn(pool, data, frame)) / (frame.pixelWidth * frame.pixelHeight)
+  if (!isFromPlace(spec.view)) images.beyond[k] = await surveyBeyondOn(pool, data, frame)
   const tasks = []
-  for (let from = 0; from < frame.height; from += ROWS_A_TASK) {
-    const to = Math.min(frame.height, from + ROWS_A_TASK)
+  for (let from = 0; from < height; from += ROWS_A_TASK) {
+    const to = Math.min(height, from + ROWS_A_TASK)
     tasks.push({
       name: 'rows',
       scope: name,
-      input: { frame, from, to, tolerance, floor, mirrored: mirrored(model) && spec.view.roll === 0 }
+      input: { frame, from, to, tolerance, floor, mirrored: mirrored(model) && !isFromPlace(spec.view) && spec.view.roll === 0 }
     })
   }
   const take = (output: unknown, index: number) => {
     const rows = output as PictureRows
-    const at = (k * frame.height + index * ROWS_A_TASK) * frame.width
+    const at = (k * height + index * ROWS_A_TASK) * width
     images.emitted.set(rows.emitted, at)
     images.scattered.set(rows.scattered, at)
     images.sigma.set(rows.sigma, at)
     for (let g = 0; g < GROUPS; g++)
       images.modes.set(
         rows.modes.subarray(g * rows.sigma.length, (g + 1) * rows.sigma.length),
-        ((k * GROUPS + g) * frame.height + index * ROWS_A_TASK) * frame.width
+        ((k * GROUPS + g) * height + index * ROWS_A_TASK) * width
       )
     if (images.stokes && rows.stokes) for (const plane of STOKES) images.stokes[plane].set(rows.stokes[plane], at)
     progress.placing += rows.placingError
     progress.tasks = index + 1
-    onDone(Math.min(frame.height, progress.tasks * ROWS_A_TASK), frame.height)
+    onDone(Math.min(height, progress.tasks * ROWS_A_TASK), height)
   }
   pool.share('field', data, name)
   const complete = await runKept({ tasks, done: progress.tasks, take, name, piece }, pool, ledger, stop)

@@ -2,6 +2,7 @@ import { seenFrom } from '../camera/frame.js'
 import { rayMedium } from '../camera/ray-medium.js'
 import type { DustComponent, Model } from '../model/model.js'
 import { observedWavelengths } from '../model/wavelengths.js'
+import { isFromPlace } from '../scene/is-from-place.js'
 import type { Vector } from '../scene/types.js'
 import { dustLight } from '../solve/dust-light.js'
 import { givenTemperatures } from '../solve/temperatures.js'
@@ -16,7 +17,8 @@ export interface OpticalDepths {
   observers: {
     kind: 'camera' | 'spectrum'
     name: string
-    inclinationDeg: number
+    /** Absent for a camera at a place of the scene. */
+    inclinationDeg?: number
     wavelengths: { wavelengthUm: number; opticalDepth: number }[]
   }[]
 }
@@ -51,14 +53,16 @@ export function opticalDepths(model: Model): OpticalDepths {
   const observers = specs.map(({ kind, spec: { name, view } }) => ({
     kind,
     name,
-    inclinationDeg: Number(((view.inclination * 180) / Math.PI).toPrecision(12)),
+    ...(!isFromPlace(view) && { inclinationDeg: Number(((view.inclination * 180) / Math.PI).toPrecision(12)) }),
     wavelengths: [] as { wavelengthUm: number; opticalDepth: number }[]
   }))
   for (const wavelength of wavelengths) {
     const medium = rayMedium({ ...model, stars: [] }, dustLight(model, dust, wavelength), undefined)
     specs.forEach(({ spec }, i) => {
       if (!spec.wavelengths.includes(wavelength)) return
-      const opticalDepth = depthsTo(medium, seenFrom(model, spec.view))(CENTRE)(0, 0)
+      const view = seenFrom(model, spec.view)
+      const there = 'from' in view && Math.hypot(...view.from) === 0
+      const opticalDepth = there ? 0 : depthsTo(medium, view)(CENTRE)(0, 0)
       observers[i].wavelengths.push({ wavelengthUm: micrometres(wavelength), opticalDepth })
     })
   }

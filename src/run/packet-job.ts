@@ -1,4 +1,4 @@
-import { apertureDetector, cameraDetector, pixelSolidAngle, seenFrom } from '../camera/frame.js'
+import { apertureDetector, cameraDetector, farView, pixelSolidAngles } from '../camera/frame.js'
 import { putModes } from '../camera/noise-modes.js'
 import { rayMedium } from '../camera/ray-medium.js'
 import { STOKES, STOKES_PAIRS, type StokesPlanes, stokesPlanes } from '../camera/stokes-planes.js'
@@ -107,7 +107,7 @@ function caughtBy(pixels: number, { sums, packets }: GroupSums): Caught {
 /** Writes what a detector caught into its image or spectrum; returns where the next detector's values start. */
 function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted, caught: Caught, offset: number): number {
   const { distance } = model.scene
-  const view = seenFrom(model, want.spec.view)
+  const view = farView(model, want.spec)
   const medium = rayMedium(model, light, undefined)
   if (want.kind === 'spectrum') {
     const { result, k, spec } = want
@@ -125,7 +125,7 @@ function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted
   const pixels = images.width * images.height
   const at = k * pixels
   // Luminosity per sr divided by the squared distance is flux; by the solid angle of a pixel, intensity.
-  const scale = 1 / (distance * distance * pixelSolidAngle(spec))
+  const scale = 1 / (distance * distance * pixelSolidAngles(spec)[0])
   const direct = addStars ? paintStars(model, light, medium, view, want) : images.direct.subarray(at, at + pixels)
   if (images.stokes && caught.stokes) {
     for (const plane of STOKES)

@@ -1,3 +1,4 @@
+import { pixelSolidAngles } from '../camera/frame.js'
 import { BULK } from '../camera/survey.js'
 import type { ApertureSpectrum, CameraImages } from '../camera/types.js'
 import { medianOverBulk } from '../math/stats.js'
@@ -18,10 +19,12 @@ export function precisionOf(images: CameraImages[], spectra: ApertureSpectrum[])
   return [
     ...images.map((result): PrecisionReached => {
       const pixels = result.width * result.height
+      const solidAngles = pixelSolidAngles(result.camera)
       const photonNoise = result.camera.wavelengths.map((_, k) => {
         const total = result.total.subarray(k * pixels, (k + 1) * pixels)
         const relative = total.map((value, i) => (value > 0 ? result.sigma[k * pixels + i] / value : 0))
-        return total.some((value) => value > 0) ? medianOverBulk(relative, total, BULK) : 0
+        const flux = total.map((value, i) => value * solidAngles[i])
+        return total.some((value) => value > 0) ? medianOverBulk(relative, flux, BULK) : 0
       })
       const { name, wavelengths } = result.camera
       return { name, kind: 'camera', wavelengths, photonNoise, samplingError: result.samplingError }

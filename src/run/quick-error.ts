@@ -26,12 +26,14 @@ export async function quickErrors(
   const errors = wanted.map(async (want, i) => {
     const medium = mediumFor(model, light, scattered, indices[i])
     if (part === 'scattered') medium.emissionGroups = new Float32Array()
-    const view = seenFrom(model, want.spec.view)
-    const field = await fieldOn(pool, medium, view, ACCURACY)
     const { distance } = model.scene
-    if (want.kind === 'camera') return (await surveyOn(pool, field, pixelFrame(want.spec, distance))).error
+    if (want.kind === 'camera') {
+      const field = await fieldOn(pool, medium, seenFrom(model, want.spec.view), ACCURACY)
+      return (await surveyOn(pool, field, pixelFrame(want.spec, distance))).error
+    }
+    const view = seenFrom(model, want.spec.view)
     const radius = want.spec.aperture * distance
-    const value = await surveyApertureOn(pool, field, radius)
+    const value = await surveyApertureOn(pool, await fieldOn(pool, medium, view, ACCURACY), radius)
     const total = value[EMITTED] + value[SCATTERED] + directFlux(model, light, medium, view, radius)
     return total > 0 ? standardError(value.subarray(FIRST_GROUP, RAY_VALUES)) / total : 0
   })

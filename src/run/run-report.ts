@@ -3,13 +3,16 @@ import { join } from 'node:path'
 import { shellWord } from '../output/shell-word.js'
 import { digits } from '../report/digits.js'
 import { readSpectrumChart, readStructureCharts } from '../report/read-charts.js'
-import { readPictures } from '../report/read-picture.js'
+import { isFlat, readPictures } from '../report/read-picture.js'
 import { reportPage } from '../report/report-page.js'
 import type { ChartSection, TableSection } from '../report/types.js'
 import type { DustFinding } from './findings.js'
 import { percent } from './percent.js'
 import type { RunRecord } from './run-record.js'
 import type { PhaseTime } from './stopwatch.js'
+
+/** Pictures of cameras at places of the scene on a page, at most. */
+const MOST_DRAWN = 12
 
 const columnPlane = { name: 'COLUMN', meaning: 'column density' }
 
@@ -19,14 +22,20 @@ export function runReport(path: string, record: RunRecord): string {
   const named = (folder: string, ending: string) =>
     record.files.filter((file) => file.startsWith(folder) && file.endsWith(ending))
   const nameOf = (file: string) => file.replace(/^[^/]*\//, '').replace(/\.[a-z]+$/, '')
-  const images = named('images/', '.fits').map((file) => ({ path: at(file), file, heading: `Camera ${nameOf(file)}` }))
+  const cameras = named('images/', '.fits').map((file) => ({ path: at(file), file, heading: `Camera ${nameOf(file)}` }))
+  const images = cameras.filter(({ path }) => isFlat(path))
   const columns = images
     .filter(({ file }) => record.files.includes(file.replace(/\.fits$/, '-column.png')))
     .map((from) => ({ ...from, heading: `${from.heading}: dust along the line of sight`, planes: [columnPlane] }))
   // They take little of a page's room, and come first where it is shared.
   const { pictures, leftOut } = readPictures([...columns, ...images])
   const spectra = named('spectra/', '.ecsv').map((file) => readSpectrumChart(at(file), file, `Spectrum ${nameOf(file)}`))
-  const charts: ChartSection[] = [{ heading: 'Spectra', charts: spectra, pictures: [], tables: [] }, dustSection(record, at)]
+  const places = cameras.filter((camera) => !images.includes(camera)).map(({ file }) => nameOf(file))
+  const charts: ChartSection[] = [
+    placesSection(record, places, at),
+    { heading: 'Spectra', charts: spectra, pictures: [], tables: [] },
+    dustSection(record, at)
+  ]
   return reportPage({
     title: record.title,
     summary: summaryOf(record),
@@ -64,6 +73,18 @@ function summaryOf({ precision, cells, warnings }: RunRecord): string {
       : `asked for ${percent(precision.asked)}, ${precision.reached ? 'reached' : 'not reached'}`
   const doubt = warnings.length === 0 ? 'no warnings' : `${warnings.length} ${warnings.length === 1 ? 'warning' : 'warnings'}`
   return `Model run: ${worst} (${asked}); ${cells.count} cells, ${cells.dimensions === 1 ? 'one dimension' : `${cells.dimensions} dimensions`}; ${doubt}.`
+}
+
+/** The pictures of cameras at places of the scene, as they were drawn: their axes are angles that the page does not know. */
+function placesSection({ files }: RunRecord, names: string[], at: (file: string) => string): ChartSection {
+  const drawn = names.flatMap((name) => files.filter((file) => file.startsWith(`images/${name}-`) && file.endsWith('.png')))
+  const shown = drawn.slice(0, MOST_DRAWN).filter((file) => existsSync(at(file)))
+  return {
+    heading: 'Views from places of the scene',
+    charts: [],
+    pictures: shown.map((file) => ({ alt: file, base64: readFileSync(at(file)).toString('base64') })),
+    tables: []
+  }
 }
 
 function dustSection({ found, files }: RunRecord, at: (file: string) => string): ChartSection {

@@ -4,6 +4,7 @@ import { octreeTolerance } from '../model/lay-cubes.js'
 import type { DustComponent, Model } from '../model/model.js'
 import { mattering, observedWavelengths } from '../model/wavelengths.js'
 import { wavelengthLabel } from '../output/wavelength-label.js'
+import { isFromPlace } from '../scene/is-from-place.js'
 import type { StarSpectrum } from '../sources/star.js'
 import { AU, LIGHT_SPEED } from '../units/constants.js'
 import { grainWarnings } from './grain-warnings.js'
@@ -94,6 +95,7 @@ function fields({ scene, components }: Model): string[] {
   if (components.length === 0) return []
   const diameter = 2 * Math.max(...components.map(({ shape }) => shape.outerRadius))
   return scene.cameras.flatMap((camera) => {
+    if (isFromPlace(camera.view)) return []
     const [width, height] = camera.field.map((angle) => angle * scene.distance)
     const pixel = Math.max(width / camera.pixels[0], height / camera.pixels[1])
     return pixel > diameter ? [`camera ${camera.name}: a pixel (${au(pixel)}) is larger than the source (${au(diameter)})`] : []

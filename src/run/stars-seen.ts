@@ -1,7 +1,9 @@
-import { addDirectLight, type DepthAt, directLight, starImage } from '../camera/direct.js'
+import { addDirectLight, allDirectLight, type DepthAt, directLight, starImage } from '../camera/direct.js'
 import { pixelFrame } from '../camera/frame.js'
 import { RayIntegrator } from '../camera/ray.js'
 import type { RayMedium } from '../camera/ray-medium.js'
+import { acrossTo, dot, type View } from '../camera/sight.js'
+import { starPlace } from '../camera/star-place.js'
 import type { ViewBasis } from '../camera/view.js'
 import type { Model } from '../model/model.js'
 import type { StarSpec } from '../scene/types.js'
@@ -12,17 +14,19 @@ import type { Wanted } from './wanted.js'
 export function directFlux(model: Model, light: DustLight, medium: RayMedium, view: ViewBasis, radius: number): number {
   const depthTo = depthsTo(medium, view)
   return model.stars.reduce(
-    (sum, { spec, spectrum }) => sum + directLight(starImage(spec, spectrum, light.nu, view), depthTo(spec), radius),
+    (sum, { spec, spectrum }) =>
+      sum +
+      directLight(starImage(spec, spectrum, light.nu), [dot(spec.at, view.right), dot(spec.at, view.up)], depthTo(spec), radius),
     0
   )
 }
 
 /** Optical depths from the observer to stars. */
-export function depthsTo(medium: RayMedium, view: ViewBasis): (star: Pick<StarSpec, 'at' | 'extent' | 'radius'>) => DepthAt {
+export function depthsTo(medium: RayMedium, view: View): (star: Pick<StarSpec, 'at' | 'extent' | 'radius'>) => DepthAt {
   const integrator = new RayIntegrator({ ...medium, slots: 0, starlight: undefined }, view)
   return ({ at, extent, radius }) =>
-    (x, y) =>
-      integrator.depthTo(x, y, at, extent === 'sphere' ? radius! : 0)
+    (u, v) =>
+      integrator.depthTo(u, v, at, extent === 'sphere' ? radius! : 0)
 }
 
 /** Adds the direct light of the stars to a picture of the dust, and the sum of all light. */
@@ -30,7 +34,7 @@ export function addStars(
   model: Model,
   light: DustLight,
   medium: RayMedium,
-  view: ViewBasis,
+  view: View,
   want: Extract<Wanted, { kind: 'camera' }>,
   placing: number
 ): void {
@@ -51,20 +55,21 @@ export function paintStars(
   model: Model,
   light: DustLight,
   medium: RayMedium,
-  view: ViewBasis,
+  view: View,
   { spec, images, k }: Extract<Wanted, { kind: 'camera' }>
 ): Float64Array {
   const { distance } = model.scene
   const frame = pixelFrame(spec, distance)
-  const pixels = frame.width * frame.height
+  const pixels = images.width * images.height
   const direct = images.direct.subarray(k * pixels, (k + 1) * pixels)
   const depthTo = depthsTo(medium, view)
   for (const { spec: star, spectrum } of model.stars) {
-    const image = starImage(star, spectrum, light.nu, view)
+    const image = starImage(star, spectrum, light.nu)
     const depthAt = depthTo(star)
-    addDirectLight(image, depthAt, frame, direct)
+    addDirectLight(image, starPlace(star.at, view), depthAt, frame, direct)
     const seen = images.stars.find(({ name }) => name === star.name)!
-    seen.flux[k] = directLight(image, depthAt, Number.POSITIVE_INFINITY) / (distance * distance)
+    const away = 'from' in view ? acrossTo(view, star.at).distance : distance
+    seen.flux[k] = allDirectLight(image, depthAt) / (away * away)
   }
   return direct
 }

@@ -1,5 +1,5 @@
 import { integrateAperture } from '../camera/aperture.js'
-import type { PixelFrame } from '../camera/direct.js'
+import type { PixelFrame } from '../camera/frame.js'
 import { type FieldData, openField } from '../camera/ray-field.js'
 import { pictureRows } from '../camera/rows.js'
 import { type GrainTableRequest, mixtureOptics } from '../dust/grains/tabulate-grains.js'
@@ -12,6 +12,7 @@ import type { Detector } from '../transport/detector.js'
 import { type EquilibriumMedium, propagateEnergy } from '../transport/equilibrium.js'
 import { tallyExits } from '../transport/exit.js'
 import { tallyFlights } from '../transport/flights.js'
+import type { Observers } from '../transport/observers.js'
 import { type PixelTally, tallyPeeled } from '../transport/peel.js'
 import type { ScatterMedium } from '../transport/scatter-medium.js'
 import { tallyStokesFlights } from '../transport/stokes-flights.js'
@@ -47,11 +48,11 @@ serve({
   equilibrium: ({ packets, seed }: Batch, shared: Shared) =>
     propagateEnergy(shared('equilibrium') as EquilibriumMedium, packets, stream(seed)),
   flights: ({ packets, seed }: Batch, shared: Shared) => tallyFlights(scattering(shared), packets, stream(seed)),
-  towards: ({ packets, seed, observers }: Batch & { observers: Float64Array }, shared: Shared) =>
+  towards: ({ packets, seed, observers }: Batch & { observers: Observers }, shared: Shared) =>
     tallyTowards(scattering(shared), observers, packets, stream(seed)),
   'stokes-flights': ({ packets, seed }: Batch, shared: Shared) => tallyStokesFlights(scattering(shared), packets, stream(seed)),
-  'stokes-towards': ({ packets, seed, observers }: Batch & { observers: Float64Array }, shared: Shared) =>
-    tallyStokesTowards(scattering(shared), observers, packets, stream(seed)),
+  'stokes-towards': ({ packets, seed, observers }: Batch & { observers: Observers }, shared: Shared) =>
+    tallyStokesTowards(scattering(shared), observers.directions, packets, stream(seed)),
   peeled: ({ packets, seed, detectors }: Batch & { detectors: Detector[] }, shared: Shared) =>
     inOne(tallyPeeled(scattering(shared), detectors, packets, stream(seed))),
   exits: ({ packets, seed, detectors }: Batch & { detectors: Detector[] }, shared: Shared) =>

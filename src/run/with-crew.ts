@@ -4,7 +4,7 @@ import type { Scene } from '../scene/types.js'
 import { type Ledger, noLedger } from '../workers/ledger.js'
 import { WorkerPool } from '../workers/pool.js'
 import { type ColumnsToStars, columnsToStars } from './columns-to-stars.js'
-import type { Estimator } from './estimator.js'
+import { type Estimator, requireEstimator } from './estimator.js'
 import { type GrainTables, grainTables } from './grain-tables.js'
 import type { RunProgress } from './progress.js'
 import { requireMemory } from './require-memory.js'
@@ -43,9 +43,10 @@ export interface Crew {
 /** Builds the model, starts workers, and lets `work` use them; the ledger is settled and the workers ended whatever comes. */
 export async function withCrew<Result>(
   scene: Scene,
-  { workers, ledger = noLedger, memory, tables, onBegin, onProgress, stop }: RunOptions,
+  { workers, estimator, ledger = noLedger, memory, tables, onBegin, onProgress, stop }: RunOptions,
   work: (crew: Crew) => Promise<Result>
 ): Promise<Result> {
+  requireEstimator(scene, estimator)
   const clock = stopwatch()
   const plan = planCells(scene, tables ?? (await grainTables(scene, workers, onProgress, stop)))
   requireMemory(plan, workers, memory)

@@ -10,10 +10,11 @@ import { readUserFile } from './list-file.js'
 import { resolveCamera, resolveSpectrum } from './observers.js'
 import { opacitySpec } from './opacities.js'
 import { type SoundParts, soundParts } from './parts.js'
+import { placeProblems } from './place-problems.js'
 import { sceneSchema } from './schema/scene-schema.js'
 import { sha256 } from './sha256.js'
 import { parseIntensityTable, parseSpectrumTable } from './tables.js'
-import type { AmbientSpec, DustSpec, OpacitySpec, Scene, ShapeSpec, SourceSpec } from './types.js'
+import type { AmbientSpec, DustSpec, OpacitySpec, Scene, ScenePath, ShapeSpec, SourceSpec } from './types.js'
 import { wording } from './wording.js'
 import { YamlDocument } from './yaml-document.js'
 
@@ -37,7 +38,7 @@ export function parseScene(text: string, file: string): Scene {
   problems.push(...issueProblems(result.error?.issues ?? [], document), ...linkProblems(document), ...files.problems)
   if (!result.success || problems.length > 0) throw new SceneError(problems.sort(byPlace(file)))
   const { title = basename(file, extname(file)), distance, sky, seed, grid, effort } = result.data
-  return {
+  const scene: Scene = {
     file,
     title,
     distance,
@@ -53,6 +54,9 @@ export function parseScene(text: string, file: string): Scene {
     inputs: [{ file, sha256: sha256(text) }, ...files.inputs],
     locate: (path) => document.locate(path)
   }
+  const misplaced = placeProblems(scene).map(({ path, problem }) => locateProblem(document, path, problem))
+  if (misplaced.length > 0) throw new SceneError(misplaced)
+  return scene
 }
 
 type Sound<Key extends 'sources' | 'dust' | 'cameras' | 'spectra'> = NonNullable<SoundParts[Key][number]>
@@ -97,13 +101,13 @@ function observers({ distance, cameras, spectra }: SoundParts, document: YamlDoc
   function resolved<Entry, Spec extends object>(
     section: string,
     entries: (Entry | undefined)[],
-    resolve: (entry: Entry, distance: number) => Spec | { key: string; problem: string }
+    resolve: (entry: Entry, distance: number) => Spec | { path: ScenePath; problem: string }
   ): Spec[] {
     return entries.flatMap((entry, i) => {
       if (entry === undefined || distance === undefined) return []
       const spec = resolve(entry, distance)
       if (!('problem' in spec)) return [spec as Spec]
-      problems.push(locateProblem(document, [section, i, spec.key], spec.problem))
+      problems.push(locateProblem(document, [section, i, ...spec.path], spec.problem))
       return []
     })
   }

@@ -324,16 +324,28 @@ export interface EffortSpec {
   equilibriumAsked: boolean
 }
 
-/** Angles in rad. */
+/** What a camera sees its picture from: far away, or a place. */
+export type CameraView = ViewSpec | PlaceViewSpec
+
+/** An observer far away, who sees along parallel lines. Angles in rad. */
 export interface ViewSpec {
   inclination: number
   azimuth: number
   roll: number
 }
 
+/** An observer at a place of the scene, who looks `toward` another (cm); an all-sky map has the longitude of that in its middle. */
+export interface PlaceViewSpec {
+  from: Vector
+  toward: Vector
+  /** Turns the projected +z axis from north to east, rad. */
+  roll: number
+  allSky: boolean
+}
+
 export interface CameraSpec {
   name: string
-  view: ViewSpec
+  view: CameraView
   /** Full width and height, rad. */
   field: [number, number]
   pixels: [number, number]

@@ -1,6 +1,7 @@
 import { Document, isScalar, visit } from 'yaml'
 import { formatQuantity } from '../units/quantity.js'
 import { completeStar, type StarNumbers } from './complete-star.js'
+import { isFromPlace } from './is-from-place.js'
 import { logRange } from './log-range.js'
 import type {
   AmbientSpec,
@@ -184,7 +185,15 @@ function amountYaml(amount: AmountSpec): Yaml {
 }
 
 function cameraYaml({ name, view, field, pixels, wavelengths, unit }: CameraSpec): Yaml {
-  return { name, view: viewYaml(view), field: field.map(angle), pixels, wavelengths: wavelengthsYaml(wavelengths), unit }
+  const common = { pixels, wavelengths: wavelengthsYaml(wavelengths), unit }
+  if (!isFromPlace(view)) return { name, view: viewYaml(view), field: field.map(angle), ...common }
+  const { from, toward, roll, allSky } = view
+  const place = { from: from.map(length), toward: toward.map(length) }
+  return {
+    name,
+    view: allSky ? { ...place, field: 'all-sky' } : { ...place, field: field.map(angle), roll: angle(roll) },
+    ...common
+  }
 }
 
 function spectrumYaml({ name, view, aperture, wavelengths, unit }: SpectrumSpec): Yaml {

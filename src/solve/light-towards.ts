@@ -2,7 +2,14 @@ import type { Model } from '../model/model.js'
 import type { Task } from '../workers/pool.js'
 import type { DustLight } from './dust-light.js'
 import type { GroupSums } from './group-sums.js'
-import { type CellVolumes, fromFlights, fromTallies, type ScatteredLight, type ScatteringLaws } from './scattered-light.js'
+import {
+  type CellVolumes,
+  fromFlights,
+  fromTallies,
+  type ScatteredLight,
+  type ScatteringLaws,
+  type SeenBy
+} from './scattered-light.js'
 import { fromStokesFlights, fromStokesTallies, type TurningMatrices } from './scattered-stokes.js'
 
 /** What the sums of packets become scattered light with. */
@@ -10,8 +17,8 @@ export interface LightRequest {
   cells: CellVolumes
   laws: ScatteringLaws
   sums: GroupSums
-  /** The observer, and how many there are; one for all in one dimension. */
-  index: number
+  /** The observers, and how many there are in all; of no meaning in one dimension. */
+  seenBy: SeenBy
   observers: number
   /** In one dimension, where the laws are tables. */
   turning?: TurningMatrices
@@ -22,7 +29,7 @@ export function lightTask(
   { cells, volume, dimensions }: Model,
   { asymmetry, scattering, tables }: DustLight,
   sums: GroupSums,
-  index: number,
+  seenBy: SeenBy,
   observers: number,
   turning: TurningMatrices | undefined
 ): Task {
@@ -30,7 +37,7 @@ export function lightTask(
     cells: { cells, volume, dimensions },
     laws: { asymmetry, scattering, ...(tables && { tables }) },
     sums,
-    index,
+    seenBy,
     observers,
     ...(turning && { turning })
   }
@@ -38,8 +45,8 @@ export function lightTask(
 }
 
 /** Scattered light towards an observer; runs on the threads. */
-export function lightTowards({ cells, laws, sums, index, observers, turning }: LightRequest): ScatteredLight {
+export function lightTowards({ cells, laws, sums, seenBy, observers, turning }: LightRequest): ScatteredLight {
   if (turning) return fromStokesFlights(cells, laws, turning, sums)
   if (cells.dimensions === 1) return fromFlights(cells, laws, sums)
-  return laws.tables ? fromStokesTallies(cells, laws, sums, index, observers) : fromTallies(cells, sums, index, observers)
+  return laws.tables ? fromStokesTallies(cells, laws, sums, seenBy.first, observers) : fromTallies(cells, sums, seenBy, observers)
 }

@@ -2,6 +2,8 @@ import { azimuthalHenyeyGreenstein } from '../dust/phase-function.js'
 import { allocateShared } from '../math/allocate.js'
 import { gaussLegendre } from '../math/quadrature.js'
 import type { Model } from '../model/model.js'
+import type { Vector } from '../scene/types.js'
+import { NEAR_DIRECTIONS } from '../transport/observers.js'
 import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS, flightLookup } from '../transport/scatter-medium.js'
 import type { DustLight } from './dust-light.js'
 import type { GroupSums } from './group-sums.js'
@@ -10,16 +12,41 @@ import { GROUPS } from './groups.js'
 /** Nodes in the angle between radius and observer at which the scattered light of spherical shells is known. */
 export const ANGLE_NODES = 65
 
-/** Emission coefficient of scattered light (erg/s/cm3/Hz/sr) towards one observer, as flat arrays that all threads share. */
+/** Polar angles of observers between which, in two dimensions, the light towards those at any place is interpolated. */
+export const POLAR_NODES = 13
+
+/** Their directions, from the z axis to the midplane. */
+export function polarDirections(): Vector[] {
+  return Array.from({ length: POLAR_NODES }, (_, node) => {
+    const angle = (0.5 * Math.PI * node) / (POLAR_NODES - 1)
+    return [Math.sin(angle), 0, Math.cos(angle)]
+  })
+}
+
+/**
+ * Emission coefficient of scattered light (erg/s/cm3/Hz/sr) towards one observer, or towards those of several polar angles, as flat arrays
+ * that all threads share.
+ */
 export interface ScatteredLight {
   /** Values a cell: ANGLE_NODES in one dimension, AZIMUTH_BINS in two, 1 in three. */
   slots: number
-  /** cells x slots */
+  /** 1, or directions evenly spaced in polar angle from the z axis to the midplane. */
+  polarNodes: number
+  /** polarNodes x cells x slots */
   value: Float64Array
-  /** cells x slots x GROUPS: deviations of the groups' estimates. */
+  /** polarNodes x cells x slots x GROUPS: deviations of the groups' estimates. */
   groups: Float32Array
   /** Where a law polarises. */
   polarised?: PolarisedPart
+  /** Cells near to an observer at a place, whose light is told by direction. */
+  near?: NearLight
+}
+
+/** Scattered light of some cells in the directions of `nearDirections`: cells x directions, and x GROUPS the groups' deviations. */
+export interface NearLight {
+  cells: Int32Array
+  value: Float64Array
+  groups: Float32Array
 }
 
 /** What of the cells scattered light is made with. */
@@ -81,7 +108,7 @@ export function fromFlights(model: CellVolumes, light: ScatteringLaws, flights: 
       }
     }
   }
-  return { slots: ANGLE_NODES, value, groups }
+  return { slots: ANGLE_NODES, polarNodes: 1, value, groups }
 }
 
 /** Nodes x bins: the law, averaged over azimuth and over a bin of flight directions, for each angle to the observer. */
@@ -105,19 +132,51 @@ function turningLaw(g: number): Float64Array {
   return matrix
 }
 
-/** Scattered light towards observer `index` of `observers` from tallies of two or three dimensions. */
-export function fromTallies(model: CellVolumes, tallies: GroupSums, index: number, observers: number): ScatteredLight {
+/** Which observers of a tally one scattered light is towards: that with number `first`, or so many from it on, of polar nodes. */
+export interface SeenBy {
+  first: number
+  polarNodes: number
+  /** Near cells of a place, and where in a tally they begin. */
+  near?: { cells: Int32Array; offset: number }
+}
+
+/** Scattered light towards some of `observers` from tallies of two or three dimensions. */
+export function fromTallies(
+  model: CellVolumes,
+  tallies: GroupSums,
+  { first, polarNodes, near }: SeenBy,
+  observers: number
+): ScatteredLight {
   const { cells, volume, dimensions } = model
   const slots = dimensions === 2 ? AZIMUTH_BINS : 1
-  const value = new Float64Array(allocateShared(8 * cells * slots))
-  const groups = new Float32Array(allocateShared(4 * cells * slots * GROUPS))
+  const all = polarNodes * cells * slots
+  const value = new Float64Array(allocateShared(8 * all))
+  const groups = new Float32Array(allocateShared(4 * all * GROUPS))
   const { edges } = azimuthLookup()
   for (let cell = 0; cell < cells; cell++) {
     for (let slot = 0; slot < slots; slot++) {
       const at = cell * slots + slot
       const share = slots > 1 ? (Math.acos(edges[slot + 1]) - Math.acos(edges[slot])) / Math.PI : 1
-      value[at] = spread(tallies, at * observers + index, 1 / (volume[cell] * share), groups, at * GROUPS)
+      for (let node = 0; node < polarNodes; node++) {
+        const to = node * cells * slots + at
+        value[to] = spread(tallies, at * observers + first + node, 1 / (volume[cell] * share), groups, to * GROUPS)
+      }
     }
   }
-  return { slots, value, groups }
+  return { slots, polarNodes, value, groups, ...(near && { near: nearLight(volume, tallies, near) }) }
+}
+
+function nearLight(
+  volume: Float64Array,
+  tallies: GroupSums,
+  { cells, offset }: { cells: Int32Array; offset: number }
+): NearLight {
+  const all = cells.length * NEAR_DIRECTIONS
+  const value = new Float64Array(allocateShared(8 * all))
+  const groups = new Float32Array(allocateShared(4 * all * GROUPS))
+  for (let i = 0; i < all; i++) {
+    const cell = cells[Math.floor(i / NEAR_DIRECTIONS)]
+    value[i] = spread(tallies, offset + i, 1 / volume[cell], groups, i * GROUPS)
+  }
+  return { cells, value, groups }
 }

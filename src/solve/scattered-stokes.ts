@@ -113,7 +113,7 @@ export function fromStokesFlights(
       }
     }
   }
-  return { slots: ANGLE_NODES, ...total, ...(light.tables!.polarising && { polarised: { parts: 1, ...q } }) }
+  return { slots: ANGLE_NODES, polarNodes: 1, ...total, ...(light.tables!.polarising && { polarised: { parts: 1, ...q } }) }
 }
 
 /** Adds one Stokes parameter towards a node from those of all flights; its two numbers stand at `part` of each four of the matrix. */
@@ -167,9 +167,9 @@ export function fromStokesTallies(
       }
     }
   }
-  if (count === 1) return { slots, ...total }
+  if (count === 1) return { slots, polarNodes: 1, ...total }
   if (slots > 1) sharpen({ parts: 3, ...others }, cells)
-  return { slots, ...total, polarised: { parts: 3, ...others } }
+  return { slots, polarNodes: 1, ...total, polarised: { parts: 3, ...others } }
 }
 
 /**

@@ -1,11 +1,12 @@
 import type { Model } from '../model/model.js'
+import { type Observers, observerCount } from '../transport/observers.js'
 import type { WorkerPool } from '../workers/pool.js'
 import type { DustLight } from './dust-light.js'
 import type { GroupSums } from './group-sums.js'
 import { lightTask } from './light-towards.js'
 import type { RoundsRequest } from './rounds.js'
 import { scatterMedium } from './scatter-medium.js'
-import type { ScatteredLight } from './scattered-light.js'
+import type { ScatteredLight, SeenBy } from './scattered-light.js'
 import type { TurningMatrices } from './scattered-stokes.js'
 
 /** Packets for each cell of three dimensions by which most of them are met: those that are not would seem to have no noise. */
@@ -14,19 +15,20 @@ const MET = 0.25
 /** Packets that find the scattered light at one wavelength, and what their sums mean. */
 export interface Scattering {
   request: RoundsRequest
-  /** One for each observer, one for all in one dimension. */
+  /** One for each of `seenBy`, one for all in one dimension. */
   lightOf: (sums: GroupSums) => Promise<ScatteredLight[]>
 }
 
 /**
  * Scattered light at one wavelength, to be found by rounds of packets until `errorOf` it is below the precision; undefined
- * where nothing scatters. `observers`: unit vectors, three numbers each, in the half-plane of azimuth 0 in two dimensions;
- * not used in one.
+ * where nothing scatters. `observers` stand in the half-plane of azimuth 0 in two dimensions,
+ * and are not asked for in one; `seenBy`: what is wanted of them.
  */
 export function scattering(
   model: Model,
   light: DustLight,
-  observers: Float64Array,
+  observers: Observers,
+  seenBy: SeenBy[],
   pool: WorkerPool,
   errorOf: (light: ScatteredLight[]) => Promise<number>
 ): Scattering | undefined {
@@ -34,12 +36,13 @@ export function scattering(
   if (medium.launch.length === 0 || light.scattering.every((value) => value === 0)) return undefined
   const { effort, seed } = model.scene
   const spherical = model.dimensions === 1
-  const count = spherical ? 1 : observers.length / 3
+  const count = observerCount(observers)
   let turning: Promise<unknown> | undefined
   const lightFrom = async (sums: GroupSums): Promise<ScatteredLight[]> => {
     if (spherical && light.tables) turning ??= pool.ask({ name: 'turning', input: light.tables })
     const matrices = (await turning) as TurningMatrices | undefined
-    const towards = Array.from({ length: count }, (_, index) => pool.ask(lightTask(model, light, sums, index, count, matrices)))
+    const all = spherical ? seenBy.slice(0, 1) : seenBy
+    const towards = all.map((seen) => pool.ask(lightTask(model, light, sums, seen, count, matrices)))
     return (await Promise.all(towards)) as ScatteredLight[]
   }
   // What the last look at the error was made from is what pictures are made from.

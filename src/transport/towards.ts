@@ -2,6 +2,8 @@ import { henyeyGreenstein } from '../dust/phase-function.js'
 import { openWalk } from '../grid/cells.js'
 import { LeadingDraws } from '../math/leading-draws.js'
 import { collide, EARLY_BELOW, EARLY_SURVIVAL } from './flight.js'
+import { nearOffset, type Observers, observerCount } from './observers.js'
+import { PlaceTally } from './place-tally.js'
 import { Launcher, scatterHere } from './scatter-launch.js'
 import type { ScatterMedium } from './scatter-medium.js'
 import { pathToStar } from './star-spheres.js'
@@ -13,27 +15,26 @@ const EVEN = 10
 /**
  * Light scattered towards each observer in cells of two or three dimensions: sum of weight x path x scattering coefficient x
  * scattering law (erg/s/Hz/sr), for each cell, azimuth bin (folded about the observer's plane; one bin in three dimensions)
- * and observer: index (cell * azimuths + azimuth) * observers + observer. `observers` holds their unit vectors, three numbers
- * each; in two dimensions they lie in the half-plane of azimuth 0.
+ * and observer: index (cell * azimuths + azimuth) * observers + observer. In two dimensions observers stand in the half-plane of
+ * azimuth 0.
  */
-export function tallyTowards(
-  medium: ScatterMedium,
-  observers: Float64Array,
-  packets: number,
-  random: () => number
-): Float64Array {
+export function tallyTowards(medium: ScatterMedium, observers: Observers, packets: number, random: () => number): Float64Array {
   const draws = new LeadingDraws(EVEN, random)
   const uniform = draws.draw
   const { walls, cells, extinction, scattering, asymmetry, spheres } = medium
-  const count = observers.length / 3
+  const { directions } = observers
+  const count = observerCount(observers)
+  const far = directions.length / 3
+  const near = observers.places.length > 0
   const laws = asymmetry.length
   // Of one law the coefficient is the same for all that a cell gains: it comes in the end, and the loop reads an array less.
   const single = laws === 1
   const copies = new TurnedCopies(walls)
   const { count: turns, cos: cosTurn, sin: sinTurn, places } = copies
-  const tally = new Float64Array(cells * copies.azimuths * count)
-  const towards = new Float64Array(turns * laws * count)
+  const tally = new Float64Array(near ? nearOffset(cells, observers, observers.places.length) : cells * copies.azimuths * count)
+  const towards = new Float64Array(turns * laws * far)
   const walk = openWalk(walls)
+  const nearby = new PlaceTally(medium, observers, tally)
   const launcher = new Launcher(medium, packets, true)
   const out = new Float64Array(3)
 
@@ -54,11 +55,11 @@ export function tallyTowards(
         for (let k = 0; k < turns; k++) {
           const cos = cosTurn[k]
           const sin = sinTurn[k]
-          for (let o = 0; o < count; o++) {
-            const along3 = (k % 2 === 0 ? uz : -uz) * observers[3 * o + 2]
-            const cosine = (cos * ux - sin * uy) * observers[3 * o] + (sin * ux + cos * uy) * observers[3 * o + 1] + along3
+          for (let o = 0; o < far; o++) {
+            const along3 = (k % 2 === 0 ? uz : -uz) * directions[3 * o + 2]
+            const cosine = (cos * ux - sin * uy) * directions[3 * o] + (sin * ux + cos * uy) * directions[3 * o + 1] + along3
             for (let law = 0; law < laws; law++) {
-              towards[(law * turns + k) * count + o] = henyeyGreenstein(asymmetry[law], cosine) / turns
+              towards[(law * turns + k) * far + o] = henyeyGreenstein(asymmetry[law], cosine) / turns
             }
           }
         }
@@ -74,12 +75,13 @@ export function tallyTowards(
       copies.place(walk, step)
       for (let law = 0; law < laws; law++) {
         const amount = single ? weight * step : weight * step * scattering[law * cells + cell]
-        let from = law * turns * count
+        let from = law * turns * far
         for (let k = 0; k < turns; k++) {
           const base = places[k] * count
-          for (let o = 0; o < count; o++) tally[base + o] += amount * towards[from++]
+          for (let o = 0; o < far; o++) tally[base + o] += amount * towards[from++]
         }
       }
+      if (near) nearby.add(walk, step, weight * step)
       if (collides) {
         weight = collide(walk, medium, walk.s + step, weight, EARLY_BELOW * first, EARLY_SURVIVAL, uniform, out)
         remaining = -Math.log(uniform())

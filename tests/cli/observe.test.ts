@@ -34,7 +34,7 @@ it('a run is observed: files, summary, JSON; the same seed gives the same bytes'
   const map = (out: string) => imageValues(readFits(join(folder, out, 'pictures', 'map.fits'))[0])
   expect(map('again')).toEqual(map('run-night'))
   // The point star of the run, at the place and with the flux of its pixels.
-  const { stars, direct, pixel } = openRun(join(folder, 'run')).camera('face')
+  const { stars, direct, pixel } = openRun(join(folder, 'run')).camera('face')!
   const flux = direct.subarray(0, 64).reduce((sum, value) => sum + value, 0) * pixel[0] * pixel[1]
   expect(stars[0].flux[0] / flux).toBeCloseTo(1, 9)
   const refused = await motelight(folder, 'observe', 'run', 'night.yaml')
@@ -51,7 +51,7 @@ test.each(['peel', 'exit'])('a run by %s is observed with its star', async (esti
   expect(exitCode, stderr).toBe(0)
   const [{ fieldJy }] = JSON.parse(stdout).observations
   const units = readFits(join(folder, 'run', 'images', 'face.fits'))
-  const { pixel } = openRun(join(folder, 'run')).camera('face')
+  const { pixel } = openRun(join(folder, 'run')).camera('face')!
   const sum = imageValues(units[0]).reduce((all, value) => all + value, 0) * 1e6 * pixel[0] * pixel[1]
   expect(fieldJy / sum).toBeCloseTo(1, 9)
   expect(imageValues(unitNamed(units, 'DIRECT')).reduce((all, value) => all + value, 0)).toBeGreaterThan(0)

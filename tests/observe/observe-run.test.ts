@@ -11,6 +11,7 @@ import { observationWarnings } from '../../src/observe/warnings.js'
 import { cameraFits } from '../../src/output/fits/camera-fits.js'
 import { openRunFolder } from '../../src/run/run-folder.js'
 import { SceneError } from '../../src/scene/error.js'
+import type { PlaceViewSpec } from '../../src/scene/types.js'
 import { exampleScene } from '../output/examples.js'
 import { askPython, astropy, fitsverify, itWith } from '../support/python.js'
 import { images, runFolder } from './run-folder.js'
@@ -41,6 +42,13 @@ function observe(run: string, text: string): Observed {
 }
 
 describe('observing a run', () => {
+  it('refuses a camera at a place of the scene, whose lines of sight are not parallel', () => {
+    const { camera, ...planes } = images()
+    const view = { from: [1e14, 0, 0], toward: [0, 0, 0], roll: 0, allSky: false } satisfies PlaceViewSpec
+    const fits = cameraFits({ ...planes, camera: { ...camera, view, field: [1, 1] } }, exampleScene())
+    expect(() => observe(runFolder({ fits }), picture)).toThrow(/camera = face: this camera stands at a place of the scene/)
+  })
+
   itWith(fitsverify, 'leaves files that fitsverify passes', async () => {
     const run = runFolder()
     const out = join(run, '..', 'out')
@@ -140,14 +148,14 @@ answer['closure'] = [float(v) for v in QTable.read(data + '/visibilities/array-c
   })
 
   it('keeps stars through the files of a run', () => {
-    const { stars, direct, pixel, blanks, sky } = openRun(runFolder()).camera('face')
+    const { stars, direct, pixel, blanks, sky } = openRun(runFolder()).camera('face')!
     expect(stars).toHaveLength(1)
     expect(stars[0].name).toBe('star')
     expect(stars[0].flux[0] / 3e-26).toBeCloseTo(1, 12)
     expect((direct.slice(0, 384).reduce((a, b) => a + b) * pixel[0] * pixel[1]) / 3e-26).toBeCloseTo(1, 12)
     expect([blanks, sky]).toEqual([0, { raDeg: 84.21, decDeg: -31.7 }])
     const placeless = runFolder({ fits: cameraFits(images(), exampleScene({ sky: undefined })) })
-    expect(openRun(placeless).camera('face').sky).toBeUndefined()
+    expect(openRun(placeless).camera('face')!.sky).toBeUndefined()
   })
 
   test.each([

@@ -30,7 +30,7 @@ cameras:
 async function sourceOf(seed: number): Promise<CameraSource> {
   const { images, model } = await runText(sceneOf(seed), { workers: 1 })
   const record = JSON.stringify({ program: 'motelight', state: 'done', files: ['images/c.fits'] })
-  return openRun(folderWith({ 'run.json': record, 'images/c.fits': cameraFits(images[0], model.scene) })).camera('c')
+  return openRun(folderWith({ 'run.json': record, 'images/c.fits': cameraFits(images[0], model.scene) })).camera('c')!
 }
 
 interface Measured {

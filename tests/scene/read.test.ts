@@ -46,7 +46,7 @@ describe('parseScene', () => {
         temperature: 'solve'
       }
     ])
-    expect(cameras[0].view.inclination).toBeCloseTo((35 * Math.PI) / 180, 15)
+    expect(cameras[0].view).toEqual({ inclination: expect.closeTo((35 * Math.PI) / 180, 15), azimuth: 0, roll: 0 })
     expect(cameras[0].field).toEqual([12 * ARCSEC, 12 * ARCSEC])
     expect(cameras[0].pixels).toEqual([256, 256])
     expect(spectra[0]).toMatchObject({ aperture: 6 * ARCSEC, unit: 'Jy', view: { azimuth: 0, roll: 0 } })

@@ -1,9 +1,10 @@
 import { MODE_STEPS } from '../../camera/noise-modes.js'
 import { STOKES_PAIRS } from '../../camera/stokes-planes.js'
 import type { CameraImages, StarOnSky } from '../../camera/types.js'
-import type { Scene } from '../../scene/types.js'
-import { ARCSECOND } from '../../units/angles.js'
-import { JANSKY } from '../../units/constants.js'
+import { isFromPlace } from '../../scene/is-from-place.js'
+import type { Scene, Vector } from '../../scene/types.js'
+import { ARCSECOND, DEGREE } from '../../units/angles.js'
+import { AU, JANSKY } from '../../units/constants.js'
 import { type IntensityContext, intensityUnit } from '../../units/intensity.js'
 import { inDegrees } from '../in-degrees.js'
 import { pixelContext } from '../pixel-context.js'
@@ -13,7 +14,7 @@ import { joined } from './hdu.js'
 import { imageHdu, stepsHdu } from './image.js'
 import { originCards } from './origin-cards.js'
 import { tableHdu } from './table.js'
-import { imageWcsCards, wavelengthTableHdu, wcsCards } from './wcs.js'
+import { celestialCards, placeCards, wavelengthTableHdu, wcsCards } from './wcs.js'
 
 type Plane = 'total' | 'sigma' | 'direct' | 'emitted' | 'scattered' | 'deficit'
 
@@ -35,7 +36,7 @@ const planes: [Plane, string][] = [
 export function cameraFits(images: CameraImages, scene: Scene, ambient: number[] = []): Uint8Array {
   const { width, height, camera } = images
   const axes = [width, height, camera.wavelengths.length]
-  const common = [card('BUNIT', intensityUnit(camera.unit).fits), ...wcsCards({ width, height, field: camera.field }, scene.sky)]
+  const common = [card('BUNIT', intensityUnit(camera.unit).fits), ...wcsCards(skyCards(images, scene))]
   const present = planes.filter(([plane]) => images[plane] !== undefined)
   const parts = present.map(([plane, meaning], i) => {
     const name = [card('EXTNAME', plane.toUpperCase()), commentCard(`This image: ${meaning}.`)]
@@ -44,7 +45,7 @@ export function cameraFits(images: CameraImages, scene: Scene, ambient: number[]
     const cards = [...name, ...common, ...origin, ...level]
     return imageHdu(i === 0 ? 'primary' : 'extension', axes, planeInUnit(images, plane), cards)
   })
-  const stokes = stokesHdus(images, axes, wcsCards({ width, height, field: camera.field }, scene.sky))
+  const stokes = stokesHdus(images, axes, wcsCards(skyCards(images, scene)))
   const stars = images.stars.length > 0 ? [starsTableHdu(images)] : []
   return joined([
     ...parts,
@@ -87,39 +88,50 @@ const stokesMeaning = {
 }
 
 /** The extension COLUMN, a single image: the column density of all dust. */
-function columnHdu({ column, width, height, camera }: CameraImages, scene: Scene): Uint8Array[] {
+function columnHdu(images: CameraImages, scene: Scene): Uint8Array[] {
+  const { column, width, height } = images
   if (!column) return []
   const cards = [
     card('EXTNAME', 'COLUMN'),
     commentCard('This image: column density of all dust along the line of sight.'),
     card('BUNIT', 'g cm-2'),
     realCard('PLACING', column.samplingError, 'relative error of placing rays, estimated'),
-    ...imageWcsCards({ width, height, field: camera.field }, scene.sky)
+    card('WCSAXES', 2),
+    ...skyCards(images, scene)
   ]
   return [imageHdu('extension', [width, height], column.density, cards)]
 }
 
 /** The extension MODES: axes x, y, mode, wavelength. */
-function modesHdu({ modes, width, height, camera }: CameraImages, scene: Scene): Uint8Array {
+function modesHdu(images: CameraImages, scene: Scene): Uint8Array {
+  const { modes, width, height, camera } = images
   const count = camera.wavelengths.length
   return stepsHdu([width, height, modes.length / (width * height * count), count], modes, MODE_STEPS, [
     card('EXTNAME', 'MODES'),
     commentCard('This image: the noise behind SIGMA in units of SIGMA (axes x, y, mode, wavelength).'),
     commentCard('What is made linearly of the image has as variance the sum over the modes of'),
     commentCard('the squares of the same made of SIGMA x MODES.'),
-    ...imageWcsCards({ width, height, field: camera.field }, scene.sky)
+    card('WCSAXES', 2),
+    ...skyCards(images, scene)
   ])
 }
 
 /** The extension STARS, one row a star; their names stand in the cards STAR1, STAR2 and so on. */
 function starsTableHdu({ stars, camera }: CameraImages): Uint8Array {
-  const angles = (value: (star: StarOnSky) => number) => Float64Array.from(stars, (star) => value(star) / ARCSECOND)
+  const angles = (value: (star: StarOnSky) => number, unit = ARCSECOND) => Float64Array.from(stars, (star) => value(star) / unit)
   const fluxes = stars.flatMap(({ flux }) => Array.from(flux, (value) => value / JANSKY))
   return tableHdu(
     'STARS',
     [
-      { name: 'east', unit: 'arcsec', values: angles(({ east }) => east) },
-      { name: 'north', unit: 'arcsec', values: angles(({ north }) => north) },
+      ...(isFromPlace(camera.view)
+        ? [
+            { name: 'longitude', unit: 'deg', values: angles(({ east }) => east, DEGREE) },
+            { name: 'latitude', unit: 'deg', values: angles(({ north }) => north, DEGREE) }
+          ]
+        : [
+            { name: 'east', unit: 'arcsec', values: angles(({ east }) => east) },
+            { name: 'north', unit: 'arcsec', values: angles(({ north }) => north) }
+          ]),
       { name: 'radius', unit: 'arcsec', values: angles(({ radius }) => radius) },
       { name: 'limb_darkening', values: Float64Array.from(stars, ({ limbDarkening }) => limbDarkening) },
       { name: 'flux', unit: 'Jy', values: Float64Array.from(fluxes), repeat: camera.wavelengths.length }
@@ -136,12 +148,27 @@ function ambientCards(images: CameraImages, ambient: number[]): string[] {
   })
 }
 
-function viewCards({ camera }: CameraImages): string[] {
+function skyCards({ camera, width, height }: CameraImages, { sky }: Scene): string[] {
+  const { view, field } = camera
+  return isFromPlace(view) ? placeCards(view, { width, height, field }) : celestialCards({ width, height, field }, sky)
+}
+
+function viewCards({ camera: { name, view } }: CameraImages): string[] {
+  const roll = realCard('ROLL', inDegrees(view.roll), '[deg] projected z axis, east of north')
+  const camera = card('CAMERA', name, 'name of the camera')
+  if (!isFromPlace(view))
+    return [
+      camera,
+      realCard('INCLIN', inDegrees(view.inclination), '[deg] z axis to the line of sight'),
+      realCard('AZIMUTH', inDegrees(view.azimuth), '[deg] turn of the scene about z'),
+      roll
+    ]
+  const place = (key: string, at: Vector, meaning: string) =>
+    at.map((component, i) => realCard(`${key}_${'XYZ'[i]}`, component / AU, `[au] ${meaning}`))
   return [
-    card('CAMERA', camera.name, 'name of the camera'),
-    realCard('INCLIN', inDegrees(camera.view.inclination), '[deg] z axis to the line of sight'),
-    realCard('AZIMUTH', inDegrees(camera.view.azimuth), '[deg] turn of the scene about z'),
-    realCard('ROLL', inDegrees(camera.view.roll), '[deg] projected z axis, east of north')
+    camera,
+    ...place('FROM', view.from, 'place of the observer'),
+    ...(view.allSky ? [] : [...place('TO', view.toward, 'what he looks at'), roll])
   ]
 }
 

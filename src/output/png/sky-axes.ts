@@ -3,10 +3,14 @@ import { AU } from '../../units/constants.js'
 import { type AxisSide, axis, roomyTicks } from '../draw/axis.js'
 import { linearTicks, scaledUnit, type Ticks } from '../draw/ticks.js'
 
-/** Marks of the four sides of an image on the sky: offsets from its centre, in arcsec (bottom, left) and au (top, right). */
-export type SkyTicks = Record<AxisSide['side'], Ticks>
+/** One side of a picture: its marks, its title, and where a value lies along it, from 0 to 1 rightwards or downwards. */
+export interface PictureSide {
+  ticks: Ticks
+  title: string
+  share: (value: number) => number
+}
 
-const units = { bottom: 'arcsec', left: 'arcsec', top: 'au', right: 'au' }
+export type PictureSides = Record<AxisSide['side'], PictureSide>
 
 /** Full width and height (rad) of what is shown, and its distance (cm). */
 interface SkyFrame {
@@ -14,40 +18,36 @@ interface SkyFrame {
   distance: number
 }
 
-/** Marks for a panel of `width` x `height` pixels. */
-export function skyTicks({ field, distance }: SkyFrame, width: number, height: number): SkyTicks {
-  const ticks = (angle: number, unit: number, pixels: number, horizontal: boolean): Ticks => {
-    const half = angle / unit / 2
-    return roomyTicks(pixels, 2 * half, horizontal, (count) => linearTicks(-half, half, count))
+/**
+ * The sides of an image on the sky, of `width` x `height` pixels: offsets from its centre, in arcsec (bottom, left) and au (top, right), that
+ * grow towards east (left) and north (up).
+ */
+export function skySides({ field, distance }: SkyFrame, width: number, height: number): PictureSides {
+  const side = (horizontal: boolean, unit: string, size: number): PictureSide => {
+    const angle = field[horizontal ? 0 : 1]
+    const half = angle / size / 2
+    const ticks = roomyTicks(horizontal ? width : height, 2 * half, horizontal, (count) => linearTicks(-half, half, count))
+    const title = `offset ${horizontal ? 'east' : 'north'} (${scaledUnit(unit, ticks.exponent)})`
+    return { ticks, title, share: (value) => 0.5 - (value * size) / angle }
   }
   return {
-    bottom: ticks(field[0], ARCSECOND, width, true),
-    left: ticks(field[1], ARCSECOND, height, false),
-    top: ticks(field[0], AU / distance, width, true),
-    right: ticks(field[1], AU / distance, height, false)
+    bottom: side(true, 'arcsec', ARCSECOND),
+    left: side(false, 'arcsec', ARCSECOND),
+    top: side(true, 'au', AU / distance),
+    right: side(false, 'au', AU / distance)
   }
 }
 
-/** The four sides drawn round a panel; offsets grow towards east (left) and north (up). */
-export function skyAxes(
-  ticks: SkyTicks,
-  { field, distance }: SkyFrame,
-  panel: { left: number; top: number; width: number; height: number }
+/** The four sides drawn round a panel. */
+export function pictureAxes(
+  sides: PictureSides,
+  { left, top, width, height }: { left: number; top: number; width: number; height: number }
 ): string[] {
-  const { left, top, width, height } = panel
-  const scale = { bottom: ARCSECOND, left: ARCSECOND, top: AU / distance, right: AU / distance }
   const side = (name: AxisSide['side'], at: number): string[] => {
+    const { ticks, title, share } = sides[name]
     const horizontal = name === 'bottom' || name === 'top'
-    const along = (angle: number): number =>
-      horizontal ? left + width * (0.5 - angle / field[0]) : top + height * (0.5 - angle / field[1])
-    return axis({
-      side: name,
-      at,
-      middle: along(0),
-      position: (value) => along(value * scale[name]),
-      ticks: ticks[name],
-      title: `offset ${horizontal ? 'east' : 'north'} (${scaledUnit(units[name], ticks[name].exponent)})`
-    })
+    const along = (part: number): number => (horizontal ? left + width * part : top + height * part)
+    return axis({ side: name, at, middle: along(0.5), position: (value) => along(share(value)), ticks, title })
   }
   return [...side('bottom', top + height), ...side('left', left), ...side('top', top), ...side('right', left + width)]
 }

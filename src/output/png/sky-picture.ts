@@ -1,5 +1,7 @@
+import { forwardOf } from '../../camera/place-view.js'
 import type { CameraImages } from '../../camera/types.js'
-import type { Scene } from '../../scene/types.js'
+import { isFromPlace } from '../../scene/is-from-place.js'
+import type { CameraSpec, PlaceViewSpec, Scene } from '../../scene/types.js'
 import { AU, PARSEC } from '../../units/constants.js'
 import { axisDepth } from '../draw/axis.js'
 import { Canvas } from '../draw/canvas.js'
@@ -12,8 +14,9 @@ import type { FieldOfView } from '../fits/wcs.js'
 import { inDegrees } from '../in-degrees.js'
 import { spacedWavelength, wavelengthLabels } from '../wavelength-label.js'
 import { headLines } from './caption.js'
+import { placeSides } from './place-axes.js'
 import { resample } from './resample.js'
-import { skyAxes, skyTicks } from './sky-axes.js'
+import { type PictureSides, pictureAxes, skySides } from './sky-axes.js'
 import { compass, type SkyPanel, scaleBar } from './sky-marks.js'
 
 const margin = 16
@@ -24,8 +27,9 @@ const hiddenGrey = 140
 
 /** What is seen, and the words above it. */
 export interface SkyView extends FieldOfView {
-  /** cm */
-  distance: number
+  /** cm; of a picture from a place there is none, but what its sides tell. */
+  distance?: number
+  sides?: (width: number, height: number) => PictureSides
   title: string
   subtitle: string
 }
@@ -58,11 +62,35 @@ export function cameraView(images: CameraImages, k: number, scene: Scene): SkyVi
 
 /** What a camera sees, `what` in a word or two. */
 export function viewOf({ camera, width, height }: CameraImages, what: string, scene: Scene): SkyView {
+  if (isFromPlace(camera.view)) return placePictureView(camera, camera.view, what, scene)
   const { inclination, azimuth, roll } = camera.view
   const [i, a, r] = [inclination, azimuth, roll].map((angle) => `${shortNumber(inDegrees(angle))}°`)
   const view = `inclination ${i}, azimuth ${a}, roll ${r} east of north`
   const subtitle = `camera ${camera.name} · ${what} · ${view} · ${shortNumber(scene.distance / PARSEC)} pc`
   return { width, height, field: camera.field, distance: scene.distance, title: scene.title, subtitle }
+}
+
+function placePictureView(
+  { name, field, pixels }: CameraSpec,
+  view: PlaceViewSpec,
+  wavelength: string,
+  { title }: Scene
+): SkyView {
+  const { from, toward, roll, allSky } = view
+  const [width, height] = pixels
+  const place = (at: number[]) => `(${at.map((component) => shortNumber(component / AU)).join(', ')}) au`
+  const turned = roll === 0 ? '' : `, roll ${shortNumber(inDegrees(roll))}°`
+  const seen = allSky ? `all sky from ${place(from)}` : `from ${place(from)} towards ${place(toward)}${turned}`
+  const flat = allSky ? field : (field.map((angle) => 2 * Math.tan(angle / 2)) as [number, number])
+  const middle = allSky ? inDegrees(forwardOf(view).longitude) : undefined
+  return {
+    width,
+    height,
+    field: flat,
+    title,
+    subtitle: `camera ${name} · ${wavelength} · ${seen}`,
+    sides: (across, up) => placeSides(field, middle, across, up)
+  }
 }
 
 /**
@@ -75,21 +103,22 @@ export function skyPicture(view: SkyView, layer: SkyLayer): Uint8Array {
   const inPanel = (values: Float64Array) => northUp(resample(values, view.width, view.height, width, height), width)
   const values = inPanel(layer.values)
   const hidden = inPanel(layer.values.map((value) => (Number.isNaN(value) ? 1 : 0)))
-  const ticks = skyTicks(view, width, height)
+  const { distance = 0 } = view
+  const sides = view.sides?.(width, height) ?? skySides({ ...view, distance }, width, height)
 
-  const left = margin + axisDepth('left', ticks.left)
-  const top = headHeight + axisDepth('top', ticks.top)
-  const barLeft = left + width + axisDepth('right', ticks.right) + margin
+  const left = margin + axisDepth('left', sides.left.ticks)
+  const top = headHeight + axisDepth('top', sides.top.ticks)
+  const barLeft = left + width + axisDepth('right', sides.right.ticks) + margin
   const canvas = new Canvas(
     Math.max(leastWidth, barLeft + colourBarWidth(layer.ticks) + margin),
-    top + height + axisDepth('bottom', ticks.bottom) + footHeight + margin
+    top + height + axisDepth('bottom', sides.bottom.ticks) + footHeight + margin
   )
   const panel: SkyPanel = {
     left,
     top,
     width,
     height,
-    auPerPixel: (view.field[0] * view.distance) / AU / width,
+    auPerPixel: (view.field[0] * distance) / AU / width,
     light: layer.light ?? false
   }
 
@@ -102,11 +131,10 @@ export function skyPicture(view: SkyView, layer: SkyLayer): Uint8Array {
   canvas.overlay(
     drawing(canvas.width, canvas.height, [
       ...headLines(view, margin, canvas.width),
-      ...skyAxes(ticks, view, panel),
+      ...pictureAxes(sides, panel),
       outline(left, top, width, height),
       ...(layer.marks?.(panel) ?? []),
-      ...scaleBar(panel),
-      ...compass(panel),
+      ...(view.sides ? [] : [...scaleBar(panel), ...compass(panel)]),
       ...colourBar(canvas, { ...layer, left: barLeft, top, height }),
       text(margin, canvas.height - margin, note, { size: 12, anchor: 'start', fill: '#555' })
     ])

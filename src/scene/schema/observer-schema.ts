@@ -5,24 +5,51 @@ import { intensityUnits } from '../../units/intensity.js'
 import { mostPixels } from '../limits.js'
 import { logRange } from '../log-range.js'
 import { count, name, section, unitName } from './fields.js'
-import { quantity, quantityOf } from './quantity-field.js'
+import { quantity, quantityOf, vector } from './quantity-field.js'
 
 const turn = quantity('angle', 'any').refine((angle) => Math.abs(angle) <= 360.000001 * DEGREE, {
   error: () => 'an angle from -360 deg to 360 deg is expected'
 })
 
+const inclination = quantity('angle', 'any')
+  .refine((angle) => angle >= 0 && angle <= 180.000001 * DEGREE, {
+    error: () => 'an angle from 0 deg to 180 deg is expected'
+  })
+  .describe('Between the z axis and the line of sight; 0 deg looks down on the +z side; default 0 deg')
+const azimuth = turn.describe('Turns the scene about z; default 0 deg')
+const roll = turn.describe('Turns the projected +z axis from north to east; default 0 deg')
+
 const view = section({
-  inclination: quantity('angle', 'any')
-    .refine((angle) => angle >= 0 && angle <= 180.000001 * DEGREE, {
-      error: () => 'an angle from 0 deg to 180 deg is expected'
-    })
-    .prefault('0 deg')
-    .describe('Between the z axis and the line of sight; 0 deg looks down on the +z side'),
-  azimuth: turn.prefault('0 deg').describe('Turns the scene about z'),
-  roll: turn.prefault('0 deg').describe('Turns the projected +z axis from north to east')
+  inclination: inclination.prefault('0 deg'),
+  azimuth: azimuth.prefault('0 deg'),
+  roll: roll.prefault('0 deg')
 })
   .prefault({})
   .describe('Direction of the observer; angles default to 0 deg')
+
+/** Widest side of a perspective picture: its plane cannot hold half of the sky. */
+const widestView = 170 * DEGREE
+const viewAngle = quantity('angle').refine((angle) => angle <= widestView * 1.000001, {
+  error: () => 'at most 170 deg a side are expected; `all-sky` shows everything'
+})
+
+const cameraView = section({
+  inclination: inclination.optional(),
+  azimuth: azimuth.optional(),
+  roll: roll.optional(),
+  from: vector().optional().describe('Place of an observer near or inside the dust, instead of one far away'),
+  toward: vector().optional().describe('What he looks at; default the origin'),
+  field: z
+    .union([z.literal('all-sky'), viewAngle, z.tuple([viewAngle, viewAngle])], {
+      error: () => 'an angle such as `90 deg`, [width, height], or `all-sky` is expected'
+    })
+    .optional()
+    .describe('With `from`: full width of a perspective picture, [width, height], or `all-sky` for a map of all directions')
+})
+  .prefault({})
+  .describe(
+    'Direction of an observer far away (inclination, azimuth, roll), or `from`, `toward`, `field` of one at a place of the scene'
+  )
 
 const wavelength = quantity('wavelength')
 const wavelengths = z
@@ -53,12 +80,13 @@ const noBeam = Object.fromEntries(
 /** One entry of `cameras`; `field` is still an angle or a length. */
 export const cameraSchema = section({
   name: name.describe('Name of the camera, used for its files'),
-  view,
+  view: cameraView,
   field: z
     .union([extent, z.tuple([extent, extent])], {
       error: () => 'an angle such as `12 arcsec`, a length such as `4000 au`, or [width, height] is expected'
     })
-    .describe('Full width as an angle or a length; [width, height] for a rectangle'),
+    .optional()
+    .describe('Full width as an angle or a length; [width, height] for a rectangle; with `view.from` see `view.field`'),
   pixels: z
     .union([pixelCount, z.tuple([pixelCount, pixelCount])], {
       error: () => 'a whole number such as 256, or [width, height], is expected'

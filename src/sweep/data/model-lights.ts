@@ -1,4 +1,5 @@
 import { type ModelLight, spectrumSource } from '../../observe/run-source.js'
+import { isFromPlace } from '../../scene/is-from-place.js'
 import type { Scene } from '../../scene/types.js'
 import { fluxUnit } from '../../units/flux.js'
 import type { ModelResult } from '../folder/model-result.js'
@@ -24,7 +25,8 @@ export function darkLight({ cameras, spectra, distance, sky }: Scene): ModelLigh
     cameras: cameras.map(({ name }) => name),
     spectra: spectra.map(({ name }) => name),
     camera: (name) => {
-      const { field, pixels, wavelengths } = cameras.find((one) => one.name === name)!
+      const { view, field, pixels, wavelengths } = cameras.find((one) => one.name === name)!
+      if (isFromPlace(view)) return undefined
       const [width, height] = pixels
       const dark = new Float64Array(width * height * wavelengths.length)
       return {
