@@ -38,6 +38,8 @@ const PARTS = 2
 export class CellError {
   private readonly unit: number
   private readonly sizes: number[]
+  /** Shares of the light of the stars that dust takes out. */
+  private readonly caught: number[]
   // What the samples of the present cell say.
   private sum = 0
   private least = 0
@@ -53,11 +55,12 @@ export class CellError {
   ) {
     this.unit = builder.side / 2 ** LEVELS
     this.sizes = layers.map(({ shape: { innerRadius, outerRadius } }) => 0.5 * (outerRadius - innerRadius))
+    this.caught = stars.map((star) => points.caughtFrom(star))
   }
 
   /** `detail`: radius of the smallest detail in the node that is smaller than itself, cm. */
   of(node: number, detail: number): number {
-    const { builder, unit, points, stars } = this
+    const { builder, unit, points, stars, caught } = this
     const { origin, corner, level, side } = builder
     const length = side / 2 ** level[node]
     const x = origin[0] + corner[3 * node] * unit + 0.5 * length
@@ -78,11 +81,12 @@ export class CellError {
     const depth = dust / (length * length)
     let near = 0
     let lit = 0
-    for (const [sx, sy, sz] of stars) {
+    for (let k = 0; k < stars.length; k++) {
+      const [sx, sy, sz] = stars[k]
       const distance = Math.max(0.5 * length, Math.hypot(x - sx, y - sy, z - sz))
       const angle = length / distance
       near = Math.max(near, angle)
-      const light = (Math.min(1, depth) * angle * angle) / (4 * Math.PI)
+      const light = (Math.min(1, depth) * angle * angle) / (4 * Math.PI * caught[k])
       lit += light * Math.exp(-this.depthFrom(sx, sy, sz, x, y, z, distance - 0.5 * length))
     }
     const share = dust / points.total

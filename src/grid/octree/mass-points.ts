@@ -59,6 +59,15 @@ export class MassPoints {
     return sum
   }
 
+  /** Share of the light of a star at a place that dust takes out, at most: as if no dust stood before other dust. */
+  caughtFrom([sx, sy, sz]: readonly [number, number, number]): number {
+    const { x, y, z, weight } = this
+    let sum = 0
+    for (let i = 0; i < weight.length && sum < 1; i++)
+      sum += weight[i] / (4 * Math.PI * ((x[i] - sx) ** 2 + (y[i] - sy) ** 2 + (z[i] - sz) ** 2))
+    return Math.min(1, sum)
+  }
+
   /** Shares the points of a node among its new children, the first of which is given. */
   divide(node: number, first: number, { origin, side, corner, level }: OctreeBuilder): void {
     if (first + 8 > this.starts.length) this.grow(first + 8)
