@@ -2,13 +2,15 @@ import { describe, expect, it } from 'vitest'
 import { growOctree, type OctreeRequest } from '../../src/grid/octree/grow-octree.js'
 import { CHILD, cellCube, cubeVolumes, LEVELS, type Octree, RECORD, SIZE } from '../../src/grid/octree/octree.js'
 import { OctreeWalk } from '../../src/grid/octree/octree-walk.js'
+import { stream } from '../../src/math/random.js'
 import { octreeDensities } from '../../src/model/octree-density.js'
-import type { DustSpec, ShapeSpec } from '../../src/scene/types.js'
+import type { DensityCube, DensityPoints, DustSpec, ShapeSpec } from '../../src/scene/types.js'
 import { makeShape } from '../../src/shapes/make-shape.js'
 
 function grown(spec: ShapeSpec, more: Pick<DustSpec, 'carve' | 'clumps'>, tau: number, request: Partial<OctreeRequest> = {}) {
   const shape = makeShape(spec, more)
-  const scale = tau / (Number.isFinite(shape.column) ? shape.column : shape.totalMass / shape.outerRadius ** 2)
+  const scale =
+    tau / (shape.column > 0 && Number.isFinite(shape.column) ? shape.column : shape.totalMass / shape.outerRadius ** 2)
   const layers = [{ shape, scale, extinction: 1 }]
   return {
     shape,
@@ -27,6 +29,25 @@ const disk: ShapeSpec = {
 const ball: ShapeSpec = { kind: 'ball', radius: 10, at: [20, 5, 3] }
 const wind: ShapeSpec = { kind: 'shell', inner: 6, outer: 3000, slope: -2 }
 
+/** A field of smooth lumps, and points as a simulation leaves them. */
+const cube: DensityCube = {
+  kind: 'cube',
+  file: '',
+  size: [12, 12, 12],
+  values: Float64Array.from({ length: 12 ** 3 }, (_, i) => 1.2 + Math.sin(i % 12) * Math.cos(Math.floor(i / 12) % 12))
+}
+const uniform = stream('cloud')
+const column = (value: () => number) => Float64Array.from({ length: 60 }, value)
+const cloud: DensityPoints = {
+  kind: 'points',
+  file: '',
+  x: column(() => 100 * (2 * uniform() - 1)),
+  y: column(() => 100 * (2 * uniform() - 1)),
+  z: column(() => 100 * (2 * uniform() - 1)),
+  smoothingLength: column(() => 10 + 10 * uniform()),
+  mass: column(uniform)
+}
+
 describe('growOctree and octreeDensities', () => {
   it.each([
     ['shell', wind, {}],
@@ -38,8 +59,26 @@ describe('growOctree and octreeDensities', () => {
       'infall with a cavity',
       { kind: 'infall', inner: 1, outer: 1000, centrifugalRadius: 50 },
       { carve: [{ kind: 'cavity', halfAngle: 0.4, remaining: 0 }] }
-    ]
-  ] as [string, ShapeSpec, Pick<DustSpec, 'carve'>][])(
+    ],
+    [
+      'disk with a gap, tilted',
+      { ...disk, tilt: { angle: 0.3, toward: 1 } },
+      { carve: [{ kind: 'gap', from: 20, to: 30, remaining: 0.1 }] }
+    ],
+    [
+      'ring with a gap',
+      { kind: 'ring', radius: 100, width: 15, scaleHeight: 9, eccentricity: 0, periapsis: 0 },
+      { carve: [{ kind: 'gap', from: 95, to: 105, remaining: 0 }] }
+    ],
+    ['ball elsewhere with a cavity', ball, { carve: [{ kind: 'cavity', halfAngle: 0.5, remaining: 0.2 }] }],
+    [
+      'slab elsewhere of clumps',
+      { kind: 'slab', thickness: 60, width: 200, at: [30, 0, 0] },
+      { clumps: { count: 20, radius: 15, contrast: 10, seed: 'a' } }
+    ],
+    ['imported cube', { kind: 'field', width: 300, at: [10, 5, 0], data: cube }, {}],
+    ['imported cloud of points', { kind: 'field', width: 300, at: [0, 0, 0], data: cloud }, {}]
+  ] as [string, ShapeSpec, Pick<DustSpec, 'carve' | 'clumps'>][])(
     'hold the mass of a %s to 1e-3, before any correction',
     (_, spec, more) => {
       const { octree, shape, scale } = grown(spec, more, 10)
