@@ -74,8 +74,9 @@ static inline double toWall(const Ray *p, int *next) {
       // On the cone z^2 = c^2 r^2 with z of the sign of c: the smallest positive root that leaves the cell.
       const double c = m.cosTheta[k], c2 = cos2[k];
       const double qa = p->uz * p->uz - c2, qb = p->z * p->uz - c2 * b, qc = p->z * p->z - c2 * rr;
-      const double d = qb * qb - qa * qc;
-      if (d <= 0) continue;
+      // The midplane is a cone of one root, which rounding must not take away.
+      const double d = c == 0 ? 0 : qb * qb - qa * qc;
+      if (c != 0 ? d <= 0 : qa == 0) continue;
       const double root = sqrt(d), q = qb > 0 ? -qb - root : -qb + root;
       const double t[2] = {q / qa, qc / q};
       for (int i = 0; i < 2; i++) {

@@ -63,7 +63,7 @@ function crowded({ walls, cells, scene }: Model): string[] {
   const { cellsAtMost } = scene.grid
   const tolerance = octreeTolerance(scene)
   if (walls.error <= tolerance) return []
-  const doubt = `grid: ${cells} cells may get ${percent(Math.min(1, walls.error))} of the light of the dust wrong, more than the ${percent(tolerance)} asked for`
+  const doubt = `grid: ${cells} cells may get ${percent(Math.min(1, walls.error))} of the light of the dust wrong, more than ${scene.effort.precision === null ? percent(tolerance) : `the ${percent(tolerance)} asked for`}`
   if (cells + 7 <= cellsAtMost) return [`${doubt}; ask for smaller ones by grid.finest of an octree`]
   const needed = cells * (walls.error / tolerance) ** CELLS_FOR_ERROR
   return [`${doubt}; ask for about ${needed.toPrecision(2)} by grid.cells-at-most of an octree`]
