@@ -1,6 +1,7 @@
 import { GROUPS } from '../solve/groups.js'
 import type { IntensityField } from './field.js'
 import { integratePatch, type PatchIntegral } from './patch.js'
+import { RadialProfile } from './profile.js'
 import { FIRST_GROUP, Q, RAY_VALUES } from './ray-values.js'
 import { ringsBetween } from './rings.js'
 import { unflattened } from './unflattened.js'
@@ -12,9 +13,10 @@ const RINGS_A_DOUBLING = 2
 
 /**
  * Integral of an intensity field over a disk of `radius` (cm, may be infinite). `mirrored`: the right half of the picture
- * equals the left one, and only one is traced.
+ * equals the left one, and only one is traced. Of a profile it is exact.
  */
 export function integrateAperture(field: IntensityField, radius: number, tolerance: number, mirrored: boolean): PatchIntegral {
+  if (field instanceof RadialProfile) return { value: field.integrate(radius), error: 0 }
   const { flattening } = field
   const edge = Math.min(radius, field.outermost)
   const round = unflattened(field)

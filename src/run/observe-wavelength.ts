@@ -1,8 +1,6 @@
-import { integrateAperture } from '../camera/aperture.js'
 import { pixelFrame, seenFrom } from '../camera/frame.js'
 import type { PatchIntegral } from '../camera/patch.js'
-import { RadialProfile } from '../camera/profile.js'
-import { type FieldData, openField } from '../camera/ray-field.js'
+import type { FieldData } from '../camera/ray-field.js'
 import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from '../camera/ray-values.js'
 import type { PictureRows } from '../camera/rows.js'
 import { putStokes, STOKES } from '../camera/stokes-planes.js'
@@ -95,18 +93,10 @@ async function integralOf(
   data: FieldData,
   radius: number,
   tolerance: number,
-  { pool, name, stop }: Studio
+  { pool, stop }: Studio
 ): Promise<PatchIntegral | undefined> {
-  if (data.kind === 'profile') return apertureOf(openField(data), radius, tolerance, true)
-  let integral: PatchIntegral | undefined
-  pool.share('field', data, name)
-  const tasks = [{ name: 'aperture', scope: name, input: { radius, tolerance, mirrored: mirrored(model) } }]
-  const take = (output: unknown) => {
-    integral = output as PatchIntegral
-  }
-  await pool.run(tasks, take, stop)
-  pool.forget('field', name)
-  return integral
+  const input = { data, radius, tolerance, mirrored: mirrored(model) }
+  return (await pool.ask({ name: 'aperture', input }, stop)) as PatchIntegral | undefined
 }
 
 function writeFlux(
@@ -128,11 +118,6 @@ function writeFlux(
   }
   const dust = integral.value[EMITTED] + integral.value[SCATTERED]
   result.samplingError[k] = dust > 0 ? integral.error / (area * result.total[k]) : 0
-}
-
-function apertureOf(field: ReturnType<typeof openField>, radius: number, tolerance: number, mirror: boolean): PatchIntegral {
-  if (field instanceof RadialProfile) return { value: field.integrate(radius), error: 0 }
-  return integrateAperture(field, radius, tolerance, mirror)
 }
 
 interface PictureWork {

@@ -27,6 +27,13 @@ interface Batch {
   seed: string
 }
 
+interface ApertureRequest {
+  data: FieldData
+  radius: number
+  tolerance: number
+  mirrored: boolean
+}
+
 interface RowsRequest {
   frame: PixelFrame
   from: number
@@ -64,8 +71,8 @@ serve({
   ...looks,
   rows: ({ frame, from, to, tolerance, floor, mirrored }: RowsRequest, shared: Shared) =>
     pictureRows(field(shared), frame, from, to, tolerance, floor, mirrored),
-  aperture: ({ radius, tolerance, mirrored }: { radius: number; tolerance: number; mirrored: boolean }, shared: Shared) =>
-    integrateAperture(field(shared), radius, tolerance, mirrored)
+  aperture: ({ data, radius, tolerance, mirrored }: ApertureRequest) =>
+    integrateAperture(openField(data), radius, tolerance, mirrored)
 })
 
 /** Direct, emitted and scattered light of all pixels as one tally, and Q, U and V where they are known. */

@@ -90,12 +90,13 @@ export class WorkerPool {
     })
   }
 
-  /** The result of one task, which takes its turn behind those begun before. */
-  async ask(task: Task): Promise<unknown> {
+  /** The result of one task, which takes its turn behind those begun before; undefined when it was stopped before that. */
+  async ask(task: Task, stop?: AbortSignal): Promise<unknown> {
     let answer: unknown
-    await this.run([task], (output) => {
+    const take = (output: unknown) => {
       answer = output
-    })
+    }
+    await this.run([task], take, stop)
     return answer
   }
 
