@@ -44,9 +44,10 @@ function plainText(value: number): string {
 function measuredText(value: number, sigma: number, unit: string): string {
   if (!Number.isFinite(value)) return 'no value'
   const text = numberText(value)
-  // Value and error share the power of ten.
+  // Value and error share the power of ten, unless the error is far below the digits that are shown.
   const power = /10[⁻⁰¹²³⁴⁵⁶⁷⁸⁹]+$/.exec(text)?.[0]
-  if (power && Number.isFinite(sigma)) {
+  const far = sigma > 0 && sigma < 1e-6 * Math.abs(value)
+  if (power && Number.isFinite(sigma) && !far) {
     const size = 10 ** Math.floor(Math.log10(Math.abs(Number(value.toPrecision(6)))))
     return `(${numberText(value / size)} ± ${plainText(sigma / size)})×${power} ${unitWords(unit)}`
   }
