@@ -25,12 +25,6 @@ export interface Measure {
   target?: { atLeast: number } | { atMost: number }
 }
 
-/** Processor time counts neither waiting nor other programs on a busy machine. */
-export interface Times {
-  wallSeconds: number
-  cpuSeconds: number
-}
-
 /** Runs the sides in turn, A B A B, so that a machine that slows down slows all of them; one list of results for each side. */
 export async function interleaved<T extends unknown[]>(
   repetitions: number,

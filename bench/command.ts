@@ -3,8 +3,8 @@ import { mkdirSync, readFileSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
 import type { RunRecord } from '../src/run/run-record.js'
-import type { Times } from './case.js'
 import { ENVELOPE_DUST } from './scenes.js'
+import type { Times } from './times.js'
 import { USAGE_FILE, type Usage } from './usage.js'
 
 const program = fileURLToPath(new URL('../src/cli/main.js', import.meta.url))

@@ -1,6 +1,6 @@
 import { execFileSync } from 'node:child_process'
 import { join } from 'node:path'
-import type { Times } from './case.js'
+import type { Times } from './times.js'
 
 /** Runs a yardstick: the name of its C file and its arguments. */
 export type Native = (name: string, ...words: (string | number)[]) => Times

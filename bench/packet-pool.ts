@@ -1,6 +1,6 @@
 import type { ScatterMedium } from '../src/transport/scatter-medium.js'
 import { WorkerPool } from '../src/workers/pool.js'
-import type { Times } from './case.js'
+import type { Times } from './times.js'
 
 const thread = new URL('../src/run/thread.js', import.meta.url)
 

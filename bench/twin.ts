@@ -1,8 +1,8 @@
 import { join } from 'node:path'
-import type { Times } from './case.js'
 import { readDoubles } from './doubles.js'
 import { type LitDust, writeMedium } from './lit-dust.js'
 import type { Native } from './native.js'
+import type { Times } from './times.js'
 
 /** The packet loop in C: native/flights.c. */
 export class Twin {

@@ -1,7 +1,8 @@
-import type { Times, Tools } from './case.js'
+import type { Tools } from './case.js'
 import { lightDust } from './lit-dust.js'
 import { PacketPool } from './packet-pool.js'
 import { shellScene } from './scenes.js'
+import type { Times } from './times.js'
 import { Twin } from './twin.js'
 
 /** A fixed piece of work, by which times of different machines and hours can be compared. */

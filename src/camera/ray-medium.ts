@@ -6,8 +6,8 @@ import { cellCube, type Octree } from '../grid/octree/octree.js'
 import { allocateShared } from '../math/allocate.js'
 import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
-import { sphereStars } from '../solve/scatter-medium.js'
 import type { NearLight, PolarisedPart, ScatteredLight } from '../solve/scattered-light.js'
+import { sphereStars } from '../solve/sphere-stars.js'
 import { beamDepth, type StarBeam } from '../solve/star-beams.js'
 
 /** What the intensity along rays to one observer at one wavelength follows from, as flat arrays that all threads share. */

@@ -3,7 +3,7 @@ import type { SphericalWalls } from '../grid/geometry.js'
 import { cellCube, type Octree } from '../grid/octree/octree.js'
 import type { Model } from '../model/model.js'
 import type { MeridionalStructure, RadialComponent, RadialStructure } from '../output/plot/structure.js'
-import type { DustTemperatures } from '../solve/temperatures.js'
+import type { DustTemperatures } from '../solve/dust-temperatures.js'
 import { AU } from '../units/constants.js'
 
 /** Columns of the table of cells, in FITS units: centre, volume, and for each component density, temperature, 1 sigma. */

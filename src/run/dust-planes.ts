@@ -1,7 +1,7 @@
 import { type Cells, isOctree, openWalk, reachOf } from '../grid/cells.js'
 import type { Model } from '../model/model.js'
 import type { PlaneStructure } from '../output/plot/structure.js'
-import type { DustTemperatures } from '../solve/temperatures.js'
+import type { DustTemperatures } from '../solve/dust-temperatures.js'
 import { shownParts } from './dust-cells.js'
 
 /** Pixels along each side of a plane. */

@@ -4,11 +4,11 @@ import type { CameraImages } from '../camera/types.js'
 import type { Model } from '../model/model.js'
 import { pixelContext } from '../output/pixel-context.js'
 import { spectrumInUnit } from '../output/spectrum-in-unit.js'
-import type { DustTemperatures } from '../solve/temperatures.js'
+import type { DustTemperatures } from '../solve/dust-temperatures.js'
 import { AU, JANSKY, SOLAR_MASS } from '../units/constants.js'
 import { intensityUnit } from '../units/intensity.js'
 import { cellRadii } from './dust-cells.js'
-import type { RunResult } from './run-scene.js'
+import type { RunResult } from './run-result.js'
 
 /** What a run found, in the units of the scene. */
 export interface Findings {

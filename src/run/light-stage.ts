@@ -1,11 +1,11 @@
 import type { ApertureSpectrum, CameraImages } from '../camera/types.js'
 import { observedWavelengths } from '../model/wavelengths.js'
 import { dustLight } from '../solve/dust-light.js'
+import type { DustTemperatures } from '../solve/dust-temperatures.js'
 import { playRounds, type RoundsOutcome, type RoundsProgress, type RoundsRequest } from '../solve/rounds.js'
-import type { DustTemperatures } from '../solve/temperatures.js'
 import type { Estimator } from './estimator.js'
 import { inLanes } from './in-lanes.js'
-import { lightJob } from './light-job.js'
+import { makeLightJob } from './make-light-job.js'
 import { wavelengthsAbreast } from './memory.js'
 import { observeColumns } from './observe-columns.js'
 import { observeDeficit } from './observe-deficit.js'
@@ -88,7 +88,7 @@ export async function lightStage(
     // Rays look for light of point stars scattered once; packets find it themselves.
     const columns = estimator === 'emissivity' ? await columnsToStars(model) : []
     const light = dustLight(model, dust, wavelength, columns)
-    const job = lightJob(model, light, estimator, wanted, pool)
+    const job = makeLightJob(model, light, estimator, wanted, pool)
     const found = job.request
       ? await packetsFrom(job.request, index, (round) => report({ stage: 'light', ...round, of: round.packets }))
       : { sums: undefined, packets: 0, error: 0 }

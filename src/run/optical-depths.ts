@@ -5,7 +5,7 @@ import { observedWavelengths } from '../model/wavelengths.js'
 import { isFromPlace } from '../scene/is-from-place.js'
 import type { Vector } from '../scene/types.js'
 import { dustLight } from '../solve/dust-light.js'
-import { givenTemperatures } from '../solve/temperatures.js'
+import { givenTemperatures } from '../solve/dust-temperatures.js'
 import { micrometres } from './findings.js'
 import { depthsTo } from './stars-seen.js'
 

@@ -1,4 +1,4 @@
-import type { RunResult } from './run-scene.js'
+import type { RunResult } from './run-result.js'
 
 /** Packets with which the precision would have been reached, when the error falls as their square root. */
 export interface PacketsNeeded {

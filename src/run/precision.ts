@@ -2,18 +2,7 @@ import { pixelSolidAngles } from '../camera/frame.js'
 import { BULK } from '../camera/survey.js'
 import type { ApertureSpectrum, CameraImages } from '../camera/types.js'
 import { medianOverBulk } from '../math/stats.js'
-import type { RunResult } from './run-scene.js'
-
-/** Relative 1 sigma reached at each wavelength, and the error of placing the rays. */
-export interface PrecisionReached {
-  name: string
-  kind: 'camera' | 'spectrum'
-  /** cm */
-  wavelengths: number[]
-  /** For images the median over the pixels that hold 95 % of the flux. */
-  photonNoise: number[]
-  samplingError: number[]
-}
+import type { PrecisionReached, RunResult } from './run-result.js'
 
 export function precisionOf(images: CameraImages[], spectra: ApertureSpectrum[]): PrecisionReached[] {
   return [

@@ -2,7 +2,7 @@ import { wavelengthLabel } from '../output/wavelength-label.js'
 import { packetsNeeded } from './packets-needed.js'
 import { percent } from './percent.js'
 import { missed } from './precision.js'
-import type { RunResult } from './run-scene.js'
+import type { RunResult } from './run-result.js'
 
 /** Dust that survives higher temperatures is unknown; silicates go at about 1500 K, carbon at about 2000 K (common practice). */
 const TOO_HOT = 1500

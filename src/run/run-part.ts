@@ -5,8 +5,8 @@ import { divide } from '../solve/batches.js'
 import { dustLight } from '../solve/dust-light.js'
 import { playShare, type Share, shareOf } from '../solve/share.js'
 import { dustStage } from './dust-stage.js'
-import { lightJob } from './light-job.js'
 import { lightPieces } from './light-stage.js'
+import { makeLightJob } from './make-light-job.js'
 import { Stopped } from './progress.js'
 import { emptyProducts } from './wanted.js'
 import { type RunOptions, withCrew } from './with-crew.js'
@@ -52,7 +52,7 @@ export function runPart(scene: Scene, { index, of }: Part, options: RunOptions):
     for (const [k, wavelength] of wavelengths.entries()) {
       const names = lightPieces(k)
       if (ledger.take(names.done)) continue
-      const { request } = lightJob(model, dustLight(model, dust, wavelength), estimator, wantedAt(wavelength), pool)
+      const { request } = makeLightJob(model, dustLight(model, dust, wavelength), estimator, wantedAt(wavelength), pool)
       const at = { stage: 'light', wavelength, index: k, count: wavelengths.length } as const
       const share: Share | 'stopped' = request
         ? await playShare(

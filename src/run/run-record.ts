@@ -4,7 +4,7 @@ import type { Estimator } from './estimator.js'
 import { type Findings, findings, micrometres } from './findings.js'
 import { type PacketsNeeded, packetsNeeded } from './packets-needed.js'
 import { isReached } from './precision.js'
-import type { RunResult } from './run-scene.js'
+import type { RunResult } from './run-result.js'
 import type { PhaseTime } from './stopwatch.js'
 
 /** How a run was made: what its result alone does not tell. */

@@ -2,7 +2,8 @@ import { parentPort, workerData } from 'node:worker_threads'
 import type { Scene } from '../scene/types.js'
 import type { GrainTables } from './grain-tables.js'
 import type { RunProgress } from './progress.js'
-import { type RunResult, runScene } from './run-scene.js'
+import type { RunResult } from './run-result.js'
+import { runScene } from './run-scene.js'
 import { TRIAL_PACKETS, TRIAL_PIXELS, TRIAL_PRECISION, type Trial } from './trial.js'
 
 /** Runs on the thread of a trial: tells after every step what is known so far. */

@@ -1,6 +1,6 @@
 import { changedInputs } from './changed-inputs.js'
 import { resultWarnings } from './result-warnings.js'
-import type { RunResult } from './run-scene.js'
+import type { RunResult } from './run-result.js'
 import { sceneWarnings } from './scene-warnings.js'
 
 /** All that the user should know before trusting a result: about the scene, the result, and the files it was made from. */

@@ -2,7 +2,7 @@ import { sphericalOf } from '../grid/cells.js'
 import { allocateShared } from '../math/allocate.js'
 import { makeSamplingTable } from '../math/cdf.js'
 import type { Model } from '../model/model.js'
-import type { EquilibriumMedium, EquilibriumSource } from '../transport/equilibrium.js'
+import type { EquilibriumMedium, EquilibriumSource } from '../transport/equilibrium-medium.js'
 
 /** Light of point stars at the centre of cells of one or two dimensions on its way straight out, which needs no packets. */
 export interface CentralLight {

@@ -5,11 +5,11 @@ import type { SphericalWalls } from '../grid/geometry.js'
 import { allocateShared } from '../math/allocate.js'
 import type { Model } from '../model/model.js'
 import { LIGHT_SPEED } from '../units/constants.js'
+import type { DustTemperatures } from './dust-temperatures.js'
 import { GROUPS } from './groups.js'
 import { lawsAt } from './laws.js'
 import { type StarBeam, starBeams } from './star-beams.js'
 import type { StarColumns } from './star-columns.js'
-import type { DustTemperatures } from './temperatures.js'
 
 /** The dust of a model at one wavelength, as flat arrays that all threads share. */
 export interface DustLight {

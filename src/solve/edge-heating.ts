@@ -1,8 +1,8 @@
 import { coolingOf, type EmissionTable } from '../dust/emission.js'
 import { sphericalOf } from '../grid/cells.js'
 import type { Model } from '../model/model.js'
+import type { DustTemperatures } from './dust-temperatures.js'
 import { GROUPS } from './groups.js'
-import type { DustTemperatures } from './temperatures.js'
 
 /** Layers of cells from the inner edge outwards through which the heating is drawn to the edge. */
 const LAYERS = 5

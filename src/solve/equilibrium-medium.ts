@@ -7,7 +7,7 @@ import { makeSamplingTable } from '../math/cdf.js'
 import type { Model } from '../model/model.js'
 import { inflow } from '../sources/ambient.js'
 import { powerBins } from '../sources/power-bins.js'
-import type { EquilibriumMedium, EquilibriumSource } from '../transport/equilibrium.js'
+import type { EquilibriumMedium, EquilibriumSource } from '../transport/equilibrium-medium.js'
 import { binnedLaws } from './binned-laws.js'
 import { type CentralLight, centralLight } from './central-light.js'
 

@@ -5,6 +5,7 @@ import type { Scene } from '../scene/types.js'
 import type { Ledger } from '../workers/ledger.js'
 import type { WorkerPool } from '../workers/pool.js'
 import { divide } from './batches.js'
+import type { DustTemperatures } from './dust-temperatures.js'
 import type { EquilibriumSetup } from './equilibrium-medium.js'
 import {
   type EquilibriumProgress,
@@ -16,7 +17,7 @@ import {
   playRound,
   type RoundTally
 } from './equilibrium-round.js'
-import { type DustTemperatures, firstGuess, temperaturesFrom } from './temperatures.js'
+import { firstGuess, temperaturesFrom } from './temperatures.js'
 import { ThickCells } from './thick-cells.js'
 import { WalkWriter } from './walk-levels.js'
 

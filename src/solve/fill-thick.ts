@@ -1,10 +1,10 @@
 import type { Model } from '../model/model.js'
-import type { EquilibriumMedium } from '../transport/equilibrium.js'
+import type { EquilibriumMedium } from '../transport/equilibrium-medium.js'
 import { forEachWall } from './conduction.js'
 import { diffuseDeviations, fillByDiffusion } from './diffusion-fill.js'
+import type { DustTemperatures } from './dust-temperatures.js'
 import type { EquilibriumSetup } from './equilibrium-medium.js'
 import { GROUPS } from './groups.js'
-import type { DustTemperatures } from './temperatures.js'
 import type { ThickCells } from './thick-cells.js'
 
 /**

@@ -4,8 +4,8 @@ import { allocateShared } from '../math/allocate.js'
 import { makeSamplingTable } from '../math/cdf.js'
 import type { Model } from '../model/model.js'
 import type { ScatterLaunch, ScatterMedium } from '../transport/scatter-medium.js'
-import { spheresOf } from '../transport/star-spheres.js'
 import type { DustLight } from './dust-light.js'
+import { sphereStars } from './sphere-stars.js'
 
 /** Least share of the packets that each kind of source gets. */
 const LEAST_SHARE = 0.1
@@ -66,11 +66,6 @@ export function scatterMedium(model: Model, light: DustLight): ScatterMedium {
     ),
     spheres: sphereStars(model)
   }
-}
-
-/** The stars that are spheres, as transport and rays meet them. */
-export function sphereStars({ stars }: Pick<Model, 'stars'>): Float64Array {
-  return spheresOf(stars.map(({ spec: { at, extent, radius } }) => ({ at, radius: extent === 'sphere' ? radius! : 0 })))
 }
 
 /** Share of the light of a star at the centre that the dust of each column of cells takes out of the direct beam. */

@@ -7,7 +7,7 @@ import { observedWavelengths } from '../model/wavelengths.js'
 import type { Vector } from '../scene/types.js'
 import { pathToStar } from '../transport/star-spheres.js'
 import type { WorkerPool } from '../workers/pool.js'
-import { sphereStars } from './scatter-medium.js'
+import { sphereStars } from './sphere-stars.js'
 
 /** What lies between a point star and the cells of an octree: the same at all wavelengths. */
 export interface StarColumns {

@@ -1,7 +1,7 @@
 import { sphericalOf } from '../grid/cells.js'
 import type { SphericalWalk } from '../grid/walk.js'
 import { sampleBin } from '../math/cdf.js'
-import type { EquilibriumMedium, EquilibriumSource } from './equilibrium.js'
+import type { EquilibriumMedium, EquilibriumSource } from './equilibrium-medium.js'
 
 /**
  * Brings the walk to where light of a bin, straight from the centre, first meets dust. By symmetry it may stand at azimuth 0, in one

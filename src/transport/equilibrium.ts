@@ -1,60 +1,15 @@
 import { sampleHenyeyGreenstein } from '../dust/phase-function.js'
-import { cosineAt, drawPlace, type ScatteringTables } from '../dust/scattering-tables.js'
-import { type Cells, openWalk } from '../grid/cells.js'
+import { cosineAt, drawPlace } from '../dust/scattering-tables.js'
+import { openWalk } from '../grid/cells.js'
 import type { SphericalWalk } from '../grid/walk.js'
-import { type SamplingTable, sampleBin } from '../math/cdf.js'
+import { sampleBin } from '../math/cdf.js'
 import { GOLDEN } from '../math/golden.js'
-import type { Vector } from '../scene/types.js'
 import { meetDust } from './central-launch.js'
 import { deflect, isotropicDirection } from './direction.js'
+import type { EquilibriumMedium } from './equilibrium-medium.js'
 import { emittingCell, launchFromCell, launchFromSurface, launchInwards } from './launch.js'
-import { diffuse, type WalkLevels } from './random-walk.js'
+import { diffuse } from './random-walk.js'
 import { pathToStar, spheresOf } from './star-spheres.js'
-
-/** What the temperature phase needs to know, as flat arrays that all threads share. Component c, cell i, bin k. */
-export interface EquilibriumMedium {
-  walls: Cells
-  cells: number
-  components: number
-  bins: number
-  /** components x cells, g/cm3. */
-  density: Float64Array
-  /** components x bins, cm2/g. */
-  absorption: Float64Array
-  extinction: Float64Array
-  asymmetry: Float64Array
-  /** components x bins: scattering law among `tables`; -1 for Henyey-Greenstein with the asymmetry. */
-  lawOf: Int32Array
-  tables?: ScatteringTables
-  /** For each component, the bins of its emission: one row for each tabulated temperature. */
-  emission: SamplingTable[]
-  /** components x cells: row of `emission` at the present temperature, with a fraction. Negative: absorbs for good. */
-  emissionRow: Float64Array
-  walk: WalkLevels
-  /** components x cells: Planck mean absorption opacity, cm2/g, in cells where packets walk. */
-  planck: Float64Array
-  sources: EquilibriumSource[]
-  /** One row, one entry a source: its share of the packets. */
-  sourceTable: SamplingTable
-  /** Energy of a packet of each source, in units of the mean. */
-  sourceEnergy: Float64Array
-}
-
-export type EquilibriumSource =
-  | { kind: 'star'; at: Vector; radius: number; bins: SamplingTable }
-  /** Point stars at the centre of spherical cells of one or two dimensions: packets begin where their light first meets dust. */
-  | {
-      kind: 'central-stars'
-      bins: SamplingTable
-      /** bins x columns of cells seen from the centre. */
-      columns: SamplingTable
-      /** components x columns x (nr + 1): mass over area from the centre to each radial wall, g/cm2. */
-      columnDensity: Float64Array
-    }
-  /** Isotropic light from outside. */
-  | { kind: 'ambient'; bins: SamplingTable }
-  /** Dust of fixed temperature: cells in proportion to luminosity, bins from the row of `emission` of its component. */
-  | { kind: 'dust'; component: number; cells: SamplingTable; row: number }
 
 export interface EquilibriumTally {
   /** components x cells: sum of energy x path x absorption opacity, cm3/g; energies in units of the mean of all packets. */

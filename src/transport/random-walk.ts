@@ -1,19 +1,7 @@
 import type { Walk } from '../grid/cells.js'
 import { type SamplingTable, sampleBin } from '../math/cdf.js'
 import { isotropicDirection } from './direction.js'
-import type { EquilibriumMedium } from './equilibrium.js'
-
-/** What the modified random walk needs to know of the cells in which it may run, as flat arrays that all threads share. */
-export interface WalkLevels {
-  /** cells + 1: where the levels of a cell begin among all. */
-  first: Int32Array
-  /**
-   * LEVEL_SIZE numbers a level, from large spheres to small ones: the smallest radius (cm) of its spheres; path (cm) over the square of
-   * the radius that a packet leaves in a sphere; flights of light to which the sphere is thin, over the same; and the first bin of such
-   * light. All 0 behind the last.
-   */
-  levels: Float64Array
-}
+import type { EquilibriumMedium } from './equilibrium-medium.js'
 
 /** Smallest optical depth of a sphere, by the mean free path of the light that walks. */
 export const LEAST_DEPTH = 4

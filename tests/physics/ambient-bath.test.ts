@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { planckNu } from '../../src/dust/planck.js'
 import { resultWarnings } from '../../src/run/result-warnings.js'
-import type { RunResult } from '../../src/run/run-scene.js'
+import type { RunResult } from '../../src/run/run-result.js'
 import { LIGHT_SPEED } from '../../src/units/constants.js'
 import { plane, sumOf } from './pictures.js'
 import { runText } from './run-text.js'

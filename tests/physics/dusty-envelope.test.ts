@@ -1,6 +1,6 @@
 import { beforeAll, describe, expect, it } from 'vitest'
 import { bracket } from '../../src/math/interp.js'
-import type { RunResult } from '../../src/run/run-scene.js'
+import type { RunResult } from '../../src/run/run-result.js'
 import { LIGHT_SPEED, SOLAR_LUMINOSITY, STEFAN_BOLTZMANN } from '../../src/units/constants.js'
 import { radialTemperatures } from './pictures.js'
 import { runText } from './run-text.js'

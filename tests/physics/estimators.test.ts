@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import type { RunResult } from '../../src/run/run-scene.js'
+import type { RunResult } from '../../src/run/run-result.js'
 import { plane, sumOf } from './pictures.js'
 import { runText } from './run-text.js'
 

@@ -1,7 +1,7 @@
 import { expect, it } from 'vitest'
 import type { CameraImages } from '../../src/camera/types.js'
 import { cellRadii } from '../../src/run/dust-cells.js'
-import type { RunResult } from '../../src/run/run-scene.js'
+import type { RunResult } from '../../src/run/run-result.js'
 import { AU } from '../../src/units/constants.js'
 import { plane, sumOf } from './pictures.js'
 import { runText } from './run-text.js'

@@ -1,6 +1,6 @@
 import type { CameraImages } from '../../src/camera/types.js'
 import { sphericalOf } from '../../src/grid/cells.js'
-import type { RunResult } from '../../src/run/run-scene.js'
+import type { RunResult } from '../../src/run/run-result.js'
 import { LIGHT_SPEED } from '../../src/units/constants.js'
 
 export type Part = 'total' | 'direct' | 'emitted' | 'scattered' | 'sigma'

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import type { CameraImages } from '../../src/camera/types.js'
-import type { RunResult } from '../../src/run/run-scene.js'
+import type { RunResult } from '../../src/run/run-result.js'
 import { plane, sumOf } from './pictures.js'
 import { runText } from './run-text.js'
 

@@ -1,5 +1,6 @@
 import { fileURLToPath } from 'node:url'
-import { type RunResult, runScene } from '../../src/run/run-scene.js'
+import type { RunResult } from '../../src/run/run-result.js'
+import { runScene } from '../../src/run/run-scene.js'
 import type { RunOptions } from '../../src/run/with-crew.js'
 import { parseScene } from '../../src/scene/read.js'
 

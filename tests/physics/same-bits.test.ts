@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto'
 import { describe, expect, it } from 'vitest'
 import { STOKES } from '../../src/camera/stokes-planes.js'
-import type { RunResult } from '../../src/run/run-scene.js'
+import type { RunResult } from '../../src/run/run-result.js'
 import { runText } from './run-text.js'
 
 const shell = 'shape: {kind: shell, inner: 2 au, outer: 60 au}, amount: {optical-depth: 3, at: 1 um}'

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { planckNu } from '../../src/dust/planck.js'
-import type { RunResult } from '../../src/run/run-scene.js'
+import type { RunResult } from '../../src/run/run-result.js'
 import { LIGHT_SPEED } from '../../src/units/constants.js'
 import { plane, starlight } from './pictures.js'
 import { runText } from './run-text.js'

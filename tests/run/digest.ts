@@ -1,6 +1,6 @@
 import { createHash } from 'node:crypto'
 import { STOKES } from '../../src/camera/stokes-planes.js'
-import type { RunResult } from '../../src/run/run-scene.js'
+import type { RunResult } from '../../src/run/run-result.js'
 
 /** A digest of every number that a user gets. */
 export function digest({ dust, equilibrium, images, spectra, lightPackets }: RunResult): string {

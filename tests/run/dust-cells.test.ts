@@ -3,7 +3,7 @@ import { sphericalOf } from '../../src/grid/cells.js'
 import { buildModel } from '../../src/model/build-model.js'
 import { cellCentres, cellColumns, dustStructure } from '../../src/run/dust-cells.js'
 import { parseScene } from '../../src/scene/read.js'
-import { givenTemperatures } from '../../src/solve/temperatures.js'
+import { givenTemperatures } from '../../src/solve/dust-temperatures.js'
 import { sceneText, sceneWith } from '../cli/motelight.js'
 
 const modelOf = (text: string) =>

@@ -1,7 +1,8 @@
 import { expect, it } from 'vitest'
 import { packetsNeeded } from '../../src/run/packets-needed.js'
 import { resultWarnings } from '../../src/run/result-warnings.js'
-import { type RunResult, runScene } from '../../src/run/run-scene.js'
+import type { RunResult } from '../../src/run/run-result.js'
+import { runScene } from '../../src/run/run-scene.js'
 import { smallScene } from './small-scenes.js'
 
 const run = (equilibrium: number, cameras: number): Promise<RunResult> =>

@@ -8,8 +8,8 @@ import { observationFindings } from '../../src/observe/observation-record.js'
 import { observeRun } from '../../src/observe/observe-run.js'
 import { readInstrument } from '../../src/observe/read-instrument.js'
 import { mostModelFolders } from '../../src/sweep/folder/is-packed.js'
+import { openResults } from '../../src/sweep/folder/open-results.js'
 import { outcomesOf } from '../../src/sweep/folder/outcomes-of.js'
-import { resultStore } from '../../src/sweep/folder/result-store.js'
 import { openSweep } from '../../src/sweep/folder/sweep-folder.js'
 import { modelScene } from '../../src/sweep/plan/model-scene.js'
 import { readPlan } from '../../src/sweep/plan/read-plan.js'
@@ -87,7 +87,7 @@ describe('data that need images', () => {
     const packed = await openSweep(join(folderWith(), 'out'), large)
     const foldered = await openSweep(join(folderWith(), 'out'), { ...large, models: large.models.slice(0, 2) })
     for (const sweep of [packed, foldered]) await runHere(sweep, [2], options)
-    const verdictIn = (sweep: typeof packed) => resultStore(sweep).finished([2]).get(2)!.seen!.verdict!
+    const verdictIn = (sweep: typeof packed) => openResults(sweep).finished([2]).get(2)!.seen!.verdict!
     expect(verdictIn(packed)).toEqual(verdictIn(foldered))
     expect(verdictIn(packed).sets[0]).toMatchObject({ name: 'array', values: 2 })
     expect(existsSync(packed.model(2))).toBe(false)
@@ -102,9 +102,9 @@ describe('data that need images', () => {
     const sweep = await openSweep(join(folderWith(), 'out'), readPlan(join(folder, 'plan.yaml')))
     writeFileSync(join(folder, 'uv.csv'), visibilityText.replace('9, 1', '8, 1'))
     await runHere(sweep, [1], options)
-    expect(resultStore(sweep).finished([1]).size).toBe(0)
+    expect(openResults(sweep).finished([1]).size).toBe(0)
     const again = await openSweep(sweep.path, readPlan(join(folder, 'plan.yaml')))
-    expect(resultStore(again).finished([1]).size).toBe(1)
+    expect(openResults(again).finished([1]).size).toBe(1)
   })
 })
 

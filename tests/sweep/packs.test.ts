@@ -4,8 +4,8 @@ import { describe, expect, it } from 'vitest'
 import { FolderStore } from '../../src/sweep/folder/folder-store.js'
 import { mostModelFolders } from '../../src/sweep/folder/is-packed.js'
 import type { ModelResult } from '../../src/sweep/folder/model-result.js'
+import { openResults } from '../../src/sweep/folder/open-results.js'
 import { PackStore } from '../../src/sweep/folder/pack-store.js'
-import { resultStore } from '../../src/sweep/folder/result-store.js'
 import { openSweep } from '../../src/sweep/folder/sweep-folder.js'
 import { runHere } from '../../src/sweep/players/run-here.js'
 import { folderWith } from '../support/folder-with.js'
@@ -22,12 +22,12 @@ describe('packed results', () => {
     const foldered = await openSweep(join(folderWith(), 'out'), { ...large, models: large.models.slice(0, 2) })
     await runHere(packed, [1, 2], options)
     await runHere(foldered, [1, 2], options)
-    expect(resultStore(packed)).toBeInstanceOf(PackStore)
-    expect(resultStore(foldered)).toBeInstanceOf(FolderStore)
-    const found = resultStore(packed).finished([1, 2, 3])
+    expect(openResults(packed)).toBeInstanceOf(PackStore)
+    expect(openResults(foldered)).toBeInstanceOf(FolderStore)
+    const found = openResults(packed).finished([1, 2, 3])
     expect(new Map([...found].sort()).size).toBe(2)
     const inOrder = new Map([...found].sort(([a], [b]) => a - b))
-    expect(comparable(inOrder)).toEqual(comparable(resultStore(foldered).finished([1, 2])))
+    expect(comparable(inOrder)).toEqual(comparable(openResults(foldered).finished([1, 2])))
     expect(existsSync(packed.model(1))).toBe(false)
     // One file for each process and hundred models.
     expect(readdirSync(packed.packs).length).toBeLessThanOrEqual(2)

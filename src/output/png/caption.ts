@@ -1,11 +1,10 @@
 import { fitted, text } from '../draw/svg.js'
 import type { IntensityScale } from './intensity-scale.js'
-import type { SkyView } from './sky-picture.js'
 
 const titleStyle = { size: 17, anchor: 'start', bold: true } as const
 
 /** Title, then subtitle, at the top of a picture `width` pixels wide. */
-export function headLines({ title, subtitle }: Pick<SkyView, 'title' | 'subtitle'>, left: number, width: number): string[] {
+export function headLines({ title, subtitle }: Record<'title' | 'subtitle', string>, left: number, width: number): string[] {
   const room = width - 2 * left
   return [
     text(left, 28, fitted(title, room, titleStyle), titleStyle),

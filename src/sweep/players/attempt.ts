@@ -4,7 +4,7 @@ import { Interrupted } from '../../run/run-in-folder.js'
 import { PartError } from '../../run/run-part.js'
 import { SceneError } from '../../scene/error.js'
 import { noteFailure } from '../folder/failures.js'
-import { resultStore } from '../folder/result-store.js'
+import { openResults } from '../folder/open-results.js'
 import type { SweepFolder } from '../folder/sweep-folder.js'
 import type { Job } from './job.js'
 import { hasDust, makeDust } from './make-dust.js'
@@ -49,13 +49,13 @@ function reasonOf(error: Error): string {
 }
 
 function isDone(folder: SweepFolder, job: Job): boolean {
-  return job.kind === 'dust' ? hasDust(folder, job.lead) : resultStore(folder).finished([job.model]).has(job.model)
+  return job.kind === 'dust' ? hasDust(folder, job.lead) : openResults(folder).finished([job.model]).has(job.model)
 }
 
 /** A model is given up; without its dust, each of a group. */
 export async function noteFailures(folder: SweepFolder, job: Job, message: string): Promise<void> {
   if (job.kind !== 'dust') return noteFailure(folder, { model: job.model, message })
-  const open = resultStore(folder).finished(job.members)
+  const open = openResults(folder).finished(job.members)
   for (const model of job.members)
     if (!open.has(model))
       await noteFailure(folder, { model, message: `dust temperatures, shared with model ${job.lead}: ${message}` })

@@ -1,4 +1,4 @@
-import { resultStore } from '../folder/result-store.js'
+import { openResults } from '../folder/open-results.js'
 import type { SweepFolder } from '../folder/sweep-folder.js'
 import { attempt } from '../players/attempt.js'
 import { type Job, jobsFor } from '../players/job.js'
@@ -22,7 +22,7 @@ export async function runTask(
   options: ModelOptions
 ): Promise<'done' | 'stopped'> {
   const submission = readSubmission(folder, serial)
-  const store = resultStore(folder)
+  const store = openResults(folder)
   for (const job of jobsOf()) {
     if (job.kind !== 'dust' && store.finished([job.model]).has(job.model)) continue
     if ((await attempt(folder, job, options)) === 'stopped') return 'stopped'

@@ -3,7 +3,7 @@ import { expect, it } from 'vitest'
 import { drawNormal } from '../../../src/math/draw.js'
 import { stream } from '../../../src/math/random.js'
 import type { ModelResult } from '../../../src/sweep/folder/model-result.js'
-import { resultStore } from '../../../src/sweep/folder/result-store.js'
+import { openResults } from '../../../src/sweep/folder/open-results.js'
 import { openSweep } from '../../../src/sweep/folder/sweep-folder.js'
 import { rankedFits } from '../../../src/sweep/meaning/likelihood.js'
 import { marginalOf } from '../../../src/sweep/meaning/marginal.js'
@@ -37,7 +37,7 @@ data: [{name: old, file: four.csv, spectrum: sed}]
   const folder = await openSweep(join(folderWith(), 'out'), planned(plan, files))
   const models = folder.sweep.models.map((_, i) => i + 1)
   await runHere(folder, models, { workers: 2, onProgress: () => {} })
-  return { sweep: folder.sweep, results: resultStore(folder).finished(models) }
+  return { sweep: folder.sweep, results: openResults(folder).finished(models) }
 }
 
 const fluxesOf = (result: ModelResult) => result.spectra.find(({ name }) => name === 'data-old')!.flux
