@@ -31,6 +31,9 @@ export type DepthAt = (u: number, v: number) => number
 
 /** Points across a stellar disk, in each direction, at which the optical depth in front is found. */
 const DEPTH_GRID = 24
+/** So many do where twice as many give the same light to this share. */
+const FEWEST = 6
+const SAME = 1e-4
 /** The same where another star covers a part of it. */
 const LIMB_GRID = 128
 /** Samples across a pixel or across a disk smaller than two pixels. */
@@ -48,9 +51,13 @@ export function directLight(star: StarImage, [x, y]: [number, number], depthAt: 
   if (star.radius === 0) return off > radius ? 0 : (star.luminosity / (4 * Math.PI)) * Math.exp(-depthAt(0, 0))
   const seen = off === 0 ? Math.min(radius, star.radius) : star.radius
   const inside = (u: number, v: number) => Math.hypot(x + u, y + v) <= radius
-  const all = disk(star, depthAt, inside, seen, DEPTH_GRID)
+  const seenAt = (points: number) => disk(star, depthAt, inside, seen, points)
+  const few = seenAt(FEWEST)
+  const more = seenAt(2 * FEWEST)
+  if (!more.cut && Math.abs(few.light - more.light) <= SAME * more.light) return more.light
+  const all = seenAt(DEPTH_GRID)
   // The limb of another star is sharper than any dust.
-  return all.cut ? disk(star, depthAt, inside, seen, LIMB_GRID).light : all.light
+  return all.cut ? seenAt(LIMB_GRID).light : all.light
 }
 
 /**

@@ -3,7 +3,6 @@ import { elementAt, S11, S12 } from '../dust/scattering-tables.js'
 import { isOctree, openWalk, reachOf, sphericalOf, type Walk } from '../grid/cells.js'
 import { OctreeWalk } from '../grid/octree/octree-walk.js'
 import type { SphericalWalk } from '../grid/walk.js'
-import type { Vector } from '../scene/types.js'
 import { GROUPS } from '../solve/groups.js'
 import { beamDepth, type StarBeam } from '../solve/star-beams.js'
 import { BEAM_POINT, columnsBetween } from '../solve/star-columns.js'
@@ -29,8 +28,6 @@ const MOST_PIECES = 32
 const GAUSS = 0.5 - 0.5 / Math.sqrt(3)
 /** A ray is never nearer to a point star than this share of the reach of the cells. */
 const TINY = 1e-9
-/** A star hides another when it is nearer by more than this share of the reach: more than rounding. */
-const HIDES = 1e-12
 /** Within so many sides of its cell, the way to a star among cubes is followed. */
 const NEAR = 2
 /** The extinction of all components as that of one. */
@@ -44,8 +41,6 @@ const ONE = Float64Array.of(1)
 export class RayIntegrator {
   private readonly walk: Walk
   private readonly reach: number
-  /** Beyond all cells, stars and the observer at a place, cm. */
-  private readonly far: number
   private readonly scatteredRay: ScatteredRay
   private readonly sight: Sight
   /** Numbers that `trace` writes. */
@@ -69,8 +64,6 @@ export class RayIntegrator {
     this.stokes = medium.polarising && 'observer' in view ? new StokesRay(medium, view) : undefined
     this.walk = openWalk(medium.walls)
     this.reach = reachOf(medium.walls)
-    const extent = this.reach + ('from' in view ? Math.hypot(...view.from) : 0)
-    this.far = medium.spheres.reduce((sum, value, i) => sum + (i % 4 < 3 ? Math.abs(value) : Math.sqrt(value)), extent)
     this.shadow = isOctree(medium.walls) ? new OctreeWalk(medium.walls) : undefined
     this.radials = new Float64Array(medium.starlight?.beams.length ?? 0)
     this.scatteredRay = new ScatteredRay(medium, this.stokes)
@@ -130,29 +123,6 @@ export class RayIntegrator {
     beams?.forEach(({ at }, star) => {
       stokes.addRadial(x - dot(at, right), y - dot(at, up), this.radials[star], out)
     })
-  }
-
-  /**
-   * Optical depth from the observer to a star, along the ray that passes its centre at an offset (u, v) cm across the line of sight: to
-   * its surface, or as far as its centre where the ray misses it or it is a point. Infinite where another star stands in front.
-   */
-  depthTo(u: number, v: number, at: Vector, radius: number): number {
-    const { medium, walk, sight, far } = this
-    const { spheres, extinction } = medium
-    const depth2 = radius * radius - u * u - v * v
-    const end = sight.lookPast(at, u, v) - (depth2 > 0 ? Math.sqrt(depth2) : 0)
-    if (spheres.length > 0) {
-      sight.takeFrom(walk, far)
-      if (walk.s + pathToStar(walk, spheres) < end - HIDES * far) return Number.POSITIVE_INFINITY
-    }
-    if (!sight.enter(walk)) return 0
-    let depth = 0
-    do {
-      const start = walk.s
-      const step = Math.min(walk.toWall(), end - start)
-      if (step > 0) depth += step * extinction[walk.cell]
-    } while (walk.sWall < end && walk.cross() >= 0)
-    return depth
   }
 
   /**

@@ -86,7 +86,7 @@ export function buildModel(asked: Scene, plan = planCells(asked)): Model {
     }
     const mass = scale * shape.totalMass
     const massBefore = spec.hollow === undefined ? mass : scale * makeShape(spec.shape, spec).totalMass
-    return { spec, law, shape, mass, massBefore, density }
+    return { spec, law, shape, scale, mass, massBefore, density }
   })
   const volume = volumesOf(walls, new Float64Array(allocateShared(8 * cells)))
   return { scene, dimensions, reason, walls, cells, volume, components, stars, fields, warnings }

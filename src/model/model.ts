@@ -27,6 +27,8 @@ export interface DustComponent {
   spec: DustSpec
   law: OpacityLaw
   shape: Shape
+  /** g/cm3 for a relative density of 1 in the shape. */
+  scale: number
   /** g */
   mass: number
   /** What `amount` stands for, g: the mass with all that has sublimated. */

@@ -72,13 +72,13 @@ export async function observeWavelength(
       const data = await fieldOn(studio.pool, medium, view, tolerance)
       const rows = { data, want, tolerance, progress, piece, onDone }
       if (!(await takePicture(model, rows, studio))) return false
-      addStars(model, light, medium, view, want, progress.placing)
+      addStars(model, light, view, want, progress.placing)
     } else {
       const view = seenFrom(model, { ...want.spec.view, roll: 0 })
       const data = await fieldOn(studio.pool, medium, view, tolerance)
       const integral = await integralOf(model, data, want.spec.aperture * model.scene.distance, tolerance, studio)
       if (!integral) return false
-      writeFlux(model, directFlux(model, light, medium, view, want.spec.aperture * model.scene.distance), integral, want)
+      writeFlux(model, directFlux(model, light, view, want.spec.aperture * model.scene.distance), integral, want)
       onDone(1, 1)
     }
     Object.assign(progress, { want: progress.want + 1, tasks: 0, placing: 0 })

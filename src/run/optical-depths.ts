@@ -1,13 +1,10 @@
 import { seenFrom } from '../camera/frame.js'
-import { rayMedium } from '../camera/ray-medium.js'
+import { StarDepths } from '../camera/star-depth.js'
 import type { DustComponent, Model } from '../model/model.js'
 import { observedWavelengths } from '../model/wavelengths.js'
 import { isFromPlace } from '../scene/is-from-place.js'
 import type { Vector } from '../scene/types.js'
-import { dustLight } from '../solve/dust-light.js'
-import { givenTemperatures } from '../solve/dust-temperatures.js'
 import { micrometres } from './findings.js'
-import { depthsTo } from './stars-seen.js'
 
 /** Optical depths for extinction. */
 export interface OpticalDepths {
@@ -45,7 +42,6 @@ const lines = {
 export function opticalDepths(model: Model): OpticalDepths {
   const { scene, components } = model
   const wavelengths = observedWavelengths(scene)
-  const dust = givenTemperatures(model)
   const specs = [
     ...scene.cameras.map((spec) => ({ kind: 'camera' as const, spec })),
     ...scene.spectra.map((spec) => ({ kind: 'spectrum' as const, spec }))
@@ -57,12 +53,11 @@ export function opticalDepths(model: Model): OpticalDepths {
     wavelengths: [] as { wavelengthUm: number; opticalDepth: number }[]
   }))
   for (const wavelength of wavelengths) {
-    const medium = rayMedium({ ...model, stars: [] }, dustLight(model, dust, wavelength), undefined)
     specs.forEach(({ spec }, i) => {
       if (!spec.wavelengths.includes(wavelength)) return
       const view = seenFrom(model, spec.view)
       const there = 'from' in view && Math.hypot(...view.from) === 0
-      const opticalDepth = there ? 0 : depthsTo(medium, view)(CENTRE)(0, 0)
+      const opticalDepth = there ? 0 : new StarDepths({ ...model, stars: [] }, wavelength, view).to(CENTRE)(0, 0)
       observers[i].wavelengths.push({ wavelengthUm: micrometres(wavelength), opticalDepth })
     })
   }
@@ -76,8 +71,8 @@ export function opticalDepths(model: Model): OpticalDepths {
   }
 }
 
-function alongLine({ mass, shape, law }: DustComponent, wavelength: number): ComponentDepth {
-  const column = (mass / shape.totalMass) * shape.column
+function alongLine({ scale, shape, law }: DustComponent, wavelength: number): ComponentDepth {
+  const column = scale * shape.column
   const absorption = column * law.absorption(wavelength)
   const scattering = column * law.scattering(wavelength)
   return { wavelengthUm: micrometres(wavelength), opticalDepth: absorption + scattering, absorption, scattering }

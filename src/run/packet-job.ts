@@ -1,6 +1,5 @@
 import { apertureDetector, cameraDetector, farView, pixelSolidAngles } from '../camera/frame.js'
 import { putModes } from '../camera/noise-modes.js'
-import { rayMedium } from '../camera/ray-medium.js'
 import { STOKES, STOKES_PAIRS, type StokesPlanes, stokesPlanes } from '../camera/stokes-planes.js'
 import { BULK } from '../camera/survey.js'
 import { medianOverBulk, standardError } from '../math/stats.js'
@@ -108,11 +107,10 @@ function caughtBy(pixels: number, { sums, packets }: GroupSums): Caught {
 function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted, caught: Caught, offset: number): number {
   const { distance } = model.scene
   const view = farView(model, want.spec)
-  const medium = rayMedium(model, light, undefined)
   if (want.kind === 'spectrum') {
     const { result, k, spec } = want
     const area = distance * distance
-    const direct = addStars ? directFlux(model, light, medium, view, spec.aperture * distance) : 0
+    const direct = addStars ? directFlux(model, light, view, spec.aperture * distance) : 0
     result.direct[k] = (caught.direct[offset] + direct) / area
     result.emitted[k] = caught.emitted[offset] / area
     result.scattered[k] = caught.scattered[offset] / area
@@ -126,7 +124,7 @@ function develop(model: Model, light: DustLight, addStars: boolean, want: Wanted
   const at = k * pixels
   // Luminosity per sr divided by the squared distance is flux; by the solid angle of a pixel, intensity.
   const scale = 1 / (distance * distance * pixelSolidAngles(spec)[0])
-  const direct = addStars ? paintStars(model, light, medium, view, want) : images.direct.subarray(at, at + pixels)
+  const direct = addStars ? paintStars(model, light, view, want) : images.direct.subarray(at, at + pixels)
   if (images.stokes && caught.stokes) {
     for (const plane of STOKES)
       images.stokes[plane].set(

@@ -34,7 +34,7 @@ export async function quickErrors(
     const view = seenFrom(model, want.spec.view)
     const radius = want.spec.aperture * distance
     const value = await surveyApertureOn(pool, await fieldOn(pool, medium, view, ACCURACY), radius)
-    const total = value[EMITTED] + value[SCATTERED] + directFlux(model, light, medium, view, radius)
+    const total = value[EMITTED] + value[SCATTERED] + directFlux(model, light, view, radius)
     return total > 0 ? standardError(value.subarray(FIRST_GROUP, RAY_VALUES)) / total : 0
   })
   return Promise.all(errors)

@@ -1,45 +1,39 @@
-import { addDirectLight, allDirectLight, type DepthAt, directLight, starImage } from '../camera/direct.js'
+import { addDirectLight, allDirectLight, directLight, starImage } from '../camera/direct.js'
 import { pixelFrame } from '../camera/frame.js'
-import { RayIntegrator } from '../camera/ray.js'
-import type { RayMedium } from '../camera/ray-medium.js'
 import { acrossTo, dot, type View } from '../camera/sight.js'
+import { StarDepths } from '../camera/star-depth.js'
 import { starPlace } from '../camera/star-place.js'
 import type { ViewBasis } from '../camera/view.js'
 import type { Model } from '../model/model.js'
-import type { StarSpec } from '../scene/types.js'
 import type { DustLight } from '../solve/dust-light.js'
 import type { Wanted } from './wanted.js'
 
 /** Direct light of all stars within a radius, luminosity per sr (erg/s/Hz/sr). */
-export function directFlux(model: Model, light: DustLight, medium: RayMedium, view: ViewBasis, radius: number): number {
-  const depthTo = depthsTo(medium, view)
+export function directFlux(model: Model, light: DustLight, view: ViewBasis, radius: number): number {
+  const depths = new StarDepths(model, light.wavelength, view)
   return model.stars.reduce(
     (sum, { spec, spectrum }) =>
       sum +
-      directLight(starImage(spec, spectrum, light.nu), [dot(spec.at, view.right), dot(spec.at, view.up)], depthTo(spec), radius),
+      directLight(
+        starImage(spec, spectrum, light.nu),
+        [dot(spec.at, view.right), dot(spec.at, view.up)],
+        depths.to(spec),
+        radius
+      ),
     0
   )
-}
-
-/** Optical depths from the observer to stars. */
-export function depthsTo(medium: RayMedium, view: View): (star: Pick<StarSpec, 'at' | 'extent' | 'radius'>) => DepthAt {
-  const integrator = new RayIntegrator({ ...medium, slots: 0, starlight: undefined }, view)
-  return ({ at, extent, radius }) =>
-    (u, v) =>
-      integrator.depthTo(u, v, at, extent === 'sphere' ? radius! : 0)
 }
 
 /** Adds the direct light of the stars to a picture of the dust, and the sum of all light. */
 export function addStars(
   model: Model,
   light: DustLight,
-  medium: RayMedium,
   view: View,
   want: Extract<Wanted, { kind: 'camera' }>,
   placing: number
 ): void {
   const { images, k } = want
-  const direct = paintStars(model, light, medium, view, want)
+  const direct = paintStars(model, light, view, want)
   const from = k * direct.length
   let sum = 0
   for (let i = 0; i < direct.length; i++) {
@@ -54,7 +48,6 @@ export function addStars(
 export function paintStars(
   model: Model,
   light: DustLight,
-  medium: RayMedium,
   view: View,
   { spec, images, k }: Extract<Wanted, { kind: 'camera' }>
 ): Float64Array {
@@ -62,10 +55,10 @@ export function paintStars(
   const frame = pixelFrame(spec, distance)
   const pixels = images.width * images.height
   const direct = images.direct.subarray(k * pixels, (k + 1) * pixels)
-  const depthTo = depthsTo(medium, view)
+  const depths = new StarDepths(model, light.wavelength, view)
   for (const { spec: star, spectrum } of model.stars) {
     const image = starImage(star, spectrum, light.nu)
-    const depthAt = depthTo(star)
+    const depthAt = depths.to(star)
     addDirectLight(image, starPlace(star.at, view), depthAt, frame, direct)
     const seen = images.stars.find(({ name }) => name === star.name)!
     const away = 'from' in view ? acrossTo(view, star.at).distance : distance
