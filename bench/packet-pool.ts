@@ -1,3 +1,4 @@
+import type { Observers } from '../src/transport/observers.js'
 import type { ScatterMedium } from '../src/transport/scatter-medium.js'
 import { WorkerPool } from '../src/workers/pool.js'
 import type { Times } from './times.js'
@@ -8,11 +9,11 @@ const thread = new URL('../src/run/thread.js', import.meta.url)
 export class PacketPool {
   private readonly pool = new WorkerPool(1, thread)
 
-  /** `observers`: unit vectors for cells of two or three dimensions, see `tallyTowards`; none in one dimension. */
-  constructor(
-    medium: ScatterMedium,
-    private readonly observers?: Float64Array
-  ) {
+  private readonly observers?: Observers
+
+  /** `directions`: unit vectors to observers of cells of two or three dimensions, see `tallyTowards`; none in one dimension. */
+  constructor(medium: ScatterMedium, directions?: Float64Array) {
+    if (directions) this.observers = { directions, places: [] }
     this.pool.share('scattering', medium)
   }
 
