@@ -49,7 +49,7 @@ async function compareState({ folder }: Tools): Promise<Measure[]> {
 /** What the main thread does with the tally of a batch against what a worker does to make it. */
 async function compareReduction(text: string, observers?: Float64Array): Promise<Measure[]> {
   const { medium } = lightDust(text)
-  const { packets } = divide(1e6)
+  const { packets } = divide(1e6, medium.cells)
   const pool = new PacketPool(medium, observers)
   await pool.warmUp(10 * packets)
   const sums = emptySums()

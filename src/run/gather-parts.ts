@@ -59,10 +59,10 @@ function partsIn(runFolder: string): { index: number; of: number; path: string }
 
 /** The packets of all parts as the source of a run. Throws StateError for pieces that are damaged or of another run. */
 export function packetsOfParts({ folders }: GatheredParts, identity: Identity): PacketSource {
-  return async ({ atMost }, index) => {
+  return async ({ atMost, tallied }, index) => {
     const name = lightPieces(index).done
     const shares = folders.map((folder) => openPiece(pieceFile(folder, name), identity) as unknown as Share)
-    const batches = divide(atMost)
+    const batches = divide(atMost, tallied)
     return { sums: joinShares(shares, batches), packets: batches.count * batches.packets, error: Number.NaN }
   }
 }

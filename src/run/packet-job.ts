@@ -41,6 +41,7 @@ export function packetJob(model: Model, light: DustLight, estimator: 'peel' | 'e
         medium,
         task: estimator === 'peel' ? 'peeled' : 'exits',
         input: { detectors },
+        tallied: pixels,
         seed: `${seed}/${estimator}/${light.wavelength}`,
         atMost: effort.cameras,
         precision: effort.precision,

@@ -34,7 +34,7 @@ export function requireParts(scene: Scene, of: number): void {
     const message = 'parts need `precision: none`: how many packets a precision takes is known only from all parts together'
     throw errorAt(scene, ['effort', 'precision'], message)
   }
-  const { count } = divide(cameras)
+  const { count } = divide(cameras, 0)
   if (of > count)
     throw new PartError(`${of} parts are too many: effort.cameras = ${cameras} makes ${count} batches, at most one part each`)
 }
@@ -47,12 +47,12 @@ export function runPart(scene: Scene, { index, of }: Part, options: RunOptions):
     const { pool, ledger } = crew
     const { model, dust } = await dustStage(crew, onProgress, stop)
     const { wantedAt } = emptyProducts(scene, estimator)
-    const range = shareOf(index - 1, of, divide(scene.effort.cameras))
     const wavelengths = observedWavelengths(scene)
     for (const [k, wavelength] of wavelengths.entries()) {
       const names = lightPieces(k)
       if (ledger.take(names.done)) continue
       const { request } = makeLightJob(model, dustLight(model, dust, wavelength), estimator, wantedAt(wavelength), pool)
+      const range = shareOf(index - 1, of, divide(scene.effort.cameras, request?.tallied ?? 0))
       const at = { stage: 'light', wavelength, index: k, count: wavelengths.length } as const
       const share: Share | 'stopped' = request
         ? await playShare(

@@ -4,6 +4,8 @@ import { GROUPS } from './groups.js'
 const FEWEST = 2
 const MOST = 1024
 const PACKETS = 8192
+/** So many values of a tally are emptied, handed over and added in a few per cent of the time of a packet among as many cells. */
+const VALUES_A_PACKET = 64
 
 /** How a round is divided: batches of equally many packets, an equal number of batches to each group, one after the other. */
 export interface Batches {
@@ -12,9 +14,13 @@ export interface Batches {
   packets: number
 }
 
-/** Depends on the packets alone, so that results do not depend on who computes them; `fewest`: batches in a group. */
-export function divide(packets: number, fewest = FEWEST): Batches {
-  const inGroup = Math.min(MOST, Math.max(fewest, Math.ceil(packets / (GROUPS * PACKETS))))
+/**
+ * Depends on packets and on what a tally tells of, `tallied` cells or pixels, alone, so that results do not depend on who computes them;
+ * `fewest`: batches in a group.
+ */
+export function divide(packets: number, tallied: number, fewest = FEWEST): Batches {
+  const worthDividing = GROUPS * Math.max(PACKETS, tallied / VALUES_A_PACKET)
+  const inGroup = Math.min(MOST, Math.max(fewest, Math.ceil(packets / worthDividing)))
   const count = GROUPS * inGroup
   return { count, packets: Math.max(1, Math.round(packets / count)) }
 }

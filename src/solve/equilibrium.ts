@@ -82,7 +82,7 @@ export async function solveEquilibrium(
   for (;;) {
     setRows(setup, state.present)
     walk.update(state.present)
-    const batches = divide(state.size)
+    const batches = divide(state.size, model.cells * model.components.length)
     if (!(await playRound(state, batches, model.scene.seed, pool, ledger, onProgress, stop))) return 'stopped'
     const packets = batches.count * batches.packets
     state.spent += packets
@@ -141,7 +141,7 @@ function fixedSizes(total: number): number[] {
 }
 
 /** Writes the emission rows of the present temperatures where the workers see them. */
-function setRows({ medium, tables }: EquilibriumSetup, temperature: Float64Array): void {
+export function setRows({ medium, tables }: EquilibriumSetup, temperature: Float64Array): void {
   const { cells, emissionRow } = medium
   for (let c = 0; c < tables.length; c++) {
     for (let at = c * cells; at < (c + 1) * cells; at++) {

@@ -26,6 +26,8 @@ export interface RoundsRequest {
   /** Handler that plays a batch, and what it gets beside `packets` and `seed`. */
   task: string
   input: object
+  /** Cells or pixels that a tally tells of. */
+  tallied: number
   /** Text that the random streams of all batches start from. */
   seed: string
   atMost: number
@@ -80,7 +82,7 @@ export async function playRounds(
   onProgress: (progress: RoundsProgress) => void,
   stop?: AbortSignal
 ): Promise<RoundsOutcome | 'stopped'> {
-  const { medium, atMost, atLeast = 0, precision, errorOf } = request
+  const { medium, tallied, atMost, atLeast = 0, precision, errorOf } = request
   const first = precision === null ? atMost : Math.min(Math.max(FIRST_ROUND, atLeast), atMost)
   const state =
     (ledger.take(name) as RoundsState | undefined) ??
@@ -89,7 +91,7 @@ export async function playRounds(
   pool.share('scattering', medium, name)
   while (!state.finished) {
     // First rounds are small: what a batch costs beside its packets counts.
-    const batches = divide(state.size, precision === null ? undefined : 1)
+    const batches = divide(state.size, tallied, precision === null ? undefined : 1)
     const complete = await runKept(
       {
         tasks: batchTasks(request, name, state.round, batches),

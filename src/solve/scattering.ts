@@ -10,7 +10,7 @@ import type { ScatteredLight, SeenBy } from './scattered-light.js'
 import type { TurningMatrices } from './scattered-stokes.js'
 
 /** Packets for each cell of three dimensions by which most of them are met: those that are not would seem to have no noise. */
-const MET = 0.25
+export const MET = 0.25
 
 /** Packets that find the scattered light at one wavelength, and what their sums mean. */
 export interface Scattering {
@@ -57,6 +57,7 @@ export function scattering(
       medium,
       task: `${light.tables ? 'stokes-' : ''}${spherical ? 'flights' : 'towards'}`,
       input: { observers },
+      tallied: model.cells,
       seed: `${seed}/light/${light.wavelength}`,
       atMost: effort.cameras,
       ...(model.dimensions === 3 && { atLeast: MET * model.cells }),

@@ -33,7 +33,7 @@ export async function playShare(
   onProgress: (progress: RoundsProgress) => void,
   stop?: AbortSignal
 ): Promise<Share | 'stopped'> {
-  const batches = divide(request.atMost)
+  const batches = divide(request.atMost, request.tallied)
   const state = (ledger.take(name) as (Share & { done: number }) | undefined) ?? { from, to, groups: [], loose: [], done: 0 }
   const inGroup = batches.count / GROUPS
   const take = (output: unknown, index: number) => {

@@ -35,19 +35,32 @@ function digests(path: string): string[] {
 }
 
 describe('batches', () => {
-  it.each([1, 31, 32, 5000, 262_144, 262_145, 1e6, 4e6, 1e12])(
-    'of %d packets: as many in each group, in one piece',
-    (packets) => {
-      const batches = divide(packets)
-      expect(batches.count % GROUPS).toBe(0)
-      expect(batches.packets).toBe(Math.max(1, Math.round(packets / batches.count)))
-      const groups = Array.from({ length: batches.count }, (_, batch) => groupOf(batch, batches))
-      expect(groups).toEqual(Array.from({ length: batches.count }, (_, batch) => Math.floor(batch / (batches.count / GROUPS))))
-    }
-  )
+  it.each([
+    [1, 0],
+    [31, 0],
+    [32, 1e3],
+    [5000, 1e5],
+    [262_144, 1e5],
+    [262_145, 1e6],
+    [1e6, 1e7],
+    [4e6, 1e7],
+    [1e12, 0]
+  ])('of %d packets among %d cells: as many in each group, in one piece', (packets, cells) => {
+    const batches = divide(packets, cells)
+    expect(batches.count % GROUPS).toBe(0)
+    expect(batches.packets).toBe(Math.max(1, Math.round(packets / batches.count)))
+    const groups = Array.from({ length: batches.count }, (_, batch) => groupOf(batch, batches))
+    expect(groups).toEqual(Array.from({ length: batches.count }, (_, batch) => Math.floor(batch / (batches.count / GROUPS))))
+  })
+
+  it('hold more packets where a tally tells of more cells than half a million', () => {
+    expect(divide(4e6, 5e5)).toEqual(divide(4e6, 0))
+    expect(divide(4e6, 1e7).packets).toBeGreaterThan(1e5)
+    expect(divide(2.5e6, 1e7, 1)).toEqual({ count: GROUPS, packets: 156_250 })
+  })
 
   it.each([1, 2, 5, 16, 31, 32])('fall to %i parts, each once, in equal numbers to one', (parts) => {
-    const batches = divide(1000)
+    const batches = divide(1000, 0)
     const ranges = Array.from({ length: parts }, (_, part) => shareOf(part, parts, batches))
     expect(ranges[0].from).toBe(0)
     expect(ranges[parts - 1].to).toBe(batches.count)
