@@ -5,9 +5,9 @@ import type { SphericalWalk } from '../grid/walk.js'
 import { sampleBin } from '../math/cdf.js'
 import { GOLDEN } from '../math/golden.js'
 import { meetDust } from './central-launch.js'
-import { deflect, isotropicDirection } from './direction.js'
+import { deflect, directionInOrder, isotropicDirection } from './direction.js'
 import type { EquilibriumMedium } from './equilibrium-medium.js'
-import { emittingCell, launchFromCell, launchFromSurface, launchInwards } from './launch.js'
+import { launchFromCell, launchFromSurface, launchInwards } from './launch.js'
 import { diffuse } from './random-walk.js'
 import { pathToStar, spheresOf } from './star-spheres.js'
 
@@ -56,11 +56,12 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
   let returned = 0
   let kept = 0
   let interactions = 0
-  // Where the even sequence of impact parameters begins; drawn when first needed.
+  // Where the even sequence of impact parameters or wavelengths begins; drawn when first needed.
   let lattice = -1
 
   for (let n = 0; n < packets; n++) {
-    // One stratified number chooses the source and, what remains of it, the wavelength.
+    // One stratified number chooses the source and, what remains of it, the direction from a star or the cell that emits, in their order:
+    // packets that follow one another meet the same cells. Else it chooses the wavelength.
     let choice = (n + uniform()) / packets
     const index = sampleBin(medium.sourceTable, 0, choice)
     const source = sources[index]
@@ -69,26 +70,27 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
     let energy = sourceEnergy[index]
     let bin: number
     let met = false
+    if (source.kind !== 'central-stars' && lattice < 0) lattice = uniform()
+    const even = (lattice + n * GOLDEN) % 1
     if (source.kind === 'ambient') {
-      if (lattice < 0) lattice = uniform()
       bin = sampleBin(source.bins, 0, choice)
-      energy *= launchInwards(walk, walls, (lattice + n * GOLDEN) % 1, uniform, direction)
+      energy *= launchInwards(walk, walls, even, uniform, direction)
     } else if (source.kind === 'central-stars') {
       bin = sampleBin(source.bins, 0, choice)
       meetDust(walk as SphericalWalk, medium, source, bin, uniform)
       met = true
     } else if (source.kind === 'star') {
-      bin = sampleBin(source.bins, 0, choice)
+      bin = sampleBin(source.bins, 0, even)
       const [x, y, z] = source.at
-      if (source.radius > 0) launchFromSurface(walk, x, y, z, source.radius, uniform, direction)
+      if (source.radius > 0) launchFromSurface(walk, x, y, z, source.radius, choice, uniform, direction)
       else {
-        isotropicDirection(direction, uniform(), uniform())
+        directionInOrder(direction, choice, uniform)
         walk.startAt(x, y, z, direction[0], direction[1], direction[2])
       }
     } else {
       const row = Math.floor(source.row) + (uniform() < source.row - Math.floor(source.row) ? 1 : 0)
-      bin = sampleBin(emission[source.component], row, choice)
-      launchFromCell(walk, walls, emittingCell(source.cells, uniform), uniform, direction)
+      bin = sampleBin(emission[source.component], row, even)
+      launchFromCell(walk, walls, sampleBin(source.cells, 0, choice), uniform, direction)
     }
 
     emitted += energy

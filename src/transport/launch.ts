@@ -1,18 +1,18 @@
 import { type Cells, drawInCell, isOctree, reachOf, type Walk } from '../grid/cells.js'
-import { type SamplingTable, sampleBin } from '../math/cdf.js'
-import { deflect, isotropicDirection } from './direction.js'
+import { deflect, directionInOrder, isotropicDirection } from './direction.js'
 
-/** Starts a packet on the surface of a star of radius R about (x, y, z), by the cosine law. */
+/** Starts a packet on the surface of a star of radius R about (x, y, z), by the cosine law; `number` in [0, 1) chooses the place in order. */
 export function launchFromSurface(
   walk: Walk,
   x: number,
   y: number,
   z: number,
   radius: number,
+  number: number,
   uniform: () => number,
   out: Float64Array
 ): void {
-  isotropicDirection(out, uniform(), uniform())
+  directionInOrder(out, number, uniform)
   const [nx, ny, nz] = out
   deflect(out, nx, ny, nz, Math.sqrt(uniform()), uniform())
   walk.startAt(x + nx * radius, y + ny * radius, z + nz * radius, out[0], out[1], out[2])
@@ -60,9 +60,4 @@ export function launchInwards(walk: Walk, cells: Cells, u: number, uniform: () =
   out[1] = uy
   out[2] = uz
   return weight
-}
-
-/** Cell that emits, drawn in proportion to its luminosity. */
-export function emittingCell(cells: SamplingTable, uniform: () => number): number {
-  return sampleBin(cells, 0, uniform())
 }

@@ -4,7 +4,7 @@ import type { SphericalWalk } from '../grid/walk.js'
 import { sampleBin } from '../math/cdf.js'
 import { GOLDEN } from '../math/golden.js'
 import { deflect, directionInOrder, isotropicDirection } from './direction.js'
-import { emittingCell, launchFromCell, launchFromSurface, launchInwards } from './launch.js'
+import { launchFromCell, launchFromSurface, launchInwards } from './launch.js'
 import type { Polarisation } from './polarisation.js'
 import { type ScatterLaunch, type ScatterMedium, scatteringOf } from './scatter-medium.js'
 import { WayFromStar } from './way-from-star.js'
@@ -97,7 +97,10 @@ export class Launcher {
     private readonly forced: boolean
   ) {}
 
-  /** Starts packet n; n chooses the source evenly among the packets of the batch. */
+  /**
+   * Starts packet n; n chooses the source evenly among the packets of the batch, and then the direction from a star, or the cell that
+   * emits, in their order: packets that follow one another meet the same cells.
+   */
   next(walk: Walk, n: number, uniform: () => number, out: Float64Array): void {
     const { launch, launchTable, walls } = this.medium
     const choice = (n + uniform()) / this.packets
@@ -105,11 +108,12 @@ export class Launcher {
     const below = index === 0 ? 0 : launchTable.cumulative[index - 1]
     const chance = launchTable.cumulative[index] - below
     const chosen = launch[index]
+    const number = Math.min((choice - below) / chance, 1 - 1e-12)
     const scale = 1 / (chance * this.packets)
     this.from = chosen.kind === 'dust' || chosen.kind === 'ambient' ? chosen.kind : 'star'
     this.atScattering = this.forced && (chosen.kind === 'point-star' || chosen.kind === 'free-star')
     if (chosen.kind === 'dust') {
-      launchFromCell(walk, walls, emittingCell(chosen.cells, uniform), uniform, out)
+      launchFromCell(walk, walls, sampleBin(chosen.cells, 0, number), uniform, out)
       this.weight = chosen.luminosity * scale
     } else if (chosen.kind === 'ambient') {
       if (this.lattice < 0) this.lattice = uniform()
@@ -117,17 +121,16 @@ export class Launcher {
       this.weight = walk.cell < 0 ? 0 : chosen.luminosity * scale * share
     } else if (chosen.kind === 'sphere-star') {
       const [x, y, z] = chosen.at
-      launchFromSurface(walk, x, y, z, chosen.radius, uniform, out)
+      launchFromSurface(walk, x, y, z, chosen.radius, number, uniform, out)
       this.weight = chosen.luminosity * scale
     } else if (chosen.kind === 'free-star') {
       const [x, y, z] = chosen.at
-      directionInOrder(out, Math.min((choice - below) / chance, 1 - 1e-12), uniform)
+      directionInOrder(out, number, uniform)
       walk.startAt(x, y, z, out[0], out[1], out[2])
       this.weight = chosen.luminosity * scale
       if (this.forced) this.weight *= this.way.scatter(walk, this.medium, uniform)
     } else if (this.forced) {
-      const column = Math.min((choice - below) / chance, 1 - 1e-12)
-      this.weight = chosen.removed * scale * firstScattering(walk as SphericalWalk, this.medium, chosen, column, uniform)
+      this.weight = chosen.removed * scale * firstScattering(walk as SphericalWalk, this.medium, chosen, number, uniform)
     } else {
       isotropicDirection(out, uniform(), uniform())
       walk.startAt(0, 0, 0, out[0], out[1], out[2])
