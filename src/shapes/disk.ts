@@ -1,3 +1,4 @@
+import { powerOf } from '../math/power.js'
 import { integrate } from '../math/quadrature.js'
 import { quantileOf } from '../math/quantile.js'
 import type { ShapeSpec } from '../scene/types.js'
@@ -24,9 +25,10 @@ export function disk(spec: DiskSpec): AxialShape {
   const unit = taper ?? at
   const q = taper === undefined ? 0 : 2 + s
   const norm = 1 / Math.sqrt(2 * Math.PI)
-  const height = (R: number) => value * (R / at) ** flaring
+  const [flare, fall] = [powerOf(flaring), powerOf(s)]
+  const height = (R: number) => value * flare(R / at)
   const edge = taper === undefined ? () => 1 : (R: number) => Math.exp(-((R / unit) ** q))
-  const surface = (R: number) => (R / unit) ** s * edge(R)
+  const surface = (R: number) => fall(R / unit) * edge(R)
 
   const relativeDensity = (x: number, y: number, z: number): number => {
     const R = Math.sqrt(x * x + y * y)

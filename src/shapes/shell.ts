@@ -1,3 +1,4 @@
+import { powerOf } from '../math/power.js'
 import { powerIntegral } from './power-integral.js'
 import { noDetails, type SphericalShape } from './shape.js'
 
@@ -8,11 +9,12 @@ export function shell(inner: number, outer: number, slope: number): SphericalSha
     const b = Math.min(to, outer)
     return a < b ? 4 * Math.PI * outer ** 3 * powerIntegral(a / outer, b / outer, slope + 2) : 0
   }
+  const power = powerOf(slope)
   return {
     symmetry: 'spherical',
     relativeDensity: (x, y, z) => {
       const r = Math.sqrt(x * x + y * y + z * z)
-      return r >= inner && r <= outer ? (r / outer) ** slope : 0
+      return r >= inner && r <= outer ? power(r / outer) : 0
     },
     totalMass: massBetween(inner, outer),
     column: outer * powerIntegral(inner / outer, 1, slope),
