@@ -1,5 +1,5 @@
 import { dimensionsOf, isOctree, reachOf } from '../grid/cells.js'
-import { type Octree, smallestSide } from '../grid/octree/octree.js'
+import type { Octree } from '../grid/octree/octree.js'
 import type { IntensityField } from './field.js'
 import { fieldOfPlace, placeProfile } from './place-profile.js'
 import type { PlaceView } from './place-view.js'
@@ -35,7 +35,7 @@ const RINGS_A_DOUBLING = 12
 
 /** Radii from the smallest cube to the corners of all, with 0, cm. */
 function evenRings(octree: Octree): Float64Array {
-  const smallest = smallestSide(octree)
+  const { smallestSide: smallest } = octree
   const reach = reachOf(octree)
   const count = Math.ceil(RINGS_A_DOUBLING * Math.log2(reach / smallest))
   return Float64Array.from({ length: count + 2 }, (_, i) => (i === 0 ? 0 : smallest * (reach / smallest) ** ((i - 1) / count)))

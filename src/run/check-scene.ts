@@ -1,5 +1,4 @@
 import { isOctree, reachOf } from '../grid/cells.js'
-import { smallestSide } from '../grid/octree/octree.js'
 import { buildModel, planCells } from '../model/build-model.js'
 import type { Model } from '../model/model.js'
 import type { AmbientSpec, Scene } from '../scene/types.js'
@@ -109,7 +108,7 @@ export async function checkScene(
     cells: {
       count: cells,
       ...(isOctree(walls)
-        ? { widthAu: walls.side / AU, finestAu: smallestSide(walls) / AU }
+        ? { widthAu: walls.side / AU, finestAu: walls.smallestSide / AU }
         : { radial: walls.r.length - 1, polar: walls.cosTheta.length - 1, azimuthal: walls.phi.length - 1 }),
       reason
     },

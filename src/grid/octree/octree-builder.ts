@@ -7,6 +7,7 @@ const FIRST_CAPACITY = 1024
 export class OctreeBuilder {
   nodes = 1
   cells = 1
+  private deepest = 0
   /** The first child of a node, 0 for a leaf. */
   child = new Int32Array(FIRST_CAPACITY)
   level = new Uint8Array(FIRST_CAPACITY)
@@ -24,6 +25,7 @@ export class OctreeBuilder {
     this.reserve(first + 8)
     const { level, corner } = this
     const half = 2 ** (LEVELS - 1 - level[node])
+    this.deepest = Math.max(this.deepest, level[node] + 1)
     for (let k = 0; k < 8; k++) {
       level[first + k] = level[node] + 1
       for (let a = 0; a < 3; a++) corner[3 * (first + k) + a] = corner[3 * node + a] + ((k >> a) & 1) * half
@@ -42,6 +44,7 @@ export class OctreeBuilder {
     const octree: Octree = {
       origin: new Float64Array(allocate(24)),
       side,
+      smallestSide: side / 2 ** this.deepest,
       families,
       cells,
       records: new Int32Array(allocate(4 * RECORD * families)),

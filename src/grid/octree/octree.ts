@@ -11,6 +11,8 @@ export interface Octree {
   origin: Float64Array
   /** Its side, cm. */
   side: number
+  /** Side of its smallest cells, cm. */
+  smallestSide: number
   families: number
   cells: number
   /** RECORD numbers a family. */
@@ -50,13 +52,6 @@ export function cellCube({ origin, side, records, corners, places }: Octree, cel
 /** Side of a cell, cm. */
 export function cellSide({ side, records, places }: Octree, cell: number): number {
   return (records[RECORD * (places[cell] >> 3) + SIZE] * side) / 2 ** LEVELS
-}
-
-/** Side of the smallest cells, cm. */
-export function smallestSide(octree: Octree): number {
-  let smallest = octree.side
-  for (let cell = 0; cell < octree.cells; cell++) smallest = Math.min(smallest, cellSide(octree, cell))
-  return smallest
 }
 
 /** Volume of every cell, cm3, into `out`. */
