@@ -7,6 +7,8 @@ interface Effort {
   phase?: string
 }
 
+const cubesOf = (cubes: number, finest: number) => `grid: {kind: octree, cells-at-most: ${cubes}, finest: ${finest}}`
+
 const effortOf = ({ packets, precision }: Effort) =>
   packets
     ? `{precision: none, cameras: ${packets}, equilibrium: ${packets}}`
@@ -86,13 +88,32 @@ dust:
     amount: {optical-depth: ${depth}, at: 1 um}
     temperature: ${temperature}
 ${grid ? `grid: {kind: spherical, radial: ${grid[0]}, polar: ${grid[1]}, azimuthal: ${grid[2]}}` : ''}
-${cubes ? `grid: {kind: octree, cells-at-most: ${cubes}, finest: 16}` : ''}
+${cubes ? cubesOf(cubes, 16) : ''}
 effort: ${effortOf(effort)}
 ${
   wavelengths
     ? `spectra: [{name: sed, view: {inclination: ${inclinations[0]} deg}, wavelengths: ${wavelengths > 1 ? `{from: 0.4 um, to: 2 mm, count: ${wavelengths}}` : '[1 um]'}}]`
     : `cameras:\n${inclinations.map(camera).join('\n')}`
 }
+`
+}
+
+/** An envelope of moderate depth about a star whose temperature is solved, in as many cubes as are allowed. */
+export function cubesScene(cubes: number): string {
+  return `title: Bench cubes
+distance: 140 pc
+seed: bench
+sources: [{name: star, temperature: 4500 K, luminosity: 2 Lsun}]
+opacities: {grains: ${dustOf(1)}}
+dust:
+  - name: envelope
+    opacity: grains
+    shape: {kind: shell, inner: 5 au, outer: 1000 au, slope: -1.5}
+    amount: {optical-depth: 2, at: 1 um}
+${cubesOf(cubes, 20)}
+effort: ${effortOf({ precision: '1e-9' })}
+cameras:
+  - {name: c0, view: {inclination: 57 deg}, field: 2100 au, pixels: ${PIXELS}, wavelengths: [1 um], unit: erg/s/cm2/Hz/sr}
 `
 }
 

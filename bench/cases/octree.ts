@@ -1,31 +1,85 @@
-import { growOctree } from '../../src/grid/octree/grow-octree.js'
-import { cellCube, type Octree } from '../../src/grid/octree/octree.js'
+import { isOctree } from '../../src/grid/cells.js'
+import type { Octree } from '../../src/grid/octree/octree.js'
 import { OctreeWalk } from '../../src/grid/octree/octree-walk.js'
-import { allocateShared } from '../../src/math/allocate.js'
-import { makeSamplingTable } from '../../src/math/cdf.js'
 import { stream } from '../../src/math/random.js'
-import { makeShape } from '../../src/shapes/make-shape.js'
-import type { Shape } from '../../src/shapes/shape.js'
-import type { ScatterMedium } from '../../src/transport/scatter-medium.js'
+import { buildModel, planCells } from '../../src/model/build-model.js'
+import type { Model } from '../../src/model/model.js'
+import { parseScene } from '../../src/scene/read.js'
+import { divide } from '../../src/solve/batches.js'
+import { dustLight } from '../../src/solve/dust-light.js'
+import { givenTemperatures } from '../../src/solve/dust-temperatures.js'
+import { setRows } from '../../src/solve/equilibrium.js'
+import { equilibriumSetup } from '../../src/solve/equilibrium-medium.js'
+import { addTo } from '../../src/solve/group-sums.js'
+import { scatterMedium } from '../../src/solve/scatter-medium.js'
+import { MET } from '../../src/solve/scattering.js'
+import { firstGuess } from '../../src/solve/temperatures.js'
+import { propagateEnergy } from '../../src/transport/equilibrium.js'
+import { tallyTowards } from '../../src/transport/towards.js'
 import { type BenchCase, interleaved, type Measure } from '../case.js'
-import { PacketPool } from '../packet-pool.js'
+import { cubesScene } from '../scenes.js'
 import { slopeOf } from '../slope.js'
 
 const REPETITIONS = 3
 const SIZES = [1e4, 1e5, 1e6, 1e7]
 const RAYS = 30_000
-/** About a batch of the program. */
-const PACKETS = 8000
-const OPTICAL_DEPTH = 2
-const ALBEDO = 0.6
-const TO_OBSERVER = Float64Array.of(Math.sin(1), 0, Math.cos(1))
+/** Packets of a run, unless as many cells ask for more. */
+const PACKETS = 1e6
+/** um */
+const WAVELENGTH = 1e-4
+const OBSERVERS = { directions: Float64Array.of(Math.sin(1), 0, Math.cos(1)), places: [] }
 
-/** Processor time of rays from places where dust is, in any direction, to the outside. */
-function walkRays(shape: Shape, octree: Octree, seed: string): { nanoseconds: number; crossings: number } {
+/** A model in cubes, and batches of its packets as a run plays them, each until its tally is added to those before. */
+interface Crowd {
+  cells: number
+  octree: Octree
+  model: Model
+  growingSeconds: number
+  /** In a batch. */
+  packets: number
+  scatter: (seed: string) => void
+  heat: (seed: string) => void
+}
+
+/** Processor time, s. */
+function secondsOf(work: () => void): number {
+  const started = process.cpuUsage()
+  work()
+  const { user, system } = process.cpuUsage(started)
+  return (user + system) / 1e6
+}
+
+function makeCrowd(size: number): Crowd {
+  const scene = parseScene(cubesScene(size), 'bench.yaml')
+  let plan = undefined as ReturnType<typeof planCells> | undefined
+  const growingSeconds = secondsOf(() => {
+    plan = planCells(scene)
+  })
+  const model = buildModel(scene, plan)
+  const { cells, walls } = model
+  if (!isOctree(walls)) throw new Error('the scene asks for cubes')
+  const scattering = scatterMedium(model, dustLight(model, givenTemperatures(model), WAVELENGTH))
+  const setup = equilibriumSetup(model)
+  setRows(setup, firstGuess(model, setup))
+  const { packets } = divide(Math.max(PACKETS, MET * cells), cells, 1)
+  const [light, heat] = [new Float64Array(cells), new Float64Array(cells)]
+  return {
+    cells,
+    octree: walls,
+    model,
+    growingSeconds,
+    packets,
+    scatter: (seed) => addTo(light, tallyTowards(scattering, OBSERVERS, packets, stream(seed)), packets),
+    heat: (seed) => addTo(heat, propagateEnergy(setup.medium, packets, stream(seed)).absorbed, packets)
+  }
+}
+
+/** Rays from places where dust is, in any direction, to the outside; returns how many walls one crosses. */
+function walkRays({ octree, model }: Crowd, seed: string): number {
+  const { shape } = model.components[0]
   const walk = new OctreeWalk(octree)
   const uniform = stream(seed)
   const place = new Float64Array(3)
-  const started = process.cpuUsage()
   let crossings = 0
   for (let n = 0; n < RAYS; n++) {
     shape.place(uniform(), uniform(), uniform(), place)
@@ -38,81 +92,50 @@ function walkRays(shape: Shape, octree: Octree, seed: string): { nanoseconds: nu
       crossings++
     } while (walk.cross() >= 0)
   }
-  const { user, system } = process.cpuUsage(started)
-  return { nanoseconds: (1000 * (user + system)) / RAYS, crossings: crossings / RAYS }
+  return crossings / RAYS
 }
 
-/** A star in scattering dust of moderate depth, with the density at the middle of each cell. */
-function litMedium(shape: Shape, octree: Octree): ScatterMedium {
-  const { cells } = octree
-  const extinction = new Float64Array(allocateShared(8 * cells))
-  const scattering = new Float64Array(allocateShared(8 * cells))
-  const cube = new Float64Array(4)
-  for (let cell = 0; cell < cells; cell++) {
-    const [x, y, z] = cellCube(octree, cell, cube)
-    extinction[cell] = (OPTICAL_DEPTH / shape.column) * shape.relativeDensity(x, y, z)
-    scattering[cell] = ALBEDO * extinction[cell]
-  }
-  return {
-    walls: octree,
-    cells,
-    extinction,
-    asymmetry: Float64Array.of(0.5),
-    scattering,
-    launch: [{ kind: 'free-star', luminosity: 1, at: [0, 0, 0] }],
-    launchTable: makeSamplingTable(Float64Array.of(1), 1, 1),
-    spheres: new Float64Array()
-  }
+const KINDS = {
+  scatter: ['packets of scattered light', 'ns/packet'],
+  heat: ['packets of temperatures', 'ns/packet'],
+  rays: ['rays', 'ns/ray'],
+  crossings: ['walls that a ray crosses', '']
+} as const
+
+function time(crowd: Crowd, seed: string): Record<keyof typeof KINDS, number> {
+  let crossings = 0
+  const raySeconds = secondsOf(() => {
+    crossings = walkRays(crowd, seed)
+  })
+  const each = (play: (seed: string) => void) => (1e9 * secondsOf(() => play(seed))) / crowd.packets
+  return { scatter: each(crowd.scatter), heat: each(crowd.heat), rays: (1e9 * raySeconds) / RAYS, crossings }
 }
 
 async function octreeCost(): Promise<Measure[]> {
-  const shape = makeShape({ kind: 'shell', inner: 5, outer: 1000, slope: -1.5 })
-  // Without tolerance cells are divided until the number is reached.
-  const layers = [{ shape, scale: 1e8 / shape.column, extinction: 1 }]
-  const grown = SIZES.map((cells) => {
-    const started = process.cpuUsage()
-    const octree = growOctree(
-      { layers, stars: [[0, 0, 0]], width: 0, finest: 25, cellsAtMost: cells, tolerance: 0 },
-      allocateShared
-    )
-    const seconds = process.cpuUsage(started).user / 1e6
-    return { octree, seconds, bytes: process.memoryUsage().rss, pool: new PacketPool(litMedium(shape, octree), TO_OBSERVER) }
-  })
-  for (const { octree, pool } of grown) {
-    walkRays(shape, octree, 'warm-up')
-    await pool.warmUp(PACKETS)
-  }
-  const times = await interleaved(
-    REPETITIONS,
-    ...grown.map(({ octree, pool }) => async (i: number) => {
-      const { cpuSeconds } = await pool.play(PACKETS, `octree/${i}`)
-      const { nanoseconds, crossings } = walkRays(shape, octree, `octree/${i}`)
-      return { packets: (1e9 * cpuSeconds) / PACKETS, rays: nanoseconds, crossings }
-    })
-  )
-  for (const { pool } of grown) await pool.close()
-  const largest = grown[grown.length - 1]
-  const each = (key: 'packets' | 'rays', unit: string): Measure[] =>
-    times.map((side, k) => ({ quantity: `${grown[k].octree.cells} cells`, unit, values: side.map((time) => time[key]) }))
-  const powers = (['packets', 'rays', 'crossings'] as const).map(
-    (key): Measure => ({
-      quantity: `${key} as a power of the number of cells`,
+  const crowds = SIZES.map(makeCrowd)
+  const bytes = process.memoryUsage().rss
+  for (let i = 0; i < 10; i++) time(crowds[0], `warm-up/${i}`)
+  const times = await interleaved(REPETITIONS, ...crowds.map((crowd) => (i: number) => time(crowd, `octree/${i}`)))
+  const kinds = Object.entries(KINDS) as [keyof typeof KINDS, (typeof KINDS)[keyof typeof KINDS]][]
+  const measures = kinds.flatMap(([kind, [name, unit]]): Measure[] => [
+    ...times.map((side, k) => ({ quantity: `${name}, ${crowds[k].cells} cells`, unit, values: side.map((each) => each[kind]) })),
+    {
+      quantity: `${name} as a power of the number of cells`,
       unit: '',
       values: times[0].map((_, i) =>
         slopeOf(
-          grown.map(({ octree }) => octree.cells),
-          times.map((side) => side[i][key])
+          crowds.map(({ cells }) => cells),
+          times.map((side) => side[i][kind])
         )
       ),
       target: { atMost: 1 / 3 }
-    })
-  )
+    }
+  ])
+  const { cells, growingSeconds } = crowds[crowds.length - 1]
   return [
-    ...each('packets', 'ns/packet'),
-    ...each('rays', 'ns/ray'),
-    ...powers,
-    { quantity: `growing ${largest.octree.cells} cells`, unit: 's', values: [largest.seconds] },
-    { quantity: `memory with ${largest.octree.cells} cells`, unit: 'GB', values: [largest.bytes / 1e9], target: { atMost: 3 } }
+    ...measures,
+    { quantity: `growing ${cells} cells`, unit: 's', values: [growingSeconds] },
+    { quantity: 'memory with all of these', unit: 'GB', values: [bytes / 1e9], target: { atMost: 3 } }
   ]
 }
 
@@ -121,7 +144,7 @@ export const octree: BenchCase[] = [
   {
     name: 'octree',
     about:
-      'scattered packets, and rays from the dust to the outside, through octrees of an envelope against the number of cells, processor time',
+      'packets with their share of a batch, and rays from the dust to the outside, through octrees of an envelope against the number of cells, processor time',
     native: false,
     run: octreeCost
   }
