@@ -21,7 +21,9 @@ import { firstGuess, temperaturesFrom } from './temperatures.js'
 import { ThickCells } from './thick-cells.js'
 import { WalkWriter } from './walk-levels.js'
 
+/** Packets of the first round, more where each stands for so many cells. */
 const FIRST_ROUND = 16_384
+const CELLS_A_PACKET = 64
 /** Rounds of a run that spends exactly the packets given: each twice the one before, the last about half of all. */
 const FIXED_ROUNDS = 6
 /** Growth of rounds: at least, at most, and beyond what the error asks for. */
@@ -74,7 +76,7 @@ export async function solveEquilibrium(
   const state = (ledger.take(equilibriumPiece) as EquilibriumState | undefined) ?? {
     rounds: [],
     spent: 0,
-    size: sizes ? sizes[0] : Math.min(FIRST_ROUND, most),
+    size: sizes ? sizes[0] : Math.min(Math.max(FIRST_ROUND, model.cells / CELLS_A_PACKET), most),
     present: firstGuess(model, setup),
     done: 0,
     tally: emptyTally(setup)
