@@ -1,15 +1,17 @@
 import { GROUPS } from '../solve/groups.js'
 import type { IntensityField } from './field.js'
-import { integratePatch, type PatchIntegral } from './patch.js'
+import { integratePatch, type PatchIntegral, type Sector } from './patch.js'
 import { RadialProfile } from './profile.js'
 import { FIRST_GROUP, Q, RAY_VALUES } from './ray-values.js'
-import { ringsBetween } from './rings.js'
+import { cutInTwo, ringsBetween } from './rings.js'
 import { unflattened } from './unflattened.js'
 
 /** Parts of half a circle in which an aperture is first divided. */
 const PARTS = 8
 /** Rings beyond the outermost wall, where a flattened picture has none: as many for each doubling. */
-const RINGS_A_DOUBLING = 2
+const RINGS_A_DOUBLING = 4
+/** Golden ratio - 1: its multiples modulo 1 are spread evenly. */
+const GOLDEN = 0.618_033_988_749_895
 
 /**
  * Integral of an intensity field over a disk of `radius` (cm, may be infinite). `mirrored`: the right half of the picture
@@ -24,10 +26,7 @@ export function integrateAperture(field: IntensityField, radius: number, toleran
   const beyond = Math.ceil(RINGS_A_DOUBLING * Math.log2(1 / flattening))
   for (let i = 1; i <= beyond; i++) rings.push(edge * flattening ** (-i / beyond))
   const patch = {
-    parts: Array.from({ length: mirrored ? PARTS : 2 * PARTS }, (_, i) => {
-      const start = -Math.PI / 2 + (i * Math.PI) / PARTS
-      return rings.slice(1).map((to, k) => ({ from: rings[k], to, start, end: start + Math.PI / PARTS }))
-    }).flat(),
+    parts: sectors(rings, mirrored),
     outline: (cos: number, sin: number, out: Float64Array) => {
       out[0] = 0
       out[1] = edge / Math.hypot(cos, flattening * sin)
@@ -43,4 +42,24 @@ export function integrateAperture(field: IntensityField, radius: number, toleran
     integral.value.fill(0, RAY_VALUES + GROUPS)
   }
   return integral
+}
+
+/**
+ * Rings cut into sectors, each ring turned by another angle, and each sector in two: a disk looks much alike in all its rings, and rays
+ * at the same angles in each would all be wrong by the same amount.
+ */
+function sectors(rings: number[], mirrored: boolean): Sector[] {
+  const count = mirrored ? PARTS : 2 * PARTS
+  const width = Math.PI / PARTS
+  return rings.slice(1).flatMap((to, k) => {
+    const from = rings[k]
+    const turn = ((k * GOLDEN) % 1) - 0.5
+    return Array.from({ length: count }, (_, i) => {
+      // The ends of a half circle stay where they are.
+      const first = mirrored && i === 0 ? 0 : i + turn
+      const last = mirrored && i === count - 1 ? count : i + 1 + turn
+      const [start, end] = [first, last].map((at) => at * width - Math.PI / 2)
+      return cutInTwo({ from, to, start, end }, k * count + i)
+    }).flat()
+  })
 }

@@ -7,6 +7,8 @@ import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray-values.js'
 const MOST_REGIONS = 20_000
 /** Share of the sum of all differences between four rays and the middle one that counts as error, beside their scatter. */
 const DOUBT = 0.1
+/** Four rays of a field with steps are wrong by 1 / sqrt(5) of what they differ from a fifth. */
+const WRONG = 0.5
 /** Share of the differences inside a region that is doubted even when its sum seems right. */
 const DISTRUST = 0.02
 /** The error need not be smaller than this share of the photon noise. */
@@ -41,7 +43,7 @@ interface Region extends Sector {
   middle: number
   /** Its four rays less the middle one. */
   difference: number
-  /** Size of that difference, and a share of what the rays differ among themselves. */
+  /** Shares of the size of that difference and of what the rays differ among themselves. */
   doubt: number
   /** It varies more inwards than round. */
   inwards: boolean
@@ -99,7 +101,7 @@ export function integratePatch(field: IntensityField, patch: Patch, tolerance: n
     }
     const [a, b, c, d] = lights
     const difference = value[EMITTED] + value[SCATTERED] - middle
-    const doubt = Math.abs(difference) + DISTRUST * (Math.max(a, b, c, d) - Math.min(a, b, c, d))
+    const doubt = WRONG * Math.abs(difference) + DISTRUST * (Math.max(a, b, c, d) - Math.min(a, b, c, d))
     const inwards = Math.abs(a - b) + Math.abs(c - d) >= Math.abs(a - c) + Math.abs(b - d)
     return { from, to, start, end, value, middle, difference, doubt, inwards }
   }

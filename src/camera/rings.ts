@@ -1,7 +1,14 @@
 import type { IntensityField } from './field.js'
+import type { Sector } from './patch.js'
 
-/** Where the inner rim shows within its own radius: at a slant, one sees it from within. Shares of that radius. */
-const CAVITY = [1 / 2, 3 / 4, 7 / 8, 15 / 16, 31 / 32]
+/**
+ * Where the inner rim shows within its own radius: at a slant one sees it from within, and from the pole a thin edge of it, which high
+ * cells make. Shares of that radius.
+ */
+const CAVITY = Array.from({ length: 10 }, (_, k) => 1 - 2 ** -(k + 1))
+
+/** Inverse of the plastic number: its multiples modulo 1 are spread evenly. */
+const PLASTIC = 0.754_877_666_246_693
 
 /** Radii between `from` and `to` (cm) at which a patch is first divided: projected walls of the cells. */
 export function ringsBetween({ radii, innermost }: IntensityField, from: number, to: number): number[] {
@@ -10,6 +17,19 @@ export function ringsBetween({ radii, innermost }: IntensityField, from: number,
   for (const wall of radii.subarray(firstAbove(radii, from), firstAbove(radii, to))) if (wall < to) rings.push(wall)
   rings.push(to)
   return rings
+}
+
+/**
+ * The inner and the outer part of a sector, cut at another share of its area for each `index`: a disk seen from the pole looks alike in all
+ * directions, and rays at the same places between two walls would all be wrong by the same amount.
+ */
+export function cutInTwo({ from, to, start, end }: Sector, index: number): Sector[] {
+  const share = 0.3 + 0.4 * ((index * PLASTIC) % 1)
+  const half = Math.sqrt(from * from + share * (to * to - from * from))
+  return [
+    { from, to: half, start, end },
+    { from: half, to, start, end }
+  ]
 }
 
 /** Number of cell walls between two radii. */

@@ -24,6 +24,35 @@ describe('integrateAperture', () => {
     expect(error).toBeLessThan(1e-3 * value[EMITTED])
   })
 
+  it.each([
+    // Mean over a ring of light that rises by half from wall to wall, with a step between them; mean over the angles of two bright layers.
+    { seen: 'from the pole', flattening: 1, of: (ring: number) => 1 + 0.5 * ((ring + 0.37) % 1), mean: 1.25 },
+    {
+      seen: 'from the side',
+      flattening: 0.1,
+      of: (_: number, angle: number) => Math.exp(-(((angle - 0.5) / 0.07) ** 2)),
+      mean: (0.07 * Math.sqrt(Math.PI)) / (Math.PI / 2)
+    }
+  ])('is not wrong by as much in every ring of a disk that looks alike in all, $seen', ({ flattening, of, mean }) => {
+    const ratio = 1.08
+    const count = 90
+    const radii = Array.from({ length: count + 1 }, (_, i) => ratio ** i)
+    const field = fieldOf(
+      (x, y) => {
+        const r = Math.hypot(x, y / flattening)
+        const angle = Math.atan2(Math.abs(y) / flattening, Math.abs(x))
+        return r < 1 || r >= radii[count] ? 0 : of(Math.log(r) / Math.log(ratio), angle) / (r * r)
+      },
+      radii,
+      flattening
+    )
+    const exact = flattening * 2 * Math.PI * count * Math.log(ratio) * mean
+    const { value, error } = integrateAperture(field, Number.POSITIVE_INFINITY, 1e-3, true)
+    // Steps and layers that no ray of a first division sees cost 0.6 and 0.7 %; with rays alike in all rings they cost 4.4 and 1.4 %.
+    expect(Math.abs(value[EMITTED] - exact)).toBeLessThan(0.01 * exact)
+    expect(error).toBeLessThan(1e-3 * exact)
+  })
+
   it('needs few rays for a smooth disk, whatever its tilt', () => {
     // Plummer's law: I = (1 + r^2)^-2, flux pi R^2 / (1 + R^2) within R, times the axis ratio.
     const radii = Array.from({ length: 100 }, (_, i) => 0.01 * 1.1 ** i)
@@ -44,7 +73,8 @@ describe('integrateAperture', () => {
       }
       const { value } = integrateAperture(counted, Number.POSITIVE_INFINITY, 1e-3, true)
       expect(Math.abs(value[EMITTED] / ((flattening * Math.PI * edge * edge) / (1 + edge * edge)) - 1)).toBeLessThan(1e-3)
-      expect(rays).toBeLessThan(5000)
+      // The first division, by walls, and no more.
+      expect(rays).toBeLessThan(9100)
     }
   })
 
