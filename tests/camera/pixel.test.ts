@@ -33,6 +33,27 @@ describe('PixelIntegrator', () => {
     expect(integrator.mean[EMITTED] / (sum / 40_000)).toBeCloseTo(1, 3)
   })
 
+  it('tells how wrong it is about edges aslant, pixel by pixel', () => {
+    // Stripes a third of a pixel wide, 2 % apart in light: steps smaller than what makes it divide.
+    const stripes = (x: number, y: number) => 1 + 0.02 * ((Math.sin(12.9898 * Math.floor(2.6 * x + 1.1 * y)) * 43758.5453) % 1)
+    const integrator = new PixelIntegrator(
+      fieldOf((x, y) => stripes(x, y), [1, 1000]),
+      1e-2,
+      0
+    )
+    const pulls = Array.from({ length: 400 }, (_, p) => {
+      const [left, low] = [50 + (p % 20), 50 + Math.floor(p / 20)]
+      integrator.integrate(left + 0.5, low + 0.5, 1, 1)
+      let sum = 0
+      for (let i = 0; i < 60; i++) for (let j = 0; j < 60; j++) sum += stripes(left + (i + 0.5) / 60, low + (j + 0.5) / 60)
+      return Math.abs(integrator.mean[EMITTED] - sum / 3600) / integrator.error
+    })
+    const within = (sigmas: number) => pulls.filter((pull) => !(pull > sigmas)).length / pulls.length
+    expect(within(1)).toBeGreaterThan(0.68)
+    // The error is known from two numbers alone, so its tail is longer than that of a Gaussian.
+    expect(within(3)).toBeGreaterThan(0.92)
+  })
+
   it('sees a dark lane that hides all five rays of a pixel', () => {
     const lane = (y: number) => -Math.expm1(-((y / 0.35) ** 8))
     const field = fieldOf((_, y) => lane(y), [1, 100])
