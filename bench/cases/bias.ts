@@ -18,13 +18,15 @@ interface Trial {
   peelPackets: number
   /** Pixels that symmetry makes equal to the one in column i and row j. */
   alike: (i: number, j: number) => [number, number][]
+  /** The picture depends on the distance from its middle alone. */
+  round: boolean
   /** Most median deviation of a pixel. */
   atMost: number
 }
 
 /** Pictures of scattered and emitted light with little noise against long peel-off, which knows no cells in its light. */
 async function compareMeans(trial: Trial, { native, folder }: Tools): Promise<Measure[]> {
-  const { scene, halfAu, inclination, peelPackets, alike, atMost } = trial
+  const { scene, halfAu, inclination, peelPackets, alike, round, atMost } = trial
   const medium = join(folder, 'medium.bin')
   const images = join(folder, 'peeled.bin')
   writeMedium(medium, lightDust(scene))
@@ -38,10 +40,15 @@ async function compareMeans(trial: Trial, { native, folder }: Tools): Promise<Me
   const fluxes = peeled.map((group) => sum(group) / unit)
   const flux = fluxes.reduce((total, value) => total + value, 0) / fluxes.length
   const bright = brightPixels(ours)
-  const deviations = bright.map((pixel) => {
-    const mean = peeled.reduce((total, group) => total + group[pixel], 0) / peeled.length
-    return { deviation: ours[pixel] / (mean / unit) - 1, sigma: standardError(peeled.map((group) => group[pixel])) / mean }
-  })
+  const deviationsOf = (parts: number[][]) =>
+    parts.map((pixels) => {
+      const lights = peeled.map((group) => pixels.reduce((total, pixel) => total + group[pixel], 0) / unit)
+      const mean = lights.reduce((total, value) => total + value, 0) / lights.length
+      const light = pixels.reduce((total, pixel) => total + ours[pixel], 0)
+      return { deviation: light / mean - 1, sigma: standardError(lights) / mean }
+    })
+  const deviations = deviationsOf(bright.map((pixel) => [pixel]))
+  const ofRings = round ? deviationsOf(ringsOf(bright)) : []
   return [
     { quantity: 'flux over that of peel-off, less 1', unit: '', values: [sum(ours) / flux - 1] },
     { quantity: 'its 1 sigma', unit: '', values: [standardError(fluxes) / flux] },
@@ -57,8 +64,30 @@ async function compareMeans(trial: Trial, { native, folder }: Tools): Promise<Me
       quantity: 'what that noise alone would make',
       unit: '',
       values: [0.6745 * median(deviations.map(({ sigma }) => sigma))]
-    }
+    },
+    ...(round
+      ? [
+          {
+            quantity: 'deviation of a ring of pixels, median, noise of peel-off included',
+            unit: '',
+            values: [median(ofRings.map(({ deviation }) => Math.abs(deviation)))],
+            target: { atMost }
+          },
+          { quantity: 'what that noise alone would make', unit: '', values: [0.6745 * median(ofRings.map(({ sigma }) => sigma))] }
+        ]
+      : [])
   ]
+}
+
+/** Pixels at about the same distance from the middle, to half a pixel: what cells do to them is alike. */
+function ringsOf(pixels: number[]): number[][] {
+  const middle = 0.5 * (PIXELS - 1)
+  const rings = new Map<number, number[]>()
+  for (const pixel of pixels) {
+    const distance = Math.round(Math.hypot((pixel % PIXELS) - middle, Math.floor(pixel / PIXELS) - middle))
+    rings.set(distance, [...(rings.get(distance) ?? []), pixel])
+  }
+  return [...rings.values()]
 }
 
 /** erg/s/Hz/sr in a pixel for an intensity of 1 erg/s/cm2/Hz/sr. */
@@ -99,6 +128,7 @@ const shells: Trial[] = [
   inclination: 0,
   peelPackets,
   alike: eightfold,
+  round: true,
   atMost
 }))
 
@@ -110,6 +140,7 @@ const disk: Trial = {
   inclination: 60,
   peelPackets: 4e6,
   alike: sides,
+  round: false,
   atMost: 0.02
 }
 
