@@ -3,8 +3,6 @@ import type { Ledger, Piece } from '../workers/ledger.js'
 import type { Task, WorkerPool } from '../workers/pool.js'
 import { runKept } from '../workers/run-kept.js'
 import { type Batches, groupOf } from './batches.js'
-import type { EquilibriumSetup } from './equilibrium-medium.js'
-import { GROUPS } from './groups.js'
 
 export interface EquilibriumRound {
   packets: number
@@ -37,7 +35,7 @@ export interface EquilibriumState {
 
 /** Sums over the batches of a round. */
 export interface RoundTally {
-  /** GROUPS arrays of components x cells. */
+  /** Arrays of components x cells: of the groups that have had a batch, GROUPS at the end. */
   absorbed: Float64Array[]
   emitted: number
   escaped: number
@@ -75,12 +73,12 @@ export function playRound(
   return runKept({ tasks, done: state.done, take, name: equilibriumPiece, piece: () => pieceOf(state) }, pool, ledger, stop)
 }
 
-export function emptyTally({ medium }: EquilibriumSetup): RoundTally {
-  const absorbed = Array.from({ length: GROUPS }, () => new Float64Array(medium.components * medium.cells))
-  return { absorbed, emitted: 0, escaped: 0, returned: 0, kept: 0, interactions: 0 }
+export function emptyTally(): RoundTally {
+  return { absorbed: [], emitted: 0, escaped: 0, returned: 0, kept: 0, interactions: 0 }
 }
 
 function addTally(sum: RoundTally, group: number, tally: EquilibriumTally): void {
+  sum.absorbed[group] ??= new Float64Array(tally.absorbed.length)
   const absorbed = sum.absorbed[group]
   for (let i = 0; i < absorbed.length; i++) absorbed[i] += tally.absorbed[i]
   sum.emitted += tally.emitted

@@ -79,7 +79,7 @@ export async function solveEquilibrium(
     size: sizes ? sizes[0] : Math.min(Math.max(FIRST_ROUND, model.cells / CELLS_A_PACKET), most),
     present: firstGuess(model, setup),
     done: 0,
-    tally: emptyTally(setup)
+    tally: emptyTally()
   }
   for (;;) {
     setRows(setup, state.present)
@@ -106,7 +106,7 @@ export async function solveEquilibrium(
     state.size = sizes ? sizes[state.rounds.length] : Math.min(wanted, most - state.spent)
     state.present = dust.temperature
     state.done = 0
-    state.tally = emptyTally(setup)
+    state.tally = emptyTally()
     ledger.offer(equilibriumPiece, () => pieceOf(state), true)
   }
 }
