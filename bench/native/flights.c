@@ -1,4 +1,4 @@
-// The twin of the packet loop in one dimension (src/transport/flights.ts), operation for operation: a point star
+// The twin of the packet loop in one dimension (src/kernels/flights), operation for operation: a point star
 // in spherical shells, the same random numbers, the same tally.
 // flights MEDIUM TALLY SEED PACKETS WARMUP: writes the tally as doubles and prints the times of the loop.
 #include "clock.h"

@@ -6,6 +6,9 @@ const rest = reciprocal.map((value) => LN2 + Math.log(value))
 /** 2^(i - 31) */
 const power = Float64Array.from({ length: 33 }, (_, i) => 2 ** (i - 31))
 
+/** All of them one behind the other, for a loop that has memory of its own. */
+export const logTables = Float64Array.of(...reciprocal, ...rest, ...power)
+
 /**
  * -ln(u): an exponential deviate of mean 1 from a number of `stream`, which is u = (k + 1/2) / 2^32 with k a whole number. The zeros
  * that k begins with give the power of two, a table and a series the rest, to 4e-12 (the step of u is 2e-10). Inline in a loop,

@@ -12,3 +12,16 @@ export function stream(seedText: string): () => number {
   const next = seedrandom.alea(seedText)
   return () => next() + HALF_STEP
 }
+
+/** What Alea keeps between numbers: t = 2091639 s0 + c 2^-32 gives the next c, its whole part, and s2, the rest. */
+export interface StreamState {
+  s0: number
+  s1: number
+  s2: number
+  c: number
+}
+
+/** Where `stream` begins, for a loop that draws its numbers itself. */
+export function streamState(seedText: string): StreamState {
+  return seedrandom.alea(seedText, { state: true }).state() as unknown as StreamState
+}

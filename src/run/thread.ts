@@ -55,7 +55,7 @@ serve({
   },
   equilibrium: ({ packets, seed }: Batch, shared: Shared) =>
     propagateEnergy(shared('equilibrium') as EquilibriumMedium, packets, stream(seed)),
-  flights: ({ packets, seed }: Batch, shared: Shared) => tallyFlights(scattering(shared), packets, stream(seed)),
+  flights: ({ packets, seed }: Batch, shared: Shared) => tallyFlights(scattering(shared), packets, seed),
   towards: ({ packets, seed, observers }: Batch & { observers: Observers }, shared: Shared) =>
     tallyTowards(scattering(shared), observers, packets, stream(seed)),
   'stokes-flights': ({ packets, seed }: Batch, shared: Shared) => tallyStokesFlights(scattering(shared), packets, stream(seed)),

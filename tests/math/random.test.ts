@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { stream } from '../../src/math/random.js'
+import { stream, streamState } from '../../src/math/random.js'
 import { chiSquareSigmas } from '../support/chi-square.js'
 
 /** Sigmas of the counts of pairs (a, b) of uniforms in side x side equal squares. */
@@ -68,4 +68,17 @@ describe('stream', () => {
     const [a, b] = [stream('1/dust/0/8'), stream('1/dust/0/9')]
     expect(Math.abs(pairSigmas(500_000, 50, () => [a(), b()]))).toBeLessThan(4)
   })
+})
+
+it('a stream goes on from its state by the recurrence of Alea', () => {
+  const uniform = stream('state')
+  let { s0, s1, s2, c } = streamState('state')
+  for (let i = 0; i < 1000; i++) {
+    const t = 2091639 * s0 + c * 2 ** -32
+    c = Math.floor(t)
+    s0 = s1
+    s1 = s2
+    s2 = t - c
+    expect(s2 + 2 ** -33).toBe(uniform())
+  }
 })

@@ -1,18 +1,6 @@
 import { expect, it } from 'vitest'
 import { stream } from '../../src/math/random.js'
-import { cosAzimuth, directionInOrder } from '../../src/transport/direction.js'
-
-it('cosAzimuth is the cosine of the library and stays within 1', () => {
-  let worst = 0
-  let most = 0
-  for (let i = 0; i <= 10_000; i++) {
-    const cosine = cosAzimuth(i / 10_000)
-    worst = Math.max(worst, Math.abs(cosine + Math.cos((Math.PI * i) / 10_000)))
-    most = Math.max(most, Math.abs(cosine))
-  }
-  expect(worst).toBeLessThan(3e-11)
-  expect(most).toBeLessThanOrEqual(1)
-})
+import { directionInOrder } from '../../src/transport/direction.js'
 
 it('directionInOrder turns even numbers into even directions, one beside the other', () => {
   const COUNT = 4096
