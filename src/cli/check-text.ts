@@ -103,6 +103,6 @@ function cost({ memoryBytes, workers, precision, forecast: { seconds, complete }
   const aim = precision === null ? 'exactly the packets given' : `a precision of ${Number((100 * precision).toPrecision(2))} %`
   const time = complete
     ? `about ${duration(seconds.all)} (${parts})`
-    : `long, more than ${duration(seconds.all)}: a trial of a few packets did not come to its end`
+    : `long${seconds.all < 1 ? '' : `, more than ${duration(seconds.all)}`}: a trial of a few packets did not come to its end`
   return [`  ${workers} workers, ${aim}`, `  time ${time}`, `  memory about ${shown(memoryBytes / 1e6, 2)} MB`]
 }
