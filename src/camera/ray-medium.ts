@@ -3,6 +3,7 @@ import { peakOf, type ScatteringTables } from '../dust/scattering-tables.js'
 import { type Cells, isOctree } from '../grid/cells.js'
 import type { SphericalWalls } from '../grid/geometry.js'
 import { cellCube, type Octree } from '../grid/octree/octree.js'
+import type { Rims } from '../grid/rims.js'
 import { allocateShared } from '../math/allocate.js'
 import type { Model } from '../model/model.js'
 import type { DustLight } from '../solve/dust-light.js'
@@ -14,6 +15,8 @@ import { beamDepth, type StarBeam } from '../solve/star-beams.js'
 export interface RayMedium {
   walls: Cells
   cells: number
+  /** Vertical rims in which all dust ends. All coefficients are means over whole cells. */
+  rims?: Rims
   /** Extinction coefficient, cm-1, by cell. */
   extinction: Float64Array
   /** Thermal emission coefficient, erg/s/cm3/Hz/sr, by cell. */
@@ -65,6 +68,7 @@ export function rayMedium(model: Model, light: DustLight, scattered: ScatteredLi
   return {
     walls: model.walls,
     cells: model.cells,
+    ...(model.rims && { rims: model.rims }),
     extinction: light.extinction,
     emission: light.emission,
     emissionGroups: light.emissionGroups,

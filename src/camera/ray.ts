@@ -9,6 +9,7 @@ import { BEAM_POINT, columnsBetween } from '../solve/star-columns.js'
 import { pathToStar } from '../transport/star-spheres.js'
 import type { RayMedium } from './ray-medium.js'
 import { EMITTED, FIRST_GROUP, POLARISED_VALUES, RAY_VALUES, SCATTERED } from './ray-values.js'
+import { RimCut } from './rim-cut.js'
 import { ScatteredRay } from './scattered-ray.js'
 import { dot, Sight, type View } from './sight.js'
 import { StokesRay } from './stokes-ray.js'
@@ -53,6 +54,7 @@ export class RayIntegrator {
   /** Among cubes, the way to a star nearby. */
   private readonly shadow: OctreeWalk | undefined
   private readonly place = new Float64Array(3)
+  private readonly rimCut: RimCut | undefined
 
   constructor(
     private readonly medium: RayMedium,
@@ -67,6 +69,7 @@ export class RayIntegrator {
     this.shadow = isOctree(medium.walls) ? new OctreeWalk(medium.walls) : undefined
     this.radials = new Float64Array(medium.starlight?.beams.length ?? 0)
     this.scatteredRay = new ScatteredRay(medium, this.stokes)
+    this.rimCut = medium.rims && new RimCut(medium.rims)
   }
 
   /**
@@ -75,7 +78,7 @@ export class RayIntegrator {
    * picture's north, in one dimension to the radius in the picture.
    */
   trace(x: number, y: number, out: Float64Array, withGroups: boolean): void {
-    const { medium, walk, stokes, scatteredRay } = this
+    const { medium, walk, stokes, scatteredRay, rimCut } = this
     const { extinction, emission, emissionGroups, slots, spheres } = medium
     out.fill(0, 0, this.size)
     this.radial = 0
@@ -85,6 +88,7 @@ export class RayIntegrator {
     this.sight.look(x, y)
     if (!this.sight.enter(walk)) return
     scatteredRay.begin(walk.ux, walk.uy, walk.uz)
+    rimCut?.begin(walk)
     const starAt = spheres.length > 0 ? walk.s + pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
     const hasEmissionGroups = withGroups && emissionGroups.length > 0
     const brightest = medium.starlight?.brightest
@@ -100,21 +104,29 @@ export class RayIntegrator {
       let step = walk.toWall()
       atStar = start + step >= starAt
       if (atStar) step = Math.max(0, starAt - start)
-      const chi = extinction[cell]
-      if (chi > 0 && step > 0) {
-        const thickness = chi * step
-        // To 2e-9 where the cell is thin, as most are.
-        const absorbed = thickness < THIN ? thickness * (1 - 0.5 * thickness) : -Math.expm1(-thickness)
-        const weight = (transmission * absorbed) / chi
-        out[EMITTED] += weight * emission[cell]
-        if (hasEmissionGroups) for (let g = 0; g < GROUPS; g++) out[FIRST_GROUP + g] += weight * emissionGroups[cell * GROUPS + g]
-        if (slots > 0) scatteredRay.add(walk, start + 0.5 * step, weight, out, withGroups)
-        if (brightest && brightest[cell] * weight > NEGLIGIBLE * (out[EMITTED] + out[SCATTERED])) {
-          if (stars === 0) out[SCATTERED] += this.firstScatterings(start, step, chi, depth, -1)
-          for (let star = 0; star < stars; star++) out[SCATTERED] += this.firstScatterings(start, step, chi, depth, star)
+      const mean = extinction[cell]
+      if (mean > 0 && step > 0) {
+        const filled = rimCut ? rimCut.rims.filled[cell] : 1
+        const pieces = filled === 1 ? 1 : 2
+        for (let i = 0; i < pieces; i++) {
+          const from = pieces === 1 ? start : Math.max(start, rimCut!.from[i])
+          const path = pieces === 1 ? step : Math.min(start + step, rimCut!.to[i]) - from
+          if (!(path > 0)) continue
+          const thickness = (pieces === 1 ? mean : mean / filled) * path
+          // To 2e-9 where the cell is thin, as most are.
+          const absorbed = thickness < THIN ? thickness * (1 - 0.5 * thickness) : -Math.expm1(-thickness)
+          const weight = (transmission * absorbed) / mean
+          out[EMITTED] += weight * emission[cell]
+          if (hasEmissionGroups)
+            for (let g = 0; g < GROUPS; g++) out[FIRST_GROUP + g] += weight * emissionGroups[cell * GROUPS + g]
+          if (slots > 0) scatteredRay.add(walk, from + 0.5 * path, weight, out, withGroups)
+          if (brightest && brightest[cell] * weight > NEGLIGIBLE * (out[EMITTED] + out[SCATTERED])) {
+            if (stars === 0) out[SCATTERED] += this.firstScatterings(from, path, filled, depth, -1)
+            for (let star = 0; star < stars; star++) out[SCATTERED] += this.firstScatterings(from, path, filled, depth, star)
+          }
+          depth += thickness
+          transmission *= 1 - absorbed
         }
-        depth += thickness
-        transmission *= 1 - absorbed
       }
     } while (!atStar && depth < OPAQUE && walk.cross() >= 0)
     if (!stokes || !('observer' in this.view)) return
@@ -126,14 +138,15 @@ export class RayIntegrator {
   }
 
   /**
-   * Light scattered once between two points of the present cell, dimmed by `depth` and by the cell itself: that of the point stars at
-   * the centre of spherical cells (-1), or of one star among cubes.
+   * Light scattered once between two points of the present cell, `filled` of which holds its dust, dimmed by `depth` and by the cell itself:
+   * that of the point stars at the centre of spherical cells (-1), or of one star among cubes.
    */
-  private firstScatterings(start: number, step: number, chi: number, depth: number, star: number): number {
+  private firstScatterings(start: number, step: number, filled: number, depth: number, star: number): number {
     const { walk, medium } = this
     const { asymmetry, scattering, tables, beams } = medium.starlight!
     const { cells } = medium
     const { cell } = walk
+    const chi = medium.extinction[cell] / filled
     const laws = asymmetry.length
     if (laws === 1 && scattering[cell] === 0) return 0
     const beam = star < 0 ? undefined : beams[star]
@@ -183,16 +196,23 @@ export class RayIntegrator {
       } else {
         for (let law = 0; law < laws; law++) source += scattering[law * cells + cell] * henyeyGreenstein(asymmetry[law], cosine)
       }
-      const fromStar = beam ? this.depthOnBeam(beam, s + passes, r2) : before + chi * (r > rInner ? r - rInner : 0)
+      const lit = filled === 1 ? rInner : Math.max(rInner, this.rimAt(s, r))
+      const fromStar = beam ? this.depthOnBeam(beam, s + passes, r2) : before + chi * (r > lit ? r - lit : 0)
       const dimming = Math.exp(-fromStar - depth - chi * (s - first)) / (steep ? b : r2)
       sum += source * dimming
       radial += polarised * dimming
     }
     const luminosity = beam ? beam.luminosity : medium.starlight!.luminosity
-    const scale = (luminosity / (4 * Math.PI)) * 0.5 * width
+    const scale = (luminosity / (4 * Math.PI)) * 0.5 * (width / filled)
     if (beam) this.radials[star] += radial * scale
     else this.radial += radial * scale
     return sum * scale
+  }
+
+  /** Where the line from the origin to the point at `s` of the ray, at radius r, meets the inner rim, cm. */
+  private rimAt(s: number, r: number): number {
+    const { x0, y0, ux, uy } = this.walk
+    return (this.medium.rims!.inner * r) / Math.hypot(x0 + s * ux, y0 + s * uy)
   }
 
   /** Optical depth from a star among cubes to the point at `s` of the ray, sqrt(r2) from it: from the table, or near the star along the way. */

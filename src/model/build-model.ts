@@ -1,9 +1,10 @@
 import type { GrainOptics } from '../dust/grains/grain-optics.js'
 import { makeOpacityLaw, type OpacityLaw } from '../dust/opacity-law.js'
-import { isOctree, volumesOf } from '../grid/cells.js'
+import { type Cells, isOctree, volumesOf } from '../grid/cells.js'
 import type { DustLayer } from '../grid/dust-layer.js'
 import { cellCount, type SphericalWalls } from '../grid/geometry.js'
 import { placeWalls } from '../grid/place-walls.js'
+import { cutByRims, type Rims } from '../grid/rims.js'
 import { allocateShared } from '../math/allocate.js'
 import { errorAt } from '../scene/error.js'
 import type { DustSpec, Scene } from '../scene/types.js'
@@ -89,7 +90,15 @@ export function buildModel(asked: Scene, plan = planCells(asked)): Model {
     return { spec, law, shape, scale, mass, massBefore, density }
   })
   const volume = volumesOf(walls, new Float64Array(allocateShared(8 * cells)))
-  return { scene, dimensions, reason, walls, cells, volume, components, stars, fields, warnings }
+  const rims = rimsOf(walls, parts)
+  return { scene, dimensions, reason, walls, cells, ...(rims && { rims }), volume, components, stars, fields, warnings }
+}
+
+/** Where all dust of spherical cells ends in vertical rims. */
+function rimsOf(walls: Cells, parts: CellPlan['parts']): Rims | undefined {
+  const ranges = parts.map(({ shape }) => (shape.symmetry === 'axial' ? shape.rims : undefined))
+  if (isOctree(walls) || ranges.length === 0 || ranges.includes(undefined)) return undefined
+  return cutByRims(walls, Math.min(...ranges.map((range) => range![0])), Math.max(...ranges.map((range) => range![1])))
 }
 
 function scaleOf(

@@ -1,5 +1,6 @@
 import type { OpacityLaw } from '../dust/opacity-law.js'
 import type { Cells } from '../grid/cells.js'
+import type { Rims } from '../grid/rims.js'
 import type { AmbientSpec, DustSpec, Scene, StarSpec } from '../scene/types.js'
 import type { Shape } from '../shapes/shape.js'
 import type { AmbientField } from '../sources/ambient.js'
@@ -13,6 +14,8 @@ export interface Model {
   reason: string
   walls: Cells
   cells: number
+  /** Vertical rims in which all dust ends, through spherical cells. */
+  rims?: Rims
   /** cm3 */
   volume: Float64Array
   components: DustComponent[]

@@ -61,6 +61,7 @@ export function disk(spec: DiskSpec): AxialShape {
     sphereEdges: [],
     cylinderEdges: [inner, outer],
     coneEdges: [],
+    rims: [inner, outer],
     aspectRatios: [Math.min(...aspects), Math.max(...aspects)],
     radialStep: 0.2,
     place: (u, v, w, out) => {

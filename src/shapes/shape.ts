@@ -54,6 +54,8 @@ export interface AxialShape extends ShapeBase {
   sphereEdges: number[]
   cylinderEdges: number[]
   coneEdges: number[]
+  /** Distances from the z axis between which all dust lies, where it ends in vertical rims. */
+  rims?: [inner: number, outer: number]
   /** Least and greatest ratio of scale height to radius where the dust matters; absent when it is not flat. */
   aspectRatios?: [number, number]
   /** Longest step in ln r over which the density is smooth. */
