@@ -66,7 +66,7 @@ function energyLines({ energy }: RunRecord): string[] {
   if (!energy) return []
   const share = (value: number) => `${shown((100 * value) / energy.emitted, 4)} %`
   return [
-    `  energy: ${shown(energy.emitted)} erg/s emitted${energy.ambient > 0 ? ` or let in (${share(energy.ambient)} ambient)` : ''}, ${share(energy.escaped)} escaped, ${share(energy.returned)} back to sources, balance ${energy.balance.toExponential(0)}`
+    `  energy: ${shown(energy.emitted)} erg/s emitted${energy.ambient > 0 ? ` or let in (${share(energy.ambient)} ambient)` : ''}, ${share(energy.escaped)} escaped, ${share(energy.returned)} back to sources, balance ${energy.balance === 0 ? 0 : energy.balance.toExponential(0)}`
   ]
 }
 
