@@ -28,7 +28,8 @@ export class WorkerPool {
   /** Busy time of all workers so far, s. */
   cpuSeconds = 0
   private readonly workers: Worker[] = []
-  private readonly idle: Worker[] = []
+  /** Tasks in the hands of each worker. */
+  private readonly hands = new Map<Worker, number>()
   private failure: Error | undefined
   /** Lists of tasks under way, in the order in which they came. */
   private readonly jobs: Job[] = []
@@ -47,7 +48,7 @@ export class WorkerPool {
         if (!this.closing) this.fail(new WorkerFailure(`a worker thread ended unexpectedly (code ${code})`))
       })
       this.workers.push(worker)
-      this.idle.push(worker)
+      this.hands.set(worker, 0)
     }
   }
 
@@ -87,6 +88,7 @@ export class WorkerPool {
       if (stop?.aborted) this.end(job)
       else stop?.addEventListener('abort', end)
       this.feed()
+      this.finishDone()
     })
   }
 
@@ -127,13 +129,35 @@ export class WorkerPool {
 
   private feed(): void {
     for (const job of [...this.jobs]) {
-      while (this.idle.length > 0 && this.mayBegin(job)) {
-        const worker = this.idle.pop() as Worker
+      while (this.mayBegin(job)) {
+        const worker = this.freest()
+        if (!worker) return
+        this.hands.set(worker, this.inHandsOf(worker) + 1)
         const { name, scope = '', input } = job.tasks[job.begun]
         this.post(worker, { kind: 'task', id: job.base + job.begun, name, scope, input })
         job.begun++
         job.inHand++
       }
+    }
+  }
+
+  /**
+   * The worker that has least to do, if it may have another task: one that has one gets the next as long as there are some for all, so
+   * that it need not wait while this thread does something else.
+   */
+  private freest(): Worker | undefined {
+    const worker = this.workers.reduce((best, other) => (this.inHandsOf(other) < this.inHandsOf(best) ? other : best))
+    const left = this.jobs.reduce((sum, { tasks, begun }) => sum + tasks.length - begun, 0)
+    return this.inHandsOf(worker) < (left > this.size ? 2 : 1) ? worker : undefined
+  }
+
+  private inHandsOf(worker: Worker): number {
+    return this.hands.get(worker) as number
+  }
+
+  /** Ends the lists of which nothing is in hand or left. */
+  private finishDone(): void {
+    for (const job of [...this.jobs]) {
       if (job.inHand === 0 && (job.begun === job.tasks.length || job.stop?.aborted)) {
         this.finish(job, () => job.resolve(job.handed))
       }
@@ -146,7 +170,7 @@ export class WorkerPool {
 
   private receive(worker: Worker, message: FromWorker): void {
     if (message.kind === 'ready') return
-    this.idle.push(worker)
+    this.hands.set(worker, this.inHandsOf(worker) - 1)
     const job = this.jobs.find(({ base, tasks }) => message.id >= base && message.id < base + tasks.length)
     if (!job) return
     job.inHand--
@@ -156,6 +180,8 @@ export class WorkerPool {
     }
     this.cpuSeconds += message.cpuSeconds
     job.waiting.set(message.id - job.base, message.output)
+    // Nobody waits while results are taken in.
+    this.feed()
     try {
       while (job.waiting.has(job.handed)) {
         const output = job.waiting.get(job.handed)
@@ -167,6 +193,7 @@ export class WorkerPool {
       return
     }
     this.feed()
+    this.finishDone()
   }
 
   private fail(error: Error): void {
