@@ -11,8 +11,9 @@ import { observeColumns } from './observe-columns.js'
 import { observeDeficit } from './observe-deficit.js'
 import type { Studio } from './observe-wavelength.js'
 import { type RunProgress, Stopped } from './progress.js'
+import type { Shown } from './shown.js'
 import { addTime, type PhaseTime, stopwatch } from './stopwatch.js'
-import { emptyProducts, putValues, valuesOf, type WantedValues } from './wanted.js'
+import { emptyProducts, putValues, valuesOf, type Wanted, type WantedValues } from './wanted.js'
 import type { Crew } from './with-crew.js'
 
 /** Packets at one observed wavelength (cm), and the relative error they left in scattered light; NaN when none was asked for. */
@@ -49,6 +50,8 @@ export interface LightOptions {
   stop?: AbortSignal
   /** Default: they are played. */
   packetsFrom?: PacketSource
+  /** Told of every picture and spectrum that is done. */
+  onShown: (shown: Shown) => void
 }
 
 /** Images and spectra, a few wavelengths at a time, from the ledger as far as it goes. Throws WorkerFailure or Stopped. */
@@ -57,7 +60,7 @@ export async function lightStage(
   dust: DustTemperatures,
   options: LightOptions
 ): Promise<LightStage> {
-  const { estimator, onProgress, stop } = options
+  const { estimator, onProgress, stop, onShown } = options
   const play: PacketSource = (request, index, progress) =>
     playRounds(request, pool, ledger, lightPieces(index).packets, progress, stop)
   const packetsFrom = options.packetsFrom ?? play
@@ -66,9 +69,10 @@ export async function lightStage(
   const lightPackets: LightPackets[] = new Array(wavelengths.length)
   /** The first wavelength that is not done: progress is that of this one. */
   let front = 0
-  const done = (index: number, packets: LightPackets) => {
+  const done = (index: number, packets: LightPackets, wanted: Wanted[]) => {
     lightPackets[index] = packets
     while (lightPackets[front]) front++
+    for (const want of wanted) if (want.kind === 'camera') onShown({ kind: 'camera', images: want.images, k: want.k })
   }
   const clock = stopwatch()
   let time: PhaseTime = { wallSeconds: 0, cpuSeconds: 0 }
@@ -78,7 +82,7 @@ export async function lightStage(
     const before = ledger.take(names.done) as DoneLight | undefined
     if (before) {
       putValues(wanted, before.values)
-      done(index, { wavelength, packets: before.packets, error: before.error })
+      done(index, { wavelength, packets: before.packets, error: before.error }, wanted)
       time = addTime(time, before.time)
       return
     }
@@ -108,17 +112,25 @@ export async function lightStage(
     // What has passed since the one before was done.
     const took = clock()
     time = addTime(time, took)
-    done(index, { wavelength, packets, error })
+    done(index, { wavelength, packets, error }, wanted)
     // Pieces must not pile up faster than they are written.
     await ledger.settle()
     ledger.keep(names.done, { values: valuesOf(wanted), packets, error, time: took } satisfies DoneLight)
     ledger.forget(names.packets)
     ledger.forget(names.pictures)
   }
-  await inLanes(wavelengths, wavelengthsAbreast(model, pool.size), observe)
   const onDone: Studio['onDone'] = (observer, rows, of) =>
     onProgress({ stage: 'columns', observer, done: rows, of, round: 0, error: Number.NaN })
-  if (!(await observeColumns(model, images, { pool, onDone, stop }))) throw new Stopped()
+  const lookThrough = async () => {
+    if (!(await observeColumns(model, images, { pool, onDone, stop }))) throw new Stopped()
+    for (const each of images) onShown({ kind: 'column', images: each })
+  }
+  // Threads that wait for the last rays of one thing go on with another.
+  const columns = lookThrough()
+  columns.catch(() => {})
+  await inLanes(wavelengths, wavelengthsAbreast(model, pool.size), observe)
+  await columns
+  for (const result of spectra) onShown({ kind: 'spectrum', result })
   time = addTime(time, clock())
   return { images, spectra, lightPackets, time }
 }

@@ -5,6 +5,7 @@ import { SceneError } from '../scene/error.js'
 import type { Scene } from '../scene/types.js'
 import { needsEquilibrium } from '../solve/equilibrium.js'
 import { type DustStage, dustPiece } from './dust-stage.js'
+import { Easel } from './easel.js'
 import { finishedRecord } from './finished-record.js'
 import { gatherParts, packetsOfParts } from './gather-parts.js'
 import type { PacketSource } from './light-stage.js'
@@ -94,14 +95,23 @@ export async function joinInFolder(
 
 async function finish(scene: Scene, options: RunOptions, folder: RunFolder, packetsFrom?: PacketSource): Promise<FolderOutcome> {
   const started = new Date().toISOString()
-  const result = await runScene(scene, options, packetsFrom)
-  await sweep(folder.path)
-  // Drawing needs large packages; other commands start faster without them.
-  const { writeProducts } = await import('./products.js')
   const { workers, estimator, dataOnly = false, cellEdges = false } = options
-  const record = await writeProducts(result, folder, { started, workers, estimator, dataOnly, cellEdges })
-  await rm(join(folder.path, stateName), { recursive: true, force: true })
-  return { kind: 'products', record, already: false }
+  const easel = new Easel(scene, cellEdges)
+  try {
+    const result = await runScene(scene, options, {
+      ...(packetsFrom && { packetsFrom }),
+      ...(!dataOnly && { onShown: (shown) => easel.begin(shown) })
+    })
+    await sweep(folder.path)
+    const drawn = await easel.all()
+    // Drawing needs large packages; other commands start faster without them.
+    const { writeProducts } = await import('./products.js')
+    const record = await writeProducts(result, folder, { started, workers, estimator, dataOnly, cellEdges }, drawn)
+    await rm(join(folder.path, stateName), { recursive: true, force: true })
+    return { kind: 'products', record, already: false }
+  } finally {
+    easel.end()
+  }
 }
 
 /** Lets `work` fail with what it fails with when nothing is kept or it cannot be gone on with, otherwise with Interrupted. */
