@@ -4,10 +4,12 @@ import { observedWavelengths } from '../model/wavelengths.js'
 import { hasAmbient } from '../scene/has-ambient.js'
 import { isFromPlace } from '../scene/is-from-place.js'
 import { isPolarised } from '../scene/is-polarised.js'
+import { needsEquilibrium } from '../solve/equilibrium.js'
 import { GROUPS } from '../solve/groups.js'
 import { MOST_NEAR } from '../solve/near-cells.js'
 import { ANGLE_NODES, POLAR_NODES } from '../solve/scattered-light.js'
 import { NEAR_DIRECTIONS } from '../transport/observers.js'
+import { LEVEL_SIZE } from '../transport/random-walk.js'
 import { AZIMUTH_BINS, FLIGHT_BINS } from '../transport/scatter-medium.js'
 
 /** The program before it does anything, and each worker; measured with Node 20 on Linux, to a third or so. */
@@ -17,6 +19,9 @@ const WORKER_BYTES = 40e6
 const WAITING = 4
 /** Wavelength bins times rows of a table of dust emission, with its guide. */
 const TABLE_BYTES = 5e6
+
+/** Levels of the random walk in a cell, of which thick ones have up to ten and thin ones none. */
+const WALK_LEVELS = 3
 
 /** Wavelengths that are under way at a time hold no more than this together, bytes, unless one alone does. */
 const ABREAST_BYTES = 1e9
@@ -39,7 +44,9 @@ export function memoryEstimate(sizes: Sizes, workers: number): MemoryEstimate {
   const components = scene.dust.length
   const { bins, seen, parts } = seenLight(sizes)
   const tally = 8 * Math.max(cells * components, cells * seen * bins * parts + nearValues(sizes))
-  const heat = components * (TABLE_BYTES + cells * 8 * (6 + 2 * GROUPS + GROUPS / 2))
+  const heat = needsEquilibrium(scene)
+    ? components * (TABLE_BYTES + cells * 8 * (6 + 2 * GROUPS + GROUPS / 2)) + 8 * cells * LEVEL_SIZE * WALK_LEVELS
+    : 0
   const light = lightBytes(sizes)
   const sizesOf = scene.cameras.map(({ pixels, wavelengths }) => [pixels[0] * pixels[1], wavelengths.length])
   const values = sizesOf.reduce((sum, [pixels, count]) => sum + pixels * count, 0)

@@ -19,7 +19,8 @@ import { mediumFor } from './observers-of.js'
 import { addStars, directFlux } from './stars-seen.js'
 import { putValues, valuesOf, type Wanted, type WantedValues } from './wanted.js'
 
-const ROWS_A_TASK = 8
+/** Bright rows take long: with few in a task no thread waits long for the last of them. */
+const ROWS_A_TASK = 2
 
 /** Rays to a radius are seen through a mirror where the cells are symmetric about the plane of the observer and the axis. */
 const mirrored = (model: Model) => model.dimensions < 3

@@ -19,7 +19,8 @@ const trial: Trial = {
   complete: false
 }
 let last = performance.now()
-let firstRows = 0
+/** Time for the lower and the upper half of a picture, which are about alike but for what is done once. */
+let halves: [number, number] = [0, 0]
 
 const result = await runScene(scene, { workers: 1, estimator: 'emissivity', tables, onProgress: note })
 noteNoise(result)
@@ -37,11 +38,15 @@ function note({ stage, done, of, observer, index = 0 }: RunProgress): void {
   } else if (observer?.kind === 'spectrum') {
     trial.apertures.seconds += seconds
     trial.apertures.count++
-  } else if (done < of) firstRows = seconds
-  else {
-    trial.pictures.seconds += 2 * seconds
-    trial.pictures.fixedSeconds += Math.max(0, firstRows - seconds)
-    trial.pictures.count++
+  } else {
+    halves[2 * done <= of ? 0 : 1] += seconds
+    if (done === of) {
+      const [lower, upper] = halves
+      trial.pictures.seconds += 2 * upper
+      trial.pictures.fixedSeconds += Math.max(0, lower - upper)
+      trial.pictures.count++
+      halves = [0, 0]
+    }
   }
   parentPort!.postMessage(trial)
 }

@@ -28,7 +28,7 @@ export interface TrialPackets {
 
 /** Packets for the temperatures, and for each wavelength: one first round. */
 export const TRIAL_PACKETS = { dust: 16_384, light: FIRST_ROUND }
-/** Pixels along each side of the picture. Rows go out by eights, so half the picture is the second task. */
+/** Pixels along each side of the picture. */
 export const TRIAL_PIXELS = 16
 /** The least precision asked of a trial: placing rays to better than a tenth of this would take too long. */
 export const TRIAL_PRECISION = 0.05

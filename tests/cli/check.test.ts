@@ -110,10 +110,14 @@ describe('check', () => {
 
   it('expects a time of the right order', async () => {
     const text = sceneWith(['equilibrium: 8000, cameras: 2000', 'equilibrium: 4e5, cameras: 4e5'])
-    const { forecast } = await report(text)
-    const start = performance.now()
-    await motelight(folderWith({ 'scene.yaml': text }), 'run', 'scene.yaml')
-    const ratio = forecast.seconds.all / ((performance.now() - start) / 1000)
+    const timedRun = async () => {
+      const start = performance.now()
+      await motelight(folderWith({ 'scene.yaml': text }), 'run', 'scene.yaml')
+      return (performance.now() - start) / 1000
+    }
+    // Side by side: what else the machine does slows both.
+    const [{ forecast }, seconds] = await Promise.all([report(text), timedRun()])
+    const ratio = forecast.seconds.all / seconds
     expect(ratio).toBeGreaterThan(0.1)
     expect(ratio).toBeLessThan(10)
   })
