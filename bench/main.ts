@@ -46,15 +46,20 @@ if (chosen.length === 0) {
 
 const folder = mkdtempSync(join(tmpdir(), 'motelight-bench-'))
 const rows: Row[] = []
+/** What measuring each case took. */
+const seconds: Record<string, number> = {}
 try {
   const native = compileNative(join(project, 'bench', 'native'), folder)
   if (!native) console.log('No C compiler (gcc): cases against C are left out.')
   for (const { name, about, run, native: needed } of chosen) {
     if (needed && !native) continue
     console.log(`\n${name}: ${about}`)
+    const started = performance.now()
     const found = (await run({ native, folder })).map((measure) => rowOf(name, measure))
     for (const line of tableLines(found)) console.log(line)
     rows.push(...found)
+    seconds[name] = (performance.now() - started) / 1000
+    console.log(`  (${seconds[name].toFixed(0)} s)`)
   }
 } finally {
   rmSync(folder, { recursive: true, force: true })
@@ -64,6 +69,7 @@ const file = join(project, 'out', 'bench.json')
 const machine = { processor: cpus()[0]?.model ?? 'unknown', threads: availableParallelism(), node: process.version }
 writeFileSync(
   file,
-  `${JSON.stringify({ program: 'motelight', version, machine, date: new Date().toISOString(), rows }, null, 2)}\n`
+  `${JSON.stringify({ program: 'motelight', version, machine, date: new Date().toISOString(), seconds, rows }, null, 2)}\n`
 )
-console.log(`\nWritten: ${file}`)
+const all = Object.values(seconds).reduce((sum, each) => sum + each, 0)
+console.log(`\nWritten: ${file} (${(all / 60).toFixed(1)} min)`)

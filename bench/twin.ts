@@ -20,8 +20,17 @@ export class Twin {
   }
 
   play(packets: number, seed: string): Times & { tally: Float64Array } {
-    const times = this.native('flights', this.medium, this.tally, seed, packets, Math.round(packets / 5))
+    const times = this.native(...this.words(packets, seed))
     return { ...times, tally: readDoubles(this.tally) }
+  }
+
+  /** The same without its tally; several twins may play at a time, each with a folder of its own. */
+  start(packets: number, seed: string): Promise<Times> {
+    return this.native.start(...this.words(packets, seed))
+  }
+
+  private words(packets: number, seed: string): [string, ...(string | number)[]] {
+    return ['flights', this.medium, this.tally, seed, packets, Math.round(packets / 5)]
   }
 }
 
