@@ -86,6 +86,12 @@ export function temperatureOf(table: EmissionTable, absorbedPerGram: number): nu
   return Math.exp(lnFirst + (i + t) * lnStep)
 }
 
+/** d ln(cooling) / d ln(T): how steeply the emission of dust rises with its temperature. */
+export function coolingSlope(table: EmissionTable, temperature: number): number {
+  const step = 1.01
+  return Math.log(coolingOf(table, temperature * step) / coolingOf(table, temperature / step)) / (2 * Math.log(step))
+}
+
 /**
  * Row whose emission spectrum belongs to a temperature (K), with a fraction, within [0, rows - 1]. A caller draws the row above
  * with that fraction as its probability, otherwise the row below.

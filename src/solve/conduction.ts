@@ -9,7 +9,9 @@ export interface Conduction {
   /** The cell beyond the wall, and its place among the unknown ones, or -1. */
   neighbour: Int32Array
   other: Int32Array
-  /** Area of the wall over the optical depth between the middles of the two cells, cm2. */
+  /** Optical depth between the middles of the two cells. */
+  between: Float64Array
+  /** Area of the wall over that, cm2. */
   conductance: Float64Array
 }
 
@@ -25,14 +27,17 @@ export function conductances(
   })
   const first = new Int32Array(unknown.length + 1)
   const neighbour: number[] = []
+  const between: number[] = []
   const conductance: number[] = []
   unknown.forEach((cell, k) => {
     const here = extinction(cell)
     forEachWall(walls, cell, (beyond, area, path, pathBeyond) => {
-      const there = extinction(beyond)
+      const there = beyond < 0 ? 0 : extinction(beyond)
       if (!(here > 0 && there > 0)) return
       neighbour.push(beyond)
-      conductance.push(area / (here * path + there * pathBeyond))
+      const depth = here * path + there * pathBeyond
+      between.push(depth)
+      conductance.push(area / depth)
     })
     first[k + 1] = neighbour.length
   })
@@ -40,12 +45,13 @@ export function conductances(
     first,
     neighbour: Int32Array.from(neighbour),
     other: Int32Array.from(neighbour, (cell) => place[cell]),
+    between: Float64Array.from(between),
     conductance: Float64Array.from(conductance)
   }
 }
 
 /**
- * Calls `visit` for every wall that a cell shares with another: that cell, the area (cm2), and the paths (cm) from the middles of the
+ * Calls `visit` for every wall of a cell: the cell beyond, or -1 for none, the area (cm2), and the paths (cm) from the middles of the
  * two cells to the wall. Paths along the radius are such that shells conduct exactly: area x int dr / (area at r).
  */
 export function forEachWall(
@@ -68,22 +74,20 @@ function forEachSphericalWall(
   const index = (ir: number, it: number, ip: number) => (ir === 0 ? 0 : 1 + ((ir - 1) * nt + it) * np + ip)
   const middle = (ir: number) => 0.5 * (r[ir] + r[ir + 1])
   const across = (wall: number, ir: number) => r[wall] * Math.abs(1 - r[wall] / middle(ir))
-  const radial = (wall: number, it: number, ip: number, from: number, to: number) =>
-    visit(
-      index(to, it, ip),
-      r[wall] ** 2 * (cosTheta[it] - cosTheta[it + 1]) * (phi[ip + 1] - phi[ip]),
-      across(wall, from),
-      across(wall, to)
-    )
+  const radial = (wall: number, it: number, ip: number, from: number, to: number) => {
+    const area = r[wall] ** 2 * (cosTheta[it] - cosTheta[it + 1]) * (phi[ip + 1] - phi[ip])
+    if (to < nr) visit(index(to, it, ip), area, across(wall, from), across(wall, to))
+    else visit(-1, area, across(wall, from), 0)
+  }
   if (cell === 0) {
-    if (nr > 1) for (let it = 0; it < nt; it++) for (let ip = 0; ip < np; ip++) radial(1, it, ip, 0, 1)
+    for (let it = 0; it < nt; it++) for (let ip = 0; ip < np; ip++) radial(1, it, ip, 0, 1)
     return
   }
   const ip = (cell - 1) % np
   const it = Math.floor((cell - 1) / np) % nt
   const ir = 1 + Math.floor((cell - 1) / (np * nt))
   radial(ir, it, ip, ir, ir - 1)
-  if (ir < nr - 1) radial(ir + 1, it, ip, ir, ir + 1)
+  radial(ir + 1, it, ip, ir, ir + 1)
   const strip = 0.5 * (r[ir + 1] ** 2 - r[ir] ** 2)
   const theta = (wall: number) => Math.acos(cosTheta[wall])
   const half = (k: number) => 0.5 * middle(ir) * (theta(k + 1) - theta(k))

@@ -4,7 +4,7 @@ import type { Model } from '../model/model.js'
 export interface DustTemperatures {
   /** K; 0 where a component has no dust or does not emit. */
   temperature: Float64Array
-  /** 1 sigma, K; 0 where the temperature is given, NaN where no packet came. */
+  /** 1 sigma, K; 0 where the temperature is given, NaN where no packet came and none of its surroundings tells it. */
   sigma: Float64Array
   /** x GROUPS: relative deviation of each group's absorbed energy from the mean of all; empty when none is solved. */
   deviation: Float32Array

@@ -1,4 +1,4 @@
-import { coolingOf, type EmissionTable, temperatureOf } from '../dust/emission.js'
+import { coolingSlope, temperatureOf } from '../dust/emission.js'
 import { isOctree, reachOf, sphericalOf } from '../grid/cells.js'
 import { cellCube } from '../grid/octree/octree.js'
 import type { Model } from '../model/model.js'
@@ -110,12 +110,6 @@ export function temperaturesFrom(
   return dust
 }
 
-/** d ln(cooling) / d ln(T): how steeply the emission of dust rises with its temperature. */
-function coolingSlope(table: EmissionTable, temperature: number): number {
-  const step = 1.01
-  return Math.log(coolingOf(table, temperature * step) / coolingOf(table, temperature / step)) / (2 * Math.log(step))
-}
-
 /** The cell on the other side of the midplane. */
 function mirrorCell({ walls }: Model, cell: number): number {
   if (cell === 0) return 0
@@ -138,7 +132,7 @@ function fillEmpty(model: Model, temperature: Float64Array, sigma: Float64Array,
     for (const i of empty) {
       const near: number[] = []
       forEachWall(walls, i, (beyond) => near.push(beyond))
-      const known = near.map((k) => temperature[start + k]).filter((value) => value > 0)
+      const known = near.map((k) => (k < 0 ? 0 : temperature[start + k])).filter((value) => value > 0)
       if (known.length > 0) found.push([i, (known.reduce((sum, value) => sum + value ** 4, 0) / known.length) ** 0.25])
     }
     if (found.length === 0) break

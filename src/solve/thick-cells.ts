@@ -1,3 +1,4 @@
+import { rowOf } from '../dust/emission.js'
 import { planckNuDerivative } from '../dust/planck.js'
 import { isOctree } from '../grid/cells.js'
 import { cubeVolumes } from '../grid/octree/octree.js'
@@ -46,11 +47,14 @@ export class ThickCells {
   /** Rosseland mean of a cell at a temperature (K), cm-1; 0 without dust. */
   meanExtinction(cell: number, temperature: number): number {
     const { bins } = this.setup.medium
-    const { lnFirst, lnStep, rows } = this.setup.tables[0]
-    const row = Math.min(rows - 1, Math.max(0, Math.round((Math.log(temperature) - lnFirst) / lnStep)))
+    const [table] = this.setup.tables
+    const position = Math.min(rowOf(table, temperature), table.rows - 1.001)
+    const low = Math.floor(position) * bins
+    const above = position % 1
     this.extinctionOf(cell, this.extinction)
     let inverse = 0
-    for (let k = 0; k < bins; k++) inverse += this.ofFlux[row * bins + k] / this.extinction[k]
+    for (let k = 0; k < bins; k++)
+      inverse += ((1 - above) * this.ofFlux[low + k] + above * this.ofFlux[low + bins + k]) / this.extinction[k]
     return 1 / inverse
   }
 

@@ -77,6 +77,27 @@ describe('dust in a bath of blackbody radiation', () => {
     expect(Math.abs(flux.total[0] - flux.deficit![0])).toBeLessThan(4.5 * flux.sigma[0] + 1e-3 * flux.deficit![0])
   })
 
+  // Few packets come to most cells and none to some: what diffuses there counts. 3 sigma and more: 1 chance in 100 each, for cells of one
+  // radius move together.
+  it.each([
+    [100, '3e5'],
+    [1000, '6e5']
+  ])('has its temperature in every cell of a ball of optical depth %d', async (depth, packets) => {
+    const { model, dust } = await runText(`
+distance: 100 pc
+sources: [{name: sky, kind: ambient, spectrum: {blackbody: ${bath} K}}]
+opacities:
+  grey: {law: power, reference: {wavelength: 100 um, absorption: 10 cm2/g}, slope: 0, scattering: {albedo: 0.5, asymmetry: 0.4}}
+dust: [{name: ball, opacity: grey, shape: {kind: ball, radius: 100 au}, amount: {optical-depth: ${depth}, at: 100 um}}]
+grid: {kind: spherical, radial: 12}
+effort: {precision: none, equilibrium: ${packets}}
+`)
+    for (let cell = 0; cell < model.cells; cell++) {
+      expect(Math.abs(dust.temperature[cell] / bath - 1), `cell ${cell}`).toBeLessThan(0.003)
+      expect(dust.sigma[cell], `cell ${cell}`).toBeLessThan(0.001 * bath)
+    }
+  })
+
   it.each(['peel', 'exit'] as const)('is not seen by %s either', async (estimator) => {
     const { spectra } = await runText(sceneOf(shell, 1, '5e4', 'kind: auto', coal), { estimator })
     const { total, deficit, sigma } = spectra[0]

@@ -1,7 +1,7 @@
 import { CHILD, cellSide, NEIGHBOUR, type Octree, OUTSIDE, RECORD } from './octree.js'
 
 /**
- * Calls `visit` for every wall that a cell shares with another: that cell, the area (cm2), and the paths (cm) from the middles of the
+ * Calls `visit` for every wall of a cell: the cell beyond, or -1 for none, the area (cm2), and the paths (cm) from the middles of the
  * two cells to the wall.
  */
 export function forEachCubeWall(
@@ -34,6 +34,7 @@ export function forEachCubeWall(
     }
     const beyond = records[RECORD * family + NEIGHBOUR + face]
     if (beyond >= 0) descend(beyond, across, face ^ 1)
-    else if (beyond !== OUTSIDE) descend((-2 - beyond) >> 3, (-2 - beyond) & 7, face ^ 1)
+    else if (beyond === OUTSIDE) visit(-1, own * own, 0.5 * own, 0)
+    else descend((-2 - beyond) >> 3, (-2 - beyond) & 7, face ^ 1)
   }
 }
