@@ -9,35 +9,34 @@ export interface Conduction {
   /** The cell beyond the wall, and its place among the unknown ones, or -1. */
   neighbour: Int32Array
   other: Int32Array
+  /** Area of the wall, cm2, and paths from the middles of the two cells to it, cm. */
+  area: Float64Array
+  path: Float64Array
+  pathBeyond: Float64Array
   /** Optical depth between the middles of the two cells. */
   between: Float64Array
-  /** Area of the wall over that, cm2. */
+  /** Area of the wall over that, cm2; 0 where nothing is conducted. */
   conductance: Float64Array
 }
 
-/** `extinction` gives the Rosseland mean of a cell, cm-1, 0 where there is no dust that conducts. */
-export function conductances(
-  { walls, cells }: Pick<Model, 'walls' | 'cells'>,
-  unknown: number[],
-  extinction: (cell: number) => number
-): Conduction {
+/** The walls of cells, which conduct nothing yet. */
+export function wallsOf({ walls, cells }: Pick<Model, 'walls' | 'cells'>, unknown: number[]): Conduction {
   const place = new Int32Array(cells).fill(-1)
   unknown.forEach((cell, k) => {
     place[cell] = k
   })
   const first = new Int32Array(unknown.length + 1)
   const neighbour: number[] = []
-  const between: number[] = []
-  const conductance: number[] = []
+  const area: number[] = []
+  const path: number[] = []
+  const pathBeyond: number[] = []
   unknown.forEach((cell, k) => {
-    const here = extinction(cell)
-    forEachWall(walls, cell, (beyond, area, path, pathBeyond) => {
-      const there = beyond < 0 ? 0 : extinction(beyond)
-      if (!(here > 0 && there > 0)) return
+    forEachWall(walls, cell, (beyond, size, near, far) => {
+      if (beyond < 0) return
       neighbour.push(beyond)
-      const depth = here * path + there * pathBeyond
-      between.push(depth)
-      conductance.push(area / depth)
+      area.push(size)
+      path.push(near)
+      pathBeyond.push(far)
     })
     first[k + 1] = neighbour.length
   })
@@ -45,9 +44,25 @@ export function conductances(
     first,
     neighbour: Int32Array.from(neighbour),
     other: Int32Array.from(neighbour, (cell) => place[cell]),
-    between: Float64Array.from(between),
-    conductance: Float64Array.from(conductance)
+    area: Float64Array.from(area),
+    path: Float64Array.from(path),
+    pathBeyond: Float64Array.from(pathBeyond),
+    between: new Float64Array(area.length),
+    conductance: new Float64Array(area.length)
   }
+}
+
+/** Sets what the walls conduct. `extinction` by cell: the Rosseland mean, cm-1, 0 where there is no dust that conducts. */
+export function setConductances(conduction: Conduction, unknown: number[], extinction: Float64Array): void {
+  const { first, neighbour, area, path, pathBeyond, between, conductance } = conduction
+  unknown.forEach((cell, k) => {
+    const here = extinction[cell]
+    for (let e = first[k]; e < first[k + 1]; e++) {
+      const there = extinction[neighbour[e]]
+      between[e] = here * path[e] + there * pathBeyond[e]
+      conductance[e] = here > 0 && there > 0 ? area[e] / between[e] : 0
+    }
+  })
 }
 
 /**

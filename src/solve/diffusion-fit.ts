@@ -1,5 +1,5 @@
 import type { Model } from '../model/model.js'
-import { type Conduction, conductances } from './conduction.js'
+import { type Conduction, setConductances, wallsOf } from './conduction.js'
 import { type DiffusionFit, solveFit } from './solve-fit.js'
 
 /** Changes of mean free paths and weights with temperature are followed by so many solutions, or until no temperature moves by CLOSE. */
@@ -46,14 +46,12 @@ export function fitByDiffusion(
   const guess = Float64Array.from(unknown, (cell) => measured[cell])
   // The first solution is smooth: the gradients of noise are no gradients.
   let weight = new Float64Array(unknown.length)
+  const conduction = wallsOf(model, unknown)
+  const involved = new Set([...unknown, ...conduction.neighbour])
+  const extinction = new Float64Array(model.cells)
   for (let pass = 1; ; pass++) {
-    const found = new Map<number, number>()
-    const extinction = (cell: number) => {
-      const value = found.get(cell) ?? meanExtinction(cell, temperature[cell])
-      found.set(cell, value)
-      return value
-    }
-    const conduction = conductances(model, unknown, extinction)
+    for (const cell of involved) extinction[cell] = meanExtinction(cell, temperature[cell])
+    setConductances(conduction, unknown, extinction)
     const fit = { conduction, unknown, weight }
     solveFit(fit, measured, guess, RESIDUAL)
     let moved = 0
