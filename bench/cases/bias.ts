@@ -118,7 +118,7 @@ const eightfold = (i: number, j: number): [number, number][] => [
 const shells: Trial[] = [
   { depth: 0.1, peelPackets: 3e6, packets: 3e5, atMost: 0.01 },
   { depth: 1, peelPackets: 4e6, packets: 1e6, atMost: 0.01 },
-  { depth: 10, peelPackets: 2e6, packets: 2e6, atMost: 0.01 },
+  { depth: 10, peelPackets: 8e6, packets: 2e6, atMost: 0.01 },
   { depth: 100, peelPackets: 4e6, packets: 2e6, atMost: 0.02, glow: 300 }
 ].map(({ depth, peelPackets, packets, atMost, glow }) => ({
   name: `bias-shell-${depth}`,
