@@ -125,8 +125,10 @@ export class SphericalWalk extends StraightWalk {
     if (ir > 0) {
       if (this.nt > 1) {
         const g = this.uz * b2 - this.z0 * s
-        if (g !== 0) {
-          let up = g > 0
+        // At the extremum, where every ray from a place on the axis begins, cos(theta) falls from a highest and rises from a lowest one.
+        const extremum = g === 0 && b2 > 0 && this.z0 !== 0
+        if (g !== 0 || extremum) {
+          let up = extremum ? this.z0 < 0 : g > 0
           let cone = this.coneAhead(up)
           // Past an extremum that does not reach the cone, the ray turns to the other one.
           if (cone === Number.POSITIVE_INFINITY && (up ? this.z0 > 0 : this.z0 < 0)) {
@@ -281,7 +283,9 @@ export class SphericalWalk extends StraightWalk {
       this.it = low
     } else this.it = 0
     if (this.np > 1) {
-      let azimuth = Math.atan2(y, x)
+      // All azimuths meet on the axis: what lies ahead there is in the direction of the ray.
+      const onAxis = x === 0 && y === 0
+      let azimuth = onAxis ? Math.atan2(this.uy, this.ux) : Math.atan2(y, x)
       if (azimuth < 0) azimuth += 2 * Math.PI
       let low = 0
       let high = this.np

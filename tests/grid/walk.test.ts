@@ -127,6 +127,51 @@ describe('SphericalWalk', () => {
     }
   })
 
+  it('begins in the right cell on the axis, in the midplane, on walls and at the origin', () => {
+    for (const [name, grid] of kinds) {
+      const walk = new SphericalWalk(grid)
+      const outer = grid.r[grid.r.length - 1]
+      const uniform = stream('starts')
+      let [misplaced, steps] = [0, 0]
+      for (let n = 0; n < 2000; n++) {
+        const wall = grid.r[Math.floor(uniform() * (grid.r.length - 1))]
+        const radius = n % 2 ? wall : outer * uniform()
+        const azimuth = grid.phi[Math.floor(uniform() * (grid.phi.length - 1))]
+        // On the axis, on a wall of azimuth in the midplane, along y, anywhere on a radial wall.
+        const start = [
+          [0, 0, n % 8 < 4 ? radius : -radius],
+          [radius * Math.cos(azimuth), radius * Math.sin(azimuth), 0],
+          [0, radius, 0],
+          direction(uniform).map((component) => component * radius)
+        ][n % 4]
+        // Some rays lie in the midplane or in a plane with the axis.
+        const [vx, vy, vz] = direction(uniform)
+        const u = n % 5 === 0 ? [vx, vy, 0] : n % 5 === 1 ? [vx, 0, vz] : [vx, vy, vz]
+        const norm = Math.hypot(...u)
+        const [ux, uy, uz] = u.map((component) => component / norm)
+        walk.startAt(start[0], start[1], start[2], ux, uy, uz)
+        let path = 0
+        do {
+          const cell = walk.cell
+          const step = walk.toWall()
+          path += step
+          const s = walk.s + 0.5 * step
+          const middle = [walk.x0 + s * ux, walk.y0 + s * uy, walk.z0 + s * uz]
+          // What runs in a wall is in either cell.
+          const inWall = Math.abs(middle[2]) < 1e-9 * outer || Math.abs(middle[1]) < 1e-9 * outer
+          if (step < 1e-9 * outer || inWall) continue
+          if (brute(grid, middle[0], middle[1], middle[2]) !== cell) misplaced++
+          steps++
+        } while (walk.cross() >= 0)
+        const along = start[0] * ux + start[1] * uy + start[2] * uz
+        const b2 = start.reduce((sum, component) => sum + component * component, 0) - along * along
+        expect(Math.abs(path - (Math.sqrt(outer * outer - b2) - along)), name).toBeLessThan(1e-9 * outer)
+      }
+      expect(misplaced, name).toBe(0)
+      expect(steps).toBeGreaterThan(1000)
+    }
+  })
+
   it('sums cell volumes to the sphere', () => {
     fc.assert(
       fc.property(
