@@ -112,7 +112,7 @@ export class RayIntegrator {
           const from = pieces === 1 ? start : Math.max(start, rimCut!.from[i])
           const path = pieces === 1 ? step : Math.min(start + step, rimCut!.to[i]) - from
           if (!(path > 0)) continue
-          const thickness = (pieces === 1 ? mean : mean / filled) * path
+          const thickness = pieces === 1 ? mean * walk.weighed(path) : (mean / filled) * path
           // To 2e-9 where the cell is thin, as most are.
           const absorbed = thickness < THIN ? thickness * (1 - 0.5 * thickness) : -Math.expm1(-thickness)
           const weight = (transmission * absorbed) / mean
@@ -157,7 +157,13 @@ export class RayIntegrator {
     let passes = 0
     let before = 0
     let rInner = 0
+    let begin = start
+    let end = start + step
     if (beam) {
+      walk.trim(step)
+      begin = walk.begin
+      end = walk.end
+      if (!(end > begin)) return 0
       const [x, y, z] = beam.at
       passes = x * walk.ux + y * walk.uy + z * walk.uz
       b2 = walk.b2 + x * x + y * y + z * z - 2 * (x * walk.x0 + y * walk.y0 + z * walk.z0) - passes * passes
@@ -168,15 +174,19 @@ export class RayIntegrator {
       rInner = sphericalOf(medium.walls).r[ir]
       if (before + depth > OPAQUE) return 0
     }
-    const first = start - passes
-    const last = first + step
+    const first = begin - passes
+    const last = end - passes
+    const length = end - begin
     const nearest2 = first < 0 && last > 0 ? b2 : b2 + Math.min(first * first, last * last)
-    const steep = step * step > STEEP * STEEP * nearest2
+    const steep = length * length > STEEP * STEEP * nearest2
     // Across a large part of the distance to the star the sum is over alpha, with s = b tan(alpha) and ds / r^2 = d(alpha) / b.
     const b = Math.sqrt(b2)
     const from = steep ? Math.atan2(first, b) : first
     const range = (steep ? Math.atan2(last, b) : last) - from
-    const pieces = Math.min(MOST_PIECES, Math.ceil(Math.max(steep ? range / ANGLE_STEP : 1, (chi * step) / DEPTH_STEP)))
+    const pieces = Math.min(
+      MOST_PIECES,
+      Math.ceil(Math.max(steep ? range / ANGLE_STEP : 1, (chi * length * walk.density(0.5 * (begin + end))) / DEPTH_STEP))
+    )
     const width = range / pieces
     let sum = 0
     let radial = 0
@@ -198,7 +208,8 @@ export class RayIntegrator {
       }
       const lit = filled === 1 ? rInner : Math.max(rInner, this.rimAt(s, r))
       const fromStar = beam ? this.depthOnBeam(beam, s + passes, r2) : before + chi * (r > lit ? r - lit : 0)
-      const dimming = Math.exp(-fromStar - depth - chi * (s - first)) / (steep ? b : r2)
+      const passed = (s - first) * walk.density(0.5 * (begin + s + passes))
+      const dimming = (walk.density(s + passes) * Math.exp(-fromStar - depth - chi * passed)) / (steep ? b : r2)
       sum += source * dimming
       radial += polarised * dimming
     }
@@ -224,7 +235,7 @@ export class RayIntegrator {
     const z = walk.z0 + s * walk.uz
     const side = walk.within(x, y, z, place)
     const { cell } = walk
-    if (r2 < NEAR * NEAR * side * side)
+    if (r2 < NEAR * NEAR * side * side || walk.atEdge())
       return columnsBetween(this.shadow!, medium.extinction, ONE, medium.spheres, x, y, z, cell, beam.at, place)
     const u = 0.5 + (0.5 / BEAM_POINT) * place[0]
     const v = 0.5 + (0.5 / BEAM_POINT) * place[1]

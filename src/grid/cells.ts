@@ -1,6 +1,7 @@
 import { cellVolumes, type SphericalWalls } from './geometry.js'
 import { cellCube, cubeVolumes, type Octree } from './octree/octree.js'
 import { OctreeWalk } from './octree/octree-walk.js'
+import { densityIn, mostIn } from './octree/profile.js'
 import { SphericalWalk } from './walk.js'
 
 /** Cells of either kind. A model has one kind: all loops of its threads meet walks of one class. */
@@ -48,11 +49,16 @@ export function volumesOf(cells: Cells, out: Float64Array): Float64Array {
 
 const cube = new Float64Array(4)
 
-/** A point drawn evenly in the volume of a cell, cm, three numbers into `out`. */
+/** A point drawn in a cell as the dust lies there, cm, three numbers into `out`. */
 export function drawInCell(cells: Cells, cell: number, uniform: () => number, out: Float64Array): void {
   if (isOctree(cells)) {
     cellCube(cells, cell, cube)
-    for (let a = 0; a < 3; a++) out[a] = cube[a] + (uniform() - 0.5) * cube[3]
+    const { cuts } = cells
+    const profile = cells.profiles[cell]
+    const most = mostIn(profile, cuts)
+    do for (let a = 0; a < 3; a++) out[a] = uniform() - 0.5
+    while (uniform() * most > densityIn(profile, cuts, out[0], out[1], out[2]))
+    for (let a = 0; a < 3; a++) out[a] = cube[a] + out[a] * cube[3]
     return
   }
   const { r, cosTheta, phi } = cells

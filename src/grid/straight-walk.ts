@@ -17,6 +17,21 @@ export abstract class StraightWalk {
   cell = 0
   /** Where the next wall stands on the path, set by `toWall`. */
   sWall = 0
+  /** Between which paths dust is met, set by `trim`. */
+  begin = 0
+  end = 0
+
+  /** Density at a path between `begin` and `end` over its mean in the present cell. */
+  abstract density(s: number): number
+
+  /** Finds `begin` and `end` of what dust is on the next `step`, cm, of the path, within the cell. */
+  abstract trim(step: number): void
+
+  /** Length at the mean density of the cell that holds as much as the next `step` of the path, cm: what optical depths are made of. */
+  abstract weighed(step: number): number
+
+  /** The step that holds as much as a length at the mean density, cm; no longer than that to the wall found by `toWall`. */
+  abstract stepOf(weighed: number): number
 
   get x(): number {
     return this.x0 + this.s * this.ux

@@ -163,6 +163,23 @@ export class SphericalWalk extends StraightWalk {
     return next - s
   }
 
+  density(): number {
+    return 1
+  }
+
+  trim(step: number): void {
+    this.begin = this.s
+    this.end = this.s + step
+  }
+
+  weighed(step: number): number {
+    return step
+  }
+
+  stepOf(weighed: number): number {
+    return weighed
+  }
+
   /** Distance from a point of the present cell to its nearest wall, cm. */
   clearance(x: number, y: number, z: number): number {
     const { ir, r2 } = this

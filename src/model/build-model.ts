@@ -18,12 +18,13 @@ import { hollowed, withFirstRadii } from './inner-radii.js'
 import { layCubes, reasonForCubes } from './lay-cubes.js'
 import type { DustComponent, Model } from './model.js'
 import { octreeDensities } from './octree-density.js'
+import { fitProfiles } from './octree-profiles.js'
 import { offCentre } from './off-centre.js'
 import { mattering } from './wavelengths.js'
 
 /** Cells laid about the dust of a scene, before anything as large as their number is allocated. */
 export interface CellPlan extends Pick<Model, 'scene' | 'dimensions' | 'reason' | 'walls' | 'cells' | 'stars' | 'fields'> {
-  parts: { spec: DustSpec; law: OpacityLaw; shape: Shape; scale: number }[]
+  parts: (DustLayer & { spec: DustSpec; law: OpacityLaw })[]
 }
 
 /** Lays the cells of a scene; `tables`: optics of grains by the name of the opacity, where they are known. Throws SceneError where the scene asks for what cannot be. */
@@ -49,28 +50,24 @@ function layCells(asked: Scene, laws: OpacityLaw[]): CellPlan {
   const scene = withFirstRadii(asked, laws)
   const stars = scene.sources.flatMap((spec) => (spec.kind === 'star' ? [{ spec, spectrum: starSpectrum(spec) }] : []))
   const fields = scene.sources.flatMap((spec) => (spec.kind === 'ambient' ? [{ spec, spectrum: ambientField(spec) }] : []))
+  const wavelengths = mattering(scene, stars, fields)
   const parts = scene.dust.map((spec, index) => {
     const law = laws[index]
     const scale = scaleOf(scene, spec, index, plainShape(spec.shape), law.absorption, law.scattering)
-    return { spec, law, shape: shapeOf(scene, spec, index), scale }
+    const extinction = Math.max(...wavelengths.map((wavelength) => law.absorption(wavelength) + law.scattering(wavelength)))
+    return { spec, law, shape: shapeOf(scene, spec, index), scale, extinction }
   })
   const dimensions = chooseDimensions(
     scene,
     parts.map(({ shape }) => shape)
   )
-  const wavelengths = mattering(scene, stars, fields)
-  const layers: DustLayer[] = parts.map(({ shape, scale, law }) => ({
-    shape,
-    scale,
-    extinction: Math.max(...wavelengths.map((wavelength) => law.absorption(wavelength) + law.scattering(wavelength)))
-  }))
   const common = { scene, stars, fields, parts }
-  const why = layers.length > 0 ? reasonForCubes(scene, dimensions) : undefined
+  const why = parts.length > 0 ? reasonForCubes(scene, dimensions) : undefined
   if (why) {
-    const walls = layCubes(scene, layers)
+    const walls = layCubes(scene, parts)
     return { ...common, dimensions: 3, reason: `cubes of an octree, because ${why}`, walls, cells: walls.cells }
   }
-  const walls = shareWalls(layers.length > 0 ? placeWalls({ ...scene.grid, layers, dimensions }) : emptyWalls(scene))
+  const walls = shareWalls(parts.length > 0 ? placeWalls({ ...scene.grid, layers: parts, dimensions }) : emptyWalls(scene))
   return { ...common, dimensions, reason: reasonFor(scene, dimensions), walls, cells: cellCount(walls) }
 }
 
@@ -89,6 +86,7 @@ export function buildModel(asked: Scene, plan = planCells(asked)): Model {
     const massBefore = spec.hollow === undefined ? mass : scale * makeShape(spec.shape, spec).totalMass
     return { spec, law, shape, scale, mass, massBefore, density }
   })
+  if (isOctree(walls)) fitProfiles(walls, parts)
   const volume = volumesOf(walls, new Float64Array(allocateShared(8 * cells)))
   const rims = rimsOf(walls, parts)
   return { scene, dimensions, reason, walls, cells, ...(rims && { rims }), volume, components, stars, fields, warnings }

@@ -63,8 +63,8 @@ export function memoryEstimate(sizes: Sizes, workers: number): MemoryEstimate {
   }
 }
 
-/** Families of an octree, bytes a cell: a record and a corner for seven cells, and the place of each. */
-const CUBE_BYTES = 15
+/** An octree, bytes a cell: a record and a corner for seven cells, place and profile of each, and cuts of the fewer that are cut. */
+const CUBE_BYTES = 23
 
 /** An octree, the columns from its cells to point stars, and the densities that these are made of. */
 function cubeBytes({ scene, walls, cells }: Sizes): number {

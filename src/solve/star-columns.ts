@@ -128,7 +128,7 @@ export function columnsBetween(
   let depth = 0
   do {
     const step = walk.toWall()
-    const path = Math.min(step, left)
+    const path = walk.weighed(Math.min(step, left))
     for (let c = 0; c < components; c++) {
       const column = path * density[c * cells + walk.cell]
       out[c] += column

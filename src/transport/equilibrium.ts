@@ -111,9 +111,10 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
           hitsStar = true
         }
       }
-      const depth = step * opacity
+      const weighed = walk.weighed(step)
+      const depth = weighed * opacity
       if (depth < remaining) {
-        for (let c = 0; c < components; c++) absorbed[c * cells + cell] += energy * step * absorption[c * bins + bin]
+        for (let c = 0; c < components; c++) absorbed[c * cells + cell] += energy * weighed * absorption[c * bins + bin]
         remaining -= depth
         if (hitsStar) {
           returned += energy
@@ -124,9 +125,9 @@ export function propagateEnergy(medium: EquilibriumMedium, packets: number, unif
         }
         continue
       }
-      step = remaining / opacity
-      for (let c = 0; c < components; c++) absorbed[c * cells + cell] += energy * step * absorption[c * bins + bin]
-      const s = walk.s + step
+      const flown = remaining / opacity
+      for (let c = 0; c < components; c++) absorbed[c * cells + cell] += energy * flown * absorption[c * bins + bin]
+      const s = walk.s + walk.stepOf(flown)
       const x = walk.x0 + s * walk.ux
       const y = walk.y0 + s * walk.uy
       const z = walk.z0 + s * walk.uz

@@ -46,12 +46,12 @@ export function tallyExits(
       const toWall = walk.toWall()
       const toStar = spheres.length > 0 ? pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
       const free = Math.min(toStar, toWall)
-      const depth = free * extinction[cell]
+      const depth = walk.weighed(free) * extinction[cell]
       if (depth >= remaining) {
         weight = collide(
           walk,
           medium,
-          walk.s + remaining / extinction[cell],
+          walk.s + walk.stepOf(remaining / extinction[cell]),
           weight,
           ROULETTE_BELOW * first,
           SURVIVAL,

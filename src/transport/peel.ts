@@ -79,9 +79,9 @@ export function tallyPeeled(medium: ScatterMedium, detectors: Detector[], packet
       const toWall = walk.toWall()
       const toStar = spheres.length > 0 ? pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
       const free = Math.min(toStar, toWall)
-      const depth = free * extinction[cell]
+      const depth = walk.weighed(free) * extinction[cell]
       if (depth >= remaining) {
-        const s = walk.s + remaining / extinction[cell]
+        const s = walk.s + walk.stepOf(remaining / extinction[cell])
         peel(scattered, s, (weight * scatteringOf(medium, cell)) / extinction[cell], true)
         weight = collide(walk, medium, s, weight, ROULETTE_BELOW * first, SURVIVAL, uniform, out, polarisation)
         remaining = -Math.log(uniform())
@@ -99,7 +99,7 @@ function depthToObserver(sight: Walk, extinction: Float64Array, spheres: Float64
   let depth = 0
   do {
     if (pathToStar(sight, spheres) < Number.POSITIVE_INFINITY) return Number.POSITIVE_INFINITY
-    depth += sight.toWall() * extinction[sight.cell]
+    depth += sight.weighed(sight.toWall()) * extinction[sight.cell]
   } while (depth < 80 && sight.cross() >= 0)
   return depth
 }

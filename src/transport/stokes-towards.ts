@@ -84,16 +84,18 @@ export function tallyStokesTowards(
       const toWall = walk.toWall()
       const toStar = spheres.length > 0 ? pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
       const free = Math.min(toStar, toWall)
-      const depth = free * extinction[cell]
+      const whole = walk.weighed(free)
+      const depth = whole * extinction[cell]
       const collides = depth >= remaining
-      const step = collides ? remaining / extinction[cell] : free
+      const weighed = collides ? remaining / extinction[cell] : whole
+      const step = collides ? walk.stepOf(weighed) : free
       copies.place(walk, step)
       const { x, y } = copies
       for (let k = 0; k < turns; k++) {
         const fold = sinTurn[k] * x + cosTurn[k] * y < 0 ? -1 : 1
         const base = places[k] * count * parts
         for (let law = 0; law < laws; law++) {
-          const amount = weight * step * scattering[law * cells + cell]
+          const amount = weight * weighed * scattering[law * cells + cell]
           if (amount === 0) continue
           const from = (k * laws + law) * count * 4
           if (parts === 1) {

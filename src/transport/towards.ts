@@ -69,19 +69,21 @@ export function tallyTowards(medium: ScatterMedium, observers: Observers, packet
       const toWall = walk.toWall()
       const toStar = spheres.length > 0 ? pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
       const free = Math.min(toStar, toWall)
-      const depth = free * extinction[cell]
+      const whole = walk.weighed(free)
+      const depth = whole * extinction[cell]
       const collides = depth >= remaining
-      const step = collides ? remaining / extinction[cell] : free
+      const weighed = collides ? remaining / extinction[cell] : whole
+      const step = collides ? walk.stepOf(weighed) : free
       copies.place(walk, step)
       for (let law = 0; law < laws; law++) {
-        const amount = single ? weight * step : weight * step * scattering[law * cells + cell]
+        const amount = single ? weight * weighed : weight * weighed * scattering[law * cells + cell]
         let from = law * turns * far
         for (let k = 0; k < turns; k++) {
           const base = places[k] * count
           for (let o = 0; o < far; o++) tally[base + o] += amount * towards[from++]
         }
       }
-      if (near) nearby.add(walk, step, weight * step)
+      if (near) nearby.add(walk, step, weight * weighed)
       if (collides) {
         weight = collide(walk, medium, walk.s + step, weight, EARLY_BELOW * first, EARLY_SURVIVAL, uniform, out)
         remaining = -Math.log(uniform())

@@ -20,7 +20,7 @@ export class WayFromStar {
       const toStar = spheres.length > 0 ? pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
       const toWall = walk.toWall()
       ends = toStar < toWall
-      const depth = Math.min(toStar, toWall) * extinction[walk.cell]
+      const depth = walk.weighed(Math.min(toStar, toWall)) * extinction[walk.cell]
       if (!(depth > 0)) continue
       if (count === this.cells.length) this.grow()
       this.cells[count] = walk.cell
@@ -39,7 +39,9 @@ export class WayFromStar {
     }
     const cell = this.cells[low]
     walk.startIn(x, y, z, ux, uy, uz, cell)
-    walk.s = this.from[low] + (reached - this.before[low]) / extinction[cell]
+    walk.s = this.from[low]
+    walk.toWall()
+    walk.s += walk.stepOf((reached - this.before[low]) / extinction[cell])
     return (-Math.expm1(-total) * scatteringOf(medium, cell)) / extinction[cell]
   }
 

@@ -50,6 +50,8 @@ export class OctreeBuilder {
       records: new Int32Array(allocate(4 * RECORD * families)),
       corners: new Int32Array(allocate(12 * families)),
       places: new Int32Array(allocate(4 * cells)),
+      profiles: new Int32Array(allocate(4 * cells)),
+      cuts: new Float32Array(),
       error: 0
     }
     octree.origin.set(origin)

@@ -1,5 +1,6 @@
 import { StraightWalk } from '../straight-walk.js'
 import { CHILD, LEVELS, NEIGHBOUR, type Octree, OUTSIDE, RECORD, SIZE } from './octree.js'
+import { CUT, SLOPE } from './profile.js'
 
 /**
  * A straight walk through the cells of an octree.
@@ -37,21 +38,27 @@ export class OctreeWalk extends StraightWalk {
   private readonly records: Int32Array
   private readonly corners: Int32Array
   private readonly places: Int32Array
+  private readonly profiles: Int32Array
+  private readonly cuts: Float32Array
   /** Least coordinates of the whole cube. */
   private readonly ox: number
   private readonly oy: number
   private readonly oz: number
   private readonly unit: number
+  private readonly perUnit: number
 
-  constructor({ origin, side, records, corners, places }: Octree) {
+  constructor({ origin, side, records, corners, places, profiles, cuts }: Octree) {
     super()
     this.records = records
     this.corners = corners
     this.places = places
+    this.profiles = profiles
+    this.cuts = cuts
     this.ox = origin[0]
     this.oy = origin[1]
     this.oz = origin[2]
     this.unit = side / 2 ** LEVELS
+    this.perUnit = 1 / this.unit
   }
 
   /** Starts a ray at a point of a cell. */
@@ -191,14 +198,79 @@ export class OctreeWalk extends StraightWalk {
     return this.cell
   }
 
-  /** Distance from a point of the present cell to its nearest wall, cm. */
+  density(s: number): number {
+    const { perUnit, size } = this
+    const profile = this.profiles[this.cell]
+    if (profile === 0) return 1
+    const half = 0.5 * size
+    const x = (this.x0 + s * this.ux - this.ox) * perUnit - this.cx - half
+    const y = (this.y0 + s * this.uy - this.oy) * perUnit - this.cy - half
+    const z = (this.z0 + s * this.uz - this.oz) * perUnit - this.cz - half
+    if ((profile & 1) === 0)
+      return 1 + ((profile >> 24) * x + ((profile << 8) >> 24) * y + ((profile << 16) >> 24) * z) / (SLOPE * size)
+    const { cuts } = this
+    const at = CUT * (profile >>> 8)
+    return Math.max(0, cuts[at + 4] + (cuts[at + 5] * x + cuts[at + 6] * y + cuts[at + 7] * z) / size)
+  }
+
+  trim(step: number): void {
+    const { s } = this
+    this.begin = s
+    this.end = s + step
+    const profile = this.profiles[this.cell]
+    if ((profile & 1) === 0) return
+    const depth = this.behindEdge(profile, this.x, this.y, this.z)
+    const { cuts, ux, uy, uz } = this
+    const at = CUT * (profile >>> 8)
+    const rise = cuts[at] * ux + cuts[at + 1] * uy + cuts[at + 2] * uz
+    if (depth > 0) {
+      if (rise < 0) this.end = Math.min(this.end, s - depth / rise)
+    } else this.begin = rise > 0 ? Math.min(this.end, s - depth / rise) : this.end
+  }
+
+  /** Of a density that varies evenly the mean is that in the middle. */
+  weighed(step: number): number {
+    if ((this.profiles[this.cell] & 1) === 0) return step * this.density(this.s + 0.5 * step)
+    this.trim(step)
+    return (this.end - this.begin) * this.density(0.5 * (this.begin + this.end))
+  }
+
+  stepOf(weighed: number): number {
+    this.trim(this.sWall - this.s)
+    const { begin, end } = this
+    const here = Math.max(this.density(begin), 0)
+    // Along the ray the density changes evenly: its integral is a parabola.
+    const change = end > begin ? (this.density(end) - here) / (end - begin) : 0
+    const sum = here + Math.sqrt(Math.max(here * here + 2 * change * weighed, 0))
+    return (sum > 0 ? Math.min(begin + (2 * weighed) / sum, end) : end) - this.s
+  }
+
+  /** Whether the edge of the dust cuts the present cell. */
+  atEdge(): boolean {
+    return (this.profiles[this.cell] & 1) === 1
+  }
+
+  /** How far a point is behind the edge of the dust that cuts the present cell, of such a profile, cm. */
+  private behindEdge(profile: number, x: number, y: number, z: number): number {
+    const { cuts, unit, size } = this
+    const at = CUT * (profile >>> 8)
+    const half = 0.5 * size
+    const px = x - this.ox - (this.cx + half) * unit
+    const py = y - this.oy - (this.cy + half) * unit
+    const pz = z - this.oz - (this.cz + half) * unit
+    return cuts[at] * px + cuts[at + 1] * py + cuts[at + 2] * pz - cuts[at + 3] * size * unit
+  }
+
+  /** Distance from a point of the present cell to its nearest wall, or to the edge of the dust, cm. */
   clearance(x: number, y: number, z: number): number {
     const { unit } = this
     const length = this.size * unit
+    const profile = this.profiles[this.cell]
+    const edge = (profile & 1) === 0 ? length : this.behindEdge(profile, x, y, z)
     const dx = x - this.ox - this.cx * unit
     const dy = y - this.oy - this.cy * unit
     const dz = z - this.oz - this.cz * unit
-    return Math.min(dx, length - dx, dy, length - dy, dz, length - dz)
+    return Math.min(dx, length - dx, dy, length - dy, dz, length - dz, edge)
   }
 
   /** Where a point lies in the present cell, in half sides from its middle, three numbers into `out`; returns the side, cm. */

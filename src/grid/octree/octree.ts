@@ -21,6 +21,10 @@ export interface Octree {
   corners: Int32Array
   /** Where each cell stands: 8 family + child. */
   places: Int32Array
+  /** How the density of the dust varies within each cell: see profile.ts; 0 where it does not. */
+  profiles: Int32Array
+  /** CUT numbers for each cell that the edge of the dust cuts. */
+  cuts: Float32Array
   /** Share of the light of all dust that the cells may get wrong, where it is known. */
   error: number
 }
