@@ -2,6 +2,7 @@ import type { DustLayer } from '../dust-layer.js'
 import type { MassPoints } from './mass-points.js'
 import { LEVELS } from './octree.js'
 import type { OctreeBuilder } from './octree-builder.js'
+import { STEEPEST } from './profile.js'
 
 /** Samples along each side of a cube, at the middles of equal parts. */
 const SAMPLES = 3
@@ -20,10 +21,18 @@ const PLACES = Float64Array.from([
 ])
 /** Points that must lie in a cube before they count against its samples. */
 const FEW = 4
-/** What the squares of contrast, angle at a star (rad) and optical depth of a cell make of its light: the sum is above what was measured of shells and disks. */
-const CONTRAST = 1 / 25
+/**
+ * What the squares of roughness, angle at a star (rad) and optical depth of a cell make of its light. Roughness is how far the density is from
+ * the even change that a cell has, rms over the mean; where the edge of the dust cuts the cell this share of it remains.
+ */
+const ROUGH = 2
 const ANGLE = 1 / 6
-const DEPTH = 1 / 12
+const DEPTH = 1 / 100
+const CUT_ROUGH = 0.3
+/** Densities below, far out in a Gaussian, are none: their squares are no numbers. */
+const LEAST = 1e-150
+/** Mean square of a coordinate over the samples, in sides. */
+const SPREAD = (1 - 1 / SAMPLES ** 2) / 12
 /** Cells that hold details smaller than themselves come before all others: until they are divided nothing is known of them. */
 const DETAIL = 1000
 /** The way from a star is halved so often, and looked at in the middles of so many parts of each half. */
@@ -31,21 +40,17 @@ const HALVES = 8
 const PARTS = 2
 
 /**
- * Tells what share of the light of all dust a cell may get wrong because it holds one density and one temperature. What it does wrong
- * follows from how far the middle of its dust lies from its own, over the lengths in which light varies; second orders of its angle at the
- * nearest star and of its contrast; and of its optical depth where starlight comes.
+ * Tells what share of the light of all dust a cell may get wrong because its density changes evenly and its temperature not at all:
+ * second orders of how rough the dust is, of its angle at the nearest star, and of its optical depth where starlight comes.
  */
 export class CellError {
   private readonly unit: number
-  private readonly sizes: number[]
   /** Shares of the light of the stars that dust takes out. */
   private readonly caught: number[]
   // What the samples of the present cell say.
   private sum = 0
-  private least = 0
+  private rough = 0
   private most = 0
-  private readonly moment = new Float64Array(3)
-  private size = 0
 
   constructor(
     private readonly layers: DustLayer[],
@@ -54,7 +59,6 @@ export class CellError {
     private readonly points: MassPoints
   ) {
     this.unit = builder.side / 2 ** LEVELS
-    this.sizes = layers.map(({ shape: { innerRadius, outerRadius } }) => 0.5 * (outerRadius - innerRadius))
     this.caught = stars.map((star) => points.caughtFrom(star))
   }
 
@@ -67,7 +71,7 @@ export class CellError {
     const y = origin[1] + corner[3 * node + 1] * unit + 0.5 * length
     const z = origin[2] + corner[3 * node + 2] * unit + 0.5 * length
     this.lookInto(x, y, z, length)
-    const { sum, least, most, moment, size } = this
+    const { sum, most } = this
     const volume = length ** 3
     // Dust that shows in a corner alone fills a part of it.
     const known = Math.max(sum / SAMPLES ** 3, most / (2 * SAMPLES) ** 3) * volume
@@ -76,8 +80,7 @@ export class CellError {
     const unknown = detail < length ? (DETAIL * length) / detail : 0
     if (dust === 0) return unknown
     const hidden = counted > 2 * known || sum === 0
-    const contrast = hidden ? 1 : (most - least) / (most + least)
-    const lean = hidden ? 0.25 : Math.hypot(moment[0], moment[1], moment[2]) / sum
+    const rough = hidden ? 1 : this.rough
     const depth = dust / (length * length)
     let near = 0
     let lit = 0
@@ -90,38 +93,45 @@ export class CellError {
       lit += light * Math.exp(-this.depthFrom(sx, sy, sz, x, y, z, distance - 0.5 * length))
     }
     const share = dust / points.total
-    const uneven = lean * (2 * near + length / size) + ANGLE * near * near + CONTRAST * contrast * contrast
+    const uneven = ANGLE * near * near + ROUGH * rough * rough
     const thick = Math.min(1, DEPTH * depth * depth)
     return unknown + Math.max(share, lit) * Math.min(1, uneven) + (stars.length > 0 ? lit : share) * thick
   }
 
-  /** Samples the cube of such a side about (x, y, z): extinction, cm-1, and its moment about the middle, in sides. */
+  /** Samples the cube of such a side about (x, y, z): extinction, cm-1, and how far it is from an even change, over its mean. */
   private lookInto(x: number, y: number, z: number, length: number): void {
-    this.sum = 0
-    this.least = Number.POSITIVE_INFINITY
-    this.most = 0
-    this.moment.fill(0)
-    this.size = Number.POSITIVE_INFINITY
+    let [sum, squares, most, empty] = [0, 0, 0, 0]
+    let [mx, my, mz] = [0, 0, 0]
     for (let k = 0; k < PLACES.length; k += 3) {
       const [a, b, c] = [PLACES[k], PLACES[k + 1], PLACES[k + 2]]
       const chi = this.extinctionAt(x + a * length, y + b * length, z + c * length)
-      this.least = Math.min(this.least, chi)
-      this.most = Math.max(this.most, chi)
+      most = Math.max(most, chi)
+      if (chi === 0) empty++
       if (k >= 3 * SAMPLES ** 3) continue
-      this.sum += chi
-      this.moment[0] += chi * a
-      this.moment[1] += chi * b
-      this.moment[2] += chi * c
+      sum += chi
+      squares += chi * chi
+      mx += chi * a
+      my += chi * b
+      mz += chi * c
     }
+    this.sum = sum
+    this.most = most
+    const count = SAMPLES ** 3
+    const scale = sum * SPREAD
+    const [gx, gy, gz] = [mx / scale, my / scale, mz / scale]
+    // Of a steeper change cells have as much as leaves no corner below nothing.
+    const share = Math.min(1, STEEPEST / (Math.abs(gx) + Math.abs(gy) + Math.abs(gz)))
+    const explained = (2 - share) * share * SPREAD * (gx * gx + gy * gy + gz * gz)
+    const remains = empty > 0 ? CUT_ROUGH : 1
+    this.rough = sum > LEAST ? remains * Math.sqrt(Math.max(0, (squares / sum / sum) * count - 1 - explained)) : 0
   }
 
   private extinctionAt(x: number, y: number, z: number): number {
-    const { layers, sizes } = this
+    const { layers } = this
     let chi = 0
     for (let k = 0; k < layers.length; k++) {
       const { shape, scale, extinction } = layers[k]
       const density = shape.relativeDensity(x, y, z)
-      if (density > 0 && sizes[k] < this.size) this.size = sizes[k]
       chi += scale * extinction * density
     }
     return chi
