@@ -1,9 +1,12 @@
 import type { SphericalWalls } from '../grid/geometry.js'
+import { FRAME, frameTowards } from '../transport/observer-frame.js'
 import type { IntensityField } from './field.js'
 import { directionAt, type PlaceView, placeView } from './place-view.js'
 import { type RadialProfile, traceProfile } from './profile.js'
 import { RayIntegrator } from './ray.js'
 import type { RayMedium } from './ray-medium.js'
+import { RAY_VALUES } from './ray-values.js'
+import { doubled, turnStokes } from './stokes-ray.js'
 
 /** The profile goes so far beyond what is straight behind, rad. */
 const MARGIN = 1e-9
@@ -38,13 +41,19 @@ export function fieldOfPlace(
   rings: Pick<IntensityField, 'radii' | 'innermost' | 'flattening'>
 ): IntensityField {
   const direction = new Float64Array(3)
+  const frame = new Float64Array(FRAME)
   const [a, b, c] = view.from
   return {
     size: profile.size,
     sample: (x, y, out) => {
       directionAt(view, x, y, direction)
       const [u, v, w] = direction
-      profile.sample(Math.atan2(Math.hypot(b * w - c * v, c * u - a * w, a * v - b * u), -(a * u + b * v + c * w)), 0, out)
+      profile.sample(0, Math.atan2(Math.hypot(b * w - c * v, c * u - a * w, a * v - b * u), -(a * u + b * v + c * w)), out)
+      if (profile.size === RAY_VALUES) return
+      // From the direction to the centre to the meridian.
+      frameTowards(-u, -v, -w, frame, 0)
+      const [cos, sin] = doubled(a * frame[3] + b * frame[4] + c * frame[5], a * frame[6] + b * frame[7] + c * frame[8])
+      turnStokes(out, cos, sin, true)
     },
     ...rings,
     outermost: Number.POSITIVE_INFINITY

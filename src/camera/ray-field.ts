@@ -82,7 +82,11 @@ function ringsFromPlace(r: Float64Array, { from, forward, origin, seesOrigin, al
   const cos2 = Math.max(FLATTEST, 1 - y * y)
   const stretch = allSky ? 1 / Math.sqrt(cos2) : (1 + x * x + y * y) ** 0.75
   // A perspective picture shows circles about the axis much as parallel lines do.
-  const flattening = allSky ? cos2 : axial && Math.hypot(x, y) < CENTRED ? Math.max(FLATTEST, Math.abs(forward[2])) : 1
+  const flattening = allSky
+    ? cos2
+    : axial && seesOrigin && Math.hypot(x, y) < CENTRED
+      ? Math.max(FLATTEST, Math.abs(forward[2]))
+      : 1
   const radii = r
     .subarray(1)
     .filter((radius) => seesOrigin && radius < distance)

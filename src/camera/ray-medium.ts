@@ -10,6 +10,7 @@ import type { DustLight } from '../solve/dust-light.js'
 import type { NearLight, PolarisedPart, ScatteredLight } from '../solve/scattered-light.js'
 import { sphereStars } from '../solve/sphere-stars.js'
 import { beamDepth, type StarBeam } from '../solve/star-beams.js'
+import { isForward } from '../transport/scatter-medium.js'
 
 /** What the intensity along rays to one observer at one wavelength follows from, as flat arrays that all threads share. */
 export interface RayMedium {
@@ -31,6 +32,8 @@ export interface RayMedium {
   slots: number
   /** As `ScatteredLight`; 1 when nothing scatters. */
   polarNodes: number
+  /** Azimuth bins are narrow forwards: see azimuthLookup. */
+  narrow: boolean
   /** As `scattered`, the other Stokes parameters; absent where no law polarises or nothing scatters. */
   polarised?: PolarisedPart
   /** As `ScatteredLight`. */
@@ -76,6 +79,7 @@ export function rayMedium(model: Model, light: DustLight, scattered: ScatteredLi
     scatteredGroups: scattered?.groups ?? new Float32Array(),
     slots: scattered?.slots ?? 0,
     polarNodes: scattered?.polarNodes ?? 1,
+    narrow: isForward(light.asymmetry),
     ...(scattered?.polarised && { polarised: scattered.polarised }),
     ...(scattered?.near && { near: scattered.near }),
     polarising: light.tables?.polarising ?? false,

@@ -11,7 +11,7 @@ import type { RayMedium } from './ray-medium.js'
 import { EMITTED, FIRST_GROUP, POLARISED_VALUES, RAY_VALUES, SCATTERED } from './ray-values.js'
 import { RimCut } from './rim-cut.js'
 import { ScatteredRay } from './scattered-ray.js'
-import { dot, Sight, type View } from './sight.js'
+import { Sight, type View } from './sight.js'
 import { StokesRay } from './stokes-ray.js'
 
 /** Beyond this optical depth nothing is seen. */
@@ -63,19 +63,19 @@ export class RayIntegrator {
   ) {
     this.sight = new Sight(view, medium.walls)
     this.size = medium.polarising ? POLARISED_VALUES : RAY_VALUES
-    this.stokes = medium.polarising && 'observer' in view ? new StokesRay(medium, view) : undefined
+    this.stokes = medium.polarising ? new StokesRay(medium, view, this.sight) : undefined
     this.walk = openWalk(medium.walls)
     this.reach = reachOf(medium.walls)
     this.shadow = isOctree(medium.walls) ? new OctreeWalk(medium.walls) : undefined
     this.radials = new Float64Array(medium.starlight?.beams.length ?? 0)
-    this.scatteredRay = new ScatteredRay(medium, this.stokes)
+    this.scatteredRay = new ScatteredRay(medium)
     this.rimCut = medium.rims && new RimCut(medium.rims)
   }
 
   /**
    * Intensity (erg/s/cm2/Hz/sr) towards the observer along the ray at (x, y) cm in the picture, without the direct light of
-   * stars, into `out` (`size` numbers); the deviations of the groups only when `withGroups`. Stokes parameters refer to the
-   * picture's north, in one dimension to the radius in the picture.
+   * stars, into `out` (`size` numbers); the deviations of the groups only when `withGroups`. Stokes parameters refer to
+   * north (see Sight.directionTo), in one dimension to the direction to the origin.
    */
   trace(x: number, y: number, out: Float64Array, withGroups: boolean): void {
     const { medium, walk, stokes, scatteredRay, rimCut } = this
@@ -129,12 +129,9 @@ export class RayIntegrator {
         }
       }
     } while (!atStar && depth < OPAQUE && walk.cross() >= 0)
-    if (!stokes || !('observer' in this.view)) return
-    const { right, up } = this.view
-    stokes.finish(x, y, this.radial, out, withGroups)
-    beams?.forEach(({ at }, star) => {
-      stokes.addRadial(x - dot(at, right), y - dot(at, up), this.radials[star], out)
-    })
+    if (!stokes) return
+    stokes.finish(this.radial, out, withGroups)
+    for (let star = 0; star < stars; star++) stokes.addRadial(beams![star].at, this.radials[star], out)
   }
 
   /**

@@ -1,5 +1,6 @@
 import { type Cells, holds, type Walk } from '../grid/cells.js'
 import type { Vector } from '../scene/types.js'
+import { FRAME, frameTowards } from '../transport/observer-frame.js'
 import { directionAt, type PlaceView } from './place-view.js'
 import type { ViewBasis } from './view.js'
 
@@ -11,6 +12,7 @@ export class Sight {
   /** The observer stands among the cells. */
   private readonly within: boolean
   private readonly direction = new Float64Array(3)
+  private readonly frame = new Float64Array(FRAME)
   /** Closest approach of the present line to the origin, its direction, and the path from there to the observer. */
   private x = 0
   private y = 0
@@ -59,6 +61,24 @@ export class Sight {
     for (let i = 0; i < 3; i++) direction[i] = (along * ahead[i] + u * axes[0][i] + v * axes[1][i]) / distance
     this.leave(view.from)
     return dot(at, [this.ux, this.uy, this.uz])
+  }
+
+  /**
+   * Where a point (cm) is seen from the present line, as any length towards the north and the east that polarisation refers to there, into
+   * `out`: up and left in a picture along parallel lines, else along the meridian, towards +z, and across it.
+   */
+  directionTo(at: Vector, out: Float64Array): void {
+    const { view, frame } = this
+    const [dx, dy, dz] = [at[0] - this.x, at[1] - this.y, at[2] - this.z]
+    if ('from' in view) {
+      frameTowards(-this.ux, -this.uy, -this.uz, frame, 0)
+      out[0] = dx * frame[3] + dy * frame[4] + dz * frame[5]
+      out[1] = dx * frame[6] + dy * frame[7] + dz * frame[8]
+      return
+    }
+    const { up, right } = view
+    out[0] = dx * up[0] + dy * up[1] + dz * up[2]
+    out[1] = -(dx * right[0] + dy * right[1] + dz * right[2])
   }
 
   /** Puts a walk on the line, where it begins: with the observer, or `far` away. */

@@ -43,7 +43,7 @@ export function memoryEstimate(sizes: Sizes, workers: number): MemoryEstimate {
   const { cells, scene } = sizes
   const components = scene.dust.length
   const { bins, seen, parts } = seenLight(sizes)
-  const tally = 8 * Math.max(cells * components, cells * seen * bins * parts + nearValues(sizes))
+  const tally = 8 * Math.max(cells * components, (cells * seen * bins + nearValues(sizes)) * parts)
   const heat = needsEquilibrium(scene)
     ? components * (TABLE_BYTES + cells * 8 * (6 + 2 * GROUPS + GROUPS / 2)) + 8 * cells * LEVEL_SIZE * WALK_LEVELS
     : 0
@@ -82,7 +82,7 @@ export function wavelengthsAbreast(sizes: Sizes, workers: number): number {
 function lightBytes(sizes: Sizes): number {
   const { bins, slots, seen, parts } = seenLight(sizes)
   const known = sizes.cells * seen * parts * (8 * bins * 2 * GROUPS + slots * (8 + 4 * GROUPS))
-  return Math.max(1, known + nearValues(sizes) * (8 * 2 * GROUPS + 8 + 4 * GROUPS))
+  return Math.max(1, known + nearValues(sizes) * parts * (8 * 2 * GROUPS + 8 + 4 * GROUPS))
 }
 
 /** Values of the cells near to observers at places of three dimensions, at most. */

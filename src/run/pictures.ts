@@ -9,6 +9,7 @@ import { cameraPicture } from '../output/png/camera-picture.js'
 import { columnPicture } from '../output/png/column-picture.js'
 import { polarisedPicture } from '../output/png/polarised-picture.js'
 import { wavelengthLabels } from '../output/wavelength-label.js'
+import { isFromPlace } from '../scene/is-from-place.js'
 import type { Scene } from '../scene/types.js'
 import type { DustTemperatures } from '../solve/dust-temperatures.js'
 import { dustStructure } from './dust-cells.js'
@@ -25,13 +26,16 @@ export function picturesOf(shown: Shown, scene: Scene, edges: boolean): Product[
 
 /** The pictures of a camera at one of its wavelengths. */
 function cameraPictures(images: CameraImages, k: number, scene: Scene): Product[] {
-  const { name, wavelengths } = images.camera
+  const { name, view, wavelengths } = images.camera
   const path = `images/${name}-${wavelengthLabels(wavelengths)[k]}`
   const picture = { file: `${path}.png`, make: () => cameraPicture(images, k, scene) }
   if (!images.stokes) return [picture]
+  const polarised = { file: `${path}-polarised.png`, make: () => polarisedPicture(images, k, scene) }
+  // A map of all directions has no centre.
+  if (isFromPlace(view) && view.allSky) return [picture, polarised]
   return [
     picture,
-    { file: `${path}-polarised.png`, make: () => polarisedPicture(images, k, scene) },
+    polarised,
     { file: `${path}-q-phi.png`, make: () => azimuthalPicture(images, k, scene, 'q') },
     { file: `${path}-u-phi.png`, make: () => azimuthalPicture(images, k, scene, 'u') }
   ]

@@ -60,7 +60,7 @@ serve({
     tallyTowards(scattering(shared), observers, packets, stream(seed)),
   'stokes-flights': ({ packets, seed }: Batch, shared: Shared) => tallyStokesFlights(scattering(shared), packets, stream(seed)),
   'stokes-towards': ({ packets, seed, observers }: Batch & { observers: Observers }, shared: Shared) =>
-    tallyStokesTowards(scattering(shared), observers.directions, packets, stream(seed)),
+    tallyStokesTowards(scattering(shared), observers, packets, stream(seed)),
   peeled: ({ packets, seed, detectors }: Batch & { detectors: Detector[] }, shared: Shared) =>
     inOne(tallyPeeled(scattering(shared), detectors, packets, stream(seed))),
   exits: ({ packets, seed, detectors }: Batch & { detectors: Detector[] }, shared: Shared) =>

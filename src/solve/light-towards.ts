@@ -2,15 +2,9 @@ import type { Model } from '../model/model.js'
 import type { Task } from '../workers/pool.js'
 import type { DustLight } from './dust-light.js'
 import type { GroupSums } from './group-sums.js'
-import {
-  type CellVolumes,
-  fromFlights,
-  fromTallies,
-  type ScatteredLight,
-  type ScatteringLaws,
-  type SeenBy
-} from './scattered-light.js'
-import { fromStokesFlights, fromStokesTallies, type TurningMatrices } from './scattered-stokes.js'
+import { type CellVolumes, fromFlights, type ScatteredLight, type ScatteringLaws } from './scattered-light.js'
+import { fromStokesFlights, type TurningMatrices } from './scattered-stokes.js'
+import { fromTallies, type SeenBy } from './tallied-light.js'
 
 /** What the sums of packets become scattered light with. */
 export interface LightRequest {
@@ -48,5 +42,5 @@ export function lightTask(
 export function lightTowards({ cells, laws, sums, seenBy, observers, turning }: LightRequest): ScatteredLight {
   if (turning) return fromStokesFlights(cells, laws, turning, sums)
   if (cells.dimensions === 1) return fromFlights(cells, laws, sums)
-  return laws.tables ? fromStokesTallies(cells, laws, sums, seenBy.first, observers) : fromTallies(cells, sums, seenBy, observers)
+  return fromTallies(cells, laws, sums, seenBy, observers)
 }

@@ -3,8 +3,7 @@ import { allocateShared } from '../math/allocate.js'
 import { gaussLegendre } from '../math/quadrature.js'
 import type { Model } from '../model/model.js'
 import type { Vector } from '../scene/types.js'
-import { NEAR_DIRECTIONS } from '../transport/observers.js'
-import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS, flightLookup } from '../transport/scatter-medium.js'
+import { FLIGHT_BINS, flightLookup } from '../transport/scatter-medium.js'
 import type { DustLight } from './dust-light.js'
 import type { GroupSums } from './group-sums.js'
 import { GROUPS } from './groups.js'
@@ -42,11 +41,13 @@ export interface ScatteredLight {
   near?: NearLight
 }
 
-/** Scattered light of some cells in the directions of `nearDirections`: cells x directions, and x GROUPS the groups' deviations. */
+/** Scattered light of some cells in the directions of `nearFrames`: cells x directions, and x GROUPS the groups' deviations. */
 export interface NearLight {
   cells: Int32Array
   value: Float64Array
   groups: Float32Array
+  /** Where a law polarises. */
+  polarised?: PolarisedPart
 }
 
 /** What of the cells scattered light is made with. */
@@ -65,6 +66,14 @@ export interface PolarisedPart {
 
 const RULE = gaussLegendre(4)
 
+/** Room for so many values with those of their groups, each of so many parts. */
+export function emptyLight(length: number, parts: number): Pick<ScatteredLight, 'value' | 'groups'> {
+  return {
+    value: new Float64Array(allocateShared(8 * length * parts)),
+    groups: new Float32Array(allocateShared(4 * length * parts * GROUPS))
+  }
+}
+
 /** Mean and deviations over the groups at element `i`, scaled; the mean is returned, the deviations go to `out` at `start`. */
 export function spread({ sums, packets }: GroupSums, i: number, scale: number, out: Float32Array, start: number): number {
   let sum = 0
@@ -81,8 +90,7 @@ export function spread({ sums, packets }: GroupSums, i: number, scale: number, o
 /** Scattered light of spherical shells: the light in flight, turned towards the observer by the scattering law. */
 export function fromFlights(model: CellVolumes, light: ScatteringLaws, flights: GroupSums): ScatteredLight {
   const { cells, volume } = model
-  const value = new Float64Array(allocateShared(8 * cells * ANGLE_NODES))
-  const groups = new Float32Array(allocateShared(4 * cells * ANGLE_NODES * GROUPS))
+  const { value, groups } = emptyLight(cells * ANGLE_NODES, 1)
   const laws = Array.from(light.asymmetry, turningLaw)
   const mean = new Float64Array(FLIGHT_BINS)
   const deviations = new Float32Array(FLIGHT_BINS * GROUPS)
@@ -130,53 +138,4 @@ function turningLaw(g: number): Float64Array {
     }
   }
   return matrix
-}
-
-/** Which observers of a tally one scattered light is towards: that with number `first`, or so many from it on, of polar nodes. */
-export interface SeenBy {
-  first: number
-  polarNodes: number
-  /** Near cells of a place, and where in a tally they begin. */
-  near?: { cells: Int32Array; offset: number }
-}
-
-/** Scattered light towards some of `observers` from tallies of two or three dimensions. */
-export function fromTallies(
-  model: CellVolumes,
-  tallies: GroupSums,
-  { first, polarNodes, near }: SeenBy,
-  observers: number
-): ScatteredLight {
-  const { cells, volume, dimensions } = model
-  const slots = dimensions === 2 ? AZIMUTH_BINS : 1
-  const all = polarNodes * cells * slots
-  const value = new Float64Array(allocateShared(8 * all))
-  const groups = new Float32Array(allocateShared(4 * all * GROUPS))
-  const { edges } = azimuthLookup()
-  for (let cell = 0; cell < cells; cell++) {
-    for (let slot = 0; slot < slots; slot++) {
-      const at = cell * slots + slot
-      const share = slots > 1 ? (Math.acos(edges[slot + 1]) - Math.acos(edges[slot])) / Math.PI : 1
-      for (let node = 0; node < polarNodes; node++) {
-        const to = node * cells * slots + at
-        value[to] = spread(tallies, at * observers + first + node, 1 / (volume[cell] * share), groups, to * GROUPS)
-      }
-    }
-  }
-  return { slots, polarNodes, value, groups, ...(near && { near: nearLight(volume, tallies, near) }) }
-}
-
-function nearLight(
-  volume: Float64Array,
-  tallies: GroupSums,
-  { cells, offset }: { cells: Int32Array; offset: number }
-): NearLight {
-  const all = cells.length * NEAR_DIRECTIONS
-  const value = new Float64Array(allocateShared(8 * all))
-  const groups = new Float32Array(allocateShared(4 * all * GROUPS))
-  for (let i = 0; i < all; i++) {
-    const cell = cells[Math.floor(i / NEAR_DIRECTIONS)]
-    value[i] = spread(tallies, offset + i, 1 / volume[cell], groups, i * GROUPS)
-  }
-  return { cells, value, groups }
 }

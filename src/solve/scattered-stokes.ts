@@ -1,18 +1,11 @@
 import type { ScatteringTables } from '../dust/scattering-tables.js'
-import { allocateShared } from '../math/allocate.js'
 import { gaussLegendre } from '../math/quadrature.js'
-import { AZIMUTH_BINS, azimuthLookup, FLIGHT_BINS, flightLookup } from '../transport/scatter-medium.js'
-import { FRAME, scatterTowards } from '../transport/scatter-towards.js'
+import { FRAME, frameAt } from '../transport/observer-frame.js'
+import { FLIGHT_BINS, flightLookup } from '../transport/scatter-medium.js'
+import { scatterTowards } from '../transport/scatter-towards.js'
 import type { GroupSums } from './group-sums.js'
 import { GROUPS } from './groups.js'
-import {
-  ANGLE_NODES,
-  type CellVolumes,
-  type PolarisedPart,
-  type ScatteredLight,
-  type ScatteringLaws,
-  spread
-} from './scattered-light.js'
+import { ANGLE_NODES, type CellVolumes, emptyLight, type ScatteredLight, type ScatteringLaws, spread } from './scattered-light.js'
 
 const WITHIN_BIN = gaussLegendre(2)
 /** Azimuths, denser towards the plane of the radius and the observer, where peaked laws peak. */
@@ -56,13 +49,15 @@ function addAzimuths(
   matrix: Float64Array,
   to: number
 ): void {
-  meridianFrame(mu, 1, 0, flying)
+  const acrossIn = Math.sqrt(Math.max(0, 1 - mu * mu))
+  const acrossOut = Math.sqrt(Math.max(0, 1 - muOut * muOut))
+  frameAt(mu, acrossIn, 1, 0, flying, 0)
   for (let i = 0; i < AROUND.nodes.length; i++) {
     // azimuth = pi t^2
     const t = 0.5 + 0.5 * AROUND.nodes[i]
     const share = weight * 0.5 * AROUND.weights[i] * 2 * t
     const azimuth = Math.PI * t * t
-    meridianFrame(muOut, Math.cos(azimuth), Math.sin(azimuth), seen)
+    frameAt(muOut, acrossOut, Math.cos(azimuth), Math.sin(azimuth), seen, 0)
     scatterTowards(tables, law, flying, 0, 0, 0, 0, seen, 0, fromI, 0)
     scatterTowards(tables, law, flying, 0, 1, 0, 0, seen, 0, fromQ, 0)
     matrix[to] += share * fromI[0]
@@ -70,20 +65,6 @@ function addAzimuths(
     matrix[to + 2] += share * fromI[1]
     matrix[to + 3] += share * (fromQ[1] - fromI[1])
   }
-}
-
-/** Direction of cosine `mu` with z at an azimuth, the direction across it towards +z, and what completes them. */
-function meridianFrame(mu: number, cos: number, sin: number, out: Float64Array): void {
-  const across = Math.sqrt(Math.max(0, 1 - mu * mu))
-  out[0] = across * cos
-  out[1] = across * sin
-  out[2] = mu
-  out[3] = -mu * cos
-  out[4] = -mu * sin
-  out[5] = across
-  out[6] = sin
-  out[7] = -cos
-  out[8] = 0
 }
 
 /** As `fromFlights`, with polarisation. */
@@ -138,72 +119,4 @@ function addTurned(
   }
   value[at] += coefficient * sum
   for (let g = 0; g < GROUPS; g++) groups[at * GROUPS + g] += coefficient * turned[g]
-}
-
-/** As `fromTallies`, with polarisation. */
-export function fromStokesTallies(
-  model: CellVolumes,
-  light: ScatteringLaws,
-  tallies: GroupSums,
-  index: number,
-  observers: number
-): ScatteredLight {
-  const { cells, volume, dimensions } = model
-  const slots = dimensions === 2 ? AZIMUTH_BINS : 1
-  const count = light.tables!.polarising ? 4 : 1
-  const total = emptyLight(cells * slots, 1)
-  const others = emptyLight(count === 4 ? cells * slots : 0, 3)
-  const { edges } = azimuthLookup()
-  for (let cell = 0; cell < cells; cell++) {
-    for (let slot = 0; slot < slots; slot++) {
-      const share = slots > 1 ? (Math.acos(edges[slot + 1]) - Math.acos(edges[slot])) / Math.PI : 1
-      const scale = 1 / (volume[cell] * share)
-      const at = cell * slots + slot
-      const from = (at * observers + index) * count
-      total.value[at] = spread(tallies, from, scale, total.groups, at * GROUPS)
-      for (let part = 0; part < count - 1; part++) {
-        const to = 3 * at + part
-        others.value[to] = spread(tallies, from + 1 + part, scale, others.groups, to * GROUPS)
-      }
-    }
-  }
-  if (count === 1) return { slots, polarNodes: 1, ...total }
-  if (slots > 1) sharpen({ parts: 3, ...others }, cells)
-  return { slots, polarNodes: 1, ...total, polarised: { parts: 3, ...others } }
-}
-
-/**
- * Q and U turn twice as fast as the azimuth, and are flattened by the mean over a bin and by straight lines between bins, together as
- * by a smoothing of variance (bin width)^2 / 4. Taking away 1/8 of the second difference undoes that to fourth order: without it
- * the light of a disk seen from its pole is 2 % less polarised. Across both ends Q is even, U and V are odd.
- */
-function sharpen({ value, groups }: PolarisedPart, cells: number): void {
-  sharpenPlane(value, cells, 1)
-  sharpenPlane(groups, cells, GROUPS)
-}
-
-function sharpenPlane(values: Float64Array | Float32Array, cells: number, width: number): void {
-  const row = new Float64Array(AZIMUTH_BINS)
-  const last = AZIMUTH_BINS - 1
-  for (let cell = 0; cell < cells; cell++) {
-    for (let part = 0; part < 3; part++) {
-      const parity = part === 0 ? 1 : -1
-      for (let g = 0; g < width; g++) {
-        const at = (slot: number) => ((cell * AZIMUTH_BINS + slot) * 3 + part) * width + g
-        for (let slot = 0; slot <= last; slot++) row[slot] = values[at(slot)]
-        for (let slot = 0; slot <= last; slot++) {
-          const before = slot > 0 ? row[slot - 1] : parity * row[0]
-          const after = slot < last ? row[slot + 1] : parity * row[last]
-          values[at(slot)] = row[slot] - (before - 2 * row[slot] + after) / 8
-        }
-      }
-    }
-  }
-}
-
-function emptyLight(length: number, parts: number): Pick<ScatteredLight, 'value' | 'groups'> {
-  return {
-    value: new Float64Array(allocateShared(8 * length * parts)),
-    groups: new Float32Array(allocateShared(4 * length * parts * GROUPS))
-  }
 }

@@ -6,8 +6,9 @@ import type { GroupSums } from './group-sums.js'
 import { lightTask } from './light-towards.js'
 import type { RoundsRequest } from './rounds.js'
 import { scatterMedium } from './scatter-medium.js'
-import type { ScatteredLight, SeenBy } from './scattered-light.js'
+import type { ScatteredLight } from './scattered-light.js'
 import type { TurningMatrices } from './scattered-stokes.js'
+import type { SeenBy } from './tallied-light.js'
 
 /** Packets for each cell of three dimensions by which most of them are met: those that are not would seem to have no noise. */
 export const MET = 0.25

@@ -1,3 +1,5 @@
+import { FRAME, frameAt } from './observer-frame.js'
+
 /** Who sees scattered light: those far away, then those at places of the scene among cells of three dimensions. */
 export interface Observers {
   /** Unit vectors towards observers far away, three numbers each. */
@@ -23,14 +25,15 @@ const POLAR = 13
 const AROUND = 24
 export const NEAR_DIRECTIONS = POLAR * AROUND
 
-/** Unit vectors of the directions, polar angle by polar angle. */
-export function nearDirections(): Float64Array {
-  const vectors = Array.from({ length: NEAR_DIRECTIONS }, (_, d) => {
+/** Frames of observers in those directions, polar angle by polar angle; north is the projected z axis, at the poles its limit. */
+export function nearFrames(): Float64Array {
+  const frames = new Float64Array(NEAR_DIRECTIONS * FRAME)
+  for (let d = 0; d < NEAR_DIRECTIONS; d++) {
     const polar = (Math.PI * Math.floor(d / AROUND)) / (POLAR - 1)
     const azimuth = (2 * Math.PI * (d % AROUND)) / AROUND
-    return [Math.sin(polar) * Math.cos(azimuth), Math.sin(polar) * Math.sin(azimuth), Math.cos(polar)]
-  })
-  return Float64Array.from(vectors.flat())
+    frameAt(Math.cos(polar), Math.sin(polar), Math.cos(azimuth), Math.sin(azimuth), frames, d * FRAME)
+  }
+  return frames
 }
 
 /** The four directions about a unit vector, and their shares of it, into `indices` and `shares`. */

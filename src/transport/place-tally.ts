@@ -1,8 +1,9 @@
 import { henyeyGreenstein } from '../dust/phase-function.js'
 import type { Walk } from '../grid/cells.js'
-import { GOLDEN } from '../math/golden.js'
-import { NEAR_DIRECTIONS, nearDirections, nearOffset, type Observers, observerCount } from './observers.js'
+import { FRAME } from './observer-frame.js'
+import { NEAR_DIRECTIONS, nearFrames, nearOffset, type Observers, observerCount } from './observers.js'
 import type { ScatterMedium } from './scatter-medium.js'
+import { StepsSeen } from './steps-seen.js'
 
 /**
  * Light scattered towards observers at places among cells of three dimensions, in the tally of `tallyTowards`. The direction to such an
@@ -12,51 +13,39 @@ import type { ScatterMedium } from './scatter-medium.js'
 export class PlaceTally {
   private readonly count: number
   private readonly first: number
-  /** By place: the number of each near cell among them, and where their tally begins. */
-  private readonly near: Map<number, number>[]
+  /** By place, where the tally of its near cells begins. */
   private readonly offsets: number[]
-  private readonly directions = nearDirections()
-  /** Where along a step the point lies. */
-  private along = 0
+  private readonly frames = nearFrames()
+  private readonly steps: StepsSeen
 
   constructor(
     private readonly medium: ScatterMedium,
-    private readonly observers: Observers,
+    observers: Observers,
     private readonly tally: Float64Array
   ) {
     this.count = observerCount(observers)
     this.first = observers.directions.length / 3
-    this.near = observers.places.map(({ near }) => new Map(Array.from(near, (cell, i) => [cell, i])))
+    this.steps = new StepsSeen(observers)
     this.offsets = observers.places.map((_, place) => nearOffset(medium.cells, observers, place))
   }
 
   /** Adds a step of a walk in its present cell, of weight x path `amount`. */
   add(walk: Walk, step: number, amount: number): void {
-    const { count, first, tally } = this
-    const { places } = this.observers
+    const { count, first, tally, steps, offsets } = this
     const { cell, ux, uy, uz } = walk
-    this.along = (this.along + GOLDEN) % 1
-    const s = walk.s + this.along * step
-    const x = walk.x0 + s * ux
-    const y = walk.y0 + s * uy
-    const z = walk.z0 + s * uz
-    for (let o = 0; o < places.length; o++) {
-      const { at, within } = places[o]
-      const dx = at[0] - x
-      const dy = at[1] - y
-      const dz = at[2] - z
-      const distance = Math.sqrt(dx * dx + dy * dy + dz * dz)
-      const index = distance < within ? this.near[o].get(cell) : undefined
+    steps.take(walk, step)
+    for (let o = 0; o < offsets.length; o++) {
+      const index = steps.look(o, cell)
       if (index === undefined)
-        tally[cell * count + first + o] += amount * this.law(cell, (dx * ux + dy * uy + dz * uz) / distance)
-      else this.addNear(walk, this.offsets[o] + index * NEAR_DIRECTIONS, amount)
+        tally[cell * count + first + o] += amount * this.law(cell, steps.tx * ux + steps.ty * uy + steps.tz * uz)
+      else this.addNear(walk, offsets[o] + index * NEAR_DIRECTIONS, amount)
     }
   }
 
   private addNear({ cell, ux, uy, uz }: Walk, offset: number, amount: number): void {
-    const { tally, directions } = this
+    const { tally, frames } = this
     for (let d = 0; d < NEAR_DIRECTIONS; d++) {
-      const cosine = ux * directions[3 * d] + uy * directions[3 * d + 1] + uz * directions[3 * d + 2]
+      const cosine = ux * frames[FRAME * d] + uy * frames[FRAME * d + 1] + uz * frames[FRAME * d + 2]
       tally[offset + d] += amount * this.coefficient(cell) * this.law(cell, cosine)
     }
   }

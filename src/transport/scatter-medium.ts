@@ -84,22 +84,33 @@ export function flightLookup(): { lookup: Uint8Array; edges: Float64Array } {
 
 /** Number of bins in azimuth from the camera's plane, folded, in two dimensions. */
 export const AZIMUTH_BINS = 16
+/** Edges of narrow ones are at this power of their number. */
+const NARROWING = 4 / 3
+
+/**
+ * Whether a law goes forwards so much that azimuth bins have to be narrow there: beside a star that is a sphere, light straight forwards is
+ * 3 % too low in even ones for an asymmetry of 0.5, and 7 % for 0.7; in narrow ones less than 1 %, with 1.25 times the noise.
+ */
+export function isForward(asymmetry: Float64Array): boolean {
+  return asymmetry.some((g) => g > 0.5)
+}
 
 const LOOKUP = 4096
 
 /**
- * Which folded azimuth bin a cosine of azimuth falls in: bin = lookup[(cos + 1) * scale | 0]. The bins are even in azimuth but
- * for the step of the lookup; `edges` are their true edges in the cosine, descending from 1 to -1.
+ * Which folded azimuth bin a cosine of azimuth falls in: bin = lookup[(cos + 1) * scale | 0]. The bins are even in azimuth, or
+ * `narrow` forwards, but for the step of the lookup; `edges` are their true edges in the cosine, descending from 1 to -1.
  */
-export function azimuthLookup(): { lookup: Uint8Array; scale: number; edges: Float64Array } {
+export function azimuthLookup(narrow: boolean): { lookup: Uint8Array; scale: number; edges: Float64Array } {
   const lookup = new Uint8Array(LOOKUP + 1)
   const edges = new Float64Array(AZIMUTH_BINS + 1)
+  const power = narrow ? 1 / NARROWING : 1
   edges[0] = 1
   edges[AZIMUTH_BINS] = -1
   let bin = AZIMUTH_BINS - 1
   for (let i = 0; i < LOOKUP; i++) {
     const middle = -1 + (2 * (i + 0.5)) / LOOKUP
-    const here = Math.min(AZIMUTH_BINS - 1, Math.floor((Math.acos(middle) / Math.PI) * AZIMUTH_BINS))
+    const here = Math.min(AZIMUTH_BINS - 1, Math.floor((Math.acos(middle) / Math.PI) ** power * AZIMUTH_BINS))
     if (here !== bin) {
       edges[bin] = -1 + (2 * i) / LOOKUP
       bin = here

@@ -1,22 +1,5 @@
 import { ELEMENTS, type ScatteringTables, TABLE_STEPS, tablePosition } from '../dust/scattering-tables.js'
 
-/** Numbers of a frame: the direction to the observer, his north and his east (north, turned counter-clockwise as he sees it). */
-export const FRAME = 9
-
-/** Frames of observers (unit vectors, three numbers each): north is the projected z axis; for one on the axis see `viewBasis`. */
-export function observerFrames(observers: Float64Array): Float64Array {
-  const frames = new Float64Array((observers.length / 3) * FRAME)
-  for (let o = 0; 3 * o < observers.length; o++) {
-    const [x, y, z] = observers.subarray(3 * o, 3 * o + 3)
-    const across = Math.hypot(x, y)
-    const [cos, sin] = across > 1e-12 ? [x / across, y / across] : [1, 0]
-    const north = [-z * cos, -z * sin, across]
-    const east = [y * north[2] - z * north[1], z * north[0] - x * north[2], x * north[1] - y * north[0]]
-    frames.set([x, y, z, ...north, ...east], o * FRAME)
-  }
-  return frames
-}
-
 /**
  * Stokes parameters, per sr, of light of intensity 1 and polarisation q, u, v in `frame` (from `from` on: flight, d, e) that a law
  * scatters towards an observer (frame `seen`, from `at` on), referred to his north; into `out` at `to`. Signs as in Polarisation.

@@ -1,10 +1,13 @@
 import { openWalk } from '../grid/cells.js'
 import { collide, EARLY_BELOW, EARLY_SURVIVAL } from './flight.js'
+import { FRAME, observerFrames } from './observer-frame.js'
+import { nearOffset, type Observers, observerCount } from './observers.js'
 import { Polarisation } from './polarisation.js'
 import { Launcher, scatterHere } from './scatter-launch.js'
-import type { ScatterMedium } from './scatter-medium.js'
-import { FRAME, observerFrames, scatterTowards } from './scatter-towards.js'
+import { isForward, type ScatterMedium } from './scatter-medium.js'
+import { scatterTowards } from './scatter-towards.js'
 import { pathToStar } from './star-spheres.js'
+import { StokesPlaceTally } from './stokes-place-tally.js'
 import { TurnedCopies } from './turned-copies.js'
 
 /**
@@ -14,25 +17,30 @@ import { TurnedCopies } from './turned-copies.js'
  */
 export function tallyStokesTowards(
   medium: ScatterMedium,
-  observers: Float64Array,
+  observers: Observers,
   packets: number,
   uniform: () => number
 ): Float64Array {
   const { walls, cells, extinction, scattering, asymmetry, spheres } = medium
   const tables = medium.tables!
   const parts = stokesCount(medium)
-  const count = observers.length / 3
+  const { directions } = observers
+  const count = observerCount(observers)
+  const far = directions.length / 3
+  const near = observers.places.length > 0
   const laws = asymmetry.length
-  const copies = new TurnedCopies(walls)
+  const copies = new TurnedCopies(walls, isForward(asymmetry))
   const { count: turns, cos: cosTurn, sin: sinTurn, places } = copies
-  const tally = new Float64Array(cells * copies.azimuths * count * parts)
-  const towards = new Float64Array(turns * laws * count * 4)
-  const frames = observerFrames(observers)
+  const values = near ? nearOffset(cells, observers, observers.places.length) : cells * copies.azimuths * count
+  const tally = new Float64Array(values * parts)
+  const towards = new Float64Array(turns * laws * far * 4)
+  const frames = observerFrames(directions)
   const turnedFrame = new Float64Array(FRAME)
   const walk = openWalk(walls)
   const launcher = new Launcher(medium, packets, true)
   const polarisation = new Polarisation()
   const { stokes, frame } = polarisation
+  const nearby = new StokesPlaceTally(medium, observers, polarisation, tally, parts)
   const out = new Float64Array(3)
 
   for (let n = 0; n < packets; n++) {
@@ -59,8 +67,8 @@ export function tallyStokesTowards(
             turnedFrame[i + 2] = sign * mirror * frame[i + 2]
           }
           for (let law = 0; law < laws; law++) {
-            for (let o = 0; o < count; o++) {
-              const to = ((k * laws + law) * count + o) * 4
+            for (let o = 0; o < far; o++) {
+              const to = ((k * laws + law) * far + o) * 4
               scatterTowards(
                 tables,
                 law,
@@ -97,12 +105,12 @@ export function tallyStokesTowards(
         for (let law = 0; law < laws; law++) {
           const amount = weight * weighed * scattering[law * cells + cell]
           if (amount === 0) continue
-          const from = (k * laws + law) * count * 4
+          const from = (k * laws + law) * far * 4
           if (parts === 1) {
-            for (let o = 0; o < count; o++) tally[base + o] += amount * towards[from + 4 * o]
+            for (let o = 0; o < far; o++) tally[base + o] += amount * towards[from + 4 * o]
             continue
           }
-          for (let o = 0; o < 4 * count; o += 4) {
+          for (let o = 0; o < 4 * far; o += 4) {
             tally[base + o] += amount * towards[from + o]
             tally[base + o + 1] += amount * towards[from + o + 1]
             tally[base + o + 2] += fold * amount * towards[from + o + 2]
@@ -110,6 +118,7 @@ export function tallyStokesTowards(
           }
         }
       }
+      if (near) nearby.add(walk, step, weight * step)
       if (collides) {
         weight = collide(walk, medium, walk.s + step, weight, EARLY_BELOW * first, EARLY_SURVIVAL, uniform, out, polarisation)
         remaining = -Math.log(uniform())

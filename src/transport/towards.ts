@@ -5,7 +5,7 @@ import { collide, EARLY_BELOW, EARLY_SURVIVAL } from './flight.js'
 import { nearOffset, type Observers, observerCount } from './observers.js'
 import { PlaceTally } from './place-tally.js'
 import { Launcher, scatterHere } from './scatter-launch.js'
-import type { ScatterMedium } from './scatter-medium.js'
+import { isForward, type ScatterMedium } from './scatter-medium.js'
 import { pathToStar } from './star-spheres.js'
 import { TurnedCopies } from './turned-copies.js'
 
@@ -29,7 +29,7 @@ export function tallyTowards(medium: ScatterMedium, observers: Observers, packet
   const laws = asymmetry.length
   // Of one law the coefficient is the same for all that a cell gains: it comes in the end, and the loop reads an array less.
   const single = laws === 1
-  const copies = new TurnedCopies(walls)
+  const copies = new TurnedCopies(walls, isForward(asymmetry))
   const { count: turns, cos: cosTurn, sin: sinTurn, places } = copies
   const tally = new Float64Array(near ? nearOffset(cells, observers, observers.places.length) : cells * copies.azimuths * count)
   const towards = new Float64Array(turns * laws * far)

@@ -30,7 +30,8 @@ export class TurnedCopies {
   /** Where along a step the point lies. */
   private along = 0
 
-  constructor(cells: Cells) {
+  /** `narrow`: see azimuthLookup. */
+  constructor(cells: Cells, narrow: boolean) {
     this.axial = dimensionsOf(cells) < 3
     this.count = this.axial ? COPIES : 1
     this.azimuths = this.axial ? AZIMUTH_BINS : 1
@@ -38,7 +39,7 @@ export class TurnedCopies {
     this.sin = new Float64Array(this.count)
     this.places = new Int32Array(this.count)
     this.nt = isOctree(cells) ? 1 : cells.cosTheta.length - 1
-    const { lookup, scale } = azimuthLookup()
+    const { lookup, scale } = azimuthLookup(narrow)
     this.lookup = lookup
     this.scale = scale
   }

@@ -49,12 +49,6 @@ describe('cameras at places of a scene', () => {
     ],
     ['a star', sceneWith('{from: [0 au, 0 au, 0 au], field: all-sky}'), 'cameras.0.view.from', /source giant is there/],
     [
-      'another scattering law',
-      sceneWith(`{${from}, field: all-sky}`, '', ['slope: 1.5\n', 'slope: 1.5\n    phase: rayleigh\n']),
-      'cameras.0.view.from',
-      /opacity soot has another `phase`/
-    ],
-    [
       'a spectrum',
       exampleWith(['    view: {inclination: 35 deg}\n    aperture', `    view: {${from}}\n    aperture`]),
       'spectra.0.view.from',

@@ -4,8 +4,9 @@ import type { ScatteringMatrix } from '../../src/dust/scattering-matrix.js'
 import { scatteringTables, tableAngles } from '../../src/dust/scattering-tables.js'
 import { SphericalWalk } from '../../src/grid/walk.js'
 import { stream } from '../../src/math/random.js'
+import { FRAME, observerFrames } from '../../src/transport/observer-frame.js'
 import { Polarisation } from '../../src/transport/polarisation.js'
-import { FRAME, observerFrames, scatterTowards } from '../../src/transport/scatter-towards.js'
+import { scatterTowards } from '../../src/transport/scatter-towards.js'
 
 type Complex = [re: number, im: number]
 const times = ([a, b]: Complex, [c, d]: Complex): Complex => [a * c - b * d, a * d + b * c]

@@ -7,25 +7,26 @@ import { logTicks, scaledUnit, type Ticks } from '../draw/ticks.js'
 import { pixelContext } from '../pixel-context.js'
 import { stokesUnit } from '../stokes-unit.js'
 import { panelSize } from './panel-size.js'
-import { cameraView, skyPicture } from './sky-picture.js'
+import { cameraView, flatField, skyPicture } from './sky-picture.js'
 import { chooseStretch } from './stretch.js'
+import { uprightStokes } from './upright-stokes.js'
 
 /**
  * Azimuthal Stokes parameters about the middle of the picture (de Boer et al. 2020, A&A 633, A63; from memory):
  * Q_phi = -Q cos 2 phi - U sin 2 phi, U_phi = Q sin 2 phi - U cos 2 phi, phi the position angle of the pixel. Q_phi > 0 is an
  * electric vector across the direction to the centre, as single scattering gives it.
  */
-export function azimuthalStokes(
-  { width, height, camera, stokes }: CameraImages,
-  k: number
-): { q: Float64Array; u: Float64Array } {
+export function azimuthalStokes(images: CameraImages, k: number): { q: Float64Array; u: Float64Array } {
+  const { width, height, camera } = images
+  const stokes = uprightStokes(images, k)
+  const field = flatField(camera)
   const pixels = width * height
   const found = { q: new Float64Array(pixels), u: new Float64Array(pixels) }
   for (let i = 0; i < pixels; i++) {
-    const north = ((Math.floor(i / width) + 0.5) / height - 0.5) * camera.field[1]
-    const east = -(((i % width) + 0.5) / width - 0.5) * camera.field[0]
+    const north = ((Math.floor(i / width) + 0.5) / height - 0.5) * field[1]
+    const east = -(((i % width) + 0.5) / width - 0.5) * field[0]
     const angle = 2 * Math.atan2(east, north)
-    const [q, u] = [stokes!.q[k * pixels + i], stokes!.u[k * pixels + i]]
+    const [q, u] = [stokes.q[i], stokes.u[i]]
     found.q[i] = -q * Math.cos(angle) - u * Math.sin(angle)
     found.u[i] = q * Math.sin(angle) - u * Math.cos(angle)
   }

@@ -2,6 +2,7 @@ import type { CameraImages } from '../../camera/types.js'
 import { line } from '../draw/svg.js'
 import { niceBelow } from '../draw/ticks.js'
 import type { SkyPanel } from './sky-marks.js'
+import { uprightStokes } from './upright-stokes.js'
 
 /** Ticks along the longer side. */
 const across = 22
@@ -13,7 +14,7 @@ interface Tick {
   /** Middle, as shares of the width from the left and of the height from the bottom. */
   x: number
   y: number
-  /** Position angle of the electric vector from north through east, rad. */
+  /** Angle of the electric vector from up to the left, rad: from north through east, where north is up. */
   angle: number
   degree: number
   polarised: number
@@ -52,18 +53,21 @@ export function polarisationTicks(images: CameraImages, k: number): { marks: (pa
   return { marks, note }
 }
 
-function means({ width, height, total, stokes }: CameraImages, k: number, side: number): Tick[] {
+function means(images: CameraImages, k: number, side: number): Tick[] {
+  const { width, height, total, stokes } = images
   const ticks: Tick[] = []
-  const { q, u, sigmaQ, sigmaU } = stokes!
+  const { sigmaQ, sigmaU } = stokes!
+  const { q, u } = uprightStokes(images, k)
   for (let y = 0; y < height; y += side) {
     for (let x = 0; x < width; x += side) {
       let [i, qs, us, variance] = [0, 0, 0, 0]
       const [right, upper] = [Math.min(width, x + side), Math.min(height, y + side)]
       for (let row = y; row < upper; row++) {
-        for (let at = (k * height + row) * width + x; at < (k * height + row) * width + right; at++) {
+        for (let pixel = row * width + x; pixel < row * width + right; pixel++) {
+          const at = k * width * height + pixel
           i += total[at]
-          qs += q[at]
-          us += u[at]
+          qs += q[pixel]
+          us += u[pixel]
           variance += sigmaQ[at] ** 2 + sigmaU[at] ** 2
         }
       }

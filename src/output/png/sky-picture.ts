@@ -70,23 +70,23 @@ export function viewOf({ camera, width, height }: CameraImages, what: string, sc
   return { width, height, field: camera.field, distance: scene.distance, title: scene.title, subtitle }
 }
 
-function placePictureView(
-  { name, field, pixels }: CameraSpec,
-  view: PlaceViewSpec,
-  wavelength: string,
-  { title }: Scene
-): SkyView {
+/** Width and height of a picture as it is drawn: angles, rad, in a perspective one their tangents. */
+export function flatField({ view, field }: CameraSpec): [number, number] {
+  return isFromPlace(view) && !view.allSky ? (field.map((angle) => 2 * Math.tan(angle / 2)) as [number, number]) : field
+}
+
+function placePictureView(camera: CameraSpec, view: PlaceViewSpec, wavelength: string, { title }: Scene): SkyView {
   const { from, toward, roll, allSky } = view
-  const [width, height] = pixels
+  const { name, field } = camera
+  const [width, height] = camera.pixels
   const place = (at: number[]) => `(${at.map((component) => shortNumber(component / AU)).join(', ')}) au`
   const turned = roll === 0 ? '' : `, roll ${shortNumber(inDegrees(roll))}°`
   const seen = allSky ? `all sky from ${place(from)}` : `from ${place(from)} towards ${place(toward)}${turned}`
-  const flat = allSky ? field : (field.map((angle) => 2 * Math.tan(angle / 2)) as [number, number])
   const middle = allSky ? inDegrees(forwardOf(view).longitude) : undefined
   return {
     width,
     height,
-    field: flat,
+    field: flatField(camera),
     title,
     subtitle: `camera ${name} · ${wavelength} · ${seen}`,
     sides: (across, up) => placeSides(field, middle, across, up)
