@@ -2,7 +2,7 @@ import { standardError } from '../math/stats.js'
 import type { IntensityField } from './field.js'
 import { integratePatch, type Patch, type Sector } from './patch.js'
 import { EMITTED, FIRST_GROUP, RAY_VALUES, SCATTERED } from './ray-values.js'
-import { cutInTwo, ringsBetween, wallsBetween } from './rings.js'
+import { halvedRings, ringsBetween, wallsBetween } from './rings.js'
 import { unflattened } from './unflattened.js'
 
 /** A pixel seen from the centre under more than this angle, rad, is integrated in polar coordinates. */
@@ -109,7 +109,7 @@ export class PixelIntegrator {
     const wide = Math.max(right - left, high - low) > WIDE * nearest
     if (!wide && wallsBetween(round, nearest, farthest) <= CROWDED) return undefined
     return {
-      parts: rectangleParts(left, right, low, high, ringsBetween(round, nearest, farthest)),
+      parts: rectangleParts(left, right, low, high, halvedRings(ringsBetween(round, nearest, farthest))),
       outline: (cos, sin, out) => {
         // Where the ray from the centre is inside both strips of the rectangle.
         const x1 = cos === 0 ? (left <= 0 && right >= 0 ? -Infinity : Infinity) : left / cos
@@ -193,7 +193,6 @@ function rectangleParts(left: number, right: number, low: number, high: number, 
     const angle = Math.atan2(y, x) - middle
     return angle > Math.PI ? angle - 2 * Math.PI : angle <= -Math.PI ? angle + 2 * Math.PI : angle
   }
-  let index = 0
   const corners: number[] = []
   for (const x of [left, right]) for (const y of [low, high]) if (x !== 0 || y !== 0) corners.push(turn(x, y))
   return rings.slice(1).flatMap((to, i) => {
@@ -216,10 +215,8 @@ function rectangleParts(left: number, right: number, low: number, high: number, 
       const first = turns[k - 1] + middle
       const span = turns[k] - turns[k - 1]
       const count = Math.ceil(span / FAN)
-      for (let j = 0; j < count; j++) {
-        const sector = { from, to, start: first + (j * span) / count, end: first + ((j + 1) * span) / count }
-        parts.push(...cutInTwo(sector, index++))
-      }
+      for (let j = 0; j < count; j++)
+        parts.push({ from, to, start: first + (j * span) / count, end: first + ((j + 1) * span) / count })
     }
     return parts
   })

@@ -20,12 +20,22 @@ export function ringsBetween({ radii, innermost }: IntensityField, from: number,
 }
 
 /**
- * The inner and the outer part of a sector, cut at another share of its area for each `index`: a disk seen from the pole looks alike in all
+ * A radius between two others, at another share of the area between them for each `index`: a disk seen from the pole looks alike in all
  * directions, and rays at the same places between two walls would all be wrong by the same amount.
  */
-export function cutInTwo({ from, to, start, end }: Sector, index: number): Sector[] {
+function between(from: number, to: number, index: number): number {
   const share = 0.3 + 0.4 * ((index * PLASTIC) % 1)
-  const half = Math.sqrt(from * from + share * (to * to - from * from))
+  return Math.sqrt(from * from + share * (to * to - from * from))
+}
+
+/** Every ring in two. */
+export function halvedRings(rings: number[]): number[] {
+  return rings.flatMap((from, i) => (i + 1 < rings.length ? [from, between(from, rings[i + 1], i)] : [from]))
+}
+
+/** The inner and the outer part of a sector. */
+export function cutInTwo({ from, to, start, end }: Sector, index: number): Sector[] {
+  const half = between(from, to, index)
   return [
     { from, to: half, start, end },
     { from: half, to, start, end }
