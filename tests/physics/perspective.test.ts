@@ -45,14 +45,16 @@ ${directions
     views.forEach((_, n) => {
       const [parallel, perspective] = [images[2 * n], images[2 * n + 1]]
       for (const k of [0, 1]) {
-        const [one, other, sigma] = [plane(parallel, 'total', k), plane(perspective, 'total', k), plane(parallel, 'sigma', k)]
+        const [one, other] = [plane(parallel, 'total', k), plane(perspective, 'total', k)]
+        const [sigma, others] = [plane(parallel, 'sigma', k), plane(perspective, 'sigma', k)]
         const bright = 1e-3 * (sumOf(one) / one.length)
-        // Rays are placed to three times a tenth of 1 % in a pixel, at sharp edges of cells not so well.
+        // Rays are placed to three times a tenth of 1 % in a pixel, at sharp edges of cells not so well. Below the midplane of two-dimensional
+        // cells the two are made of different packets.
         let well = 0
         one.forEach((value, i) => {
           if (value < bright) return
           expect(Math.abs(other[i] - value), `view ${n}, ${k}, pixel ${i}`).toBeLessThan(0.03 * value + 4 * sigma[i])
-          if (Math.abs(other[i] - value) < 0.005 * value + sigma[i]) well++
+          if (Math.abs(other[i] - value) < 0.005 * value + 2 * Math.hypot(sigma[i], others[i])) well++
         })
         expect(well).toBeGreaterThan(0.9 * one.filter((value) => value >= bright).length)
         expect(Math.abs(sumOf(other) / sumOf(one) - 1)).toBeLessThan(0.002)
