@@ -6,12 +6,16 @@ export function shown(value: number, digits = 3): string {
   return size !== 0 && (size < 1e-3 || size >= 1e6) ? value.toExponential(digits - 1) : String(Number(value.toPrecision(digits)))
 }
 
+/** Smaller relative errors have a power of ten of their own. */
+const TINY = 1e-6
+
 /** A value with its 1 sigma, both to the second digit of the error, such as `5.27 ± 0.03` or `(4.65753 ± 0.00079)e7`. */
 export function withError(value: number, sigma: number): string {
   if (!(sigma > 0) || !Number.isFinite(value)) return shown(value, 4)
+  if (sigma < TINY * Math.abs(value)) return `${shown(value, 7)} ± ${shown(sigma, 2)}`
   const size = Math.max(Math.abs(value), sigma)
   const exponent = size < 1e-3 || size >= 1e6 ? Math.floor(Math.log10(size)) : 0
-  const decimals = Math.min(12, Math.max(0, exponent + 1 - Math.floor(Math.log10(sigma))))
+  const decimals = Math.max(0, exponent + 1 - Math.floor(Math.log10(sigma)))
   const [mean, error] = [value, sigma].map((number) => (number / 10 ** exponent).toFixed(decimals))
   return exponent === 0 ? `${mean} ± ${error}` : `(${mean} ± ${error})e${exponent}`
 }

@@ -19,6 +19,8 @@ const trial: Trial = {
   complete: false
 }
 let last = performance.now()
+/** The wavelength whose packets count: those before it pay for what a run does once. */
+let timed = 0
 /** Time for the lower and the upper half of a picture, which are about alike but for what is done once. */
 let halves: [number, number] = [0, 0]
 
@@ -33,8 +35,12 @@ function note({ stage, done, of, observer, index = 0 }: RunProgress): void {
   last = performance.now()
   if (stage === 'starlight') trial.starlightSeconds += seconds
   else if (stage === 'dust' || stage === 'light') {
+    if (stage === 'light' && index > timed) {
+      timed = index
+      trial.light.seconds = 0
+    }
     trial[stage].seconds += seconds
-    trial[stage].packets = index * TRIAL_PACKETS[stage] + done
+    trial[stage].packets = done
   } else if (observer?.kind === 'spectrum') {
     trial.apertures.seconds += seconds
     trial.apertures.count++
