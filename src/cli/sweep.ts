@@ -7,6 +7,7 @@ import { openSweep, reopenSweep, type SweepFolder } from '../sweep/folder/sweep-
 import { summarize } from '../sweep/meaning/summary.js'
 import { readPlan } from '../sweep/plan/read-plan.js'
 import { runHere } from '../sweep/players/run-here.js'
+import { WorkLock } from '../sweep/players/work-lock.js'
 import { type Judged, judged } from '../sweep/results/outcomes.js'
 import { writeTables } from '../sweep/results/write-tables.js'
 import type { QueueEntry } from '../sweep/slurm/queue.js'
@@ -73,7 +74,10 @@ async function act(folder: SweepFolder, words: SweepWords): Promise<QueueEntry[]
   if (words.cancel) return slurmActions.cancel(folder)
   if (words.wait) return slurmActions.wait(folder, words.quiet)
   const models = openModels(folder, outcomesOf(folder))
-  if (models.length === 0) return undefined
+  if (models.length === 0) {
+    WorkLock.clear(folder.path)
+    return undefined
+  }
   if (words.on === 'slurm') return slurmActions.submit(folder, models, words)
   await slurmActions.refuseWhileQueued(folder)
   return make(folder, models, words)

@@ -1,4 +1,5 @@
 import { existsSync, readdirSync, readFileSync, writeFileSync } from 'node:fs'
+import { hostname } from 'node:os'
 import { join } from 'node:path'
 import { setTimeout } from 'node:timers/promises'
 import { execa } from 'execa'
@@ -97,8 +98,8 @@ describe('motelight sweep', () => {
     await setTimeout(300)
     const twice = await execa(process.execPath, words, { cwd: folder, reject: false })
     expect(twice).toMatchObject({ exitCode: 2, stderr: expect.stringContaining('another motelight works in') })
-    const [[victim]] = JSON.parse(readFileSync(working, 'utf8')).players as [number, string][]
-    process.kill(victim, 'SIGKILL')
+    const [victim] = JSON.parse(readFileSync(working, 'utf8')).players as [number, string][]
+    process.kill(victim[0], 'SIGKILL')
     await setTimeout(500)
     run.kill('SIGINT')
     const stopped = await run
@@ -108,6 +109,10 @@ describe('motelight sweep', () => {
     expect(existsSync(working)).toBe(false)
     const rest = await execa(process.execPath, [...words, '--retry-failed'], { cwd: folder, reject: false })
     expect(rest).toMatchObject({ exitCode: 0, stdout: expect.stringContaining('4 of 4 models done') })
+    // What one that was killed when all was made leaves.
+    writeFileSync(working, JSON.stringify({ host: hostname(), parent: victim, players: [] }))
+    expect(await execa(process.execPath, words, { cwd: folder, reject: false })).toMatchObject({ exitCode: 0 })
+    expect(existsSync(working)).toBe(false)
   })
 })
 

@@ -23,7 +23,7 @@ export class WorkLock {
 
   /** Throws OutputError while another process works in the folder. */
   static async take(folder: string): Promise<WorkLock> {
-    const file = join(folder, 'working.json')
+    const file = fileIn(folder)
     const lock = new WorkLock(file)
     const before = readWorkers(file)
     if (before) {
@@ -46,6 +46,13 @@ export class WorkLock {
     return lock
   }
 
+  /** Removes what a process left that ended here when all was made. */
+  static clear(folder: string): void {
+    const file = fileIn(folder)
+    const before = readWorkers(file)
+    if (before?.host === hostname() && ![before.parent, ...before.players].some(isAlive)) rmSync(file, { force: true })
+  }
+
   add(pid: number): void {
     this.players.push([pid, startOf(pid)])
     this.write('w')
@@ -65,6 +72,8 @@ export class WorkLock {
     }
   }
 }
+
+const fileIn = (folder: string) => join(folder, 'working.json')
 
 function readWorkers(file: string): Workers | undefined {
   if (!existsSync(file)) return undefined
