@@ -75,8 +75,22 @@ export class AxialRay {
     const cosine = rho > 0 ? (x * ex + y * ey) / rho : 1
     const side = ex * y < ey * x ? -1 : 1
     if (polarNodes === 1) {
-      curves[0].at(scattered, cell * slots, cosine)
-      this.addCurve(curves[0], cell * slots, weight, side, out, withGroups)
+      const base = cell * slots
+      if (medium.polarised) {
+        curves[0].at(scattered, base, cosine)
+        this.addCurve(curves[0], base, weight, side, out, withGroups)
+      } else {
+        const { intensity } = curves[0]
+        curves[0].intensityAt(scattered, base, cosine)
+        this.sum.addThree(
+          base + curves[0].start,
+          weight * intensity[0],
+          weight * intensity[1],
+          weight * intensity[2],
+          out,
+          withGroups
+        )
+      }
       return
     }
     const { first, turned, mirrored, sides, curved, straight } = this

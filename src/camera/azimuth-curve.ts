@@ -16,6 +16,8 @@ export class AzimuthCurve {
   readonly even = new Float64Array(3)
   readonly odd = new Float64Array(3)
   private readonly shares: AzimuthShares
+  /** How much of the parabola is left of it. */
+  private bent = 1
 
   /** `narrow`: see azimuthLookup. */
   constructor(
@@ -25,24 +27,41 @@ export class AzimuthCurve {
     this.shares = narrow ? tables.narrow : tables.even
   }
 
-  /** The intensity at an azimuth of that cosine; its bins are the `values` from `base` on. */
-  at(values: Float64Array, base: number, cosine: number): number {
-    const { shares, intensity, even, odd, straight } = this
-    const step = Math.min(TABLE_STEPS - 1, tablePosition(Math.max(-1, Math.min(1, cosine))) | 0)
+  /** The intensity at an azimuth of that cosine; its bins are the `values` from `base` on. Leaves `even` and `odd` as they were. */
+  intensityAt(values: Float64Array, base: number, cosine: number): number {
+    const { shares, intensity, straight } = this
+    const step = stepAt(cosine)
     const bin = shares.bins[step]
     const start = startOf(bin)
     const a = values[base + start]
     const b = values[base + start + 1]
     const c = values[base + start + 2]
-    const bent = straight ? 1 : this.bend(bin, values[base + bin], a, b, c)
-    for (let i = 0; i < 3; i++) {
-      const flat = start + i === bin ? 1 - bent : 0
-      even[i] = flat + bent * shares.even[3 * step + i]
-      odd[i] = flat + bent * shares.odd[3 * step + i]
-      intensity[i] = straight ? shares.straight[3 * step + i] : even[i]
-    }
+    const from = straight ? shares.straight : shares.even
+    intensity[0] = from[3 * step]
+    intensity[1] = from[3 * step + 1]
+    intensity[2] = from[3 * step + 2]
     this.start = start
+    this.bent = straight ? 1 : this.bend(bin, values[base + bin], a, b, c)
+    if (this.bent < 1) {
+      for (let i = 0; i < 3; i++) intensity[i] *= this.bent
+      intensity[bin - start] += 1 - this.bent
+    }
     return intensity[0] * a + intensity[1] * b + intensity[2] * c
+  }
+
+  /** The same, with the shares of the other Stokes parameters. */
+  at(values: Float64Array, base: number, cosine: number): number {
+    const value = this.intensityAt(values, base, cosine)
+    const { shares, even, odd, start, bent } = this
+    const step = stepAt(cosine)
+    const flat = shares.bins[step] - start
+    for (let i = 0; i < 3; i++) {
+      even[i] = bent * shares.even[3 * step + i]
+      odd[i] = bent * shares.odd[3 * step + i]
+    }
+    even[flat] += 1 - bent
+    odd[flat] += 1 - bent
+    return value
   }
 
   /** How much of the parabola of a bin about its mean keeps it from being negative. */
@@ -56,3 +75,5 @@ export class AzimuthCurve {
     return least < 0 && mean >= 0 ? mean / (mean - least) : 1
   }
 }
+
+const stepAt = (cosine: number) => Math.min(TABLE_STEPS - 1, tablePosition(Math.max(-1, Math.min(1, cosine))) | 0)
