@@ -10,6 +10,8 @@ import { unflattened } from './unflattened.js'
 const PARTS = 8
 /** Rings beyond the outermost wall, where a flattened picture has none: as many for each doubling. */
 const RINGS_A_DOUBLING = 4
+/** Above this axis ratio a disk looks much alike in all directions. */
+const ROUND = 0.7
 /** Golden ratio - 1: its multiples modulo 1 are spread evenly. */
 const GOLDEN = 0.618_033_988_749_895
 
@@ -26,7 +28,7 @@ export function integrateAperture(field: IntensityField, radius: number, toleran
   const beyond = Math.ceil(RINGS_A_DOUBLING * Math.log2(1 / flattening))
   for (let i = 1; i <= beyond; i++) rings.push(edge * flattening ** (-i / beyond))
   const patch = {
-    parts: sectors(rings, mirrored),
+    parts: sectors(rings, mirrored, flattening > ROUND),
     outline: (cos: number, sin: number, out: Float64Array) => {
       out[0] = 0
       out[1] = edge / Math.hypot(cos, flattening * sin)
@@ -45,10 +47,10 @@ export function integrateAperture(field: IntensityField, radius: number, toleran
 }
 
 /**
- * Rings cut into sectors, each ring turned by another angle, and each sector in two: a disk looks much alike in all its rings, and rays
- * at the same angles in each would all be wrong by the same amount.
+ * Rings cut into sectors, each ring turned by another angle, and `halved` each sector in two: a disk looks much alike in all its rings,
+ * from the pole in all directions, and rays at the same places in each would all be wrong by the same amount.
  */
-function sectors(rings: number[], mirrored: boolean): Sector[] {
+function sectors(rings: number[], mirrored: boolean, halved: boolean): Sector[] {
   const count = mirrored ? PARTS : 2 * PARTS
   const width = Math.PI / PARTS
   return rings.slice(1).flatMap((to, k) => {
@@ -59,7 +61,8 @@ function sectors(rings: number[], mirrored: boolean): Sector[] {
       const first = mirrored && i === 0 ? 0 : i + turn
       const last = mirrored && i === count - 1 ? count : i + 1 + turn
       const [start, end] = [first, last].map((at) => at * width - Math.PI / 2)
-      return cutInTwo({ from, to, start, end }, k * count + i)
+      const sector = { from, to, start, end }
+      return halved ? cutInTwo(sector, k * count + i) : [sector]
     }).flat()
   })
 }

@@ -15,7 +15,7 @@ import { Sight, type View } from './sight.js'
 import { StokesRay } from './stokes-ray.js'
 
 /** Beyond this optical depth nothing is seen. */
-const OPAQUE = 40
+const OPAQUE = 30
 /** Below this optical depth two terms of the exponential do. */
 const THIN = 1e-4
 /** First scatterings in a cell are left out where they cannot add this share to what the ray has gathered. */
@@ -89,6 +89,7 @@ export class RayIntegrator {
     if (!this.sight.enter(walk)) return
     scatteredRay.begin(walk.ux, walk.uy, walk.uz)
     rimCut?.begin(walk)
+    const shares = rimCut?.rims.filled
     const starAt = spheres.length > 0 ? walk.s + pathToStar(walk, spheres) : Number.POSITIVE_INFINITY
     const hasEmissionGroups = withGroups && emissionGroups.length > 0
     const brightest = medium.starlight?.brightest
@@ -106,7 +107,7 @@ export class RayIntegrator {
       if (atStar) step = Math.max(0, starAt - start)
       const mean = extinction[cell]
       if (mean > 0 && step > 0) {
-        const filled = rimCut ? rimCut.rims.filled[cell] : 1
+        const filled = shares ? shares[cell] : 1
         const pieces = filled === 1 ? 1 : 2
         for (let i = 0; i < pieces; i++) {
           const from = pieces === 1 ? start : Math.max(start, rimCut!.from[i])
