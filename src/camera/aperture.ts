@@ -1,3 +1,4 @@
+import { GOLDEN } from '../math/golden.js'
 import { GROUPS } from '../solve/groups.js'
 import type { IntensityField } from './field.js'
 import { integratePatch, type PatchIntegral, type Sector } from './patch.js'
@@ -12,8 +13,6 @@ const PARTS = 8
 const RINGS_A_DOUBLING = 4
 /** Above this axis ratio a disk looks much alike in all directions. */
 const ROUND = 0.7
-/** Golden ratio - 1: its multiples modulo 1 are spread evenly. */
-const GOLDEN = 0.618_033_988_749_895
 
 /**
  * Integral of an intensity field over a disk of `radius` (cm, may be infinite). `mirrored`: the right half of the picture

@@ -1,7 +1,6 @@
 import { dimensionsOf } from '../grid/cells.js'
 import type { Vector } from '../scene/types.js'
 import { GROUPS } from '../solve/groups.js'
-import type { PolarisedPart } from '../solve/scattered-light.js'
 import { observerFrames } from '../transport/observer-frame.js'
 import type { RayMedium } from './ray-medium.js'
 import { Q, RAY_VALUES } from './ray-values.js'
@@ -25,25 +24,6 @@ export class StokesRay {
     const [cos, sin] = 'from' in view ? [1, 0] : zAxisIn(view)
     this.cos = cos
     this.sin = sin
-  }
-
-  /** Adds `weight` times Q at `index`, and `odd` times U and V. */
-  add(
-    { parts, value, groups }: PolarisedPart,
-    index: number,
-    weight: number,
-    odd: number,
-    out: Float64Array,
-    withGroups: boolean
-  ): void {
-    for (let part = 0; part < parts; part++) {
-      const at = index * parts + part
-      const amount = part === 0 ? weight : odd
-      out[Q + part] += amount * value[at]
-      if (!withGroups) continue
-      const to = RAY_VALUES + part * GROUPS
-      for (let g = 0; g < GROUPS; g++) out[to + g] += amount * groups[at * GROUPS + g]
-    }
   }
 
   /**
